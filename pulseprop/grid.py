@@ -1,0 +1,104 @@
+"""The time-frequency grid: the one place that knows FFT sign, scale, order and offset.
+
+Fields are analytic signals E(t) in W^(1/2), |E|^2 being the instantaneous power averaged over the carrier:
+
+    E(t) = 1/(2 pi) int_0^inf A(omega) exp(-i omega t) d omega,     A(omega) = int E(t) exp(+i omega t) dt,
+
+with A zero at and below zero frequency. A grid holds `points` instants t_j = start + j step and as many
+ordinary frequencies f_m = lowest + m / span, ascending. In memory a field is stored as the envelope about
+the grid's reference frequency `carrier` = lowest + (points // 2) / span, that is E(t) exp(+i 2 pi carrier t),
+so that an FFT without any shift in time takes one to the other.
+
+numpy's FFT carries exp(-i ...) forward; the physics here carries exp(+i omega t), so its *inverse* routine,
+unnormalised and times the step, goes from time to frequency. Only this file does that.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, replace
+from functools import cached_property
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.errors import InputError
+from pulseprop.numerics.transforms import backward, forward
+
+__all__ = ["Grid"]
+
+Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
+
+
+@dataclass(frozen=True, kw_only=True)
+class Grid:
+    """A uniform grid of instants and the absolute frequencies that belong to them.
+
+    points: even number of samples. step: seconds between instants. start: first instant, s, on the clock
+    of a front that travels at c. carrier: reference frequency in Hz; the frequencies run from
+    carrier - 1/(2 step) upwards in steps of 1/span.
+    """
+
+    points: int
+    step: float
+    start: float
+    carrier: float
+
+    def __post_init__(self) -> None:
+        if self.points < 2 or self.points % 2:
+            raise InputError("a grid needs an even number of points", value=self.points, allowed="even, 2 or more")
+        if not (np.isfinite(self.step) and self.step > 0):
+            raise InputError("a grid needs a positive time step", value=self.step, allowed="seconds above 0")
+
+    @property
+    def span(self) -> float:
+        """Length of the window in seconds: points times step."""
+        return self.points * self.step
+
+    @cached_property
+    def time(self) -> Real:
+        """Instants in s on the clock of the front, shape (points,)."""
+        return self.start + self.step * np.arange(self.points)
+
+    @cached_property
+    def frequency(self) -> Real:
+        """Absolute ordinary frequencies in Hz, ascending, shape (points,)."""
+        return self.carrier + (np.arange(self.points) - self.points // 2) / self.span
+
+    @property
+    def omega(self) -> Real:
+        """Absolute angular frequencies in rad/s, ascending, shape (points,)."""
+        return 2 * np.pi * self.frequency
+
+    @property
+    def positive(self) -> slice:
+        """The part of the frequency axis that lies above zero, where analytic signals live."""
+        first = int(np.searchsorted(self.frequency, 0.5 / self.span * 1e-6, side="right"))
+        return slice(first, self.points)
+
+    def to_spectrum(self, envelope: Complex) -> Complex:
+        """Spectrum A(omega) in W^(1/2) s, ascending frequency, of an envelope about `carrier`.
+
+        The start of the window is taken into account: the phase refers to t = 0 of the front's clock.
+        """
+        spectrum = forward(envelope)
+        spectrum *= self.step * np.exp(2j * np.pi * (self.frequency - self.carrier) * self.start)
+        return spectrum
+
+    def to_field(self, spectrum: Complex) -> Complex:
+        """Envelope about `carrier` in W^(1/2) of a spectrum A(omega); the inverse of `to_spectrum`."""
+        turned = spectrum * np.exp(-2j * np.pi * (self.frequency - self.carrier) * self.start)
+        turned /= self.step
+        return backward(turned)
+
+    def carrier_resolved(self, envelope: Complex) -> Complex:
+        """The undivided analytic signal E(t) of an envelope about `carrier`."""
+        return envelope * np.exp(-2j * np.pi * self.carrier * self.time)
+
+    def energy(self, spectrum: Complex) -> float:
+        """Energy in J of a spectrum A(omega) on this grid (Parseval)."""
+        return float(np.vdot(spectrum, spectrum).real / self.span)
+
+    def moved(self, start: float) -> Grid:
+        """The same frequencies seen through a window that begins at another instant."""
+        return replace(self, start=start)

@@ -1,0 +1,123 @@
+"""A printed formula continued beyond its range by absorption, so that it is causal on the whole axis.
+
+A pole on the real axis, or a hard cut at the end of the range, would itself be acausal or lossless. Each pole is replaced
+by the widest cubic B-spline band of absorption, in x proportional to omega^2, that lies wholly outside the range and has the
+pole's strength and first moment; its width is what keeps the refraction in range within `ALLOWED_SHIFT`:
+
+    weight x_j / (x_j - x)  ->  weight x_j int B_j(x') / (x' - x) dx',   shift = weight x_j variance / |x_j - x|^3.
+
+Lorentz damping would not do: its absorption in range grows in proportion to the damping while the index changes with its
+square. A positive offset stays: an instantaneous response is causal. Powers of the wavelength, and terms of negative
+strength, have no band of their own: they are fitted, together with the rest, by non-negative bands outside the range.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.numerics.bspline_cauchy import VARIANCE, cauchy, cauchy_slope
+from pulseprop.numerics.series import Series, compose
+
+if TYPE_CHECKING:
+    from pulseprop.material.formulas import Formula, Pole
+
+__all__ = ["ALLOWED_SHIFT", "Completion", "complete"]
+
+Real = NDArray[np.float64]
+
+ALLOWED_SHIFT = 1e-8
+"""Largest change of n in range that replacing poles by bands may cause."""
+
+CHECK_POINTS = 101
+
+
+@dataclass(frozen=True, kw_only=True)
+class Completion:
+    """offset + sum_j strength_j int B((x' - centre_j)/knot_j)/knot_j / (x' - x) dx'; x, centre, knot in um^-2.
+
+    `shift` is the largest change of g in range, as measured.
+    """
+
+    offset: float
+    strength: Real
+    centre: Real
+    knot: Real
+    shift: float
+
+    def series(self, x: Series) -> Series:
+        """g and its slope (at most two terms) of a Taylor series x on or above the real axis."""
+        total = np.zeros(x.shape, dtype=complex)
+        total[0] = self.offset
+        for strength, centre, knot in zip(self.strength, self.centre, self.knot, strict=True):
+            u = (x[0] - centre) / knot
+            outer = [cauchy(u) * (strength / knot)]
+            if len(x) > 1:
+                outer.append(cauchy_slope(u) * (strength / knot**2))
+            total += compose(np.stack(outer), x)
+        return total
+
+
+def complete(formula: Formula) -> Completion:
+    """The completion of a formula; `shift` reports how far it moved the formula in range."""
+    low, high = formula.x_range
+    plain = formula.offset >= 0 and not formula.powers and all(pole.weight > 0 for pole in formula.poles)
+    if plain:
+        strength = np.array([pole.weight * pole.place for pole in formula.poles])
+        centre = np.array([pole.place for pole in formula.poles])
+        knot = np.array([_widest_knot(pole, low, high, len(formula.poles)) for pole in formula.poles])
+        candidate = Completion(offset=formula.offset, strength=strength, centre=centre, knot=knot, shift=0.0)
+    else:
+        candidate = _fitted(formula, low, high)
+    x = _check_places(low, high)[None]
+    shift = float(np.max(np.abs(candidate.series(x)[0] - formula.printed(x)[0])))
+    return Completion(
+        offset=candidate.offset,
+        strength=candidate.strength,
+        centre=candidate.centre,
+        knot=candidate.knot,
+        shift=shift,
+    )
+
+
+def _check_places(low: float, high: float) -> Real:
+    high = high if np.isfinite(high) else max(4 * low, 1.0)
+    return np.asarray(low + (high - low) * (1 - np.cos(np.linspace(0, np.pi, CHECK_POINTS))) / 2)
+
+
+def _widest_knot(pole: Pole, low: float, high: float, count: int) -> float:
+    distance = min(abs(pole.place - low), abs(pole.place - high))
+    allowed = ALLOWED_SHIFT / count
+    by_shift = np.sqrt(allowed * distance**3 / (VARIANCE * abs(pole.weight) * pole.place))
+    return float(min(by_shift, 0.4 * distance, 0.45 * pole.place))
+
+
+def _fitted(formula: Formula, low: float, high: float) -> Completion:
+    from scipy.optimize import nnls
+
+    centre, knot = _candidate_bands(low, high)
+    x = _check_places(low, high)
+    columns = [np.ones_like(x)]
+    for place, width in zip(centre, knot, strict=True):
+        columns.append((cauchy((x - place) / width) / width).real)
+    matrix = np.stack(columns, axis=1)
+    scale = np.max(np.abs(matrix), axis=0)
+    solution, _ = nnls(matrix / scale, formula.printed(x[None])[0].real, maxiter=50 * len(scale))
+    weights = solution / scale
+    used = weights[1:] > 0
+    return Completion(
+        offset=float(weights[0]), strength=weights[1:][used], centre=centre[used], knot=knot[used], shift=0.0
+    )
+
+
+def _candidate_bands(low: float, high: float) -> tuple[Real, Real]:
+    """Bands whose supports (two knot distances to each side) lie outside [low, high] and above zero."""
+    gaps = np.geomspace(0.02, 300.0, 60)
+    above = high * (1 + gaps)
+    below = low / (1 + np.geomspace(0.02, 1e6, 60))
+    centre = np.concatenate((below, above))
+    distance = np.where(centre < low, np.minimum(low - centre, centre), centre - high)
+    return centre, 0.4 * distance * 0.5

@@ -1,0 +1,204 @@
+"""Media made of media: density scaling, mixtures, an index against air made absolute, measured additions to the index.
+
+Dielectric functions are eps = 1 + chi. Lorentz-Lorenz: (eps - 1)/(eps + 2) is proportional to density (H. A. Lorentz 1880,
+L. Lorenz 1880). J. C. Maxwell Garnett, Phil. Trans. R. Soc. A 203, 385 (1904); D. A. G. Bruggeman, Ann. Phys. 416, 636 (1935);
+formulas from memory.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Protocol
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.errors import InputError
+from pulseprop.material.refraction import refraction_of, susceptibility_of
+from pulseprop.material.response import Band, Response, View, common_band
+from pulseprop.numerics.series import Series, compose, product, quotient, variable
+
+__all__ = ["Absolute", "Bruggeman", "Density", "IndexAddition", "LorentzLorenz", "MaxwellGarnett", "WithAbsorption"]
+
+Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
+
+
+def _polarisability(chi: Series) -> Series:
+    """(eps - 1)/(eps + 2)."""
+    above = chi.copy()
+    above[0] += 3.0
+    return quotient(chi, above)
+
+
+def _from_polarisability(total: Series) -> Series:
+    below = -total
+    below[0] += 1.0
+    return quotient(3.0 * total, below)
+
+
+@dataclass(frozen=True)
+class Density:
+    """One substance at `ratio` times the density of its record."""
+
+    of: Response
+    ratio: float
+
+    @property
+    def band(self) -> Band:
+        return self.of.band
+
+    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+        return _from_polarisability(self.ratio * _polarisability(self.of.series(omega, count, view)))
+
+
+@dataclass(frozen=True)
+class LorentzLorenz:
+    """Volume fractions before mixing; polarisabilities add. Fractions need not sum to 1: the rest is vacuum."""
+
+    parts: tuple[tuple[Response, float], ...]
+
+    @property
+    def band(self) -> Band:
+        return common_band(part for part, _ in self.parts)
+
+    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+        shares = [fraction * _polarisability(part.series(omega, count, view)) for part, fraction in self.parts]
+        return _from_polarisability(sum(shares[1:], start=shares[0]))
+
+
+@dataclass(frozen=True)
+class MaxwellGarnett:
+    """Spheres of `inclusion`, volume fraction f, in `host`:  eps = h (1 + 2 f b) / (1 - f b), b = (i - h)/(i + 2 h)."""
+
+    host: Response
+    inclusion: Response
+    fraction: float
+
+    @property
+    def band(self) -> Band:
+        return common_band((self.host, self.inclusion))
+
+    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+        host = self.host.series(omega, count, view)
+        inclusion = self.inclusion.series(omega, count, view)
+        below = inclusion + 2.0 * host
+        below[0] += 3.0
+        contrast = self.fraction * quotient(inclusion - host, below)
+        numerator = 2.0 * contrast
+        numerator[0] += 1.0
+        denominator = -contrast
+        denominator[0] += 1.0
+        eps_host = host.copy()
+        eps_host[0] += 1.0
+        eps = quotient(product(eps_host, numerator), denominator)
+        eps[0] -= 1.0
+        return eps
+
+
+@dataclass(frozen=True)
+class Bruggeman:
+    """Two or more media on equal footing: sum f_j (e_j - e)/(e_j + 2 e) = 0.
+
+    For two media the quadratic 2 e^2 - b e - e_1 e_2 = 0, b = (3 f_1 - 1) e_1 + (3 f_2 - 1) e_2, is solved in closed
+    form; the root is the one with e -> mean at vanishing contrast, which stays in the upper half plane for passive media.
+    """
+
+    first: Response
+    second: Response
+    fraction_first: float
+
+    @property
+    def band(self) -> Band:
+        return common_band((self.first, self.second))
+
+    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+        one = self.first.series(omega, count, view).astype(complex)
+        two = self.second.series(omega, count, view).astype(complex)
+        one[0] += 1.0
+        two[0] += 1.0
+        share = self.fraction_first
+        linear = (3 * share - 1) * one + (2 - 3 * share) * two
+        discriminant = product(linear, linear) + 8.0 * product(one, two)
+        eps = (linear + _root_into_upper_half(discriminant, linear[0])) / 4.0
+        eps[0] -= 1.0
+        return eps
+
+
+def _root_into_upper_half(discriminant: Series, linear: Series) -> Series:
+    """The root of the discriminant for which (linear + root)/4 is a passive dielectric function.
+
+    Both candidates' imaginary parts add up to Im linear / 2; the physical one has Im >= 0, and where both are real it is
+    the larger, by continuity from the upper half plane.
+    """
+    from pulseprop.numerics.series import root
+
+    leading = np.sqrt(discriminant[0])
+    plus, minus = linear + leading, linear - leading
+    flip = (minus.imag > plus.imag * (1 + 1e-12) + 1e-300) & (plus.imag < 0)
+    return root(discriminant, np.where(flip, -leading, leading))
+
+
+@dataclass(frozen=True)
+class Absolute:
+    """An index printed against air, made absolute: n(omega) = n_air(omega) n_printed(omega n_air(omega)).
+
+    The printed wavelength is the one in air, the frequency is the same.
+    """
+
+    printed: Response
+    air: Response
+
+    @property
+    def band(self) -> Band:
+        return self.printed.band.overlap(self.air.band)
+
+    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+        air = refraction_of(self.air.series(omega, count, view))
+        air[0] += 1.0
+        scaled = product(variable(np.asarray(omega), count), air)
+        if np.iscomplexobj(scaled) and np.isrealobj(omega):
+            scaled = np.asarray(scaled.real)
+        outer = refraction_of(self.printed.series(scaled[0], count, view))
+        index = compose(outer, scaled)
+        index[0] += 1.0
+        index = product(index, air)
+        index[0] -= 1.0
+        return susceptibility_of(index)
+
+
+class IndexAddition(Protocol):
+    """A causal contribution to n + ik - 1 itself, as measured absorption gives through Kramers-Kronig."""
+
+    @property
+    def band(self) -> Band: ...
+
+    def refraction_series(self, omega: Complex | Real, count: int) -> Series:
+        """Taylor coefficients of the contribution about each omega."""
+        ...
+
+
+@dataclass(frozen=True)
+class WithAbsorption:
+    """A transparent background whose index a measured absorption adds to: n = n_background + N_measured."""
+
+    background: Response
+    measured: IndexAddition
+
+    @property
+    def band(self) -> Band:
+        return self.background.band.overlap(self.measured.band)
+
+    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+        own = refraction_of(self.background.series(omega, count, view))
+        return susceptibility_of(own + self.measured.refraction_series(omega, count))
+
+
+def checked_fractions(fractions: tuple[float, ...]) -> None:
+    """Raise InputError unless volume fractions lie in 0..1 and sum to 1 within 1e-9."""
+    if any(not 0 <= fraction <= 1 for fraction in fractions) or abs(sum(fractions) - 1) > 1e-9:
+        raise InputError(
+            "fractions of a mixture must lie between 0 and 1 and sum to 1",
+            value=list(fractions),
+            allowed="volumes before mixing, sum 1",
+        )

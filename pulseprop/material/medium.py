@@ -1,0 +1,76 @@
+"""A medium: a causal response with its name, source, temperature and what else is published of it."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.material.orders import Orders, orders_of
+from pulseprop.material.refraction import refraction_of
+from pulseprop.material.response import Band, Response, View
+from pulseprop.numerics.series import Series
+
+__all__ = ["Medium", "NonlinearIndex"]
+
+Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
+
+
+@dataclass(frozen=True, kw_only=True)
+class NonlinearIndex:
+    """A published n2 in m^2/W; wavelength in m and pulse length in s where printed."""
+
+    value: float
+    wavelength: float | None = None
+    pulse_length: float | None = None
+    source: str = ""
+
+
+@dataclass(frozen=True, kw_only=True)
+class Medium:
+    """What a beam can pass through.
+
+    response: the susceptibility. causal: False where only orders or a spline as printed are known, so that causality cannot
+    be tested. temperature: as the source prints it. relative_to: what the printed index is against. memory: the longest
+    time in s over which the medium rings. spread: names of other records of the same substance.
+    """
+
+    name: str
+    response: Response
+    source: str = ""
+    temperature: str = ""
+    temperature_K: float | None = None
+    relative_to: str = "vacuum"
+    causal: bool = True
+    memory: float = 0.0
+    n2: NonlinearIndex | None = None
+    spread: tuple[str, ...] = ()
+    notes: tuple[str, ...] = ()
+    printed_digits: int | None = field(default=None)
+
+    @property
+    def band(self) -> Band:
+        """Where the data behind the medium hold, rad/s."""
+        return self.response.band
+
+    def susceptibility(self, omega: Complex | Real, view: View = View.AXIS) -> Complex:
+        """chi(omega), omega in rad/s."""
+        return np.asarray(self.response.series(np.asarray(omega), 1, view)[0], dtype=complex)
+
+    def refraction(self, omega: Complex | Real, count: int = 1, view: View = View.AXIS) -> Series:
+        """Taylor coefficients of n + ik - 1 about each omega (rad/s); shape (count, *omega.shape)."""
+        return refraction_of(self.response.series(np.asarray(omega), count, view))
+
+    def index(self, omega: Complex | Real, view: View = View.AXIS) -> Complex:
+        """n + ik."""
+        return np.asarray(self.refraction(omega, 1, view)[0] + 1.0, dtype=complex)
+
+    def absorption(self, omega: Real) -> Real:
+        """Napierian absorption coefficient of the intensity, 1/m: 2 k omega / c."""
+        return 2 * np.imag(self.refraction(omega)[0]) * omega / 299792458.0
+
+    def orders(self, omega: float) -> Orders:
+        """Index, group index, GVD, TOD, FOD at one angular frequency, from the analytic chi."""
+        return orders_of(self.refraction(np.array(omega), 5, View.PRINTED), omega)
