@@ -2,14 +2,14 @@
 
 A file is a run of [[record]] tables; a record is parsed only when it is asked for. Keys of a record:
 
-    names               every exact name; the first is the one printed. All are names of one substance: none ever stands
-                        for another material (SF10 and N-SF10 are two records)
+    names               every exact name, the first being the one printed: names of one substance, never of two
+                        (SF10 and N-SF10 are two records)
     refused             words people type that say too little or mean something else; used in messages only
     axis                "o", "e", "x", "y" or "z" where the crystal is birefringent
     kind, offset, ...   the formula as printed, see `Record`
     valid_um            range of vacuum wavelength, um
     temperature         as printed; for gases pressure_Pa and temperature_K too
-    relative_to         "air" or "vacuum": what the printed index is against; with relative_to_assumed = true where
+    relative_to         what the printed index is against, "air" or "vacuum"; relative_to_assumed = true where
                         what was seen of the source does not say
     source, data_set    the publication; the open data-set entry from which the coefficients were taken
     from_memory         true where coefficients were recalled and not seen
@@ -50,7 +50,7 @@ Pairs = tuple[tuple[float, float], ...]
 
 @dataclass(frozen=True, kw_only=True)
 class Nonlinearity:
-    """A published nonlinear index, m^2/W, at a vacuum wavelength in um; `pulse` tells the pulses it was measured with.
+    """A published nonlinear index in m^2/W, the vacuum wavelength and the pulses it was measured with.
 
     For gases `pressure_Pa` and `temperature_K` give the density it was measured at.
     """
