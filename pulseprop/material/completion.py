@@ -7,13 +7,15 @@ pole's strength and first moment; its width is what keeps the refraction in rang
     weight x_j / (x_j - x)  ->  weight x_j int B_j(x') / (x' - x) dx',   shift = weight x_j variance / |x_j - x|^3.
 
 Lorentz damping would not do: its absorption in range grows in proportion to the damping while the index changes with its
-square. A positive offset stays: an instantaneous response is causal. Powers of the wavelength, and terms of negative
-strength, have no band of their own: they are fitted, together with the rest, by non-negative bands outside the range.
+square. A positive offset stays: an instantaneous response is causal. A term -D L^2
+is that of a pole at zero frequency and becomes a band just above it. Other powers of the wavelength, and terms of negative
+strength, have no band of their own: they are fitted, together with the rest, by non-negative bands outside the range; how
+well that succeeds is reported.
 """
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 import numpy as np
@@ -23,7 +25,7 @@ from pulseprop.numerics.bspline_cauchy import VARIANCE, cauchy, cauchy_slope
 from pulseprop.numerics.series import Series, compose
 
 if TYPE_CHECKING:
-    from pulseprop.material.formulas import Formula, Pole
+    from pulseprop.material.formulas import Formula
 
 __all__ = ["ALLOWED_SHIFT", "Completion", "complete"]
 
@@ -33,6 +35,9 @@ ALLOWED_SHIFT = 1e-8
 """Largest change of n in range that replacing poles by bands may cause."""
 
 CHECK_POINTS = 101
+
+WINGS = (8.0, 64.0)
+"""Widths of the wings over that of the core: they absorb the light that a narrow band alone would slow down for ages."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -64,35 +69,48 @@ class Completion:
 def complete(formula: Formula) -> Completion:
     """The completion of a formula; `shift` reports how far it moved the formula in range."""
     low, high = formula.x_range
-    plain = formula.offset >= 0 and not formula.powers and all(pole.weight > 0 for pole in formula.poles)
-    if plain:
-        strength = np.array([pole.weight * pole.place for pole in formula.poles])
-        centre = np.array([pole.place for pole in formula.poles])
-        knot = np.array([_widest_knot(pole, low, high, len(formula.poles)) for pole in formula.poles])
-        candidate = Completion(offset=formula.offset, strength=strength, centre=centre, knot=knot, shift=0.0)
-    else:
-        candidate = _fitted(formula, low, high)
+    static = [-term.coefficient for term in formula.powers if term.exponent == -1 and term.coefficient < 0]
+    plain = (
+        formula.offset >= 0
+        and len(static) == len(formula.powers)
+        and all(pole.weight > 0 for pole in formula.poles)
+    )
+    candidate = _spread(formula, static, low, high) if plain else _fitted(formula, low, high)
     x = _check_places(low, high)[None]
     shift = float(np.max(np.abs(candidate.series(x)[0] - formula.printed(x)[0])))
-    return Completion(
-        offset=candidate.offset,
-        strength=candidate.strength,
-        centre=candidate.centre,
-        knot=candidate.knot,
-        shift=shift,
-    )
+    return replace(candidate, shift=shift)
+
+
+def _spread(formula: Formula, static: list[float], low: float, high: float) -> Completion:
+    count = len(formula.poles) + len(static)
+    pieces = [
+        piece
+        for pole in formula.poles
+        for piece in _bands_of(pole.weight * pole.place, pole.place, low, high, count)
+    ]
+    for strength in static:
+        place = 0.5 * ALLOWED_SHIFT / count * low**2 / strength
+        pieces += _bands_of(strength, place, low, high, count)
+    strength, centre, knot = np.array(pieces).reshape(-1, 3).T
+    return Completion(offset=formula.offset, strength=strength, centre=centre, knot=knot, shift=0.0)
+
+
+def _bands_of(
+    strength: float, place: float, low: float, high: float, count: int
+) -> list[tuple[float, float, float]]:
+    """(strength, centre, knot) of a core and its wings, each wing of the variance of the core."""
+    distance = min(abs(place - low), abs(place - high))
+    widest = min(0.4 * distance, 0.45 * place)
+    spread = np.sqrt(ALLOWED_SHIFT / count * distance**3 / (VARIANCE * strength))
+    wings = [ratio for ratio in WINGS if ratio * spread / np.sqrt(len(WINGS) + 1) < widest]
+    knot = min(spread / np.sqrt(len(wings) + 1), widest)
+    core = strength * (1 - sum(ratio**-2 for ratio in wings))
+    return [(core, place, knot), *((strength * ratio**-2, place, ratio * knot) for ratio in wings)]
 
 
 def _check_places(low: float, high: float) -> Real:
     high = high if np.isfinite(high) else max(4 * low, 1.0)
     return np.asarray(low + (high - low) * (1 - np.cos(np.linspace(0, np.pi, CHECK_POINTS))) / 2)
-
-
-def _widest_knot(pole: Pole, low: float, high: float, count: int) -> float:
-    distance = min(abs(pole.place - low), abs(pole.place - high))
-    allowed = ALLOWED_SHIFT / count
-    by_shift = np.sqrt(allowed * distance**3 / (VARIANCE * abs(pole.weight) * pole.place))
-    return float(min(by_shift, 0.4 * distance, 0.45 * pole.place))
 
 
 def _fitted(formula: Formula, low: float, high: float) -> Completion:
@@ -115,9 +133,9 @@ def _fitted(formula: Formula, low: float, high: float) -> Completion:
 
 def _candidate_bands(low: float, high: float) -> tuple[Real, Real]:
     """Bands whose supports (two knot distances to each side) lie outside [low, high] and above zero."""
-    gaps = np.geomspace(0.02, 300.0, 60)
+    gaps = np.geomspace(0.01, 1000.0, 160)
     above = high * (1 + gaps)
-    below = low / (1 + np.geomspace(0.02, 1e6, 60))
+    below = low / (1 + np.geomspace(0.01, 1e6, 120))
     centre = np.concatenate((below, above))
     distance = np.where(centre < low, np.minimum(low - centre, centre), centre - high)
     return centre, 0.4 * distance * 0.5

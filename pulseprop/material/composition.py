@@ -18,7 +18,7 @@ from pulseprop.material.refraction import refraction_of, susceptibility_of
 from pulseprop.material.response import Band, Response, View, common_band
 from pulseprop.numerics.series import Series, compose, product, quotient, variable
 
-__all__ = ["Absolute", "Bruggeman", "Density", "IndexAddition", "LorentzLorenz", "MaxwellGarnett", "WithAbsorption"]
+__all__ = ["Absolute", "Bruggeman", "IndexAddition", "LorentzLorenz", "MaxwellGarnett", "Scaled", "WithAbsorption"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -38,7 +38,7 @@ def _from_polarisability(total: Series) -> Series:
 
 
 @dataclass(frozen=True)
-class Density:
+class Scaled:
     """One substance at `ratio` times the density of its record."""
 
     of: Response

@@ -12,7 +12,7 @@ from pulseprop.material.refraction import refraction_of
 from pulseprop.material.response import Band, Response, View
 from pulseprop.numerics.series import Series
 
-__all__ = ["Medium", "NonlinearIndex"]
+__all__ = ["Medium", "NonlinearIndex", "Resonance"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -20,12 +20,21 @@ Real = NDArray[np.float64]
 
 @dataclass(frozen=True, kw_only=True)
 class NonlinearIndex:
-    """A published n2 in m^2/W; wavelength in m and pulse length in s where printed."""
+    """A published n2 in m^2/W; wavelength in m and the pulses it was measured with where printed."""
 
     value: float
     wavelength: float | None = None
-    pulse_length: float | None = None
+    pulse: str = ""
     source: str = ""
+
+
+@dataclass(frozen=True)
+class Resonance:
+    """A line that rings: centre in rad/s, full width in rad/s (all broadening), memory (T2 or shorter) in s."""
+
+    centre: float
+    width: float
+    memory: float
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -33,8 +42,9 @@ class Medium:
     """What a beam can pass through.
 
     response: the susceptibility. causal: False where only orders or a spline as printed are known, so that causality cannot
-    be tested. temperature: as the source prints it. relative_to: what the printed index is against. memory: the longest
-    time in s over which the medium rings. spread: names of other records of the same substance.
+    be tested. temperature: as the source prints it. relative_to: what the printed index is against. resonances: what rings in
+    it. spread: names of other records of the same substance. extendable: False where the band may not be left even on request
+    (relaxation terms).
     """
 
     name: str
@@ -44,11 +54,12 @@ class Medium:
     temperature_K: float | None = None
     relative_to: str = "vacuum"
     causal: bool = True
-    memory: float = 0.0
-    n2: NonlinearIndex | None = None
+    resonances: tuple[Resonance, ...] = ()
+    n2: tuple[NonlinearIndex, ...] = ()
     spread: tuple[str, ...] = ()
     notes: tuple[str, ...] = ()
     printed_digits: int | None = field(default=None)
+    extendable: bool = True
 
     @property
     def band(self) -> Band:
@@ -70,6 +81,17 @@ class Medium:
     def absorption(self, omega: Real) -> Real:
         """Napierian absorption coefficient of the intensity, 1/m: 2 k omega / c."""
         return 2 * np.imag(self.refraction(omega)[0]) * omega / 299792458.0
+
+    def nonlinear_index(self, omega: float) -> NonlinearIndex | None:
+        """The published n2 measured nearest to omega (rad/s), None where there is none."""
+        wavelength = 2 * np.pi * 299792458.0 / omega
+        known = sorted(self.n2, key=lambda entry: abs((entry.wavelength or wavelength) - wavelength))
+        return known[0] if known else None
+
+    def ringing(self, low: float, high: float) -> float:
+        """The longest memory in s of the resonances that light between low and high (rad/s) excites; 0 for none."""
+        hit = [line.memory for line in self.resonances if low - line.width < line.centre < high + line.width]
+        return max(hit, default=0.0)
 
     def orders(self, omega: float) -> Orders:
         """Index, group index, GVD, TOD, FOD at one angular frequency, from the analytic chi."""

@@ -8,6 +8,8 @@ Far: the moment series, as the closed form loses digits there as u^4.
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -43,7 +45,11 @@ def density(u: Real) -> Real:
 
 def cauchy(u: Complex | Real) -> Complex:
     """c(u) for u above the axis or on it (limit from above); shape kept."""
-    return _tiered(np.asarray(u), _near, _far)
+    value = _tiered(np.asarray(u), _near, _far)
+    if np.isrealobj(u):
+        # Rounding must not turn the exactly transparent outside into gain: a negative index squared would flip its root.
+        value.imag = np.pi * density(u)
+    return value
 
 
 def cauchy_slope(u: Complex | Real) -> Complex:
@@ -51,7 +57,7 @@ def cauchy_slope(u: Complex | Real) -> Complex:
     return _tiered(np.asarray(u), _near_slope, _far_slope)
 
 
-def _tiered(u, near, far) -> Complex:  # type: ignore[no-untyped-def]
+def _tiered(u: Complex | Real, near: Callable[..., Complex], far: Callable[..., Complex]) -> Complex:
     flat = u.ravel()
     size = np.abs(flat)
     tier = np.searchsorted([start for start, _ in TIERS], size, side="right")
@@ -80,18 +86,18 @@ def _near_slope(u: Complex) -> Complex:
     return np.asarray(DIFFERENCES @ (y**2 * _logarithm(y)) / -2)
 
 
-def _far(u: Complex | Real, terms: int) -> Complex | Real:
+def _far(u: Complex | Real, terms: int) -> Complex:
     inverse_square = u**-2
     total = np.full_like(u, MOMENTS[terms - 1])
     for moment in MOMENTS[terms - 2 :: -1]:
         total = total * inverse_square + moment
-    return -total / u
+    return np.asarray(-total / u)
 
 
-def _far_slope(u: Complex | Real, terms: int) -> Complex | Real:
+def _far_slope(u: Complex | Real, terms: int) -> Complex:
     inverse_square = u**-2
     weighted = MOMENTS[:terms] * (2 * np.arange(terms) + 1)
     total = np.full_like(u, weighted[-1])
     for moment in weighted[-2::-1]:
         total = total * inverse_square + moment
-    return total * inverse_square
+    return np.asarray(total * inverse_square)

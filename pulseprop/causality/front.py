@@ -1,0 +1,181 @@
+"""The front test: nothing may leave before a front travelling at c could have arrived.
+
+A real field that is exactly zero before its first instant and infinitely smooth is sent through a transfer; the energy of the
+square of the real field that comes out before the front, over all that comes out, is set against a measured noise floor. Analytic
+signals will not do: that of a compact pulse is not compact.
+
+Any medium with n -> 1 at high frequency gives exactly zero (A. Sommerfeld, Ann. Phys. 44, 177 (1914)); what remains is rounding,
+aliasing and the part of the ringing that wraps around the window. True precursors come after the front and are no fault.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+
+import numpy as np
+import scipy.fft
+from numpy.typing import NDArray
+
+__all__ = ["FrontResult", "TestPulse", "front_test", "judged"]
+
+Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
+
+AHEAD_SHARE = 0.25
+"""Part of the window kept for what comes before the front."""
+LAST_SHARE = 0.02
+"""Part of the window, at its end, whose energy measures how much wraps around."""
+NYQUIST_LEVEL = 1.5e-16
+"""Spectrum at Nyquist over its peak: where a transform in double precision shows rounding and no longer the pulse."""
+LOBE = 32
+CAUSAL_FLOORS = 100.0
+ACAUSAL_FLOORS = 1e4
+WORST_FLOOR = 1e-10
+BEST_FLOOR = 1e-27
+GOOD_FLOOR = 2e-11
+CHEAP_POINTS = 1 << 17
+"""Up to here the window is doubled towards BEST_FLOOR, beyond only towards GOOD_FLOOR."""
+BLOCK = 1 << 15
+STATIC = 1e-6
+
+
+@dataclass(frozen=True, kw_only=True)
+class TestPulse:
+    """envelope(x): smooth, zero outside 0 < x < 1; support in s; centre in rad/s."""
+
+    envelope: Callable[[Real], Real]
+    support: float
+    centre: float
+
+    __test__ = False
+
+    def field(self, time: Real) -> Real:
+        """The real field."""
+        return self.envelope(time / self.support) * np.cos(self.centre * (time - 0.5 * self.support))
+
+    def step(self) -> float:
+        """Sampling step in s at which the spectrum at Nyquist is below rounding."""
+        fine = 1 << 13
+        x = np.arange(fine) / fine
+        spectrum = np.abs(scipy.fft.rfft(self.envelope(x), 4 * fine))
+        lobes = spectrum[: spectrum.size // LOBE * LOBE].reshape(-1, LOBE).max(axis=1)
+        quiet = int(np.argmax(lobes < NYQUIST_LEVEL * spectrum[0]))
+        detuning = 2 * np.pi * LOBE * quiet / (4 * self.support)
+        return float(np.pi / (1.05 * (self.centre + detuning)))
+
+    def band(self, share: float = 1e-7) -> tuple[float, float]:
+        """Angular frequencies between which the spectrum is above `share` of its peak."""
+        fine = 1 << 12
+        spectrum = np.abs(scipy.fft.rfft(self.envelope(np.arange(fine) / fine), 8 * fine))
+        detuning = 2 * np.pi * np.flatnonzero(spectrum > share * spectrum[0])[-1] / (8 * self.support)
+        return max(self.centre - detuning, 0.02 * self.centre), self.centre + detuning
+
+
+@dataclass(frozen=True, kw_only=True)
+class FrontResult:
+    """Energies as shares of what leaves; points and span (s) of the window used."""
+
+    energy_ahead: float
+    noise_floor: float
+    verdict: str
+    points: int
+    span: float
+    naive_energy_ahead: float | None
+    naive_verdict: str | None
+
+
+def judged(energy_ahead: float, noise_floor: float) -> str:
+    """causal, acausal or unresolved."""
+    if energy_ahead > ACAUSAL_FLOORS * noise_floor:
+        return "acausal"
+    if energy_ahead <= CAUSAL_FLOORS * noise_floor and noise_floor <= WORST_FLOOR:
+        return "causal"
+    return "unresolved"
+
+
+def front_test(
+    pulse: TestPulse,
+    transfer: Callable[[Real], Complex],
+    *,
+    first_span: float,
+    most_points: int,
+    absorbs: bool,
+    progress: Callable[[float], None] | None = None,
+) -> FrontResult:
+    """Send the test pulse through `transfer(omega)` (omega > 0, rad/s; against vacuum) and judge.
+
+    first_span: s, an estimate of how long the answer lasts; the window is doubled until what wraps around is small
+    enough or `most_points` are reached. absorbs: whether the naive filter |transfer| is worth a run.
+    """
+    step = pulse.step()
+    points = _even_power(first_span / (1 - AHEAD_SHARE) / step)
+    points = min(max(points, 1 << 12), most_points)
+    while True:
+        spectrum = _input_spectrum(pulse, points, step)
+        naive_input = spectrum.copy() if absorbs else None
+        _apply(spectrum, transfer, points, step, magnitude_only=False)
+        ahead, last, energy_out, energy_in = _out(spectrum, points, pulse, step)
+        floor = max(1e-28, 1e-32 / max(energy_out / energy_in, 1e-300), last)
+        if floor <= (BEST_FLOOR if points < CHEAP_POINTS else GOOD_FLOOR) or 2 * points > most_points:
+            break
+        points *= 2
+        if progress:
+            progress(points / most_points)
+    naive, naive_verdict = None, None
+    if naive_input is not None:
+        _apply(naive_input, transfer, points, step, magnitude_only=True)
+        naive, *_ = _out(naive_input, points, pulse, step)
+        naive_verdict = judged(naive, floor)
+    return FrontResult(
+        energy_ahead=ahead,
+        noise_floor=floor,
+        verdict=judged(ahead, floor),
+        points=points,
+        span=points * step,
+        naive_energy_ahead=naive,
+        naive_verdict=naive_verdict,
+    )
+
+
+def _even_power(size: float) -> int:
+    return 1 << int(np.ceil(np.log2(max(size, 2.0))))
+
+
+def _input_spectrum(pulse: TestPulse, points: int, step: float) -> Complex:
+    field = np.zeros(points)
+    first = _front_index(points)
+    samples = int(np.ceil(pulse.support / step)) + 1
+    field[first : first + samples] = pulse.field(step * np.arange(samples))
+    return np.asarray(scipy.fft.rfft(field, overwrite_x=True))
+
+
+def _front_index(points: int) -> int:
+    return int(AHEAD_SHARE * points)
+
+
+def _apply(
+    spectrum: Complex, transfer: Callable[[Real], Complex], points: int, step: float, *, magnitude_only: bool
+) -> None:
+    """Multiply in place; scipy's forward transform carries exp(-i omega t), so the conjugate transfer applies."""
+    spacing = 2 * np.pi / (points * step)
+    for start in range(0, spectrum.size, BLOCK):
+        part = slice(start, min(start + BLOCK, spectrum.size))
+        omega = spacing * np.arange(part.start, part.stop)
+        # Carriers have a pole at zero frequency; the limit of the transfer is real there, and as good a hair above.
+        omega[omega == 0] = STATIC * spacing
+        values = transfer(omega)
+        spectrum[part] *= np.abs(values) if magnitude_only else np.conj(values)
+
+
+def _out(spectrum: Complex, points: int, pulse: TestPulse, step: float) -> tuple[float, float, float, float]:
+    field = scipy.fft.irfft(spectrum, points, overwrite_x=True)
+    field *= field
+    total = float(np.sum(field))
+    samples = int(np.ceil(pulse.support / step)) + 1
+    energy_in = float(np.sum(pulse.field(step * np.arange(samples)) ** 2))
+    if total == 0.0:
+        return 0.0, 0.0, 0.0, energy_in
+    ahead = float(np.sum(field[: _front_index(points)])) / total
+    last = float(np.sum(field[-int(LAST_SHARE * points) :])) / total
+    return ahead, last, total, energy_in

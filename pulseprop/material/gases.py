@@ -1,0 +1,88 @@
+"""Gases at another pressure and temperature than their record's.
+
+The polarisability of Lorentz and Lorenz is proportional to the number of molecules, which is p/(k T), with the second virial
+coefficient B where it is published: p = rho R T (1 + B rho), rho in mol/m^3. n2 goes with the density.
+"""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+import numpy as np
+
+from pulseprop.errors import InputError
+from pulseprop.material.catalogue import Record, record
+from pulseprop.material.composition import Scaled
+from pulseprop.material.library import catalogue_medium
+from pulseprop.material.medium import Medium
+from pulseprop.material.molar_density import molar_density
+
+__all__ = ["gas_at"]
+
+
+def gas_at(name: str, pressure: float, temperature: float, humidity: float | None = None) -> Medium:
+    """The catalogue gas `name` at pressure (Pa, >= 0) and temperature (K, > 0); humidity 0..1 for "humid air" only.
+
+    Raises InputError for a record that is no gas, and for a state that makes no sense.
+    """
+    _check_state(pressure, temperature)
+    entry = record(name)
+    if entry.kind == "humid air":
+        return _humid_air(entry, pressure, temperature, humidity)
+    if humidity is not None:
+        raise InputError("humidity goes with humid air only", value=name, allowed='medium = "humid air"')
+    if entry.pressure_Pa is None or entry.temperature_K is None:
+        raise InputError(
+            "this record is not a gas of known density",
+            value=name,
+            allowed="a gas of the catalogue, which has a pressure and a temperature of its own",
+        )
+    ratio = molar_density(pressure, temperature, _virial(entry, temperature)) / molar_density(
+        entry.pressure_Pa, entry.temperature_K, _virial(entry, entry.temperature_K)
+    )
+    if not np.isfinite(ratio):
+        raise InputError(
+            "the gas would have condensed",
+            value=f"{pressure:.4g} Pa at {temperature:.2f} K",
+            allowed="a state in which the second virial coefficient still describes a gas",
+        )
+    base = catalogue_medium(name)
+    return replace(
+        base,
+        name=f"{base.name} at {pressure / 1e5:.4g} bar, {temperature:.2f} K",
+        response=Scaled(base.response, ratio),
+        temperature=f"{temperature:.2f} K (record: {entry.temperature})",
+        temperature_K=temperature,
+        n2=tuple(replace(known, value=known.value * ratio) for known in base.n2),
+        notes=(*base.notes, f"density {ratio:.6g} times that of the record"),
+    )
+
+
+def _check_state(pressure: float, temperature: float) -> None:
+    if not (np.isfinite(pressure) and pressure >= 0):
+        raise InputError("a gas needs a pressure", value=pressure, allowed="0 Pa or more")
+    if not (np.isfinite(temperature) and temperature > 0):
+        raise InputError("a gas needs a temperature", value=temperature, allowed="above 0 K")
+
+
+def _virial(entry: Record, temperature: float) -> float:
+    """Second virial coefficient in m^3/mol at the temperature, between the published ones; 0 where none is published."""
+    if not entry.second_virial:
+        return 0.0
+    known = np.array(sorted(entry.second_virial))
+    return float(np.interp(temperature, known[:, 0], known[:, 1]))
+
+
+def _humid_air(entry: Record, pressure: float, temperature: float, humidity: float | None) -> Medium:
+    from pulseprop.material.humid_air import humid_air_response
+
+    if humidity is None:
+        raise InputError("humid air needs its humidity", allowed='humidity = "0 %" to "100 %"')
+    return Medium(
+        name=f"humid air at {pressure / 100:.4g} hPa, {temperature:.2f} K, {100 * humidity:.3g} %",
+        response=humid_air_response(pressure, temperature, humidity),
+        source=entry.source,
+        temperature=f"{temperature:.2f} K",
+        temperature_K=temperature,
+        relative_to="vacuum",
+    )

@@ -1,0 +1,48 @@
+"""Exact linear propagation: the spectrum times the transfer of each element.
+
+Nothing is stepped: a linear path is one multiplication. Transfers are computed in blocks, so that no more than a few arrays
+of the grid's length exist at a time.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.elements.element import Element, transfer_of
+from pulseprop.grid import Grid
+from pulseprop.numerics.plans import Plan
+
+__all__ = ["BLOCK", "apply_known_transfer", "blocks", "multiply_by"]
+
+Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
+
+BLOCK = 1 << 15
+"""Frequencies evaluated at a time."""
+
+
+def blocks(grid: Grid) -> Iterator[slice]:
+    """Slices that cover the positive frequencies of a grid."""
+    first, last = grid.positive.start, grid.points
+    for start in range(first, last, BLOCK):
+        yield slice(start, min(start + BLOCK, last))
+
+
+def multiply_by(element: Element, grid: Grid, spectrum: Complex) -> None:
+    """Multiply a spectrum A(omega) on the grid's frequencies by an element's transfer, in place."""
+    omega = 2 * np.pi * grid.frequency
+    for part in blocks(grid):
+        spectrum[part] *= transfer_of(element, omega[part])
+
+
+def apply_known_transfer(plan: Plan, transfer: Complex) -> None:
+    """The linear core: take the plan's buffer through a transfer given in natural order, in place.
+
+    The transfer must already hold `plan.scale`.
+    """
+    plan.to_spectrum()
+    np.multiply(plan.buffer, transfer, out=plan.buffer)
+    plan.to_field()
