@@ -34,7 +34,11 @@ LONGEST_TRACE = 20001
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Autocorrelation:
-    """delay: s, ascending about 0. signal: (K,); 1 at zero delay for the intensity trace, 8 for the fringe-resolved."""
+    """What the instrument shows.
+
+    delay: s, (K,), ascending about 0. signal: (K,); 1 at zero delay for the intensity trace, 8 for the
+    fringe-resolved one.
+    """
 
     delay: Real
     signal: Real
@@ -69,7 +73,9 @@ def intensity_autocorrelation(envelope: Complex, step: float) -> Autocorrelation
     signal = scipy.fft.irfft(squared, 2 * length)
     reach = 2 * height.size - 1
     signal = np.concatenate((signal[-reach:], signal[: reach + 1])) / signal[0]
-    return Autocorrelation(delay=0.5 * step * np.arange(-reach, reach + 1), signal=signal)
+    return Autocorrelation(
+        delay=np.asarray(0.5 * step * np.arange(-reach, reach + 1), dtype=float), signal=signal
+    )
 
 
 def autocorrelation_fwhm(envelope: Complex, step: float) -> float:
@@ -83,9 +89,10 @@ def interferometric_autocorrelation(
 ) -> Autocorrelation:
     """int |(E(t) + E(t - tau))^2|^2 dt, normalised to 1 far from zero delay and so to 8 at zero.
 
-    envelope: (N,) about `carrier` (Hz), oversampled twice. delay: s; by default enough delays to see every fringe
-    over three widths of the intensity autocorrelation, at most 20,001. In terms of E and P = |E|^2 the integral is
-    2 int P^2 + 4 int P P' + 4 Re int (P + P') E E'* + 2 Re int E^2 E'*^2, a prime marking the delayed one.
+    envelope: (N,) about `carrier` (Hz), oversampled twice. delay: s; by default enough delays to see every
+    fringe over three widths of the intensity autocorrelation, at most 20,001. In terms of E and P = |E|^2 the
+    integral is 2 int P^2 + 4 int P P' + 4 Re int (P + P') E E'* + 2 Re int E^2 E'*^2, a prime marking the
+    delayed one.
     """
     if delay is None:
         delay = _fringe_delays(1.5 * autocorrelation_fwhm(envelope, step), carrier)

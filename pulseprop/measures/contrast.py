@@ -28,8 +28,8 @@ def contrast_curve(
 ) -> tuple[Real, Real]:
     """Instants (s) and power over the peak (K,), for a logarithmic axis over `decades`.
 
-    Each of at most `points` entries is the highest sample of its stretch; powers below the last decade are NaN,
-    so that a line breaks there instead of running along a floor that is not in the data.
+    Each of at most `points` entries is the highest sample of its stretch; powers below the last decade are
+    NaN, so that a line breaks there instead of running along a floor that is not in the data.
     """
     time, height = thinned(start, step, power(envelope), points)
     ratio = height / height.max()

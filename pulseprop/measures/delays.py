@@ -1,6 +1,7 @@
 """When the energy arrives: centroids, group delay over frequency, and the split of the centroid's delay.
 
-All times are on the grid's clock, that of a front travelling at c, so delays are against the same path in vacuum.
+All times are on the grid's clock, that of a front travelling at c, so delays are against the same path in
+vacuum.
 """
 
 from __future__ import annotations
@@ -46,7 +47,10 @@ def group_delay(grid: Grid, envelope: Complex, *, least: float = 1e-8) -> Real:
 
 
 def mean_over_spectrum(values: Real, spectrum: Complex) -> float:
-    """Average of values (N,) weighted with |A|^2 (N,); entries that are NaN where nothing is seen are left out."""
+    """Average of values (N,) weighted with |A|^2 (N,).
+
+    Entries that are NaN where nothing is seen are left out.
+    """
     weight = power(spectrum)
     seen = np.isfinite(values)
     return float(np.dot(values[seen], weight[seen]) / weight[seen].sum())
@@ -56,8 +60,9 @@ def mean_over_spectrum(values: Real, spectrum: Complex) -> float:
 class DelaySplit:
     """centroid = net_group_delay + reshaping, all in s against the same path in vacuum.
 
-    net_group_delay: average of the path's group delay over the transmitted spectrum. reshaping: centroid of the input after
-    the path's |transfer| alone, minus that of the input; 0 for an unchirped symmetric-phase input.
+    net_group_delay: average of the path's group delay over the transmitted spectrum. reshaping: centroid of
+    the input after the path's |transfer| alone, minus that of the input; 0 for an unchirped symmetric-phase
+    input.
     """
 
     centroid: float
@@ -76,6 +81,4 @@ def delay_split(grid: Grid, spectrum_in: Complex, magnitude: Real, envelope_out:
     before = centroid(about_zero.to_field(spectrum_in), grid.step, about_zero.start)
     reshaped = centroid(about_zero.to_field(spectrum_in * magnitude), grid.step, about_zero.start)
     after = centroid(envelope_out, grid.step, grid.start)
-    return DelaySplit(
-        centroid=after - before, net_group_delay=after - reshaped, reshaping=reshaped - before
-    )
+    return DelaySplit(centroid=after - before, net_group_delay=after - reshaped, reshaping=reshaped - before)

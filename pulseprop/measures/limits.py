@@ -17,7 +17,10 @@ Complex = NDArray[np.complex128]
 
 @dataclass(frozen=True, kw_only=True)
 class TransformLimit:
-    """The pulse of the same spectrum with flat phase. fwhm: s. peak_power: W. square_integral: int P^2 dt, W^2 s."""
+    """The pulse of the same spectrum with flat phase.
+
+    Fwhm: s. peak_power: W. square_integral: int P^2 dt, W^2 s.
+    """
 
     fwhm: float
     peak_power: float
@@ -25,7 +28,10 @@ class TransformLimit:
 
 
 def transform_limit(grid: Grid, spectrum: Complex) -> TransformLimit:
-    """Flat phase on A(omega) (N,): its FWHM, peak power (exactly the square of the integral of |A|) and int P^2 dt."""
+    """Flat phase on A(omega) (N,).
+
+    Its FWHM, peak power (exactly the square of the integral of |A|) and int P^2 dt.
+    """
     flat = grid.moved(-0.5 * grid.span).to_field(np.abs(spectrum).astype(complex))
     return TransformLimit(
         fwhm=half_maximum(flat).width * grid.step,

@@ -1,7 +1,8 @@
 """Peaks and half-maximum points of a band-limited profile, between its samples.
 
-A profile is `height` of complex samples, such as the power |E|^2. What is looked for is located on the samples and
-refined on the band-limited function itself, so the work between samples does not grow with their number.
+A profile is `height` of complex samples, such as the power |E|^2. What is looked for is located on the
+samples and refined on the band-limited function itself, so the work between samples does not grow with their
+number.
 """
 
 from __future__ import annotations
@@ -19,7 +20,7 @@ __all__ = ["Peak", "Stretch", "find_peak", "half_maximum", "power"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
-Height = Callable[[Complex], Real]
+Height = Callable[[Complex | Real], Real]
 
 CANDIDATES = 12
 """Local maxima of the samples that are refined: the largest sample need not stand beside the largest peak."""
@@ -37,9 +38,9 @@ COUNTED = 1 << 13
 """Longest stretch, in samples, whose dips are counted between samples; beyond it the samples are counted."""
 
 
-def power(samples: Complex) -> Real:
+def power(samples: Complex | Real) -> Real:
     """|E|^2."""
-    return samples.real**2 + samples.imag**2
+    return np.asarray(samples.real**2 + samples.imag**2)
 
 
 @dataclass(frozen=True)
@@ -80,7 +81,10 @@ class _Profile:
 
 
 def find_peak(samples: Complex | Real, height: Height = power) -> Peak:
-    """The largest height between samples (N,) that wrap around. Raises InputError if there is none above zero."""
+    """The largest height between samples (N,) that wrap around.
+
+    Raises InputError if there is none above zero.
+    """
     return _peak(_Profile(samples, height), height(samples))
 
 
@@ -95,9 +99,7 @@ def _candidates(heights: Real) -> list[int]:
     threshold = 0.4 * heights.max()
     high = np.flatnonzero(heights > threshold)
     count = heights.size
-    local = high[
-        (heights[high] >= heights[high - 1]) & (heights[high] >= heights[(high + 1) % count])
-    ]
+    local = high[(heights[high] >= heights[high - 1]) & (heights[high] >= heights[(high + 1) % count])]
     order = np.argsort(heights[local], kind="stable")[::-1][:CANDIDATES]
     return [int(at) for at in local[order]]
 

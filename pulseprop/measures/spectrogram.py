@@ -11,8 +11,8 @@ from numpy.typing import NDArray
 from pulseprop.errors import InputError
 from pulseprop.grid import Grid
 from pulseprop.measures.profile import power
-from pulseprop.measures.window import energy_window
 from pulseprop.measures.widths import rms_width
+from pulseprop.measures.window import energy_window
 
 __all__ = ["Spectrogram", "spectrogram"]
 
@@ -25,7 +25,8 @@ GATE_REACH = 5.0
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Spectrogram:
-    """time (T,) in s, frequency (F,) in Hz ascending, density (F, T) in J/(Hz s), gate: FWHM of its power in s.
+    """time (T,) in s, frequency (F,) in Hz ascending, density (F, T) in J/(Hz s), gate: FWHM of its power in
+    s.
 
     The gate is Gaussian with int |gate|^2 dt = 1 s, so the density integrates to the pulse's energy.
     """
@@ -47,8 +48,9 @@ def spectrogram(
 ) -> Spectrogram:
     """|int E(t) g(t - T) exp(i omega t) dt|^2 of A(omega) (N,) on the grid.
 
-    gate: FWHM in s of the gate's power; by default the one whose resolutions in time and in frequency stand to each other as the
-    pulse's rms widths do. Both axes cover all but `share` of the energy. Raises InputError for an empty field.
+    gate: FWHM in s of the gate's power; by default the one whose resolutions in time and in frequency stand
+    to each other as the pulse's rms widths do. Both axes cover all but `share` of the energy. Raises
+    InputError for an empty field.
     """
     strength = power(spectrum)
     if not strength.max() > 0:
@@ -56,7 +58,11 @@ def spectrogram(
     band = energy_window(strength, share)
     field, step, carrier = _reduced(grid, spectrum, band)
     span = energy_window(power(field), share)
-    deviation = _deviation(field[span], step, strength[band], 1 / grid.span) if gate is None else gate / 2.3548200450309493
+    deviation = (
+        _deviation(field[span], step, strength[band], 1 / grid.span)
+        if gate is None
+        else gate / 2.3548200450309493
+    )
     moments = grid.start + step * np.linspace(span.start, span.stop - 1, times)
     low, high = grid.frequency[band.start], grid.frequency[band.stop - 1]
     wanted = np.linspace(low, high, frequencies)
@@ -73,7 +79,10 @@ def _reduced(grid: Grid, spectrum: Complex, band: slice) -> tuple[Complex, float
     middle = (band.start + band.stop) // 2
     first = max(min(middle - points // 2, grid.points - points), 0)
     small = Grid(
-        points=points, step=grid.span / points, start=grid.start, carrier=float(grid.frequency[first + points // 2])
+        points=points,
+        step=grid.span / points,
+        start=grid.start,
+        carrier=float(grid.frequency[first + points // 2]),
     )
     return small.to_field(spectrum[first : first + points]), small.step, small.carrier
 
@@ -85,7 +94,7 @@ def _deviation(field: Complex, step: float, strength: Real, spacing: float) -> f
 
 
 def _slice(field: Complex, step: float, moment: float, deviation: float, detuning: Real) -> Real:
-    """Density at one moment (s from the first sample) and the detunings (F,) in Hz from the field's carrier."""
+    """Density at one moment (s from the first sample) and detunings (F,) in Hz from the carrier."""
     first = max(int((moment - GATE_REACH * deviation) / step), 0)
     last = min(int((moment + GATE_REACH * deviation) / step) + 2, field.size)
     time = step * np.arange(first, last) - moment

@@ -47,10 +47,10 @@ class PeakPower:
 class FieldWidths:
     """Everything about the length of one field.
 
-    fwhm, rms, equivalent (energy over peak power): s. peak_power: W. peak_time, left, right: s on the grid's clock
-    (left and right are the outermost half-maximum points, and may lie outside a window that wraps).
-    split: more than one stretch above half maximum. energy: J. energy_before, energy_after: shares of
-    the energy more than three FWHM before and after the peak.
+    fwhm, rms, equivalent (energy over peak power): s. peak_power: W. peak_time, left, right: s on the grid's
+    clock (left and right are the outermost half-maximum points, and may lie outside a window that wraps).
+    split: more than one stretch above half maximum. energy: J. energy_before, energy_after: shares of the
+    energy more than three FWHM before and after the peak.
     """
 
     fwhm: float
@@ -135,7 +135,10 @@ def _tail_sum(height: Real, position: float) -> float:
 
 
 def field_widths(envelope: Complex, step: float, start: float = 0.0) -> FieldWidths:
-    """All widths of one field (N,); step and start (the first instant) in s. Raises InputError if it is empty."""
+    """All widths of one field (N,).
+
+    Step and start (the first instant) in s. Raises InputError if it is empty.
+    """
     found = half_maximum(envelope)
     height = power(envelope)
     energy = float(height.sum()) * step
@@ -158,13 +161,15 @@ def field_widths(envelope: Complex, step: float, start: float = 0.0) -> FieldWid
 def side_peaks(envelope: Complex, step: float, count: int = 5, least: float = 1e-10) -> tuple[SidePeak, ...]:
     """The highest local maxima of the samples further than one FWHM from the peak, highest first.
 
-    least: height over the peak below which they are left out. Heights are those of samples (within 20 % of the
-    true maxima for a field oversampled twice).
+    least: height over the peak below which they are left out. Heights are those of samples (within 20 % of
+    the true maxima for a field oversampled twice).
     """
     found = half_maximum(envelope)
     height = power(envelope)
     inner = height[1:-1]
-    at = np.flatnonzero((inner >= height[:-2]) & (inner > height[2:]) & (inner > least * found.peak.power)) + 1
+    at = (
+        np.flatnonzero((inner >= height[:-2]) & (inner > height[2:]) & (inner > least * found.peak.power)) + 1
+    )
     at = at[np.abs(at - found.peak.position) > found.width]
     best = at[np.argsort(height[at], kind="stable")[::-1][:count]]
     return tuple(

@@ -16,7 +16,8 @@ PARTS = 64
 def quiet_start(height: Real) -> int:
     """A sample in the quietest part of a power profile (N,) that wraps around: the place to cut it open.
 
-    Rolled by minus this number, the profile has its energy in one piece. 0 where the window's own ends are quiet.
+    Rolled by minus this number, the profile has its energy in one piece. 0 where the window's own ends are
+    quiet.
     """
     size = max(height.size // PARTS, 1)
     edges = np.arange(0, height.size - size + 1, size)
@@ -27,7 +28,7 @@ def quiet_start(height: Real) -> int:
 
 
 def energy_window(height: Real, share: float) -> slice:
-    """The samples of a profile (N,) outside of which less than `share` of its energy lies, half on each side."""
+    """The samples of a profile (N,) that hold all but `share` of its energy, half of it left on each side."""
     running = np.cumsum(height)
     total = running[-1]
     first = int(np.searchsorted(running, 0.5 * share * total))

@@ -4,12 +4,15 @@ from __future__ import annotations
 
 import math
 
-from scipy.constants import c, h
-
 from pulseprop.errors import InputError
 from pulseprop.pulse.shapes import Shape
 
-__all__ = ["BANDWIDTH_KINDS", "duration_from_bandwidth", "frequency_width"]
+__all__ = ["BANDWIDTH_KINDS", "PLANCK", "SPEED_OF_LIGHT", "duration_from_bandwidth", "frequency_width"]
+
+PLANCK = 6.62607015e-34
+"""J s, exact by the definition of the SI units (2019)."""
+
+SPEED_OF_LIGHT = 299792458.0
 
 BANDWIDTH_KINDS = ("frequency", "wavelength", "wavenumber", "photon_energy")
 """What a bandwidth may be a width of; in Hz, m, 1/m and J."""
@@ -27,8 +30,8 @@ def frequency_width(width: float, kind: str, centre: float) -> float:
     if kind == "wavelength":
         frequency = centre / (2 * math.pi)
         reach = width * frequency
-        return 2 * reach * frequency / (c + math.hypot(c, reach))
-    factors = {"frequency": 1.0, "wavenumber": c, "photon_energy": 1 / h}
+        return 2 * reach * frequency / (SPEED_OF_LIGHT + math.hypot(SPEED_OF_LIGHT, reach))
+    factors = {"frequency": 1.0, "wavenumber": SPEED_OF_LIGHT, "photon_energy": 1 / PLANCK}
     if kind not in factors:
         raise InputError(
             "a bandwidth is a width of something else", value=kind, allowed=", ".join(BANDWIDTH_KINDS)

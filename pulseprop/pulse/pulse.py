@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 from pulseprop.errors import InputError
 from pulseprop.measures.widths import peak
 from pulseprop.pulse.shapes import Shape, shape_named
-from pulseprop.pulse.source import SpectralPhase, launch, positive_number
+from pulseprop.pulse.source import SpectralPhase, finite_number, in_blocks, launch, positive_number
 
 __all__ = ["Pulse", "closing"]
 
@@ -27,9 +27,6 @@ SMALL_AT_ZERO = 1e-9
 NOTED_CUT, LARGEST_CUT = 1e-6, 1e-3
 """Share of the energy cut at zero frequency from which it is noted, and from which it is refused."""
 
-BLOCK = 1 << 17
-"""Frequencies evaluated at a time, so that no array of full length but the result is made."""
-
 
 def closing(x: Real) -> Real:
     """A step from 0 at x <= 0 to 1 at x >= 1, with all derivatives continuous."""
@@ -43,13 +40,14 @@ def closing(x: Real) -> Real:
 class Pulse:
     """A pulse as launched.
 
-    centre: angular frequency of the shape's middle, rad/s. duration: intensity FWHM at the transform limit, s.
-    energy: J. gdd, tod, fod: s^2, s^3, s^4 about the centre; positive gdd is red first. carrier_phase: rad, added to the
-    phase of every frequency. beam_radius: 1/e^2 intensity radius, m. repetition_rate: Hz.
+    centre: angular frequency of the shape's middle, rad/s. duration: intensity FWHM at the transform limit,
+    s. energy: J. gdd, tod, fod: s^2, s^3, s^4 about the centre; positive gdd is red first. carrier_phase:
+    rad, added to the phase of every frequency. beam_radius: 1/e^2 intensity radius, m. repetition_rate: Hz.
 
-    Where more than 1e-9 of the peak amplitude stands at zero frequency, the spectrum is multiplied by `closing`
-    between zero and a quarter of the centre frequency and the rest scaled up to the energy; above 1e-6 of the energy this
-    is noted, above 1e-3 refused. Raises InputError for that and for numbers that are not finite or positive.
+    Where more than 1e-9 of the peak amplitude stands at zero frequency, the spectrum is multiplied by
+    `closing` between zero and a quarter of the centre frequency and the rest scaled up to the energy; above
+    1e-6 of the energy this is noted, above 1e-3 refused. Raises InputError for that and for numbers that are
+    not finite or positive.
     """
 
     centre: float
@@ -70,8 +68,7 @@ class Pulse:
         positive_number(self.beam_radius, "beam radius", "metres", optional=True)
         positive_number(self.repetition_rate, "repetition rate", "hertz", optional=True)
         for name in ("gdd", "tod", "fod", "carrier_phase"):
-            if not np.isfinite(getattr(self, name)):
-                raise InputError(f"the {name} of a pulse must be a finite number", value=getattr(self, name))
+            finite_number(getattr(self, name), name.replace("_", " "))
         if self.energy_below_zero > LARGEST_CUT:
             raise InputError(
                 f"{self.energy_below_zero:.2g} of the pulse's energy would lie below or near zero frequency",
@@ -105,14 +102,20 @@ class Pulse:
 
     @property
     def notes(self) -> tuple[str, ...]:
-        """A sentence on the cut at zero frequency where it matters."""
-        if self.energy_below_zero <= NOTED_CUT:
-            return ()
-        upper = CLOSING_SHARE * self.centre / 2e12 / np.pi
-        return (
-            f"{self.energy_below_zero:.2g} of the shape's energy was cut at zero frequency: "
-            f"the spectrum closes smoothly below {upper:.4g} THz.",
-        )
+        """What follows from the shape and the user may not expect."""
+        said = []
+        if self.energy_below_zero > NOTED_CUT:
+            upper = CLOSING_SHARE * self.centre / 2e12 / np.pi
+            said.append(
+                f"{self.energy_below_zero:.2g} of the shape's energy was cut at zero frequency: "
+                f"the spectrum closes smoothly below {upper:.4g} THz."
+            )
+        if self.shape.changes_sign:
+            said.append(
+                f"The spectrum of a {self.shape.name} pulse changes sign in its wings; "
+                "with flat phase it would be shorter than the duration stated."
+            )
+        return tuple(said)
 
     def _spectrum(self, omega: Real) -> Real:
         """The real spectrum of the shape in units of its field, closed towards zero frequency."""
@@ -124,15 +127,10 @@ class Pulse:
     def amplitude(self, omega: Real) -> Complex:
         """A(omega) in W^(1/2) s at absolute angular frequencies, rad/s, of any shape; zero at and below zero.
 
-        A = scale S((omega - centre) duration) exp(i phase), its integral of |A|^2 over ordinary frequency the energy.
+        A = scale S((omega - centre) duration) exp(i phase), its integral of |A|^2 over ordinary frequency the
+        energy.
         """
-        omega = np.asarray(omega, dtype=float)
-        flat = omega.reshape(-1)
-        result = np.zeros(flat.shape, dtype=complex)
-        for first in range(0, flat.size, BLOCK):
-            block = slice(first, first + BLOCK)
-            result[block] = self._amplitude(flat[block])
-        return result.reshape(omega.shape)
+        return in_blocks(self._amplitude, omega)
 
     def _amplitude(self, omega: Real) -> Complex:
         reach = self.shape.spectral_end / self.duration
@@ -145,15 +143,18 @@ class Pulse:
         return result
 
     def spectral_extent(self, share: float) -> tuple[float, float]:
-        """Angular frequencies, rad/s, outside of which less than `share` of the energy lies; the lower is >= 0."""
+        """Angular frequencies, rad/s, outside of which less than `share` of the energy lies.
+
+        The lower is >= 0.
+        """
         reach = self.shape.spectral_reach(share) / self.duration
         return max(self.centre - reach, 0.0), self.centre + reach
 
     def field_extent(self, share: float) -> tuple[float, float]:
         """Instants, s, outside of which less than about `share` of the energy lies.
 
-        The reach of the unchirped shape around the group delays of all but `share` of the spectrum; a lorentzian
-        has wings falling with t^-4, so its reach grows as share^(-1/3).
+        The reach of the unchirped shape around the group delays of all but `share` of the spectrum; a
+        lorentzian has wings falling with t^-4, so its reach grows as share^(-1/3).
         """
         reach = self.shape.field_reach(share) * self.duration
         if self._closes:

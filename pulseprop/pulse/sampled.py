@@ -2,8 +2,8 @@
 
 The trapezoid rule is spectrally exact for a smooth function that is zero (or negligible) at both ends of its
 record, and for a band-limited waveform. Its values on a uniform frequency grid come from one padded FFT;
-between them the transform is itself band-limited, because the record is finite, so the interpolation is exact to
-rounding. This serves any set of frequencies, uniform or not, which a chirp-z transform would not.
+between them the transform is itself band-limited, because the record is finite, so the interpolation is exact
+to rounding. This serves any set of frequencies, uniform or not, which a chirp-z transform would not.
 """
 
 from __future__ import annotations
@@ -41,7 +41,7 @@ class SampledTransform:
     @property
     def omega(self) -> Real:
         """The frequencies of `values`, ascending."""
-        return self.spacing * (np.arange(self.values.size) - self.values.size // 2)
+        return np.asarray(self.spacing * (np.arange(self.values.size) - self.values.size // 2))
 
     def __call__(self, omega: Real) -> Complex:
         omega = np.asarray(omega, dtype=float)

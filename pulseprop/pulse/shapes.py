@@ -1,6 +1,7 @@
 """Pulse shapes: the field over time and its spectrum, in units of the intensity FWHM.
 
-x = t / FWHM, u = (omega - centre) FWHM, field(0) = 1 and spectrum(u) = int field(x) exp(i u x) dx, all real and even.
+x = t / FWHM, u = (omega - centre) FWHM, field(0) = 1 and spectrum(u) = int field(x) exp(i u x) dx, all real
+and even.
 """
 
 from __future__ import annotations
@@ -101,7 +102,10 @@ def supergaussian_spectrum(u: Real, order: int = 2) -> Real:
 
 
 def finite_field(x: Real) -> Real:
-    """exp(4 - 1/(y(1 - y))), y = 1/2 + FINITE_FWHM x; exactly zero for y outside 0 to 1, smooth everywhere."""
+    """exp(4 - 1/(y(1 - y))), y = 1/2 + FINITE_FWHM x.
+
+    Exactly zero for y outside 0 to 1, and smooth everywhere.
+    """
     y = 0.5 + FINITE_FWHM * np.asarray(x, dtype=float)
     room = y * (1 - y)
     inside = room > 0
@@ -125,7 +129,10 @@ def _finite_transform() -> SampledTransform:
 
 
 def _transform_of(field: Callable[[Real], Real], end: float) -> SampledTransform:
-    """Trapezoid transform of a smooth even field that vanishes at |x| = end; 8192 samples leave no aliasing."""
+    """Trapezoid transform of a smooth even field that vanishes at |x| = end.
+
+    8192 samples leave no aliasing.
+    """
     x, step = np.linspace(-end, end, 8193, retstep=True)
     full = sampled_transform(field(x), -end, float(step))
     size = np.abs(full.values)
@@ -141,7 +148,8 @@ def _transform_of(field: Callable[[Real], Real], end: float) -> SampledTransform
 class Shape:
     """A shape as its two functions and what follows from them.
 
-    energy: int field(x)^2 dx. spectral_end: |u| beyond which the spectrum is below 1e-20 of its peak, or ends.
+    energy: int field(x)^2 dx. spectral_end: |u| beyond which the spectrum is below 1e-20 of its peak, or
+    ends. changes_sign: the spectrum is negative somewhere, so that flat phase makes a shorter pulse of it.
     """
 
     name: str
@@ -149,6 +157,7 @@ class Shape:
     spectrum: Callable[[Real], Real]
     energy: float
     spectral_end: float
+    changes_sign: bool = False
 
     @cached_property
     def time_bandwidth(self) -> float:
@@ -187,7 +196,7 @@ def _tail(axis: Real, power: Real) -> Real:
     """Share of the energy beyond each point, from the small end so that tiny shares keep their digits."""
     pieces = 0.5 * (power[1:] + power[:-1]) * np.diff(axis)
     beyond = np.concatenate((np.cumsum(pieces[::-1])[::-1], [0.0]))
-    return beyond / beyond[0]
+    return np.asarray(beyond / beyond[0])
 
 
 def _reach(tail: tuple[Real, Real], share: float) -> float:
@@ -210,6 +219,7 @@ def _supergaussian(order: int) -> Shape:
         spectrum=partial(supergaussian_spectrum, order=int(order)),
         energy=gamma(1 + 0.5 / order) / LN2 ** (0.5 / order),
         spectral_end=transform.nyquist,
+        changes_sign=order > 1,
     )
 
 
@@ -221,6 +231,7 @@ def _finite() -> Shape:
         spectrum=finite_spectrum,
         energy=float(np.sum(finite_field(x / FINITE_FWHM) ** 2) * step / FINITE_FWHM),
         spectral_end=_finite_transform().nyquist,
+        changes_sign=True,
     )
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Protocol, runtime_checkable
 
@@ -12,7 +13,15 @@ from scipy.fft import next_fast_len
 from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.grid import Grid
 
-__all__ = ["PulseSource", "SpectralPhase", "launch", "launch_grid", "positive_number"]
+__all__ = [
+    "PulseSource",
+    "SpectralPhase",
+    "finite_number",
+    "in_blocks",
+    "launch",
+    "launch_grid",
+    "positive_number",
+]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -22,6 +31,9 @@ LARGEST_LAUNCH = 2**23
 
 LAUNCH_BAND = 1e-24
 """Share of the energy left outside the band of such a grid: amplitudes are then good to 1e-12 of the peak."""
+
+BLOCK = 1 << 17
+"""Frequencies evaluated at a time, so that no array of full length but the result is made."""
 
 
 @runtime_checkable
@@ -76,7 +88,10 @@ class PulseSource(Protocol):
 
 @dataclass(frozen=True, kw_only=True)
 class SpectralPhase:
-    """phi(d) = constant + gdd d^2/2 + tod d^3/6 + fod d^4/24, d = omega - centre; SI, field times exp(+i phi)."""
+    """phi(d) = constant + gdd d^2/2 + tod d^3/6 + fod d^4/24, d = omega - centre.
+
+    SI, field times exp(+i phi).
+    """
 
     constant: float = 0.0
     gdd: float = 0.0
@@ -103,6 +118,23 @@ def positive_number(value: float | None, name: str, unit: str, *, optional: bool
         raise InputError(f"the {name} of a pulse must be positive", value=value, allowed=f"{unit} above 0")
 
 
+def finite_number(value: float, name: str) -> None:
+    """Refuse NaN and infinities with an InputError."""
+    if not np.isfinite(value):
+        raise InputError(f"the {name} of a pulse must be a finite number", value=value)
+
+
+def in_blocks(spectrum: Callable[[Real], Complex], omega: Real) -> Complex:
+    """spectrum(omega) for angular frequencies of any shape, a block at a time."""
+    omega = np.asarray(omega, dtype=float)
+    flat = omega.reshape(-1)
+    result = np.empty(flat.shape, dtype=complex)
+    for first in range(0, flat.size, BLOCK):
+        block = slice(first, first + BLOCK)
+        result[block] = spectrum(flat[block])
+    return result.reshape(omega.shape)
+
+
 def launch_grid(source: PulseSource, *, share: float = 1e-12, oversampling: float = 2.5) -> Grid:
     """A grid for the pulse by itself: all but `share` of its energy in the window, the band filled once in
     `oversampling`. Raises NumericalLimit where that needs more than 2^23 points."""
@@ -123,6 +155,9 @@ def launch_grid(source: PulseSource, *, share: float = 1e-12, oversampling: floa
 
 
 def launch(source: PulseSource, *, share: float = 1e-12, oversampling: float = 2.5) -> tuple[Grid, Complex]:
-    """`launch_grid` and the pulse on it: the envelope about the grid's carrier in W^(1/2), shape (points,)."""
+    """`launch_grid` and the pulse on it.
+
+    The envelope about the grid's carrier in W^(1/2), shape (points,).
+    """
     grid = launch_grid(source, share=share, oversampling=oversampling)
     return grid, grid.to_field(source.amplitude(grid.omega))
