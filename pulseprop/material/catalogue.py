@@ -2,7 +2,7 @@
 
 A file is a run of [[record]] tables; a record is parsed only when it is asked for. Keys of a record:
 
-    names               every exact name, the first being the one printed: names of one substance, never of two
+    names               every exact name, the first being the one printed; all are names of one substance
                         (SF10 and N-SF10 are two records)
     refused             words people type that say too little or mean something else; used in messages only
     axis                "o", "e", "x", "y" or "z" where the crystal is birefringent
@@ -14,7 +14,7 @@ A file is a run of [[record]] tables; a record is parsed only when it is asked f
     source, data_set    the publication; the open data-set entry from which the coefficients were taken
     from_memory         true where coefficients were recalled and not seen
     spread              other records of the same substance, for the spread between published values
-    n2                  published nonlinear indices; the first is used unless another is asked for
+    n2                  published nonlinear indices
     second_virial       of gases, with its source
     note, health        what a user should know; `health` is common practice, without source
 """
