@@ -3,8 +3,9 @@
     n - 1 = (rho_a/rho_axs)(n_axs - 1) + (rho_v/rho_ws)(n_ws - 1),
 
 dry air (a) against standard dry air (axs: 15 degC, 101325 Pa), water vapour (v) against standard vapour (ws:
-20 degC, 1333 Pa); densities after R. S. Davis, Metrologia 29, 67 (1992). The two resonances of dry air are those
-of the catalogue's "air"; the other coefficients are from memory, and the tests hold them to printed values.
+20 degC, 1333 Pa); densities after R. S. Davis, Metrologia 29, 67 (1992). The two resonances of dry air are
+those of the catalogue's "air"; the other coefficients are from memory, and the tests hold them to printed
+values.
 """
 
 from __future__ import annotations
@@ -44,7 +45,7 @@ def humid_air_response(
 
 
 def vapour_fraction(pressure: float, temperature: float, humidity: float) -> float:
-    """Molar fraction of water vapour at pressure (Pa), temperature (K) and humidity (0 to 1) over liquid water.
+    """Molar fraction of water vapour at pressure (Pa), temperature (K), humidity (0 to 1, over water).
 
     Raises InputError where the vapour pressure would exceed the pressure.
     """

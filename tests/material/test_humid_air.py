@@ -1,4 +1,4 @@
-"""Moist air against values printed by P. E. Ciddor, Appl. Opt. 35, 1566 (1996), and made with his equation."""
+"""Moist air against values of P. E. Ciddor, Appl. Opt. 35, 1566 (1996), and made with his equation."""
 
 from __future__ import annotations
 
@@ -55,7 +55,7 @@ def test_printed_index_to_half_a_unit_of_the_ninth_decimal(celsius, pressure, hu
 
 
 # Measured air of a laboratory at 633 nm that Ciddor compares with (K. P. Birch, M. J. Downs): degC, Pa,
-# vapour pressure in Pa, ppm of carbon dioxide, 1e8 (n - 1). From memory. The equation claims 2 to 5 of these units.
+# vapour pressure in Pa, ppm of carbon dioxide, 1e8 (n - 1). From memory. The equation claims 2 to 5 of these.
 MEASURED = [
     (19.526, 102094.8, 1065, 510, 27392.3),
     (19.517, 102096.8, 1065, 510, 27394.0),
