@@ -197,3 +197,28 @@ def fresh_read() -> float:
     start = time.perf_counter()
     record("polystyrene")
     return time.perf_counter() - start
+
+
+# Nonlinear indices as printed, m^2/W; all seen as open data-set entries. D. Milam, Appl. Opt. 37, 546 (1998);
+# R. Van der Linden et al., Opt. Express 33, 53268 (2025); R. Adair et al., J. Opt. Soc. Am. B 4, 875 (1987) and
+# Phys. Rev. B 39, 3337 (1989); P. Kabacinski et al., Opt. Express 27, 11018 (2019); E. T. J. Nibbering et al.,
+# J. Opt. Soc. Am. B 14, 650 (1997); J. K. Wahlstrand et al., Phys. Rev. A 85, 043820 (2012).
+NONLINEAR = [
+    ("fused silica", 1.053, 2.74e-20),
+    ("fused silica", 0.527, 3.00e-20),
+    ("fused silica", 0.804, 2.54e-20),
+    ("N-BK7", 0.804, 3.33e-20),
+    ("N-BK7", 1.064, 3.62e-20),
+    ("sapphire", 1.064, 2.9e-20),
+    ("CaF2", 1.030, 1.71e-20),
+    ("air", 0.8, 4e-23),
+    ("argon", 0.8, 9.7e-24),
+    ("nitrogen", 0.8, 3e-23),
+]
+
+
+@pytest.mark.parametrize(("name", "um", "printed"), NONLINEAR)
+def test_nonlinear_index_as_printed(name, um, printed):
+    at = [n2 for n2 in record(name).n2 if n2.wavelength_um == um]
+    assert at[0].value == printed
+    assert re.search(r"\(\d{4}\)", at[0].source)
