@@ -199,10 +199,11 @@ def fresh_read() -> float:
     return time.perf_counter() - start
 
 
-# Nonlinear indices as printed, m^2/W; all seen as open data-set entries. D. Milam, Appl. Opt. 37, 546 (1998);
-# R. Van der Linden et al., Opt. Express 33, 53268 (2025); R. Adair et al., J. Opt. Soc. Am. B 4, 875 (1987) and
-# Phys. Rev. B 39, 3337 (1989); P. Kabacinski et al., Opt. Express 27, 11018 (2019); E. T. J. Nibbering et al.,
-# J. Opt. Soc. Am. B 14, 650 (1997); J. K. Wahlstrand et al., Phys. Rev. A 85, 043820 (2012).
+# Nonlinear indices as printed, m^2/W; all seen as open data-set entries. D. Milam, Appl. Opt. 37, 546
+# (1998); R. Van der Linden et al., Opt. Express 33, 53268 (2025); R. Adair et al., J. Opt. Soc. Am. B 4,
+# 875 (1987) and Phys. Rev. B 39, 3337 (1989); P. Kabacinski et al., Opt. Express 27, 11018 (2019); E. T.
+# J. Nibbering et al., J. Opt. Soc. Am. B 14, 650 (1997); J. K. Wahlstrand et al., Phys. Rev. A 85, 043820
+# (2012).
 NONLINEAR = [
     ("fused silica", 1.053, 2.74e-20),
     ("fused silica", 0.527, 3.00e-20),
