@@ -5,23 +5,24 @@ In the convention exp(-i omega t), n + i k:
     n(omega) - 1 =  (2/pi)       PV int_0^inf  w k(w) / (w^2 - omega^2) dw
     k(omega)     = -(2 omega/pi) PV int_0^inf  (n(w) - 1) / (w^2 - omega^2) dw
 
-(R. de L. Kronig, J. Opt. Soc. Am. 12, 547 (1926); H. A. Kramers, Atti Congr. Int. Fis. Como 2, 545 (1927)). A table covers
-part of the axis; what it leaves out adds a smooth function to n: an even one of omega, and nearly a constant where it lies
-far off. Anchors, that is frequencies at which the answer is known, remove it: one its constant, m of them the polynomial
-of degree m - 1 in omega^2. That is the multiply subtractive relation (K. F. Palmer, M. Z. Williams and B. A. Budde, Appl.
-Opt. 37, 2660 (1998)).
+(R. de L. Kronig, J. Opt. Soc. Am. 12, 547 (1926); H. A. Kramers, Atti Congr. Int. Fis. Como 2, 545 (1927)). A
+table covers part of the axis; what it leaves out adds a smooth function to n: an even one of omega, and
+nearly a constant where it lies far off. Anchors, that is frequencies at which the answer is known, remove it:
+one its constant, m of them the polynomial of degree m - 1 in omega^2. That is the multiply subtractive
+relation (K. F. Palmer, M. Z. Williams and B. A. Budde, Appl. Opt. 37, 2660 (1998)).
 """
 
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
-from pulseprop.material.density import Density, Form, Tails, density_through
+from pulseprop.material.absorption_density import AbsorptionDensity, Form, Tails, density_through
 
 __all__ = [
     "Anchor",
@@ -33,6 +34,7 @@ __all__ = [
 
 Real = NDArray[np.float64]
 Complex = NDArray[np.complex128]
+Numbers = NDArray[np.inexact[Any]]
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -51,12 +53,13 @@ class Anchor:
 class Transformed:
     """A transform with what it took.
 
-    values: n - 1 + i k, or k, at the frequencies asked for. from_below, from_above: what the tails add halfway between the two middle rows.
-    subtraction: coefficients (anchors,) of the powers of (omega / middle)^2 that the anchors added (for k: times
-    omega / middle); empty without anchors, and n then holds only up to what absorbs outside the table and its tails.
+    values: n - 1 + i k, or k, at the frequencies asked for. from_below, from_above: what the tails add at
+    `middle`, halfway between the two middle rows (rad/s). subtraction: coefficients (anchors,) of the powers
+    of (omega / middle)^2 that the anchors added (for k: times omega / middle); empty without anchors, and n
+    then holds only up to what absorbs outside the table and its tails.
     """
 
-    values: Complex | Real
+    values: Numbers
     from_below: float
     from_above: float
     middle: float
@@ -66,7 +69,7 @@ class Transformed:
 def refraction_from_absorption(
     rows: Real,
     k: Real,
-    omega: Real | Complex,
+    omega: Numbers,
     *,
     form: Form = "c2",
     tails: Tails = Tails(),  # noqa: B008 (frozen)
@@ -74,11 +77,13 @@ def refraction_from_absorption(
 ) -> Transformed:
     """n - 1 + i k on or above the real axis from k on rows.
 
-    rows: rad/s, ascending, above 0, uneven as they come, shape (R,). k: shape (R,). omega: any shape; real ones give the
-    principal value. form: "linear" joins the rows by straight lines (error falls with the square of the spacing), "c2" by
-    a cubic spline with continuous second derivative (fourth power). anchors: values are indices n.
+    rows: rad/s, ascending, above 0, uneven as they come, shape (R,). k: shape (R,). omega: any shape; real
+    ones give the principal value. form: "linear" joins the rows by straight lines (error falls with the
+    square of the spacing), "c2" by a cubic spline with continuous second derivative (fourth power). anchors:
+    values are indices n.
 
-    Raises InputError for bad rows, two anchors at one frequency, frequencies below the axis, or on a row where k breaks off.
+    Raises InputError for bad rows, two anchors at one frequency, frequencies below the axis, or on a row
+    where k breaks off.
     """
     rows, k = _checked(rows, k)
     density = density_through(rows, k, form=form, tails=tails, parity=-1)
@@ -104,10 +109,11 @@ def absorption_from_refraction(
 ) -> Transformed:
     """k at real omega (rad/s) from n - 1 on rows.
 
-    More must be known than a table of n inside a band holds: n - 1 as far up and down as it varies. Matched tails take it
-    as constant below the rows and as falling with omega^-2 above. A constant in n has no absorption, so a level of n that
-    belongs to absorption far above the rows is to be taken off first, or replaced by anchors: values k; one removes a term
-    proportional to omega, each further one the next odd power.
+    More must be known than a table of n inside a band holds: n - 1 as far up and down as it varies. Matched
+    tails take it as constant below the rows and as falling with omega^-2 above. A constant in n has no
+    absorption, so a level of n that belongs to absorption far above the rows is to be taken off first, or
+    replaced by anchors: values k; one removes a term proportional to omega, each further one the next odd
+    power.
 
     Shapes and errors as in `refraction_from_absorption`.
     """
@@ -127,7 +133,7 @@ def absorption_from_refraction(
     )
 
 
-def tail_shares(density: Density, tails: Tails, omega: float) -> tuple[float, float]:
+def tail_shares(density: AbsorptionDensity, tails: Tails, omega: float) -> tuple[float, float]:
     """What the tails below and above the rows add to the transform at a frequency between the rows, rad/s."""
     place = np.array([omega])
     below = above = 0.0
@@ -142,8 +148,8 @@ def tail_shares(density: Density, tails: Tails, omega: float) -> tuple[float, fl
     return below, above
 
 
-def _part(density: Density, edges: Real, pieces: Real, far: float) -> Density:
-    return Density(edges=edges, pieces=pieces, far=far, power=density.power, parity=density.parity)
+def _part(density: AbsorptionDensity, edges: Real, pieces: Real, far: float) -> AbsorptionDensity:
+    return replace(density, edges=edges, pieces=pieces, far=far)
 
 
 def _checked(rows: Real, values: Real) -> tuple[Real, Real]:
@@ -181,7 +187,7 @@ def _even_polynomial(x: Real, values: Real) -> Real:
     return np.asarray(np.linalg.solve(np.vander(x**2, increasing=True), values)) if len(x) else np.zeros(0)
 
 
-def _polynomial(coefficients: Real, x: Real | Complex) -> Real | Complex:
+def _polynomial(coefficients: Real, x: Numbers) -> Numbers:
     total = np.zeros_like(x)
     for coefficient in coefficients[::-1]:
         total = total * x**2 + coefficient

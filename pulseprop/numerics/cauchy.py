@@ -2,16 +2,18 @@
 
     F(z) = int density(w) / (w - z) dw,   the density a cubic on each piece.
 
-A piece near z is integrated in closed form. A piece far from it stands as Gauss-Legendre charges, and far groups of
-pieces as charges on Chebyshev nodes of their common stretch (interpolation of the kernel: W. Fong and E. Darve, J. Comput.
-Phys. 228, 8712 (2009), here in one dimension and with the places left as they are). Groups halve in number of pieces from
-level to level, so uneven rows cost no more than even ones: work grows as places times log(pieces).
+A piece near z is integrated in closed form. A piece far from it stands as Gauss-Legendre charges, and far
+groups of pieces as charges on Chebyshev nodes of their common stretch (interpolation of the kernel: W. Fong
+and E. Darve, J. Comput. Phys. 228, 8712 (2009), here in one dimension and with the places left as they are).
+Groups halve in number of pieces from level to level, so uneven rows cost no more than even ones: work grows
+as places times log(pieces).
 """
 
 from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -22,7 +24,7 @@ __all__ = ["piecewise_cauchy", "piecewise_value"]
 
 Real = NDArray[np.float64]
 Complex = NDArray[np.complex128]
-Numbers = Real | Complex
+Numbers = NDArray[np.inexact[Any]]
 Indices = NDArray[np.intp]
 
 SEPARATION = 3.0
@@ -46,7 +48,7 @@ class _Level:
 
 
 def piecewise_value(edges: Real, coefficients: Real, omega: Numbers) -> Numbers:
-    """The density at real omega: coefficients (pieces, 4) in t = (omega - left)/(right - left); 0 outside the edges."""
+    """The density at real omega, 0 outside the edges; coefficients as in `piecewise_cauchy`."""
     inside = (omega >= edges[0]) & (omega <= edges[-1])
     piece = np.clip(np.searchsorted(edges, omega, side="right") - 1, 0, len(edges) - 2)
     t = (omega - edges[piece]) / (edges[piece + 1] - edges[piece])
@@ -56,9 +58,10 @@ def piecewise_value(edges: Real, coefficients: Real, omega: Numbers) -> Numbers:
 def piecewise_cauchy(edges: Real, coefficients: Real, z: Numbers) -> Numbers:
     """F(z), shape of z; real z gives the principal value.
 
-    edges: ascending, shape (pieces + 1,). coefficients: (pieces, 4) in t = (w - left)/(right - left). z: any shape, real or
-    complex off the axis. Relative error about 1e-13 of int |density / (w - z)|, more only where that itself diverges. At an
-    edge the logarithm is left out (see `principal_value`): the limit where the density is continuous.
+    edges: ascending, shape (pieces + 1,). coefficients: (pieces, 4) in t = (w - left)/(right - left). z: any
+    shape, real or complex off the axis. Relative error about 1e-13 of int |density / (w - z)|, more only
+    where that itself diverges. At an edge the logarithm is left out (see `principal_value`): the limit where
+    the density is continuous.
     """
     places = np.asarray(z).ravel()
     levels = _levels(edges, coefficients)
@@ -151,3 +154,20 @@ def _add(total: Numbers, place: Indices, share: Numbers) -> None:
         total.imag += np.bincount(place, share.imag, count)
     else:
         total += np.bincount(place, share.real, count)
+
+
+def monomial_cauchy(edges: Real, z: Real) -> Real:
+    """int t^m / (w - z) dw over each piece for m = 0 … 3: shape (places, pieces, 4); z real, (places,).
+
+    The whole matrix, for fits; t as in `piecewise_cauchy`, and edges likewise without their logarithm.
+    """
+    left, right = edges[:-1], edges[1:]
+    x, weight = np.polynomial.legendre.leggauss(GAUSS_NODES)
+    powers = ((1 + x[:, None]) / 2) ** np.arange(4) * (weight[:, None] / 2)
+    nodes = left[:, None] + (right - left)[:, None] * (1 + x) / 2
+    result = np.empty((len(z), len(left), 4))
+    for place, row in zip(z, result, strict=True):
+        row[:] = (right - left)[:, None] * ((1 / (nodes - place)) @ powers)
+        near = np.abs(place - (left + right) / 2) < SEPARATION * (right - left) / 2
+        row[near] = cubic_cauchy(place, left[near, None], right[near, None], np.eye(4))
+    return result

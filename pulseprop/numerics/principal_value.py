@@ -1,11 +1,13 @@
-"""Closed forms of int density(w) / (w - z) dw: a cubic on one stretch, and an inverse power beyond the last one.
+"""Closed forms of int density(w) / (w - z) dw: a cubic on one stretch, and an inverse power beyond it.
 
-Real z means the principal value, complex z the integral itself. Where z meets an edge, both neighbours carry the same
-log|edge - z| with opposite signs; `log_distance` leaves it out of both (log 0 := 0), which is the limit for a continuous
-density. So all neighbours must measure distance in one unit: that of the last edge.
+Real z means the principal value, complex z the integral itself. Where z meets an edge, both neighbours carry
+the same log|edge - z| with opposite signs; `log_distance` leaves it out of both (log 0 := 0), which is the
+limit for a continuous density. So all neighbours must measure distance in one unit: that of the last edge.
 """
 
 from __future__ import annotations
+
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -14,11 +16,11 @@ __all__ = ["cubic_cauchy", "inverse_power_cauchy", "log_distance", "polynomial"]
 
 Real = NDArray[np.float64]
 Complex = NDArray[np.complex128]
-Numbers = Real | Complex
+Numbers = NDArray[np.inexact[Any]]
 
 SERIES_RADIUS = 0.5
 SERIES_TERMS = 54
-"""0.5^54 = 6e-17: inside this radius the closed form of the inverse power would lose up to (1/u)^power digits."""
+"""0.5^54 = 6e-17. Inside this radius the closed form would lose up to (1/u)^power digits."""
 
 
 def log_distance(distance: Numbers) -> Numbers:
@@ -40,9 +42,9 @@ def polynomial(t: Numbers, coefficients: Real) -> Numbers:
 def cubic_cauchy(z: Numbers, left: Real, right: Real, coefficients: Real) -> Numbers:
     """int_left^right p(w)/(w - z) dw, p = sum_m coefficients[..., m] t^m, t = (w - left)/(right - left).
 
-    Shapes broadcast, coefficients (..., 4). With u = (z - left)/(right - left) it is
-    p(u) log((right - z)/(left - z)) + c1 + c2 (u + 1/2) + c3 (u^2 + u/2 + 1/3): exact, to be used near the stretch only,
-    as the two parts cancel far from it.
+    Shapes broadcast, coefficients (..., 4). With u = (z - left)/(right - left) it is p(u) log((right -
+    z)/(left - z)) + c1 + c2 (u + 1/2) + c3 (u^2 + u/2 + 1/3): exact, to be used near the stretch only, as the
+    two parts cancel far from it.
     """
     u = (z - left) / (right - left)
     ratio = (

@@ -21,7 +21,8 @@ def linear_pieces(x: Real, y: Real) -> Real:
 def cubic_pieces(x: Real, y: Real, first_slope: float | None, last_slope: float | None) -> Real:
     """The C2 interpolating cubic spline with knots at the rows: coefficients of shape (rows - 1, 4).
 
-    At each end either the slope is given, or None: then the two pieces next to that end are one cubic. At least four rows.
+    At each end either the slope is given, or None: then the two pieces next to that end are one cubic. At
+    least four rows.
     """
     length, rise = np.diff(x), np.diff(y)
     slope = _slopes(length, rise / length, first_slope, last_slope)

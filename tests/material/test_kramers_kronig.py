@@ -7,7 +7,7 @@ import numpy as np
 import pytest
 
 from pulseprop.errors import InputError
-from pulseprop.material.density import Tails, density_through
+from pulseprop.material.absorption_density import Tails, density_through
 from pulseprop.material.kramers_kronig import Anchor, absorption_from_refraction, refraction_from_absorption
 
 CENTRE, WIDTH, STRENGTH = 1.0, 0.02, 2e-4
@@ -79,7 +79,7 @@ def test_negative_frequencies_carry_the_conjugate():
 
 @pytest.mark.parametrize("omega", [0.3, 0.999, 1.5, 2.001, 5.0])
 def test_matched_tails_agree_with_quadrature(omega):
-    """k = 0.2 w below 1, 0.2 to 0.6 in a straight line over [1, 2], 0.6 (2/w)^3 above: value and slope in 30 digits."""
+    """k = 0.2 w below 1, 0.2 to 0.6 in a straight line over [1, 2], 0.6 (2/w)^3 above: in 30 digits."""
     rows, k = np.array([1.0, 2.0]), np.array([0.2, 0.6])
     found = refraction_from_absorption(rows, k, np.array([omega]), form="linear").values[0].real
     with mpmath.workdps(30):
@@ -189,7 +189,7 @@ def test_the_index_where_absorption_breaks_off_is_refused():
     none = Tails(below="none", above="none")
     with pytest.raises(InputError, match="breaks off"):
         refraction_from_absorption(rows, k, np.array([2.0]), form="linear", tails=none)
-    with pytest.raises(InputError, match="slopes are infinite"):
+    with pytest.raises(InputError, match="slopes of the index are infinite"):
         _ = density_through(rows, k, form="linear", tails=none, parity=-1).derivative
 
 

@@ -1,4 +1,4 @@
-"""The fast sum against the same closed forms added one by one in 90 digits, on rows as uneven as they come."""
+"""The fast sum against the same closed forms added one by one in 90 digits, on uneven rows."""
 
 from __future__ import annotations
 

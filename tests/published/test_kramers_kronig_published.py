@@ -7,7 +7,7 @@ from pathlib import Path
 import numpy as np
 import pytest
 
-from pulseprop.material.density import Tails, density_through
+from pulseprop.material.absorption_density import Tails, density_through
 from pulseprop.material.kramers_kronig import Anchor, refraction_from_absorption
 
 SHARED = Path(__file__).parents[2] / "shared"
@@ -33,8 +33,8 @@ def test_gaussian_band(omega, expected):
     assert transform(rows, chi2, [omega]) == pytest.approx([expected], abs=2e-12)
 
 
-# Box chi2 = 1 on [2, 3]: chi1 = ln|(9 - w^2)/(4 - w^2)|/pi (textbook). Box alpha = 1 with c = 1, so k = 1/(2 w):
-# n - 1 = ln|(3-w)(2+w)/((3+w)(2-w))|/(2 pi w).
+# Box chi2 = 1 on [2, 3]: chi1 = ln|(9 - w^2)/(4 - w^2)|/pi (textbook). Box alpha = 1 with c = 1, so k = 1/(2
+# w): n - 1 = ln|(3-w)(2+w)/((3+w)(2-w))|/(2 pi w).
 @pytest.mark.parametrize(
     ("omega", "chi1", "refraction"),
     [(1.0, 0.3122076478919, 0.064531776206704), (2.5, 0.063875466232979, -0.012775093246596)],
@@ -64,9 +64,9 @@ def test_triangle_on_its_corners():
     assert found == pytest.approx((np.array(direct) + mirror) / np.pi, abs=1e-14)
 
 
-# Lorentz medium wp^2 = 20, w0 = 4, g = 0.56: chi at 1, 4, 8 (textbook), and the sum rules
-# int chi2/w = (pi/2) chi(0), int (n - 1) = 0, int w k = (pi/4) wp^2: M. Altarelli, D. L. Dexter, H. M. Nussenzveig,
-# D. Y. Smith, Phys. Rev. B 6, 4502 (1972) (formulae from memory, each verified by quadrature).
+# Lorentz medium wp^2 = 20, w0 = 4, g = 0.56: chi at 1, 4, 8 (textbook), and the sum rules int chi2/w = (pi/2)
+# chi(0), int (n - 1) = 0, int w k = (pi/4) wp^2: M. Altarelli, D. L. Dexter, H. M. Nussenzveig, D. Y. Smith,
+# Phys. Rev. B 6, 4502 (1972) (formulae from memory, each verified by quadrature).
 STRENGTH, CENTRE, WIDTH = 20.0, 4.0, 0.56
 LORENTZ = [(1.0, 1.3314775495132), (4.0, 0.0), (8.0, -0.41306838209376)]
 
@@ -95,7 +95,7 @@ def test_static_value_is_the_sum_of_absorption_over_frequency():
 
 
 def test_the_strength_shows_far_above_as_the_sum_of_frequency_times_absorption():
-    """n - 1 = -(2/pi) int w k dw / omega^2 + ... far above all rows; int w k = (pi/4) wp^2 = 15.707963267949."""
+    """n - 1 = -(2/pi) int w k dw / omega^2 + ... far above; int w k = (pi/4) wp^2 = 15.707963267949."""
     rows = lorentz_rows(6000)
     chi = lorentz(rows)
     k = (chi / (1 + np.sqrt(1 + chi))).imag
@@ -106,7 +106,7 @@ def test_the_strength_shows_far_above_as_the_sum_of_frequency_times_absorption()
 
 
 def test_inertial_rule_the_refraction_averages_to_zero():
-    """int_0^inf (n - 1) = 0: over 0 ... cut by quadrature of the transform, beyond it -wp^2/(2 w^2) gives -wp^2/(2 cut)."""
+    """int_0^inf (n - 1) = 0: up to a cut by quadrature; beyond it -wp^2/(2 w^2) gives -wp^2/(2 cut)."""
     rows = lorentz_rows(6000)
     chi = lorentz(rows)
     k = (chi / (1 + np.sqrt(1 + chi))).imag
@@ -118,10 +118,10 @@ def test_inertial_rule_the_refraction_averages_to_zero():
     assert total - STRENGTH / (2 * ends[-1]) == pytest.approx(0.0, abs=1e-7)
 
 
-# Water at 25 degC: G. M. Hale and M. R. Querry, Appl. Opt. 12, 555-563 (1973), a published subtractive Kramers-Kronig
-# analysis; table in shared/ (CC0). Straight lines between the tabulated k, minus a + b nu^2 + c nu^4 + d nu^-2 for what the
-# table leaves out, against the tabulated n over 0.4 ... 20 um: rms 0.0011 found elsewhere; 0.0015 is the mark to reach.
-# The constant, 0.33, is the ultraviolet absorption that lies outside.
+# Water at 25 degC: G. M. Hale and M. R. Querry, Appl. Opt. 12, 555-563 (1973), a published subtractive
+# Kramers-Kronig analysis; table in shared/ (CC0). Straight lines between the tabulated k, minus a + b nu^2 +
+# c nu^4 + d nu^-2 for what the table leaves out, against the tabulated n over 0.4 ... 20 um: rms 0.0011 found
+# elsewhere; 0.0015 is the mark to reach. The constant, 0.33, is the ultraviolet absorption that lies outside.
 def water():
     table = np.loadtxt(SHARED / "water_hale_querry_1973.csv", delimiter=",", skiprows=6)[::-1]
     return 2 * np.pi * 299792458.0 / (table[:, 0] * 1e-6), table[:, 1], table[:, 2]

@@ -2,16 +2,16 @@
 
     N(z) = (1/pi) int_{-inf}^{inf} density(w) / (w - z) dw,
 
-the density odd (an absorption index k: N = n - 1 + i k) or even. From zero to the last edge it is a cubic on each piece,
-beyond it falls as an inverse power; what lies below the first edge is zero. Derivatives of N are transforms of the
-derivatives of a continuous density.
+the density odd (an absorption index k: N = n - 1 + i k) or even. Up to the last edge it is a cubic on each
+piece, beyond it falls as an inverse power; below the first edge it is zero. Derivatives of N are transforms
+of the derivatives of a continuous density.
 """
 
 from __future__ import annotations
 
 from dataclasses import dataclass
 from functools import cached_property
-from typing import Literal
+from typing import Any, Literal
 
 import numpy as np
 from numpy.typing import NDArray
@@ -21,10 +21,11 @@ from pulseprop.numerics.cauchy import piecewise_cauchy, piecewise_value
 from pulseprop.numerics.principal_value import inverse_power_cauchy
 from pulseprop.numerics.spline import cubic_pieces, derivative_pieces, linear_pieces
 
-__all__ = ["Density", "Form", "Parity", "Tails", "density_through"]
+__all__ = ["AbsorptionDensity", "Form", "Parity", "Tails", "density_through"]
 
 Real = NDArray[np.float64]
 Complex = NDArray[np.complex128]
+Numbers = NDArray[np.inexact[Any]]
 
 Form = Literal["c2", "linear"]
 Parity = Literal[-1, 1]
@@ -40,8 +41,8 @@ JUMP = 1e-9
 class Tails:
     """What is assumed outside the rows: "matched" to the end row, or "none" (zero).
 
-    Matched, an absorption index k is proportional to omega below and to omega^-3 above (the wings of bound charges); a
-    refraction n - 1 is constant below and proportional to omega^-2 above (free charges).
+    Matched, an absorption index k is proportional to omega below and to omega^-3 above (the wings of bound
+    charges); a refraction n - 1 is constant below and proportional to omega^-2 above (free charges).
     """
 
     below: Tail = "matched"
@@ -49,17 +50,19 @@ class Tails:
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)
-class Density:
+class AbsorptionDensity:
     """edges: rad/s, ascending, (pieces + 1,). pieces: (pieces, 4), see `pulseprop.numerics.spline`.
 
-    far: value that the inverse power has at the last edge; power: its exponent; parity: -1 odd, +1 even.
+    far: value that the inverse power has at the last edge; power: its exponent; parity: -1 odd, +1 even;
+    smoothness: how many derivatives are continuous at the inner edges.
     """
 
     edges: Real
     pieces: Real
-    far: float
-    power: int
-    parity: Parity
+    far: float = 0.0
+    power: int = 3
+    parity: Parity = -1
+    smoothness: int = 2
 
     def value(self, omega: Real) -> Real:
         """The density at real omega of either sign, shape kept."""
@@ -69,10 +72,10 @@ class Density:
         sign = np.where(omega < 0, self.parity, 1)
         return np.asarray(sign * np.where(size > self.edges[-1], beyond, inside))
 
-    def transform(self, z: Real | Complex) -> Complex:
+    def transform(self, z: Numbers) -> Complex:
         """N(z), shape kept: real z gives the limit from above the axis.
 
-        Raises InputError where z lies below the axis, or on a row at which the density jumps.
+        Raises InputError where z lies below the axis, or at an end row where the density jumps.
         """
         z = np.asarray(z)
         if not np.iscomplexobj(z):
@@ -86,31 +89,33 @@ class Density:
         return result
 
     @cached_property
-    def derivative(self) -> Density:
+    def derivative(self) -> AbsorptionDensity:
         """d density / d omega, whose transform is dN/d omega. Raises InputError where the density jumps."""
-        if self.jumps:
+        if self.smoothness < 0 or self.jumps:
             raise InputError(
-                "the absorption breaks off at an end of the table, so its slopes are infinite there",
-                value=self.jumps[0],
-                allowed="zero absorption at the end rows, or a matched tail",
+                "the tabulated absorption has a step, so slopes of the index are infinite there",
+                value=f"{self.jumps[0]:.9g} rad/s" if self.jumps else None,
+                allowed="zero absorption at the end rows, or a matched tail, and the C2 form between rows",
             )
-        return Density(
+        parity: Parity = 1 if self.parity < 0 else -1
+        return AbsorptionDensity(
             edges=self.edges,
             pieces=derivative_pieces(self.edges, self.pieces),
             far=-self.power * self.far / float(self.edges[-1]),
             power=self.power + 1,
-            parity=-self.parity,  # type: ignore[arg-type]
+            parity=parity,
+            smoothness=self.smoothness - 1,
         )
 
     @cached_property
     def jumps(self) -> tuple[float, ...]:
         """Frequencies of the steps at the ends, rad/s."""
         first, last = float(self.pieces[0, 0]), float(np.sum(self.pieces[-1]))
-        largest = JUMP * float(np.max(np.abs(self.pieces[:, 0])))
+        rounding = JUMP * float(np.max(np.abs(self.pieces[:, 0])))
         steps = []
-        if abs(first) > largest and (self.edges[0] > 0 or self.parity < 0):
+        if abs(first) > rounding and (self.edges[0] > 0 or self.parity < 0):
             steps.append(float(self.edges[0]))
-        if abs(last - self.far) > max(largest, JUMP * abs(last)):
+        if abs(last - self.far) > max(rounding, JUMP * abs(last)):
             steps.append(float(self.edges[-1]))
         return tuple(steps)
 
@@ -124,7 +129,7 @@ class Density:
                 )
         return self._sum(omega) + 1j * self.value(omega)
 
-    def _sum(self, z: Real | Complex) -> Complex:
+    def _sum(self, z: Numbers) -> Complex:
         unit = float(self.edges[-1])
         both = np.concatenate((z.ravel(), -z.ravel())) / unit
         total = piecewise_cauchy(self.edges / unit, self.pieces, both)
@@ -134,17 +139,19 @@ class Density:
         return np.asarray(((here - self.parity * mirrored) / np.pi).reshape(z.shape))
 
 
-def density_through(rows: Real, values: Real, *, form: Form, tails: Tails, parity: Parity) -> Density:
+def density_through(
+    rows: Real, values: Real, *, form: Form, tails: Tails, parity: Parity
+) -> AbsorptionDensity:
     """The density through the rows (rad/s, ascending, above 0) in straight lines, or as a C2 cubic spline.
 
-    The spline takes the slopes of the matched tails at its ends, so that its derivative is continuous there; without a
-    tail it comes in flat from a zero value, else its last two pieces are one cubic. Raises InputError for too few rows.
+    The spline takes the slopes of the matched tails at its ends, so that its derivative is continuous there;
+    without a tail it comes in flat from a zero value, else its last two pieces are one cubic. Raises
+    InputError for too few rows.
     """
     least = 4 if form == "c2" else 2
     if len(rows) < least:
         raise InputError("too few rows", value=len(rows), allowed=f"{least} or more")
     power = FALL[parity]
-    far = float(values[-1]) if tails.above == "matched" else 0.0
     edges, below = rows, np.zeros((0, 4))
     if tails.below == "matched":
         edges = np.concatenate(([0.0], rows))
@@ -156,7 +163,14 @@ def density_through(rows: Real, values: Real, *, form: Form, tails: Tails, parit
         first = _end_slope(tails.below, float(values[0]), matched_first)
         last = _end_slope(tails.above, float(values[-1]), -power * float(values[-1] / rows[-1]))
         pieces = cubic_pieces(rows, values, first, last)
-    return Density(edges=edges, pieces=np.concatenate((below, pieces)), far=far, power=power, parity=parity)
+    return AbsorptionDensity(
+        edges=edges,
+        pieces=np.concatenate((below, pieces)),
+        far=float(values[-1]) if tails.above == "matched" else 0.0,
+        power=power,
+        parity=parity,
+        smoothness=2 if form == "c2" else 0,
+    )
 
 
 def _end_slope(tail: Tail, value: float, matched: float) -> float | None:
