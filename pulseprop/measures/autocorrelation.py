@@ -22,8 +22,8 @@ __all__ = [
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
-NEGLECTED = 1e-10
-"""Share of the energy at the ends of the window that is left out, so that faint ringing costs no memory."""
+NEGLECTED = 1e-18
+"""Share of the energy at the ends of the window that is left out, so that empty stretches cost no memory."""
 
 FRINGE_POINTS = 16
 """Delays an optical period in the interferometric trace; its fastest fringe has half a period."""
@@ -60,6 +60,16 @@ def _correlation(left: Complex, right: Complex, length: int) -> Complex:
     return np.asarray(scipy.fft.ifft(product, overwrite_x=True))
 
 
+def _doubled(field: Complex) -> Complex:
+    """The same field on twice as many samples, so that its square and cube fit into their band."""
+    count = field.size
+    spectrum = scipy.fft.fft(field)
+    padded = np.zeros(2 * count, dtype=complex)
+    padded[: (count + 1) // 2] = 2 * spectrum[: (count + 1) // 2]
+    padded[-(count // 2) :] = 2 * spectrum[(count + 1) // 2 :]
+    return np.asarray(scipy.fft.ifft(padded, overwrite_x=True))
+
+
 def intensity_autocorrelation(envelope: Complex, step: float) -> Autocorrelation:
     """int P(t) P(t - tau) dt over its value at tau = 0, on delays half a step apart.
 
@@ -73,9 +83,8 @@ def intensity_autocorrelation(envelope: Complex, step: float) -> Autocorrelation
     signal = scipy.fft.irfft(squared, 2 * length)
     reach = 2 * height.size - 1
     signal = np.concatenate((signal[-reach:], signal[: reach + 1])) / signal[0]
-    return Autocorrelation(
-        delay=np.asarray(0.5 * step * np.arange(-reach, reach + 1), dtype=float), signal=signal
-    )
+    delay = np.linspace(-0.5 * step * reach, 0.5 * step * reach, signal.size)
+    return Autocorrelation(delay=delay, signal=signal)
 
 
 def autocorrelation_fwhm(envelope: Complex, step: float) -> float:
@@ -96,18 +105,18 @@ def interferometric_autocorrelation(
     """
     if delay is None:
         delay = _fringe_delays(1.5 * autocorrelation_fwhm(envelope, step), carrier)
-    field = _gathered(envelope)
+    field = _doubled(_gathered(envelope))
     height = power(field)
     length = int(scipy.fft.next_fast_len(2 * field.size))
     both = _correlation(height.astype(complex), height.astype(complex), length)
     single = _correlation(height * field, field, length) + _correlation(field, height * field, length)
     double = _correlation(field * field, field * field, length)
-    position = delay / step
+    position = delay / (0.5 * step)
     turn = np.exp(-2j * np.pi * carrier * delay)
     floor = 2 * both[0].real
-    signal = floor + 4 * band_limited(both, position, filling=0.8).real
-    signal += 4 * (band_limited(single, position, filling=0.8) * turn).real
-    signal += 2 * (band_limited(double, position, filling=0.8) * turn * turn).real
+    signal = floor + 4 * band_limited(both, position).real
+    signal += 4 * (band_limited(single, position) * turn).real
+    signal += 2 * (band_limited(double, position) * turn * turn).real
     signal[np.abs(position) > field.size] = floor
     return Autocorrelation(delay=delay, signal=signal / floor)
 

@@ -19,7 +19,7 @@ Complex = NDArray[np.complex128]
 class TransformLimit:
     """The pulse of the same spectrum with flat phase.
 
-    Fwhm: s. peak_power: W. square_integral: int P^2 dt, W^2 s.
+    fwhm: s. peak_power: W. square_integral: int P^2 dt, W^2 s.
     """
 
     fwhm: float

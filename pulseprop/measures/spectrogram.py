@@ -99,7 +99,6 @@ def _slice(field: Complex, step: float, moment: float, deviation: float, detunin
     last = min(int((moment + GATE_REACH * deviation) / step) + 2, field.size)
     time = step * np.arange(first, last) - moment
     gate = np.exp(-np.square(time / (2 * deviation))) / (2 * np.pi * deviation**2) ** 0.25
-    length = int(scipy.fft.next_fast_len(max(4 * detuning.size, last - first)))
-    spectrum = scipy.fft.ifft(field[first:last] * gate, length, norm="forward")
-    index = np.rint(detuning * length * step).astype(np.int64) % length
-    return power(spectrum[index]) * step * step
+    length = int(scipy.fft.next_fast_len(max(8 * detuning.size, 2 * (last - first))))
+    strength = power(scipy.fft.ifft(field[first:last] * gate, length, norm="forward")) * step * step
+    return np.interp(detuning * length * step, np.arange(length), strength, period=length)

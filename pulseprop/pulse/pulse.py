@@ -21,6 +21,12 @@ Real = NDArray[np.float64]
 CLOSING_SHARE = 0.25
 """The spectrum closes between zero frequency and this share of the centre frequency, where it has to."""
 
+REACH_MARGIN = 1.2
+"""By how much the wings of a chirped pulse may reach beyond the sum of shape and group delays."""
+
+CLOSED_WINGS = 60.0
+"""Reach of the field of the closed part in inverse widths of the closing: its power is then below 1e-9."""
+
 SMALL_AT_ZERO = 1e-9
 """Amplitude at zero frequency over that at the centre, below which the spectrum simply ends there."""
 
@@ -84,8 +90,9 @@ class Pulse:
 
     @cached_property
     def _closes(self) -> bool:
-        ends = self.shape.spectrum(np.array([-self.centre * self.duration, 0.0]))
-        return bool(abs(ends[0]) > SMALL_AT_ZERO * ends[1])
+        # A stretch of frequencies, because some spectra pass through zero now and then.
+        below = self.shape.spectrum(self.centre * self.duration + np.linspace(0, 40, 401))
+        return bool(np.abs(below).max() > SMALL_AT_ZERO * self.shape.spectrum(np.zeros(1))[0])
 
     @cached_property
     def energy_below_zero(self) -> float:
@@ -151,15 +158,15 @@ class Pulse:
         return max(self.centre - reach, 0.0), self.centre + reach
 
     def field_extent(self, share: float) -> tuple[float, float]:
-        """Instants, s, outside of which less than about `share` of the energy lies.
+        """Instants, s, outside of which less than `share` of the energy lies.
 
-        The reach of the unchirped shape around the group delays of all but `share` of the spectrum; a
-        lorentzian has wings falling with t^-4, so its reach grows as share^(-1/3).
+        The reach of the unchirped shape, with a margin, around the group delays of the spectrum, each of the
+        two leaving out half of `share`. A lorentzian's power falls as t^-4: its reach goes as share^(-1/3).
         """
-        reach = self.shape.field_reach(share) * self.duration
+        reach = REACH_MARGIN * self.shape.field_reach(0.5 * share) * self.duration
         if self._closes:
-            reach += 60 / (CLOSING_SHARE * self.centre)
-        low, high = self.spectral_extent(share)
+            reach += CLOSED_WINGS / (CLOSING_SHARE * self.centre)
+        low, high = self.spectral_extent(0.5 * share)
         first, last = self.phase.delays(low - self.centre, high - self.centre)
         return first - reach, last + reach
 

@@ -97,7 +97,7 @@ def supergaussian_field(x: Real, order: int = 2) -> Real:
 
 
 def supergaussian_spectrum(u: Real, order: int = 2) -> Real:
-    """Transform of `supergaussian_field`, to 1e-15 of its peak."""
+    """Transform of `supergaussian_field`, to 5e-15 of its peak."""
     return np.asarray(_supergaussian_transform(order)(np.asarray(u, dtype=float)).real)
 
 
@@ -113,7 +113,7 @@ def finite_field(x: Real) -> Real:
 
 
 def finite_spectrum(u: Real) -> Real:
-    """Transform of `finite_field`, to 1e-15 of its peak."""
+    """Transform of `finite_field`, to 5e-15 of its peak."""
     return np.asarray(_finite_transform()(np.asarray(u, dtype=float)).real)
 
 
