@@ -10,16 +10,18 @@ from __future__ import annotations
 import math
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
-
-import numpy as np
-from numpy.typing import NDArray
+from typing import TYPE_CHECKING
 
 from pulseprop.errors import InputError
 
-__all__ = ["KINDS", "LIGHT_SPEED", "PLANCK", "Form", "Kind", "kind_named"]
+if TYPE_CHECKING:
+    import numpy as np
+    from numpy.typing import NDArray
 
-Values = float | NDArray[np.float64]
-Conversion = Callable[[Values], Values]
+    Values = float | NDArray[np.float64]
+    Conversion = Callable[[Values], Values]
+
+__all__ = ["KINDS", "LIGHT_SPEED", "PLANCK", "Form", "Kind", "kind_named"]
 
 LIGHT_SPEED = 299792458.0
 PLANCK = 6.62607015e-34

@@ -10,11 +10,14 @@ import math
 import re
 from dataclasses import dataclass
 from decimal import Decimal
-from typing import Any, Literal
+from typing import TYPE_CHECKING, Any, Literal
 
 from pulseprop.errors import InputError
-from pulseprop.units.kinds import KINDS, LIGHT_SPEED, Kind, Values, form_of, kind_named
+from pulseprop.units.kinds import KINDS, LIGHT_SPEED, Kind, form_of, kind_named
 from pulseprop.units.symbols import Unit, unit_from
+
+if TYPE_CHECKING:
+    from pulseprop.units.kinds import Values
 
 __all__ = ["Position", "Width", "from_si", "position", "quantity", "show", "spectral_width", "to_si"]
 
@@ -198,6 +201,6 @@ def _unit_hint(tail: str) -> str:
     return "Check the spelling; capitals count"
 
 
-def _brief(value: Any) -> str:
-    text = repr(value)
-    return text if len(text) <= 60 else text[:57] + "..."
+def _brief(value: Any) -> object:
+    """The value as it came, cut where it is long."""
+    return value if len(repr(value)) <= 60 else repr(value)[:57] + "..."
