@@ -117,9 +117,9 @@ class _Where:
 
     def of(self, keys: Keys, *, value: bool) -> tuple[str, str]:
         """File and place of a message; the place of the value or of the key."""
-        if any(
-            keys[: len(origin)] == origin or origin[: len(keys)] == keys for origin in self.origins if keys
-        ):
+        if any(keys[: len(origin)] == origin for origin in self.origins):
+            return "--set", key_path(keys)
+        if keys not in self.places.keys and any(origin[: len(keys)] == keys for origin in self.origins):
             return "--set", key_path(keys)
         found = self.places.of_value(keys) if value else self.places.of_key(keys)
         line = f":{found[0]}:{found[1]}" if found else ""
