@@ -64,8 +64,8 @@ class TestPulse:
         detuning = 2 * np.pi * LOBE * quiet / (4 * self.support)
         return float(np.pi / (1.05 * (self.centre + detuning)))
 
-    def band(self, share: float = 1e-7) -> tuple[float, float]:
-        """Angular frequencies between which the spectrum is above `share` of its peak."""
+    def band(self, share: float) -> tuple[float, float]:
+        """Angular frequencies (rad/s) between which the spectrum is above `share` of its peak."""
         fine = 1 << 12
         spectrum = np.abs(scipy.fft.rfft(self.envelope(np.arange(fine) / fine), 8 * fine))
         detuning = 2 * np.pi * np.flatnonzero(spectrum > share * spectrum[0])[-1] / (8 * self.support)
@@ -117,7 +117,10 @@ def front_test(
         _apply(spectrum, transfer, points, step, magnitude_only=False)
         ahead, last, energy_out, energy_in = _out(spectrum, points, pulse, step)
         floor = max(1e-28, 1e-32 / max(energy_out / energy_in, 1e-300), last)
-        if floor <= (BEST_FLOOR if points < CHEAP_POINTS else GOOD_FLOOR) or 2 * points > most_points:
+        wanted = BEST_FLOOR if points < CHEAP_POINTS else GOOD_FLOOR
+        # A pulse later than the window would come round as if it were early: only a larger window can tell.
+        settled = floor <= wanted and ahead <= CAUSAL_FLOORS * floor
+        if settled or 2 * points > most_points:
             break
         points *= 2
         if progress:

@@ -30,7 +30,7 @@ DEPTH_OF_DECAY = 21.0
 
 @dataclass(frozen=True, kw_only=True)
 class Slab:
-    """thickness in m (> 0), angle in rad outside, [0, pi/2).
+    """thickness in m (>= 0), angle in rad outside, [0, pi/2).
 
     faces: "ideal" (no loss), "fresnel" (loss at both faces), "echoes" (coherent multiple reflection), or "reflectance" with the
     power reflectance of each face in `reflectance`.
@@ -50,8 +50,8 @@ class Slab:
     phase_only: bool = False
 
     def __post_init__(self) -> None:
-        if not self.thickness > 0 or not np.isfinite(self.thickness):
-            raise InputError("a slab needs a thickness above 0", value=self.thickness, allowed="a length above 0")
+        if not self.thickness >= 0 or not np.isfinite(self.thickness):
+            raise InputError("a slab needs a thickness", value=self.thickness, allowed="a length of 0 or more")
         if not 0 <= self.angle < np.pi / 2:
             raise InputError("an angle of incidence outside its range", value=self.angle, allowed="0 deg up to below 90 deg")
         if self.angle > 0 and self.faces in ("fresnel", "echoes") and self.polarisation is None:
@@ -97,6 +97,10 @@ class Slab:
         chi = self.medium.susceptibility(omega, view)
         q = self._root_plus_cosine(chi[None])[0] - np.cos(self.angle)
         return reflection_squared(chi, q, float(np.cos(self.angle)), self.polarisation or "s")
+
+    def face_reflectance(self, omega: float) -> float:
+        """Power reflected by one bare face at omega (rad/s); s polarisation where none is stated."""
+        return float(abs(self._reflection_squared(np.array(omega), View.AXIS)))
 
     def _round_trip(self, omega: Complex | Real, view: View) -> Complex:
         """exp(2 i omega d q / c)."""

@@ -21,14 +21,15 @@ from typing import TYPE_CHECKING
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.numerics.bspline_cauchy import VARIANCE, cauchy, cauchy_slope
-from pulseprop.numerics.series import Series, compose
+from pulseprop.numerics.bspline_cauchy import FAR, VARIANCE, cauchy, cauchy_slope, far_from, moments_of
+from pulseprop.numerics.series import Series
 
 if TYPE_CHECKING:
     from pulseprop.material.formulas import Formula
 
 __all__ = ["ALLOWED_SHIFT", "Completion", "complete"]
 
+Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
 ALLOWED_SHIFT = 1e-8
@@ -55,15 +56,31 @@ class Completion:
 
     def series(self, x: Series) -> Series:
         """g and its slope (at most two terms) of a Taylor series x on or above the real axis."""
-        total = np.zeros(x.shape, dtype=complex)
-        total[0] = self.offset
-        for strength, centre, knot in zip(self.strength, self.centre, self.knot, strict=True):
-            u = (x[0] - centre) / knot
-            outer = [cauchy(u) * (strength / knot)]
-            if len(x) > 1:
-                outer.append(cauchy_slope(u) * (strength / knot**2))
-            total += compose(np.stack(outer), x)
-        return total
+        flat = x[0].ravel()
+        outer = np.zeros((2, flat.size), dtype=complex)
+        outer[0] = self.offset
+        for centre in np.unique(self.centre):
+            same = self.centre == centre
+            outer += _of_one_centre(flat - centre, self.strength[same], self.knot[same])
+        outer = outer.reshape((2, *x[0].shape))
+        if len(x) == 1:
+            return outer[:1]
+        outer[1] *= x[1]
+        return outer
+
+
+def _of_one_centre(distance: Complex | Real, strength: Real, knot: Real) -> Complex:
+    """Value and slope, shape (2, N), of concentric bands at distances from their centre."""
+    total = np.empty((2, distance.size), dtype=complex)
+    far = np.abs(distance) > FAR * knot.max()
+    total[:, far] = far_from(distance[far], moments_of(strength, knot))
+    near = distance[~far]
+    close = np.zeros((2, near.size), dtype=complex)
+    for share, width in zip(strength, knot, strict=True):
+        close[0] += cauchy(near / width) * (share / width)
+        close[1] += cauchy_slope(near / width) * (share / width**2)
+    total[:, ~far] = close
+    return total
 
 
 def complete(formula: Formula) -> Completion:

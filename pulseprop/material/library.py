@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import replace
 from functools import cache
 
@@ -25,6 +26,9 @@ from pulseprop.material.response import Band, Constant, Response, Sum
 
 __all__ = ["catalogue_medium", "response_of_record"]
 
+ROOM = 295.0
+"""What "room temperature" is taken for, K, when an element states another temperature."""
+
 
 @cache
 def catalogue_medium(name: str) -> Medium:
@@ -41,11 +45,12 @@ def catalogue_medium(name: str) -> Medium:
         response=response_of_record(entry),
         source=entry.source + (" (coefficients from memory)" if entry.from_memory else ""),
         temperature=entry.temperature,
-        temperature_K=entry.temperature_K,
+        temperature_K=_kelvin(entry),
         relative_to=entry.relative_to,
         n2=_nonlinear_indices(entry),
         spread=entry.spread,
         notes=_notes(entry),
+        health=entry.health,
         extendable=entry.kind != "debye",
     )
 
@@ -97,7 +102,17 @@ def _nonlinear_indices(entry: Record) -> tuple[NonlinearIndex, ...]:
     return tuple(found)
 
 
+def _kelvin(entry: Record) -> float | None:
+    """Temperature of the record in K: as printed, the first of a range, or that of a room."""
+    if entry.temperature_K is not None:
+        return entry.temperature_K
+    found = re.match(r"(-?\d+(?:\.\d+)?)(?: to \S+)? (degC|K)$", entry.temperature)
+    if found:
+        return float(found.group(1)) + (273.15 if found.group(2) == "degC" else 0.0)
+    return ROOM if entry.temperature == "room temperature" else None
+
+
 def _notes(entry: Record) -> tuple[str, ...]:
     axis = {"o": "ordinary ray", "e": "extraordinary ray"}.get(entry.axis, f"axis {entry.axis}" if entry.axis else "")
     assumed = "the source does not say whether the index is against air or vacuum" if entry.relative_to_assumed else ""
-    return tuple(note for note in (axis, assumed, entry.note, entry.health) if note)
+    return tuple(note for note in (axis, assumed, entry.note) if note)

@@ -44,7 +44,8 @@ class Medium:
     response: the susceptibility. causal: False where only orders or a spline as printed are known, so that causality cannot
     be tested. temperature: as the source prints it. relative_to: what the printed index is against. resonances: what rings in
     it. spread: names of other records of the same substance. extendable: False where the band may not be left even on request
-    (relaxation terms).
+    (relaxation terms). index_is_relative: known up to absorption outside a table, for want of an anchor. health: a hazard of the
+    substance, common practice.
     """
 
     name: str
@@ -60,6 +61,8 @@ class Medium:
     notes: tuple[str, ...] = ()
     printed_digits: int | None = field(default=None)
     extendable: bool = True
+    index_is_relative: bool = False
+    health: str = ""
 
     @property
     def band(self) -> Band:

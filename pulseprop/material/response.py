@@ -36,6 +36,10 @@ class View(Enum):
     """The causal completion everywhere, at any frequency on or above the real axis: for causality tests."""
 
 
+SLACK = 1e-12
+"""The ends of a range are part of it, whatever rounding made of them."""
+
+
 @dataclass(frozen=True)
 class Band:
     """A stretch of angular frequency, rad/s, where a record may be used."""
@@ -46,7 +50,7 @@ class Band:
     def contains(self, omega: Real) -> NDArray[np.bool_]:
         """True where |omega| lies in the band."""
         size = np.abs(omega)
-        return np.asarray((size >= self.low) & (size <= self.high))
+        return np.asarray((size >= self.low * (1 - SLACK)) & (size <= self.high * (1 + SLACK)))
 
     def overlap(self, other: Band) -> Band:
         """The part common to both; an empty band has low > high."""

@@ -13,7 +13,7 @@ from collections.abc import Callable
 import numpy as np
 from numpy.typing import NDArray
 
-__all__ = ["VARIANCE", "cauchy", "cauchy_slope", "density"]
+__all__ = ["FAR", "VARIANCE", "cauchy", "cauchy_slope", "density", "far_from", "moments_of"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -33,6 +33,32 @@ def _moment(order: int) -> float:
 
 
 MOMENTS = np.array([_moment(2 * m) for m in range(TIERS[0][1])])
+
+FAR = 40.0
+"""Distance in knots from which on `far_from` may be used."""
+FAR_TERMS = 5
+
+
+def moments_of(strength: Real, knot: Real) -> Real:
+    """Even moments, shape (5,), of bands of one centre: sum of strength times those of B with each knot distance."""
+    orders = 2 * np.arange(FAR_TERMS)
+    return np.asarray((strength[:, None] * knot[:, None] ** orders * MOMENTS[:FAR_TERMS]).sum(axis=0))
+
+
+def far_from(distance: Complex | Real, moments: Real) -> tuple[Complex | Real, Complex | Real]:
+    """sum of strength c(distance/knot)/knot and its slope, at distances of FAR widest knots and more from the centre."""
+    inverse = 1 / distance
+    square = inverse * inverse
+    value = np.full_like(square, moments[-1])
+    slope = value * (2 * FAR_TERMS - 1)
+    for order in range(FAR_TERMS - 2, -1, -1):
+        value *= square
+        value += moments[order]
+        slope *= square
+        slope += moments[order] * (2 * order + 1)
+    value *= -inverse
+    slope *= square
+    return value, slope
 
 
 def density(u: Real) -> Real:

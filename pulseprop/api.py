@@ -1,0 +1,191 @@
+"""What the command line does, as functions: read, send, media. The same words, the same numbers."""
+
+from __future__ import annotations
+
+import hashlib
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass
+from functools import cache
+from importlib.metadata import PackageNotFoundError
+from importlib.metadata import version as installed_version
+from pathlib import Path
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+
+if TYPE_CHECKING:
+    from pulseprop.material.medium import Medium
+    from pulseprop.propagation.result import Run
+    from pulseprop.propagation.send import Progress
+    from pulseprop.scenario.read import Scenario
+
+__all__ = ["MediumReport", "OrdersRow", "catalogue", "media", "medium", "read", "send", "version"]
+
+SPEED_OF_LIGHT = 299792458.0
+
+
+def version() -> str:
+    """The version of the installed package."""
+    try:
+        return installed_version("pulseprop")
+    except PackageNotFoundError:
+        return "not installed"
+
+
+def read(path: str | Path, overrides: Iterable[str] = ()) -> Scenario:
+    """Read and check a scenario file, with overrides "KEY=VALUE". Raises InputError."""
+    from pulseprop.scenario.read import read_scenario
+
+    return read_scenario(path, overrides)
+
+
+def send(
+    scenario: str | Path | Scenario, overrides: Iterable[str] = (), progress: Progress | None = None
+) -> Run:
+    """Send the pulse of a scenario (a file or what `read` returned) through its path.
+
+    progress(stage, fraction) is called as the work goes on. Raises InputError and NumericalLimit.
+    """
+    from pulseprop.propagation.send import run
+    from pulseprop.scenario.build import build
+
+    if isinstance(scenario, str | Path):
+        scenario = read(scenario, overrides)
+    elif tuple(overrides):
+        raise ValueError("overrides go with a file: give them to read()")
+    experiment = build(scenario)
+    if progress is None:
+        return run(experiment, version(), catalogue_checksum())
+    return run(experiment, version(), catalogue_checksum(), progress)
+
+
+@cache
+def catalogue_checksum() -> str:
+    """SHA-256 over the catalogue's data files."""
+    from pulseprop.material.catalogue import FAMILIES
+
+    folder = Path(__file__).parent / "material"
+    digest = hashlib.sha256()
+    for file in sorted(FAMILIES.values()):
+        digest.update((folder / file).read_bytes())
+    return digest.hexdigest()
+
+
+def catalogue() -> tuple[str, ...]:
+    """The printed names of all media of the catalogue."""
+    from pulseprop.material.catalogue import names
+
+    return names()
+
+
+def medium(name: str) -> Medium:
+    """A medium by name: of the catalogue, or "SCENARIO.toml:NAME" (split at the last colon). Raises InputError."""
+    from pulseprop.material.library import catalogue_medium
+
+    file, colon, own = name.rpartition(":")
+    if colon and file.lower().endswith(".toml"):
+        from pulseprop.scenario.build import media_of
+
+        return media_of(read(file)).medium(own)
+    return catalogue_medium(name)
+
+
+@dataclass(frozen=True, kw_only=True)
+class OrdersRow:
+    """Orders of a medium at one vacuum wavelength; names and units are those of the JSON keys."""
+
+    wavelength_nm: float
+    index: float | None
+    k: float | None
+    absorption_per_mm: float | None
+    group_index: float | None
+    gvd_fs2_per_mm: float | None
+    tod_fs3_per_mm: float | None
+    fod_fs4_per_mm: float | None
+
+
+@dataclass(frozen=True, kw_only=True)
+class MediumReport:
+    """A medium with its source and its orders."""
+
+    name: str
+    source: str
+    temperature: str
+    relative_to: str
+    valid_nm: tuple[float, float] | None
+    notes: tuple[str, ...]
+    spread: tuple[str, ...]
+    n2_m2_per_W: float | None
+    at: tuple[OrdersRow, ...]
+
+    def as_json(self) -> dict[str, Any]:
+        """The document of the JSON report."""
+        from dataclasses import asdict
+
+        document = asdict(self)
+        document["valid_nm"] = None if self.valid_nm is None else list(self.valid_nm)
+        for key in ("notes", "spread", "at"):
+            document[key] = list(document[key])
+        return document
+
+
+def media(names: Sequence[str], at: Sequence[str | float] = ()) -> tuple[MediumReport, ...]:
+    """Reports on media by name, with their orders at vacuum wavelengths ("800 nm", or metres).
+
+    Raises InputError for unknown names, and RangeError for wavelengths outside a record's range.
+    """
+    return tuple(_report(medium(name), at) for name in names)
+
+
+def _report(found: Medium, at: Sequence[str | float]) -> MediumReport:
+    from pulseprop.propagation.sources import valid_nm
+
+    omegas = [_omega(place) for place in at]
+    known = found.nonlinear_index(omegas[0] if omegas else 2.4e15)
+    return MediumReport(
+        name=found.name,
+        source=found.source,
+        temperature=found.temperature,
+        relative_to=found.relative_to,
+        valid_nm=valid_nm(found),
+        notes=found.notes,
+        spread=found.spread,
+        n2_m2_per_W=known.value if known else None,
+        at=tuple(_row(found, omega) for omega in omegas),
+    )
+
+
+def _omega(place: str | float) -> float:
+    from pulseprop.units import quantity
+
+    if isinstance(place, str):
+        return quantity(place, "spectral")
+    return 2 * np.pi * SPEED_OF_LIGHT / place
+
+
+def _row(found: Medium, omega: float) -> OrdersRow:
+    from pulseprop.errors import RangeError
+
+    if not found.band.contains(np.array(omega)):
+        low, high = (2 * np.pi * SPEED_OF_LIGHT / edge * 1e9 if edge else np.inf for edge in (found.band.high, found.band.low))
+        raise RangeError(
+            f"a wavelength outside the range of {found.name!r}",
+            value=f"{2 * np.pi * SPEED_OF_LIGHT / omega * 1e9:.6g} nm",
+            allowed=f"{low:.6g} nm to {high:.6g} nm",
+            remedy="Take a record that covers it: `pulseprop media` lists ranges",
+        )
+    orders = found.orders(omega)
+    return OrdersRow(
+        wavelength_nm=2 * np.pi * SPEED_OF_LIGHT / omega * 1e9,
+        index=_finite(orders.index),
+        k=_finite(orders.k),
+        absorption_per_mm=_finite(orders.absorption * 1e-3),
+        group_index=_finite(orders.group_index),
+        gvd_fs2_per_mm=_finite(orders.gvd * 1e27),
+        tod_fs3_per_mm=_finite(orders.tod * 1e42),
+        fod_fs4_per_mm=_finite(orders.fod * 1e57),
+    )
+
+
+def _finite(value: float) -> float | None:
+    return float(value) if np.isfinite(value) else None

@@ -1,0 +1,119 @@
+"""The walk along the path: the spectrum after each element, and the rows of the dispersion budget."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass, field
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.elements.element import Element, orders_of_element
+from pulseprop.elements.path import Path
+from pulseprop.elements.slab import Slab
+from pulseprop.grid import Grid
+from pulseprop.measures.widths import fwhm, peak
+from pulseprop.propagation.intensity import b_integral, on_axis
+from pulseprop.propagation.result import ElementMeasures
+from pulseprop.propagation.sizing import Windows
+
+__all__ = ["Advance", "Walk", "walk"]
+
+Complex = NDArray[np.complex128]
+Advance = Callable[[Element, Grid, Complex], None]
+"""Takes a spectrum through one element in place."""
+
+FEMTO = 1e15
+PER_CM2 = 1e-4
+FAINTEST_ECHO = 1e-12
+MOST_ECHOES = 12
+
+
+@dataclass(kw_only=True)
+class Walk:
+    """State while walking; `rows` is the result, `spectrum` what leaves."""
+
+    windows: Windows
+    spectrum: Complex
+    omega: float
+    pulse_radius: float | None
+    rows: list[ElementMeasures] = field(default_factory=list)
+    gdd: float | None = 0.0
+    tod: float | None = 0.0
+
+
+def walk(path: Path, windows: Windows, spectrum: Complex, omega: float, radius: float | None, advance: Advance) -> Walk:
+    """Take a copy of the spectrum A(omega) through the path; omega: centre in rad/s; radius: of the pulse's beam, m."""
+    state = Walk(windows=windows, spectrum=spectrum.copy(), omega=omega, pulse_radius=radius)
+    for index, element in enumerate(path):
+        state.rows.append(_row(state, index, element, advance))
+    return state
+
+
+def _row(state: Walk, index: int, element: Element, advance: Advance) -> ElementMeasures:
+    before = state.windows.after(index - 1)
+    grid = state.windows.after(index)
+    energy_in = before.energy(state.spectrum)
+    radius = element.beam_radius or state.pulse_radius
+    b = _b_of(state, element, before, radius)
+    peak_in = peak(before.to_field(state.spectrum)).power if radius else None
+    advance(element, grid, state.spectrum)
+    orders = _orders(element, state.omega)
+    state.gdd = None if orders[1] is None or state.gdd is None else state.gdd + orders[1]
+    state.tod = None if orders[2] is None or state.tod is None else state.tod + orders[2]
+    return ElementMeasures(
+        name=element.name,
+        kind=element.kind,
+        detail=element.detail,
+        group_delay_fs=_scaled(orders[0], 1),
+        gdd_fs2=_scaled(orders[1], 2),
+        tod_fs3=_scaled(orders[2], 3),
+        fod_fs4=_scaled(orders[3], 4),
+        transmission=grid.energy(state.spectrum) / energy_in,
+        gdd_sum_fs2=_scaled(state.gdd, 2),
+        tod_sum_fs3=_scaled(state.tod, 3),
+        fwhm_after_fs=fwhm(grid.to_field(state.spectrum), grid.step) * FEMTO,
+        peak_fluence_J_per_cm2=on_axis(energy_in, radius) * PER_CM2 if radius else None,
+        peak_intensity_W_per_cm2=on_axis(peak_in, radius) * PER_CM2 if radius and peak_in is not None else None,
+        b_integral_rad=b,
+        digits=_digits(element),
+        echoes=_echoes(element, state.omega),
+    )
+
+
+def _orders(element: Element, omega: float) -> tuple[float | None, ...]:
+    """Orders, None where they are not finite (a table that says nothing of them)."""
+    return tuple(value if np.isfinite(value) else None for value in orders_of_element(element, omega))
+
+
+def _scaled(value: float | None, order: int) -> float | None:
+    return None if value is None else float(value * FEMTO**order)
+
+
+def _b_of(state: Walk, element: Element, grid: Grid, radius: float | None) -> float | None:
+    if radius is None:
+        return None
+    if element.medium is None:
+        return 0.0
+    known = element.medium.nonlinear_index(state.omega)
+    return None if known is None else b_integral(element, grid, state.spectrum, state.omega, known.value, radius)
+
+
+def _digits(element: Element) -> int:
+    medium = element.medium
+    return 4 if medium is None or medium.printed_digits is None else medium.printed_digits
+
+
+def _echoes(element: Element, omega: float) -> tuple[tuple[float, float], ...]:
+    """Delay (fs) and share of the energy that leaves of the echoes, at the centre frequency."""
+    if not isinstance(element, Slab) or element.faces != "echoes":
+        return ()
+    delay, ratio = element.echo(omega)
+    strength = abs(ratio) ** 2
+    found = []
+    for trip in range(1, MOST_ECHOES + 1):
+        share = (1 - strength) * strength**trip
+        if share < FAINTEST_ECHO:
+            break
+        found.append((trip * delay * FEMTO, share))
+    return tuple(found)

@@ -1,0 +1,142 @@
+"""Causality of a path: the front test on the real field, the naive filter beside it, passivity, and sum rules."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.causality.front import TestPulse, front_test
+from pulseprop.causality.sum_rules import Feature, sum_rules
+from pulseprop.elements.element import Element
+from pulseprop.elements.path import Path
+from pulseprop.material.features import features_of, relaxes
+from pulseprop.material.medium import Medium
+from pulseprop.material.response import View
+from pulseprop.propagation.result import Causality, NaiveFilter
+from pulseprop.pulse.shapes import FINITE_FWHM, finite_field
+
+__all__ = ["causality_of"]
+
+Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
+
+RINGING_PER_DEPTH = 32.0 / 21.0
+"""The front test follows ringing to exp(-32) in amplitude, the grid of a run to exp(-21)."""
+MOST_POINTS = 1 << 22
+RESONANT_POINTS = 1 << 24
+LOSSLESS = 1e-12
+WEIGHTY = 1e-4
+"""Spectral amplitude over its peak down to which frequencies set the first window of the test."""
+
+
+def causality_of(
+    path: Path,
+    centre: float,
+    duration: float,
+    memory: float,
+    progress: Callable[[float], None] | None = None,
+) -> Causality:
+    """Diagnostics of a path for a finite pulse of this centre (rad/s) and FWHM (s); memory: bytes allowed."""
+    tested = Path(tuple(element for element in path if _is_causal_matter(element)))
+    left_out = tuple(element.name for element in path if not _is_causal_matter(element))
+    passive = all(_is_passive(medium, centre) for medium in path.media)
+    rules = tuple(rule for medium in tested.media for rule in _sum_rules(medium))
+    if not any(element.medium for element in tested):
+        return _nothing_to_test(left_out, passive)
+    pulse = _test_pulse(centre, duration)
+    low, high = pulse.band(WEIGHTY)
+    ringing = max(element.ringing(low, high) for element in tested) * RINGING_PER_DEPTH
+    result = front_test(
+        pulse,
+        lambda omega: tested.transfer(omega, View.COMPLETED),
+        first_span=2 * pulse.support + _latest(tested, low, high) + ringing,
+        most_points=_allowed(memory, resonant=ringing > 0),
+        absorbs=_absorbs(tested, low, high),
+        progress=progress,
+    )
+    naive = None
+    if result.naive_energy_ahead is not None and result.naive_verdict is not None:
+        naive = NaiveFilter(energy_ahead_of_front=result.naive_energy_ahead, verdict=result.naive_verdict)
+    return Causality(
+        verdict=result.verdict,
+        energy_ahead_of_front=result.energy_ahead,
+        noise_floor=result.noise_floor,
+        kk_residual=0.0,
+        kk_basis="closed form: every response of the path is a Kramers-Kronig pair by construction",
+        passive=passive,
+        naive_filter=naive,
+        sum_rules=rules,
+        left_out=left_out,
+        front_points=result.points,
+        remark=_remark(result.verdict, result.span),
+    )
+
+
+def _is_causal_matter(element: Element) -> bool:
+    return not element.phase_only and (element.medium is None or element.medium.causal)
+
+
+def _nothing_to_test(left_out: tuple[str, ...], passive: bool) -> Causality:
+    return Causality(
+        verdict="unresolved" if left_out else "causal",
+        energy_ahead_of_front=None if left_out else 0.0,
+        noise_floor=None if left_out else 0.0,
+        kk_residual=None if left_out else 0.0,
+        kk_basis="" if left_out else "closed form: vacuum",
+        passive=passive,
+        naive_filter=None,
+        left_out=left_out,
+        remark="no matter in the path to which the front test applies" if left_out else "",
+    )
+
+
+def _test_pulse(centre: float, duration: float) -> TestPulse:
+    return TestPulse(
+        envelope=lambda x: finite_field((x - 0.5) / FINITE_FWHM), support=duration / FINITE_FWHM, centre=centre
+    )
+
+
+def _sum_rules(medium: Medium) -> tuple[tuple[str, str, float | None, str], ...]:
+    features = [Feature(centre, width) for centre, width in features_of(medium.response)]
+    rules = sum_rules(
+        lambda omega: medium.susceptibility(omega, View.COMPLETED), features, relaxes=relaxes(medium.response)
+    )
+    return tuple((medium.name, rule.name, rule.ratio, rule.remark) for rule in rules)
+
+
+def _latest(path: Path, low: float, high: float) -> float:
+    """The latest group delay in s that matters, at frequencies that still pass."""
+    series = path.exponent(np.linspace(low, high, 513), 2, View.COMPLETED)
+    seen = np.real(series[0]) > -20
+    return float(np.max(np.imag(series[1]), where=seen, initial=0.0))
+
+
+def _allowed(memory: float, *, resonant: bool) -> int:
+    """Points for the front test: four real and complex arrays of half its length at a time."""
+    fitting = 1 << int(np.log2(max(memory / 64.0, 4096.0)))
+    return min(RESONANT_POINTS if resonant else MOST_POINTS, fitting)
+
+
+def _absorbs(path: Path, low: float, high: float) -> bool:
+    exponent = np.real(path.exponent(np.linspace(low, high, 513), 1, View.COMPLETED)[0])
+    varies = float(np.ptp(exponent)) > LOSSLESS
+    return varies or any(medium.resonances for medium in path.media)
+
+
+def _is_passive(medium: Medium, centre: float) -> bool:
+    """Im chi >= 0 over two decades about the centre and at every resonance."""
+    omega = np.geomspace(centre / 10, centre * 10, 801)
+    omega = np.concatenate((omega, [line.centre for line in medium.resonances]))
+    chi = medium.susceptibility(omega)
+    return bool(np.all(chi.imag >= -1e-12 * np.abs(chi)))
+
+
+def _remark(verdict: str, span: float) -> str:
+    if verdict != "unresolved":
+        return ""
+    return (
+        f"the answer lasts longer than the window of {span * 1e12:.3g} ps that fits; what wraps around hides "
+        "whether anything leaves early"
+    )

@@ -1,0 +1,87 @@
+"""What a duration or an autocorrelation measured beside a spectrum says of the chirp: its size, and what would tell its sign."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+import numpy as np
+
+from pulseprop.elements.path import Path
+from pulseprop.material.library import catalogue_medium
+from pulseprop.measures.autocorrelation import intensity_autocorrelation
+from pulseprop.propagation.assess import measured
+from pulseprop.propagation.experiment import Experiment, MeasuredAutocorrelation
+from pulseprop.propagation.linear import multiply_by
+from pulseprop.propagation.result import AutocorrelationFit, SignCase
+from pulseprop.propagation.sizing import first_windows
+from pulseprop.pulse.chirp import gdd_from_autocorrelation, glass_that_tells_the_sign
+from pulseprop.pulse.measured import MeasuredPulse
+from pulseprop.pulse.pulse import Pulse
+from pulseprop.pulse.source import launch
+
+__all__ = ["autocorrelation_fit", "sign_cases"]
+
+FEMTO = 1e15
+GLASS = "fused silica"
+SMALLEST_GDD = 1e-33
+"""s^2: below this there is no chirp whose sign could be told."""
+
+
+def sign_cases(experiment: Experiment) -> tuple[SignCase, ...]:
+    """The pulse at the end of the path for both signs of the entrance's GDD."""
+    size = abs(experiment.pulse.gdd)
+    return tuple(_case(experiment, sign * size) for sign in (1, -1))
+
+
+def _case(experiment: Experiment, gdd: float) -> SignCase:
+    pulse = replace(experiment.pulse, gdd=gdd)
+    path: Path = experiment.path
+    windows = first_windows(pulse, path, experiment.grid)
+    spectrum = pulse.amplitude(windows.grid.omega)
+    for element in path:
+        multiply_by(element, windows.grid, spectrum)
+    after, _ = measured(windows.after(len(path) - 1), spectrum, after_path=True)
+    return SignCase(
+        gdd_in_fs2=gdd * FEMTO**2,
+        fwhm_fs=after.fwhm_fs,
+        peak_ratio=after.peak_ratio or 0.0,
+        autocorrelation_fwhm_fs=after.autocorrelation_fwhm_fs,
+    )
+
+
+def autocorrelation_fit(experiment: Experiment) -> AutocorrelationFit | None:
+    """The measured autocorrelation beside the predicted one, |GDD| fitted; None where none was given."""
+    trace = experiment.autocorrelation
+    if trace is None:
+        return None
+    pulse = experiment.pulse
+    fit = gdd_from_autocorrelation(pulse, trace.delay, trace.signal)
+    glass = _glass(pulse, fit.gdd)
+    shown = (trace.signal - fit.background) / fit.scale
+    return AutocorrelationFit(
+        delay_fs=(trace.delay - fit.centre) * FEMTO,
+        measured=shown,
+        predicted=_predicted(pulse, trace, fit.centre),
+        fitted=(fit.fitted - fit.background) / fit.scale,
+        gdd_fs2=fit.gdd * FEMTO**2,
+        residual=fit.residual,
+        glass=GLASS,
+        glass_mm=glass[0],
+        fwhm_if_positive_fs=glass[1],
+        fwhm_if_negative_fs=glass[2],
+    )
+
+
+def _glass(pulse: Pulse | MeasuredPulse, gdd: float) -> tuple[float | None, float | None, float | None]:
+    """Thickness in mm of the glass that tells the sign, and both autocorrelation widths in fs after it."""
+    medium = catalogue_medium(GLASS)
+    if abs(gdd) < SMALLEST_GDD or not medium.band.contains(np.array(pulse.centre)):
+        return None, None, None
+    found = glass_that_tells_the_sign(pulse, gdd, lambda omega: medium.orders(omega).gvd)
+    return found.thickness * 1e3, found.width_if_positive * FEMTO, found.width_if_negative * FEMTO
+
+
+def _predicted(pulse: Pulse | MeasuredPulse, trace: MeasuredAutocorrelation, centre: float) -> np.ndarray:
+    grid, envelope = launch(pulse)
+    predicted = intensity_autocorrelation(envelope, grid.step)
+    return np.interp(trace.delay - centre, predicted.delay, predicted.signal, left=0.0, right=0.0)

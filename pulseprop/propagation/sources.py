@@ -1,0 +1,59 @@
+"""Source lines of the media of a path, with the spread between published records."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from pulseprop.elements.path import Path
+from pulseprop.errors import PulsepropError
+from pulseprop.material.library import catalogue_medium
+from pulseprop.material.medium import Medium
+from pulseprop.propagation.result import MediumUsed
+
+__all__ = ["media_used"]
+
+FS2_PER_MM = 1e27
+
+
+def media_used(path: Path, omega: float) -> tuple[MediumUsed, ...]:
+    """One entry a medium, at the pulse's centre omega (rad/s)."""
+    return tuple(_used(medium, omega) for medium in path.media)
+
+
+def _used(medium: Medium, omega: float) -> MediumUsed:
+    orders = medium.orders(omega)
+    return MediumUsed(
+        name=medium.name,
+        source=medium.source,
+        temperature=medium.temperature,
+        relative_to=medium.relative_to,
+        valid_nm=valid_nm(medium),
+        index=_finite(orders.index),
+        gvd_fs2_per_mm=_finite(orders.gvd * FS2_PER_MM),
+        spread=tuple((name, _gvd(name, omega)) for name in medium.spread),
+        notes=medium.notes,
+    )
+
+
+def valid_nm(medium: Medium) -> tuple[float, float] | None:
+    """Range of vacuum wavelength in nm; None where the medium is not bounded on both sides."""
+    low, high = medium.band.low, medium.band.high
+    if low <= 0 or not np.isfinite(high):
+        return None
+    metre = 2 * np.pi * 299792458.0
+    return float(f"{metre / high * 1e9:.9g}"), float(f"{metre / low * 1e9:.9g}")
+
+
+def _gvd(name: str, omega: float) -> float | None:
+    """GVD in fs^2/mm of another record at omega; None outside its range."""
+    try:
+        other = catalogue_medium(name)
+    except PulsepropError:
+        return None
+    if not other.band.contains(np.array(omega)):
+        return None
+    return _finite(other.orders(omega).gvd * FS2_PER_MM)
+
+
+def _finite(value: float) -> float | None:
+    return value if np.isfinite(value) else None

@@ -1,0 +1,54 @@
+"""A slab taken in split steps instead of at once: the loop that nonlinear terms need, on a linear path the exact answer."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.elements.element import Element
+from pulseprop.grid import Grid
+from pulseprop.numerics.plans import Plan, natural
+from pulseprop.propagation.linear import blocks, multiply_by
+from pulseprop.propagation.stepping import STEPPERS, FixedSteps, march
+
+__all__ = ["SteppedAdvance"]
+
+Complex = NDArray[np.complex128]
+
+STEPS_PER_ELEMENT = 16
+
+
+@dataclass(kw_only=True)
+class SteppedAdvance:
+    """Advances a spectrum through elements by a named stepper; counts steps and transforms."""
+
+    method: str
+    points: int
+    steps: int = 0
+    transforms: int = 0
+    plan: Plan = field(init=False)
+
+    def __post_init__(self) -> None:
+        self.plan = Plan(self.points, effort="estimate")
+
+    def __call__(self, element: Element, grid: Grid, spectrum: Complex) -> None:
+        """Take A(omega) through one element in place; elements without length are applied at once."""
+        if element.length == 0:
+            multiply_by(element, grid, spectrum)
+            return
+        exponent = np.zeros(grid.points, dtype=complex)
+        for part in blocks(grid):
+            omega = 2 * np.pi * grid.frequency[part]
+            exponent[part] = element.exponent(omega, 1)[0] / element.length
+            factor = element.factor(omega)
+            if factor is not None:
+                spectrum[part] *= factor
+        self.plan.buffer[:] = natural(spectrum)
+        travelled = march(
+            self.plan, natural(exponent), (), element.length, STEPPERS[self.method](), FixedSteps(STEPS_PER_ELEMENT)
+        )
+        spectrum[:] = np.fft.fftshift(self.plan.buffer)
+        self.steps += travelled.steps
+        self.transforms += travelled.transforms

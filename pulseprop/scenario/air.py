@@ -1,0 +1,42 @@
+"""Wavelengths that were stated in air."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.errors import InputError
+from pulseprop.material.library import catalogue_medium
+
+__all__ = ["omega_of_air_wavelength", "omegas_of_air_wavelengths"]
+
+SETTLED = 1e-15
+ROUNDS = 50
+
+
+def omega_of_air_wavelength(omega: float) -> float:
+    """Frequency (rad/s) of light whose wavelength in standard air is 2 pi c / omega (P. E. Ciddor, 1996).
+
+    Raises InputError outside the range of the air formula.
+    """
+    return float(omegas_of_air_wavelengths(np.array([omega]))[0])
+
+
+def omegas_of_air_wavelengths(omega: NDArray[np.float64]) -> NDArray[np.float64]:
+    """The same for many."""
+    air = catalogue_medium("air")
+    outside = ~air.band.contains(omega)
+    if outside.any():
+        raise InputError(
+            "a wavelength in air outside the range of the air formula",
+            value=f"{2 * np.pi * 299792458.0 / omega[outside][0] * 1e9:.6g} nm",
+            allowed="230 nm to 1690 nm",
+            remedy='State vacuum wavelengths (wavelength_in = "vacuum")',
+        )
+    true = omega
+    for _ in range(ROUNDS):
+        following = omega / np.real(air.index(true))
+        if np.all(np.abs(following - true) <= SETTLED * omega):
+            break
+        true = following
+    return np.asarray(true)

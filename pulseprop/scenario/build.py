@@ -1,0 +1,55 @@
+"""From a checked scenario to the experiment that a run takes."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+from pulseprop.errors import InputError, PulsepropError
+from pulseprop.propagation.experiment import Experiment
+from pulseprop.propagation.sizing import GridWish
+from pulseprop.scenario.build_medium import MediaOfScenario
+from pulseprop.scenario.build_path import built_path
+from pulseprop.scenario.build_pulse import autocorrelation_of, built_pulse
+from pulseprop.scenario.read import Scenario
+
+__all__ = ["build", "media_of"]
+
+
+def media_of(scenario: Scenario) -> MediaOfScenario:
+    """The media that the scenario describes, by name."""
+    return MediaOfScenario(scenario)
+
+
+def build(scenario: Scenario) -> Experiment:
+    """Build pulse, media and path. Raises InputError with file and place for what cannot be built."""
+    content = scenario.content
+    if not content.path:
+        raise scenario.blamed(
+            InputError("the path is empty", allowed="one [[path]] table or more", remedy="Add an element"), "path"
+        )
+    media = media_of(scenario)
+    try:
+        pulse, both_signs = built_pulse(scenario)
+        trace = autocorrelation_of(scenario)
+    except PulsepropError as error:
+        raise scenario.blamed(error, "pulse") from None
+    method = content.propagation.method
+    wish = GridWish(span=content.grid.span, points=content.grid.points, form=content.propagation.form)
+    if content.grid.memory is not None:
+        wish = replace(wish, memory=content.grid.memory)
+    return Experiment(
+        title=content.title or scenario.file,
+        question=content.question,
+        note=" ".join(part for part in (content.laboratory, content.note) if part),
+        pulse=pulse,
+        path=built_path(scenario, media, pulse.centre),
+        file=scenario.file,
+        text=scenario.text,
+        sha256=scenario.sha256,
+        both_signs=both_signs,
+        grid=wish,
+        beyond_range=content.grid.beyond_range,
+        method="exact" if method == "auto" else method,
+        local_error=content.propagation.local_error,
+        autocorrelation=trace,
+    )

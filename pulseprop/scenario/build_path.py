@@ -1,0 +1,84 @@
+"""The path of a scenario, element by element, with places in every complaint."""
+
+from __future__ import annotations
+
+from pulseprop.elements.element import Element
+from pulseprop.elements.path import Path
+from pulseprop.elements.phase_orders import Loss, PhaseOrders
+from pulseprop.elements.slab import Slab
+from pulseprop.errors import PulsepropError
+from pulseprop.scenario.build_medium import MediaOfScenario
+from pulseprop.scenario.read import Scenario
+from pulseprop.scenario.schema_path import (
+    ElementTable,
+    KnownOrdersTable,
+    LossTable,
+    OrdersTable,
+    SlabTable,
+)
+
+__all__ = ["built_path"]
+
+SCALES = ((1.0, "m"), (1e-3, "mm"), (1e-6, "um"), (1e-9, "nm"))
+
+
+def built_path(scenario: Scenario, media: MediaOfScenario, centre: float) -> Path:
+    """Elements in order; centre: of the pulse, rad/s, about which known orders are counted."""
+    elements = []
+    for number, table in enumerate(scenario.content.path, start=1):
+        try:
+            elements.append(_built(table, number, media, centre))
+        except PulsepropError as error:
+            raise scenario.blamed(error, "path", number - 1) from None
+    return Path(tuple(elements))
+
+
+def _built(table: ElementTable, number: int, media: MediaOfScenario, centre: float) -> Element:
+    if isinstance(table, SlabTable):
+        return _slab(table, number, media)
+    if isinstance(table, LossTable):
+        share = f"{100 * table.transmittance:.4g} % transmitted"
+        return Loss(
+            name=table.name or f"loss {number}",
+            transmittance=table.transmittance,
+            beam_radius=table.beam_radius,
+            detail=share,
+        )
+    assert isinstance(table, OrdersTable)
+    known = table if isinstance(table, KnownOrdersTable) else None
+    return PhaseOrders(
+        name=table.name or f"{table.kind} {number}",  # type: ignore[attr-defined]
+        kind=table.kind,  # type: ignore[attr-defined]
+        centre=centre,
+        group_delay=known.group_delay if known else 0.0,
+        gdd=table.gdd,
+        tod=table.tod,
+        fod=table.fod,
+        transmittance=known.transmittance if known else 1.0,
+        beam_radius=table.beam_radius,
+        detail="phase only",
+    )
+
+
+def _slab(table: SlabTable, number: int, media: MediaOfScenario) -> Slab:
+    medium = media.medium(table.medium)
+    stated = table.reflectance is not None
+    return Slab(
+        name=table.name or f"{table.medium} {number}",
+        medium=medium,
+        thickness=table.thickness,
+        angle=table.angle,
+        polarisation=table.polarisation,
+        faces="reflectance" if stated else table.faces,
+        reflectance=table.reflectance or 0.0,
+        beam_radius=table.beam_radius,
+        temperature_K=table.temperature,
+        detail=f"{_length(table.thickness)} {medium.name}",
+    )
+
+
+def _length(metres: float) -> str:
+    for scale, unit in SCALES:
+        if metres >= scale:
+            return f"{metres / scale:.4g} {unit}"
+    return f"{metres / 1e-9:.4g} nm"
