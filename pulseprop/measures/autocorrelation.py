@@ -28,6 +28,9 @@ NEGLECTED = 1e-18
 FRINGE_POINTS = 16
 """Delays an optical period in the interferometric trace; its fastest fringe has half a period."""
 
+LONGEST_FRINGED = 1 << 17
+"""Samples about the peak that enter a fringe-resolved trace; fainter ringing further off is left out."""
+
 LONGEST_TRACE = 20001
 """Delays in an interferometric trace for looking."""
 
@@ -58,6 +61,12 @@ def _correlation(left: Complex, right: Complex, length: int) -> Complex:
     product = scipy.fft.fft(left, length)
     product *= scipy.fft.fft(right, length).conj()
     return np.asarray(scipy.fft.ifft(product, overwrite_x=True))
+
+
+def _about_peak(field: Complex) -> Complex:
+    """At most `LONGEST_FRINGED` samples about the highest."""
+    first = max(int(np.argmax(power(field))) - LONGEST_FRINGED // 2, 0)
+    return field[first : first + LONGEST_FRINGED]
 
 
 def _doubled(field: Complex) -> Complex:
@@ -105,7 +114,7 @@ def interferometric_autocorrelation(
     """
     if delay is None:
         delay = _fringe_delays(1.5 * autocorrelation_fwhm(envelope, step), carrier)
-    field = _doubled(_gathered(envelope))
+    field = _doubled(_about_peak(_gathered(envelope)))
     height = power(field)
     length = int(scipy.fft.next_fast_len(2 * field.size))
     both = _correlation(height.astype(complex), height.astype(complex), length)

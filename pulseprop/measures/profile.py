@@ -26,16 +26,17 @@ CANDIDATES = 12
 """Local maxima of the samples that are refined: the largest sample need not stand beside the largest peak."""
 
 FINER = 8
-"""Points a sample when a crossing is sought between samples; at least four fit any period of the profile."""
+"""Points a sample when a crest, a dip or a crossing is sought between samples."""
+
+CREST = 0.4
+"""A crest between samples has a sample of at least this share of its height beside it: half of it where the
+power swings from zero and back within the two samples that a field oversampled twice allows."""
 
 ZOOM = 33
 """Points in each closer look; three of them narrow a sample to 3e-5 of itself."""
 
-FIRST_STEPS, MOST_STEPS = 8, 512
-"""Samples looked at together on the way to the outermost crossing: few at first, doubled as it goes on."""
-
-COUNTED = 1 << 13
-"""Longest stretch, in samples, whose dips are counted between samples; beyond it the samples are counted."""
+ROWS = 128
+"""Crests looked at together on the way to the outermost crossing."""
 
 
 def power(samples: Complex | Real) -> Real:
@@ -96,7 +97,7 @@ def _peak(profile: _Profile, heights: Real) -> Peak:
 
 def _candidates(heights: Real) -> list[int]:
     """The highest local maxima of the samples that could stand beside the highest peak."""
-    threshold = 0.4 * heights.max()
+    threshold = CREST * heights.max()
     high = np.flatnonzero(heights > threshold)
     count = heights.size
     local = high[(heights[high] >= heights[high - 1]) & (heights[high] >= heights[(high + 1) % count])]
@@ -130,9 +131,9 @@ def half_maximum(samples: Complex | Real, height: Height = power) -> Stretch:
     heights = height(samples)
     top = _peak(profile, heights)
     half = 0.5 * top.power
-    first, last = _span(heights > 0.4 * half)
-    left = -_crossing(profile, -first, -last, -1, half)
-    right = _crossing(profile, last, first, 1, half)
+    first, last = _span(heights > CREST * half)
+    left = -_crossing(profile, heights, -first, -last, -1, half)
+    right = _crossing(profile, heights, last, first, 1, half)
     return Stretch(peak=top, left=left, right=right, split=_dips(profile, heights, left, right, half))
 
 
@@ -146,18 +147,30 @@ def _span(high: NDArray[np.bool_]) -> tuple[int, int]:
     return int(index[widest + 1]) - high.size, int(index[widest])
 
 
-def _crossing(profile: _Profile, outer: int, inner: int, sign: int, half: float) -> float:
-    """Walk inwards from one sample outside `outer` to the first point at half height.
+def _crossing(profile: _Profile, heights: Real, outer: int, inner: int, sign: int, half: float) -> float:
+    """The outermost point at half height between samples `inner` and one beyond `outer`.
 
-    Positions are counted times `sign`, so that outwards is upwards on both sides; result likewise.
+    Positions are counted times `sign`, so that outwards is upwards on both sides; the result likewise. Only
+    crests of the samples can hide a point above half height outside the outermost sample that is above it.
     """
-    start, steps = outer + 1, FIRST_STEPS
-    while start > inner - 1:
-        offsets = np.arange(0, steps * FINER + 1) / FINER
-        above = profile(-sign * offsets, sign * start) >= half
+    count = heights.size
+    inwards = np.arange(outer, inner - 1, -1)
+    at_half = heights[sign * inwards % count] >= half
+    sure = int(np.argmax(at_half)) if at_half.any() else inwards.size
+    beyond = inwards[: sure + 1]
+    here = heights[sign * beyond % count]
+    crest = (here >= heights[sign * (beyond + 1) % count]) & (here >= heights[sign * (beyond - 1) % count])
+    if sure < inwards.size:
+        crest[sure] = True
+    offsets = np.arange(FINER, -FINER - 1, -1) / FINER
+    crests = beyond[crest]
+    for first in range(0, crests.size, ROWS):
+        rows = crests[first : first + ROWS]
+        origin = int(rows[0])
+        places = ((rows - origin)[:, None] + offsets).ravel()
+        above = profile(sign * places, sign * origin) >= half
         if above.any():
-            return _root(profile, start - float(offsets[int(np.argmax(above))]), 1 / FINER, sign, half)
-        start, steps = start - steps, min(2 * steps, MOST_STEPS)
+            return _root(profile, origin + float(places[int(np.argmax(above))]), 1 / FINER, sign, half)
     raise InputError("no half-maximum point was found", remedy="Sample the field at least twice as finely")
 
 
@@ -177,10 +190,20 @@ def _root(profile: _Profile, inside: float, reach: float, sign: int, half: float
 
 
 def _dips(profile: _Profile, heights: Real, left: float, right: float, half: float) -> bool:
-    """Whether the height falls below half between the two crossings."""
-    first, last = int(np.ceil(left)), int(np.floor(right))
-    if last - first > COUNTED:
-        return bool((heights[np.arange(first, last + 1) % heights.size] < half).any())
+    """Whether the height falls below half between the two crossings.
+
+    Only troughs of the samples can hide a dip between samples that are all above.
+    """
+    # The crossings themselves are at half height, give or take a rounding.
     margin = 1e-6 * (right - left)
-    offsets = np.linspace(left + margin, right - margin, max(FINER * (last - first + 1), 2 * FINER))
-    return bool((profile(offsets - first, first) < half).any())
+    inner = np.arange(int(np.ceil(left + margin)), int(np.floor(right - margin)) + 1)
+    here = heights[inner % heights.size]
+    if (here < half).any():
+        return True
+    trough = (here <= heights[(inner - 1) % heights.size]) & (here <= heights[(inner + 1) % heights.size])
+    trough &= here < half / CREST
+    ends = np.array([left, right])
+    places = np.concatenate((inner[trough], ends))[:, None] + np.linspace(-1, 1, 2 * FINER + 1)
+    inside = places[(places > left + margin) & (places < right - margin)]
+    origin = int(np.floor(left))
+    return bool((profile(inside - origin, origin) < half).any())
