@@ -1,0 +1,116 @@
+"""Files written whole or not at all: into a neighbour first, then moved over the name in one step."""
+
+from __future__ import annotations
+
+import json
+import os
+import sys
+import tempfile
+from collections.abc import Callable
+from pathlib import Path
+from typing import Any
+
+from pulseprop.errors import InputError
+
+__all__ = ["STDOUT", "check_target", "json_text", "write_bytes", "write_json", "write_text", "written_whole"]
+
+STDOUT = "-"
+"""The target that means standard output."""
+
+
+def written_whole(target: str | Path, writer: Callable[[Path], None]) -> Path:
+    """Let `writer` fill a temporary file beside the target, then put it in the target's place.
+
+    Whatever stood there stays until the new file is complete. Raises InputError where the target cannot be
+    written; other failures of the writer pass through, and leave nothing behind.
+    """
+    target = Path(target)
+    check_target(target)
+    try:
+        handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.", suffix=target.suffix)
+    except OSError as error:
+        raise _unwritable(target, error) from error
+    os.close(handle)
+    temporary = Path(name)
+    try:
+        writer(temporary)
+        temporary.chmod(0o666 & ~_umask())
+        os.replace(temporary, target)
+    except OSError as error:
+        raise _unwritable(target, error) from error
+    finally:
+        temporary.unlink(missing_ok=True)
+    return target
+
+
+def check_target(target: str | Path) -> None:
+    """Raise InputError where a file of this name cannot be made: for use before the work begins."""
+    target = Path(target)
+    if str(target) == STDOUT:
+        return
+    if target.is_dir():
+        raise InputError(
+            "the output is a directory",
+            file=str(target),
+            allowed="the name of a file",
+            remedy="Add a file name",
+        )
+    if not target.parent.is_dir():
+        raise InputError(
+            "the output cannot be written",
+            value=f"no directory {target.parent}",
+            file=str(target),
+            allowed="a file in a directory that exists",
+            remedy="Make the directory, or name another place",
+        )
+    if not os.access(target.parent, os.W_OK):
+        raise _unwritable(target, PermissionError(13, "Permission denied"))
+
+
+def write_bytes(target: str | Path, data: bytes) -> None:
+    """Bytes to a file, or to standard output for "-"."""
+    if str(target) == STDOUT:
+        sys.stdout.buffer.write(data)
+        sys.stdout.buffer.flush()
+    else:
+        written_whole(target, lambda path: _fill(path, data))
+
+
+def write_text(target: str | Path, text: str) -> None:
+    """Text as UTF-8 to a file, or to standard output for "-"."""
+    if str(target) == STDOUT:
+        sys.stdout.write(text)
+        sys.stdout.flush()
+    else:
+        write_bytes(target, text.encode())
+
+
+def write_json(target: str | Path, document: Any) -> None:
+    """One JSON document, to a file or to standard output."""
+    write_text(target, json_text(document))
+
+
+def json_text(document: Any) -> str:
+    """Strict JSON (no NaN, no infinities) in plain ASCII, so that no terminal can spoil it."""
+    return json.dumps(document, indent=2, allow_nan=False) + "\n"
+
+
+def _fill(path: Path, data: bytes) -> None:
+    path.write_bytes(data)
+
+
+def _unwritable(target: Path, error: OSError) -> InputError:
+    return InputError(
+        "the output cannot be written",
+        value=error.strerror or str(error),
+        file=str(target),
+        allowed="a place where you may write, with room on the disk",
+        remedy="Name another place, or free some room; nothing was written there",
+    )
+
+
+def _umask() -> int:
+    """The mask for new files; it can only be read by setting it."""
+    mask = os.umask(0)
+    os.umask(mask)
+    return mask

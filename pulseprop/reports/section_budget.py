@@ -1,0 +1,124 @@
+"""The dispersion budget: what each element adds, and what the pulse is after it."""
+
+from __future__ import annotations
+
+from pulseprop.propagation.result import ElementMeasures, Run
+from pulseprop.reports.blocks import Column, Paragraph, Section, Table
+from pulseprop.reports.numbers import NOTHING, fixed, last_place, percent, scaled, significant, span
+
+__all__ = ["budget_section", "digits_of"]
+
+MOST_DIGITS = 4
+"""Digits of a width or a share, however many the data behind it carry."""
+
+
+def digits_of(run: Run) -> int:
+    """Significant digits that an answer about the whole path may have: those of its coarsest element."""
+    return min([MOST_DIGITS, *(max(element.digits, 1) for element in run.elements)])
+
+
+def budget_section(run: Run) -> Section:
+    """A row an element in the order of the path, the total, and the estimate from GDD alone beside it."""
+    if not run.elements:
+        text = "The path is empty: what leaves is what enters."
+        return Section("budget", "Dispersion budget", (Paragraph(text),))
+    blocks: list[Table | Paragraph] = [_table(run), Paragraph(_estimate(run))]
+    blocks += [Paragraph(text) for text in (_loads(run), *_echoes(run)) if text]
+    return Section("budget", "Dispersion budget", tuple(blocks))
+
+
+def _table(run: Run) -> Table:
+    unit, factor = scaled([run.pulse_in.fwhm_fs, *(element.fwhm_after_fs for element in run.elements)])
+    columns = (
+        Column("element", words=True),
+        Column("GDD", "fs^2"),
+        Column("TOD", "fs^3"),
+        Column("FOD", "fs^4"),
+        Column("sum GDD", "fs^2"),
+        Column("sum TOD", "fs^3"),
+        Column("FWHM after", unit),
+        Column("transmission"),
+    )
+    rows = [_row(element, run.elements[: number + 1], factor) for number, element in enumerate(run.elements)]
+    return Table(columns, tuple(rows), (_total(run, factor),))
+
+
+def _row(element: ElementMeasures, so_far: tuple[ElementMeasures, ...], factor: float) -> tuple[str, ...]:
+    digits = element.digits
+    width_digits = min([MOST_DIGITS, *(known.digits for known in so_far)])
+    return (
+        _name(element),
+        significant(element.gdd_fs2, digits),
+        significant(element.tod_fs3, digits),
+        significant(element.fod_fs4, digits),
+        _sum(element.gdd_sum_fs2, [known.gdd_fs2 for known in so_far], so_far),
+        _sum(element.tod_sum_fs3, [known.tod_fs3 for known in so_far], so_far),
+        significant(element.fwhm_after_fs * factor, width_digits),
+        percent(element.transmission, min(digits, 3)),
+    )
+
+
+def _total(run: Run, factor: float) -> tuple[str, ...]:
+    path = run.path
+    return (
+        "whole path",
+        _sum(path.gdd_fs2, [element.gdd_fs2 for element in run.elements], run.elements),
+        _sum(path.tod_fs3, [element.tod_fs3 for element in run.elements], run.elements),
+        _sum(path.fod_fs4, [element.fod_fs4 for element in run.elements], run.elements),
+        "",
+        "",
+        significant(run.pulse_out.fwhm_fs * factor, digits_of(run)),
+        percent(path.transmission, min(digits_of(run), 3)),
+    )
+
+
+def _name(element: ElementMeasures) -> str:
+    if not element.detail or element.detail == element.name:
+        return element.name
+    return f"{element.name}: {element.detail}"
+
+
+def _sum(total: float | None, terms: list[float | None], elements: tuple[ElementMeasures, ...]) -> str:
+    """A sum is known no finer than its coarsest term."""
+    places = [last_place(term, element.digits) for term, element in zip(terms, elements, strict=True)]
+    known = [place for place in places if place is not None]
+    if total is None:
+        return NOTHING
+    return fixed(total, max(known)) if known else "0"
+
+
+def _estimate(run: Run) -> str:
+    width = run.path.gdd_only_fwhm_fs
+    full = span(run.pulse_out.fwhm_fs, digits_of(run))
+    if width is None:
+        return "Textbook estimate from GDD alone: none here (it needs a pulse and a path whose orders are known)."
+    return (
+        f"Textbook estimate from GDD alone, Gaussian: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) = "
+        f"{span(width, digits_of(run))}; with everything counted: {full}."
+    )
+
+
+def _loads(run: Run) -> str:
+    """Where fluence and B-integral are highest, one sentence."""
+    loaded = [element for element in run.elements if element.peak_fluence_J_per_cm2 is not None]
+    if not loaded:
+        return ""
+    worst = max(loaded, key=lambda element: element.peak_fluence_J_per_cm2 or 0.0)
+    text = f"Highest peak fluence: {significant(worst.peak_fluence_J_per_cm2, 2)} J/cm^2 in {worst.name}"
+    if worst.peak_intensity_W_per_cm2 is not None:
+        text += f" ({significant(worst.peak_intensity_W_per_cm2, 2)} W/cm^2)"
+    if run.path.b_integral_rad is not None:
+        text += f". B-integral of the path: {significant(run.path.b_integral_rad, 2)} rad"
+    return text + "."
+
+
+def _echoes(run: Run) -> list[str]:
+    return [
+        f"Echoes of {element.name}, after the direct passage: "
+        + ", ".join(
+            f"{span(delay, 4)} ({percent(share, 2)} of what leaves)" for delay, share in element.echoes
+        )
+        + "."
+        for element in run.elements
+        if element.echoes
+    ]
