@@ -124,8 +124,6 @@ def _in_words(kind: str, came: Any, context: Any, message: str) -> Complaint:
 
 def _brief(value: Any) -> object:
     """The value as it was written, cut where it is long."""
-    if isinstance(value, bool):
-        return str(value).lower()
     if isinstance(value, list) or not isinstance(value, dict | str):
         return value if len(repr(value)) <= 60 else repr(value)[:57] + "..."
     return value if isinstance(value, str) else "a table"

@@ -36,7 +36,7 @@ class PropagationTable(Table):
             raise complain(
                 "nonlinear propagation is not part of this release",
                 at="nonlinear",
-                value="true",
+                value=True,
                 allowed="false",
                 remedy="Leave it out: the path is then taken as linear, and n2 gives the B-integral only",
             )

@@ -162,20 +162,20 @@ def kind_named(name: str) -> Kind:
     return KINDS[name]
 
 
+NAMED = {
+    "": "a plain number",
+    "Hz": "a frequency",
+    "rad s^-1": "an angular frequency",
+    "s^-1": "a bare rate, neither ordinary nor angular",
+}
+
+
 def named_dimension(dimension: str) -> str:
     """What a dimension is, in words where there is a kind for it."""
-    if dimension == "s^-1":
-        return "a bare rate, neither ordinary nor angular"
     for kind in KINDS.values():
-        if dimension in kind.forms and len(kind.forms) == 1:
+        if dimension in kind.forms and len(kind.forms) == 1 and dimension not in NAMED:
             return kind.words
-    return (
-        "a frequency"
-        if dimension in SPECTRAL
-        else f"of dimension {dimension}"
-        if dimension
-        else "a plain number"
-    )
+    return NAMED.get(dimension, f"dimension {dimension}")
 
 
 def form_of(kind: Kind, dimension: str, value: object) -> Form:

@@ -1,0 +1,328 @@
+"""Tables of numbers in text files: any usual separator, decimal points or commas, headers, comments.
+
+What a file says is never repaired: rows of different length, cells that are no numbers, NaN, rows out of
+order or twice at the same place are refused with file, line and value.
+"""
+
+from __future__ import annotations
+
+import re
+from dataclasses import dataclass
+from functools import cached_property
+from pathlib import Path
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.errors import InputError
+
+__all__ = ["NumberTable", "numbers_in", "read_numbers"]
+
+Real = NDArray[np.float64]
+
+LARGEST_TABLE = 256 << 20
+"""Bytes; larger files are refused before they are read."""
+
+COMMENT = ("#", "%", ";", "//", '"', "!")
+"""What begins a line that is no row, unless the line is one all the same."""
+
+NUMBER = re.compile(r"[+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eEdD][+-]?[0-9]+)?")
+COMMA_NUMBER = re.compile(r"[+-]?(?:[0-9]+,?[0-9]*|,[0-9]+)(?:[eE][+-]?[0-9]+)?")
+NOT_FINITE = re.compile(r"[+-]?(?:nan|inf|infinity|#n/a|n/a|na|-+)", re.IGNORECASE)
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class NumberTable:
+    """Rows of numbers as a file holds them.
+
+    values: shape (rows, columns). lines: line in the file of each row, counted from 1. cells: what was
+    printed. header: names above the columns, empty where there are none; comments: the other lines before the
+    rows.
+    """
+
+    file: str
+    values: Real
+    lines: NDArray[np.int64]
+    cells: tuple[tuple[str, ...], ...]
+    header: tuple[str, ...] = ()
+    comments: tuple[str, ...] = ()
+
+    @property
+    def columns(self) -> int:
+        return int(self.values.shape[1])
+
+    @cached_property
+    def places(self) -> tuple[int, ...]:
+        """Decimal places of each column: the most that any of its cells uses; negative for 1e3 and the
+        like."""
+        return tuple(max(map(decimal_places, column)) for column in zip(*self.cells, strict=True))
+
+    def index_of(self, column: int | str | None, default: int) -> int:
+        """Number, from 0, of a column called by its number from 1 or by its header; `default`, from 0, for
+        None."""
+        if column is None:
+            found = default
+        elif isinstance(column, str):
+            found = self.header.index(column) if column in self.header else -1
+        else:
+            found = column - 1
+        if not 0 <= found < self.columns:
+            raise self.refused(
+                "the table has no such column",
+                value=default + 1 if column is None else column,
+                allowed=f"1 to {self.columns}" + (f", or {', '.join(self.header)}" if self.header else ""),
+            )
+        return found
+
+    def column(self, column: int | str | None = None, default: int = 0) -> Real:
+        """Values of a column, shape (rows,); see `index_of`."""
+        return self.values[:, self.index_of(column, default)]
+
+    def refused(
+        self,
+        problem: str,
+        *,
+        row: int | None = None,
+        value: object = None,
+        allowed: str = "",
+        remedy: str = "",
+    ) -> InputError:
+        """An error that names this file and the line of a row (counted from 0)."""
+        line = "" if row is None else f":{self.lines[row]}"
+        return InputError(problem, value=value, allowed=allowed, remedy=remedy, file=self.file + line)
+
+    def reversed(self) -> NumberTable:
+        """The same rows from the last to the first."""
+        return NumberTable(
+            file=self.file,
+            values=self.values[::-1],
+            lines=self.lines[::-1],
+            cells=self.cells[::-1],
+            header=self.header,
+            comments=self.comments,
+        )
+
+    def ascending(self, column: int | str | None = None, default: int = 0) -> NumberTable:
+        """The table in ascending order of a column. Descending tables are turned round; any other order is
+        refused."""
+        x = self.column(column, default)
+        steps = np.diff(x)
+        if np.all(steps > 0):
+            return self
+        if np.all(steps < 0):
+            return self.reversed()
+        direction = 1.0 if np.count_nonzero(steps > 0) >= np.count_nonzero(steps < 0) else -1.0
+        row = int(np.flatnonzero(direction * steps <= 0)[0]) + 1
+        cell = self.cells[row][self.index_of(column, default)]
+        if x[row] == x[row - 1]:
+            raise self.refused(
+                "two rows stand at the same place", row=row, value=cell, remedy="Keep one of them"
+            )
+        raise self.refused(
+            "the rows are out of order",
+            row=row,
+            value=cell,
+            allowed="rising or falling from the first row to the last",
+            remedy="Sort the rows, or check this one",
+        )
+
+
+def decimal_places(cell: str) -> int:
+    """Places behind the decimal sign that a printed number uses: 3 for "1.450", 5 for "1.20e-3", -3 for
+    "1e3"."""
+    mantissa, _, exponent = cell.replace(",", ".").lower().replace("d", "e").partition("e")
+    return len(mantissa.partition(".")[2]) - int(exponent or 0)
+
+
+def read_numbers(path: str | Path, *, columns: int = 2, rows: int = 2) -> NumberTable:
+    """The table of numbers in a file, with at least so many columns and rows.
+
+    Raises InputError with file, line and value for whatever is no such table.
+    """
+    path = Path(path)
+    table = numbers_in(_text_of(path), str(path))
+    if table.columns < columns:
+        raise table.refused(
+            "the table has too few columns", row=0, value=table.columns, allowed=f"{columns} or more"
+        )
+    if len(table.values) < rows:
+        raise table.refused("the table has too few rows", value=len(table.values), allowed=f"{rows} or more")
+    return table
+
+
+def numbers_in(text: str, file: str) -> NumberTable:
+    """The table of numbers in a text; `file` is named in messages."""
+    lines = text.splitlines()
+    first = _first_row(lines, file)
+    style = _Style.of(lines[first])
+    first = _with_broken_rows(lines, first, style)
+    rows, numbers = [], []
+    for number, line in enumerate(lines[first:], start=first + 1):
+        if not line.strip() or _is_comment(line, style):
+            continue
+        rows.append(style.cells(line))
+        numbers.append(number)
+    values = _values(rows, numbers, file)
+    above = [line.strip() for line in lines[:first] if line.strip()]
+    header = _header(above, style, values.shape[1])
+    return NumberTable(
+        file=file,
+        values=values,
+        lines=np.array(numbers),
+        cells=tuple(rows),
+        header=header,
+        comments=tuple(above),
+    )
+
+
+@dataclass(frozen=True)
+class _Style:
+    """How cells are told apart: a separator, or None for white space. A comma that separates nothing is a
+    decimal sign."""
+
+    separator: str | None
+
+    @classmethod
+    def of(cls, line: str) -> _Style:
+        """The style of a row of numbers."""
+        for separator in (";", "\t"):
+            if separator in line.strip():
+                return cls(separator)
+        words = line.split()
+        if len(words) > 1 and all(COMMA_NUMBER.fullmatch(word) and word[-1] != "," for word in words):
+            return cls(None)
+        return cls("," if "," in line else None)
+
+    def cells(self, line: str) -> tuple[str, ...]:
+        """The cells of a line as printed, with decimal points; an empty last cell is the end of the line."""
+        parts = [part.strip() for part in line.split(self.separator)]
+        if len(parts) > 1 and not parts[-1]:
+            parts.pop()
+        if self.separator == "," or "," not in line:
+            return tuple(parts)
+        return tuple(part.replace(",", ".") if COMMA_NUMBER.fullmatch(part) else part for part in parts)
+
+
+def _is_row(line: str) -> bool:
+    cells = _Style.of(line).cells(line)
+    return bool(line.strip()) and all(NUMBER.fullmatch(cell) for cell in cells)
+
+
+def _is_comment(line: str, style: _Style) -> bool:
+    bare = line.strip()
+    return bare.startswith(COMMENT) and not all(NUMBER.fullmatch(cell) for cell in style.cells(bare))
+
+
+def _first_row(lines: list[str], file: str) -> int:
+    """The first line that is a row of numbers, at least two of them where any line has two."""
+    rows = [index for index, line in enumerate(lines) if _is_row(line)]
+    wide = [index for index in rows if len(_Style.of(lines[index]).cells(lines[index])) > 1]
+    if not rows:
+        found = next((line.strip() for line in lines if line.strip()), None)
+        problem = "the file is empty" if found is None else "the file holds no row of numbers"
+        raise InputError(problem, value=found and found[:60], allowed="columns of numbers", file=file)
+    return (wide or rows)[0]
+
+
+def _with_broken_rows(lines: list[str], first: int, style: _Style) -> int:
+    """The first row moved up over lines right above it that are rows but for a cell: they must be
+    reported, not skipped."""
+    width = len(style.cells(lines[first]))
+    while first > 0 and not _is_comment(lines[first - 1], style):
+        cells = style.cells(lines[first - 1])
+        if len(cells) != width or not any(NUMBER.fullmatch(cell) for cell in cells):
+            break
+        first -= 1
+    return first
+
+
+def _values(rows: list[tuple[str, ...]], numbers: list[int], file: str) -> Real:
+    """The cells as numbers, shape (rows, columns)."""
+    width = len(rows[0])
+    for cells, line in zip(rows, numbers, strict=True):
+        if len(cells) != width:
+            raise InputError(
+                "the row has another number of cells than the first",
+                value=" ".join(cells)[:60],
+                allowed=f"{width} cells",
+                file=f"{file}:{line}",
+            )
+    try:
+        values = np.array([[float(cell) for cell in cells] for cells in rows])
+    except ValueError:
+        values = np.array(
+            [[_number(cell, line, file) for cell in cells] for cells, line in zip(rows, numbers, strict=True)]
+        )
+    if not np.isfinite(values).all():
+        row, column = np.argwhere(~np.isfinite(values))[0]
+        raise _not_finite(rows[row][column], numbers[row], file)
+    return values
+
+
+def _number(cell: str, line: int, file: str) -> float:
+    """One cell; Fortran's D in exponents is read too."""
+    if NUMBER.fullmatch(cell):
+        return float(cell.replace("D", "E").replace("d", "e"))
+    if not cell or NOT_FINITE.fullmatch(cell):
+        raise _not_finite(cell, line, file)
+    comma = COMMA_NUMBER.fullmatch(cell)
+    raise InputError(
+        "the cell is not a number",
+        value=cell[:60],
+        allowed="a number such as 1.5 or 2e-3",
+        remedy="Write decimal points throughout" if comma else "Remove the line, or begin it with #",
+        file=f"{file}:{line}",
+    )
+
+
+def _not_finite(cell: str, line: int, file: str) -> InputError:
+    return InputError(
+        "the cell holds no number",
+        value=cell,
+        allowed="finite numbers",
+        remedy="Remove the row",
+        file=f"{file}:{line}",
+    )
+
+
+def _header(above: list[str], style: _Style, columns: int) -> tuple[str, ...]:
+    """The names above the columns: the last line before the rows, where it has as many cells as they."""
+    if not above:
+        return ()
+    line = above[-1].lstrip("#%;!/ ").rstrip()
+    for separator in (style.separator, ",", ";", "\t", None):
+        names = tuple(name.strip().strip('"') for name in line.split(separator))
+        if len(names) == columns and all(names):
+            return names
+    return ()
+
+
+def _text_of(path: Path) -> str:
+    if not path.is_file():
+        problem = "this is not a file" if path.exists() else "there is no such file"
+        raise InputError(
+            problem, file=str(path), remedy="A path in a scenario is relative to the scenario file"
+        )
+    size = path.stat().st_size
+    if size > LARGEST_TABLE:
+        raise InputError(
+            "the file is too large", value=f"{size / 2**20:.0f} MiB", allowed="256 MiB", file=str(path)
+        )
+    try:
+        data = path.read_bytes()
+    except OSError as error:
+        raise InputError(f"the file cannot be read: {error.strerror}", file=str(path)) from None
+    return _decoded(data, str(path))
+
+
+def _decoded(data: bytes, file: str) -> str:
+    """Text of the usual encodings: numbers are the same in all of them, so that only headers depend on the
+    choice."""
+    if data.startswith((b"\xff\xfe", b"\xfe\xff")):
+        return data.decode("utf-16", errors="replace")
+    if b"\0" in data:
+        raise InputError("this is no text file", file=file, allowed="columns of numbers as text")
+    try:
+        return data.decode("utf-8-sig")
+    except UnicodeDecodeError:
+        return data.decode("latin-1")
