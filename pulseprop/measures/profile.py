@@ -13,7 +13,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.errors import InputError
+from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.numerics.interpolation import band_limited, mean_turn
 
 __all__ = ["Peak", "Stretch", "find_peak", "half_maximum", "power"]
@@ -126,11 +126,20 @@ def _vertex(offsets: Real, heights: Real, at: int, count: int) -> Peak:
 
 
 def half_maximum(samples: Complex | Real, height: Height = power) -> Stretch:
-    """Outermost half-maximum points of periodic samples (N,) that are oversampled twice or more."""
+    """Outermost half-maximum points of periodic samples (N,) that are oversampled twice or more.
+
+    Raises InputError for an empty field, NumericalLimit where the profile never falls to half.
+    """
     profile = _Profile(samples, height)
     heights = height(samples)
     top = _peak(profile, heights)
     half = 0.5 * top.power
+    if not heights.min() < half:
+        raise NumericalLimit(
+            "the field never falls to half of its peak in its window, so it has no FWHM",
+            value=f"least power {heights.min() / top.power:.3g} of the peak",
+            remedy="Enlarge the window",
+        )
     first, last = _span(heights > CREST * half)
     left = -_crossing(profile, heights, -first, -last, -1, half)
     right = _crossing(profile, heights, last, first, 1, half)

@@ -7,7 +7,7 @@ import pytest
 from hypothesis import assume, given, settings
 from hypothesis import strategies as st
 
-from pulseprop.errors import InputError
+from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.measures.profile import half_maximum
 from pulseprop.measures.widths import (
     energy_share_after,
@@ -171,6 +171,11 @@ def test_an_empty_field_is_refused():
         fwhm(np.zeros(64, complex), 1.0)
     with pytest.raises(InputError, match="no energy"):
         rms_width(np.zeros(64, complex), 1.0)
+
+
+def test_a_field_that_fills_its_window_has_no_width():
+    with pytest.raises(NumericalLimit, match="never falls to half"):
+        fwhm(np.ones(64, complex), 1.0)
 
 
 def test_the_cost_between_samples_does_not_grow_with_a_flat_top():
