@@ -8,7 +8,7 @@ from typing import Any
 from pulseprop.errors import Complaint
 from pulseprop.scenario.fields import UnknownKey
 from pulseprop.scenario.places import Keys
-from pulseprop.scenario.suggest import did_you_mean
+from pulseprop.scenario.suggest import did_you_mean, nearest
 
 __all__ = ["Finding", "findings_of"]
 
@@ -58,12 +58,18 @@ def _finding(error: Any, keys: Keys) -> Finding:
     if kind == "missing":
         return keys, Complaint(problem="the key is missing", remedy=f'Add "{keys[-1]}"')
     if kind == "union_tag_not_found":
-        return (*keys, "kind"), Complaint(problem="the key is missing", remedy='Add "kind"')
+        return (*keys, "kind"), _no_kind(came)
     if kind == "union_tag_invalid":
         return (*keys, "kind"), _unknown_choice(context["tag"], context["expected_tags"])
     if kind == "literal_error":
         return keys, _unknown_choice(came, context["expected"])
     return keys, _in_words(kind, came, context, error["msg"])
+
+
+def _no_kind(came: Any) -> Complaint:
+    like = nearest("kind", [key for key in came if isinstance(key, str)]) if isinstance(came, dict) else None
+    remedy = f'Did you mean "kind" where "{like}" stands?' if like else 'Add "kind"'
+    return Complaint(problem="the key is missing", remedy=remedy)
 
 
 def _unknown_key(key: str, came: Any) -> Complaint:
