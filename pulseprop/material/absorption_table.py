@@ -26,7 +26,7 @@ from pulseprop.material.absorption_quantities import (
     internal_transmittance,
 )
 from pulseprop.material.kramers_kronig import Anchor, tail_shares
-from pulseprop.material.outside_absorption import OutsideAbsorption
+from pulseprop.material.outside_absorption import outside_absorption
 from pulseprop.material.response import Band
 from pulseprop.material.table_rows import noise_of, ordered_rows, row_list
 from pulseprop.material.tabulated import TabulatedRefraction
@@ -43,6 +43,8 @@ NOISE_DIPS = 5.0
 """Absorption below zero by up to this many standard deviations of the noise is noise."""
 BASELINE = 2e-3
 """…and so is a dip up to this share of the largest value, as baselines go (common practice, no source)."""
+DEFAULT_UNCERTAINTY = 1e-5
+"""Of an anchor whose uncertainty is not stated: as for published coefficients."""
 ROUNDS = 60
 SETTLED = 1e-12
 """Change of the faces' reflectance at which the plate counts as solved."""
@@ -176,13 +178,26 @@ def _anchored(
         constant = _one_constant(float(missing[0]), anchors[0])
         note = f"one anchor: absorption far above the table adds {constant:.6g} to the index everywhere"
         return replace(model, constant=constant), (note,), ()
-    outside = OutsideAbsorption.through(rows, places, missing, [anchor.uncertainty for anchor in anchors])
+    outside = outside_absorption(rows, places, missing, _uncertainties(anchors))
+    if outside.factor > 1:
+        raise InputError(
+            "no absorption outside the table gives the medium all the anchors' indices",
+            value=f"they differ by {outside.factor:.3g} times their uncertainties",
+            allowed="1 at most",
+            place="anchor",
+            remedy="Check the anchors, the background and the tails, or state larger uncertainties.",
+        )
     added = replace(model, constant=outside.constant, densities=(*model.densities, *outside.densities))
     note = (
         f"{len(anchors)} anchors: absorption outside the table explains them "
         f"within {outside.factor:.2g} of their uncertainties"
     )
     return added, (note,), ()
+
+
+def _uncertainties(anchors: Sequence[Anchor]) -> Real:
+    stated = [anchor.uncertainty for anchor in anchors]
+    return np.array([DEFAULT_UNCERTAINTY if u is None else u for u in stated], dtype=float)
 
 
 def _one_constant(missing: float, anchor: Anchor) -> float:

@@ -29,7 +29,7 @@ def test_the_splines_are_non_negative_and_span_four_pieces():
 
 
 def test_even_knots_give_the_published_spline_and_its_transform():
-    """I. J. Schoenberg's cardinal cubic spline: 2/3, 1/6 on its knots, and its transform in closed form elsewhere."""
+    """I. J. Schoenberg's cardinal cubic spline: 2/3 and 1/6 on its knots; its transform in closed form."""
     knots = np.arange(10.0, 17.0)
     pieces = basis_pieces(knots)
     omega = np.linspace(10, 16, 61)
