@@ -81,15 +81,38 @@ class Grid:
 
         The start of the window is taken into account: the phase refers to t = 0 of the front's clock.
         """
-        spectrum = forward(envelope)
-        spectrum *= self.step * np.exp(2j * np.pi * (self.frequency - self.carrier) * self.start)
+        samples, rest = self._offset
+        spectrum = forward(np.roll(envelope, samples))
+        self._turn(spectrum, rest, self.step)
         return spectrum
 
     def to_field(self, spectrum: Complex) -> Complex:
         """Envelope about `carrier` in W^(1/2) of a spectrum A(omega); the inverse of `to_spectrum`."""
-        turned = spectrum * np.exp(-2j * np.pi * (self.frequency - self.carrier) * self.start)
-        turned /= self.step
-        return backward(turned)
+        samples, rest = self._offset
+        turned = np.array(spectrum, dtype=complex)
+        self._turn(turned, -rest, 1 / self.step)
+        return np.roll(backward(turned), -samples)
+
+    @cached_property
+    def _offset(self) -> tuple[int, float]:
+        """Start in whole samples and a rest in s: turning samples round is exact, a phase of 1e6 rad is not."""
+        samples = round(self.start / self.step)
+        return samples % self.points, self.start - samples * self.step
+
+    def _turn(self, spectrum: Complex, delay: float, scale: float) -> None:
+        """Multiply by scale exp(2 pi i (f - carrier) delay), in place.
+
+        The factor is a geometric sequence: the product of a coarse and a fine one costs two exponentials of root length.
+        """
+        fine = self.points & -self.points
+        while fine * fine > self.points:
+            fine //= 2
+        coarse = self.points // fine
+        turn = 2j * np.pi * delay / self.span
+        rows = spectrum.reshape(coarse, fine)
+        rows *= (scale * np.exp(turn * (fine * np.arange(coarse) - self.points // 2)))[:, None]
+        if delay:
+            rows *= np.exp(turn * np.arange(fine))
 
     def carrier_resolved(self, envelope: Complex) -> Complex:
         """The undivided analytic signal E(t) of an envelope about `carrier`."""

@@ -99,18 +99,19 @@ def front_test(
     transfer: Callable[[Real], Complex],
     *,
     first_span: float,
+    ringing: float,
     most_points: int,
     absorbs: bool,
     progress: Callable[[float], None] | None = None,
 ) -> FrontResult:
     """Send the test pulse through `transfer(omega)` (omega > 0, rad/s; against vacuum) and judge.
 
-    first_span: s, an estimate of how long the answer lasts; the window is doubled until what wraps around is small
-    enough or `most_points` are reached. absorbs: whether the naive filter |transfer| is worth a run.
+    first_span: s, an estimate of when the answer is there; ringing: s, how long it may go on after, which the first window
+    holds where that is cheap. The window is doubled until what wraps around is small enough or `most_points` are reached. absorbs: whether the naive filter |transfer| is worth a run.
     """
     step = pulse.step()
-    points = _even_power(first_span / (1 - AHEAD_SHARE) / step)
-    points = min(max(points, 1 << 12), most_points)
+    least, whole = (_even_power(span / (1 - AHEAD_SHARE) / step) for span in (first_span, first_span + ringing))
+    points = min(max(least, min(whole, CHEAP_POINTS), 1 << 12), most_points)
     while True:
         spectrum = _input_spectrum(pulse, points, step)
         naive_input = spectrum.copy() if absorbs else None

@@ -51,7 +51,8 @@ def causality_of(
     result = front_test(
         pulse,
         lambda omega: tested.transfer(omega, View.COMPLETED),
-        first_span=2 * pulse.support + _latest(tested, low, high) + ringing,
+        first_span=2 * pulse.support + _latest(tested, low, high),
+        ringing=ringing,
         most_points=_allowed(memory, resonant=ringing > 0),
         absorbs=_absorbs(tested, low, high),
         progress=progress,

@@ -259,8 +259,12 @@ def _sum(values: Iterable[float | None]) -> float | None:
 
 
 def _gdd_only(experiment: Experiment, before: PulseMeasures, gdd: float | None) -> float | None:
-    """Textbook: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) of a Gaussian, from the limit and all GDD, chirp included."""
-    if gdd is None:
+    """Textbook: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) of a Gaussian, from the limit and all GDD, chirp included.
+
+    None where a line stands in the spectrum: the GDD at one frequency says nothing then.
+    """
+    low, high = experiment.pulse.spectral_extent(RANGE_SHARE)
+    if gdd is None or any(medium.ringing(low, high) > 0 for medium in experiment.path.media):
         return None
     limit = before.transform_limit_fwhm_fs
     total = gdd + experiment.pulse.gdd * FEMTO**2

@@ -24,8 +24,10 @@ def _three(value: float) -> str:
 
 
 def share(value: float) -> str:
-    """A share as per cent, two digits."""
-    return f"{100 * value:.2g} %" if value < 0.9995 else f"{100 * value:.3g} %"
+    """A share as per cent: two digits, more where it comes close to all."""
+    if value < 0.995:
+        return f"{100 * value:.2g} %"
+    return f"{100 * value:.5g} %" if value > 0.9999 else f"{100 * value:.4g} %"
 
 
 def headline(before: PulseMeasures, after: PulseMeasures, path: PathMeasures) -> str:
