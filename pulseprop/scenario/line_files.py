@@ -51,7 +51,7 @@ def _heads(table: NumberTable) -> list[tuple[str, str]]:
             "the columns have no names",
             allowed="a line above the rows such as centre_THz, width_GHz, peak_absorption_per_cm",
         )
-    heads = []
+    heads: list[tuple[str, str]] = []
     for name in table.header:
         head = quantity_and_unit(name)
         if head is None or (head[1] == "") != (head[0] in BARE):

@@ -83,8 +83,8 @@ class ScenarioTable(Table):
     pulse: PulseTable
     path: list[Element] = Field(default_factory=list)
     medium: dict[Name, MediumTable] = Field(default_factory=dict)
-    propagation: PropagationTable = PropagationTable()
-    grid: GridTable = GridTable()
+    propagation: PropagationTable = Field(default_factory=PropagationTable)
+    grid: GridTable = Field(default_factory=GridTable)
     expect: dict[Name, Annotated[Expected, PlainValidator(_expected)]] = Field(default_factory=dict)
     compensate: dict[str, Any] = Field(default_factory=dict)
     sweep: list[dict[str, Any]] = Field(default_factory=list)

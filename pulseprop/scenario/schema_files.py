@@ -148,7 +148,7 @@ class AbsorptionFile(SpectralFile):
     path_length: Length | None = None
     concentration: Annotated[float, measured("concentration", above=0)] | None = None
     ceiling: float | None = None
-    tails: Tails = Tails()
+    tails: Tails = Field(default_factory=Tails)
 
     @model_validator(mode="after")
     def _complete(self) -> AbsorptionFile:

@@ -6,7 +6,6 @@ order or twice at the same place are refused with file, line and value.
 
 from __future__ import annotations
 
-import re
 from dataclasses import dataclass
 from functools import cached_property
 from pathlib import Path
@@ -15,6 +14,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
+from pulseprop.scenario.table_layout import COMMA_NUMBER, NOT_FINITE, NUMBER, first_row, header_of, is_comment
 
 __all__ = ["NumberTable", "numbers_in", "read_numbers"]
 
@@ -22,13 +22,6 @@ Real = NDArray[np.float64]
 
 LARGEST_TABLE = 256 << 20
 """Bytes; larger files are refused before they are read."""
-
-COMMENT = ("#", "%", ";", "//", '"', "!")
-"""What begins a line that is no row, unless the line is one all the same."""
-
-NUMBER = re.compile(r"[+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eEdD][+-]?[0-9]+)?")
-COMMA_NUMBER = re.compile(r"[+-]?(?:[0-9]+,?[0-9]*|,[0-9]+)(?:[eE][+-]?[0-9]+)?")
-NOT_FINITE = re.compile(r"[+-]?(?:nan|inf|infinity|#n/a|n/a|na|-+)", re.IGNORECASE)
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
@@ -153,18 +146,19 @@ def read_numbers(path: str | Path, *, columns: int = 2, rows: int = 2) -> Number
 def numbers_in(text: str, file: str) -> NumberTable:
     """The table of numbers in a text; `file` is named in messages."""
     lines = text.splitlines()
-    first = _first_row(lines, file)
-    style = _Style.of(lines[first])
-    first = _with_broken_rows(lines, first, style)
+    found = first_row(lines)
+    if found is None:
+        raise _no_rows(lines, file)
+    first, style = found
     rows, numbers = [], []
     for number, line in enumerate(lines[first:], start=first + 1):
-        if not line.strip() or _is_comment(line, style):
+        if not line.strip() or is_comment(line, style):
             continue
         rows.append(style.cells(line))
         numbers.append(number)
     values = _values(rows, numbers, file)
     above = [line.strip() for line in lines[:first] if line.strip()]
-    header = _header(above, style, values.shape[1])
+    header = header_of(above, style, values.shape[1])
     return NumberTable(
         file=file,
         values=values,
@@ -175,65 +169,10 @@ def numbers_in(text: str, file: str) -> NumberTable:
     )
 
 
-@dataclass(frozen=True)
-class _Style:
-    """How cells are told apart: a separator, or None for white space. A comma that separates nothing is a
-    decimal sign."""
-
-    separator: str | None
-
-    @classmethod
-    def of(cls, line: str) -> _Style:
-        """The style of a row of numbers."""
-        for separator in (";", "\t"):
-            if separator in line.strip():
-                return cls(separator)
-        words = line.split()
-        if len(words) > 1 and all(COMMA_NUMBER.fullmatch(word) and word[-1] != "," for word in words):
-            return cls(None)
-        return cls("," if "," in line else None)
-
-    def cells(self, line: str) -> tuple[str, ...]:
-        """The cells of a line as printed, with decimal points; an empty last cell is the end of the line."""
-        parts = [part.strip() for part in line.split(self.separator)]
-        if len(parts) > 1 and not parts[-1]:
-            parts.pop()
-        if self.separator == "," or "," not in line:
-            return tuple(parts)
-        return tuple(part.replace(",", ".") if COMMA_NUMBER.fullmatch(part) else part for part in parts)
-
-
-def _is_row(line: str) -> bool:
-    cells = _Style.of(line).cells(line)
-    return bool(line.strip()) and all(NUMBER.fullmatch(cell) for cell in cells)
-
-
-def _is_comment(line: str, style: _Style) -> bool:
-    bare = line.strip()
-    return bare.startswith(COMMENT) and not all(NUMBER.fullmatch(cell) for cell in style.cells(bare))
-
-
-def _first_row(lines: list[str], file: str) -> int:
-    """The first line that is a row of numbers, at least two of them where any line has two."""
-    rows = [index for index, line in enumerate(lines) if _is_row(line)]
-    wide = [index for index in rows if len(_Style.of(lines[index]).cells(lines[index])) > 1]
-    if not rows:
-        found = next((line.strip() for line in lines if line.strip()), None)
-        problem = "the file is empty" if found is None else "the file holds no row of numbers"
-        raise InputError(problem, value=found and found[:60], allowed="columns of numbers", file=file)
-    return (wide or rows)[0]
-
-
-def _with_broken_rows(lines: list[str], first: int, style: _Style) -> int:
-    """The first row moved up over lines right above it that are rows but for a cell: they must be
-    reported, not skipped."""
-    width = len(style.cells(lines[first]))
-    while first > 0 and not _is_comment(lines[first - 1], style):
-        cells = style.cells(lines[first - 1])
-        if len(cells) != width or not any(NUMBER.fullmatch(cell) for cell in cells):
-            break
-        first -= 1
-    return first
+def _no_rows(lines: list[str], file: str) -> InputError:
+    words = next((line.strip() for line in lines if line.strip()), None)
+    problem = "the file is empty" if words is None else "the file holds no row of numbers"
+    return InputError(problem, value=words and words[:60], allowed="columns of numbers", file=file)
 
 
 def _values(rows: list[tuple[str, ...]], numbers: list[int], file: str) -> Real:
@@ -283,18 +222,6 @@ def _not_finite(cell: str, line: int, file: str) -> InputError:
         remedy="Remove the row",
         file=f"{file}:{line}",
     )
-
-
-def _header(above: list[str], style: _Style, columns: int) -> tuple[str, ...]:
-    """The names above the columns: the last line before the rows, where it has as many cells as they."""
-    if not above:
-        return ()
-    line = above[-1].lstrip("#%;!/ ").rstrip()
-    for separator in (style.separator, ",", ";", "\t", None):
-        names = tuple(name.strip().strip('"') for name in line.split(separator))
-        if len(names) == columns and all(names):
-            return names
-    return ()
 
 
 def _text_of(path: Path) -> str:
