@@ -50,7 +50,7 @@ def is_comment(line: str, style: Style) -> bool:
 
 
 def first_row(lines: list[str]) -> tuple[int, Style] | None:
-    """Where the rows begin, and their style: the first line of two numbers or more, or of one if none has two.
+    """Where the rows begin, and their style: the first line of two numbers, or of one if none has two.
 
     Lines right above it that are rows but for a cell belong to them: they must be reported, not skipped.
     """

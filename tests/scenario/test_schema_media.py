@@ -182,6 +182,8 @@ def test_every_kind_of_formula() -> None:
         ({"valid": ["300 nm"]}, ["formula.valid", "two ends", '["300 nm", "2.5 um"]']),
         ({"valid": ["300 nm", "300 nm"]}, ["formula.valid", "two different ends"]),
         ({"relative_to": "water"}, ["formula.relative_to", "'water'", '"air", "vacuum"']),
+        ({"kind": "gas", "terms": [{"strength": 1, "resonance": -2}]}, ["terms.1.resonance", "above 0"]),
+        ({"kind": "gas", "terms": [{"strength": 1, "resonance": "2 um"}]}, ["terms.1.resonance", "um^-2"]),
         ({"kind": "powers", "terms": [{"strength": 1.0, "power": 3}]}, ["terms.1.power", "even", "got 3"]),
     ],
 )

@@ -79,6 +79,12 @@ def test_a_measured_spectrum_with_all_that_may_be_said_of_it() -> None:
     assert found.measured_duration == 62e-15
 
 
+def test_a_background_may_be_a_number() -> None:
+    spectrum = pulse(shape="measured", spectrum=SPECTRUM | {"background": 12}).spectrum
+    assert spectrum is not None
+    assert spectrum.background == 12.0
+
+
 def test_a_measured_waveform_needs_no_energy() -> None:
     found = pulse(shape="measured", trace=TRACE)
     assert found.trace is not None
