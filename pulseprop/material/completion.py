@@ -57,28 +57,28 @@ class Completion:
     def series(self, x: Series) -> Series:
         """g and its slope (at most two terms) of a Taylor series x on or above the real axis."""
         flat = x[0].ravel()
-        outer = np.zeros((2, flat.size), dtype=complex)
+        outer = np.zeros((len(x), flat.size), dtype=complex)
         outer[0] = self.offset
         for centre in np.unique(self.centre):
             same = self.centre == centre
-            outer += _of_one_centre(flat - centre, self.strength[same], self.knot[same])
-        outer = outer.reshape((2, *x[0].shape))
-        if len(x) == 1:
-            return outer[:1]
-        outer[1] *= x[1]
+            outer += _of_one_centre(flat - centre, self.strength[same], self.knot[same], len(x))
+        outer = outer.reshape(x.shape)
+        if len(x) > 1:
+            outer[1] *= x[1]
         return outer
 
 
-def _of_one_centre(distance: Complex | Real, strength: Real, knot: Real) -> Complex:
-    """Value and slope, shape (2, N), of concentric bands at distances from their centre."""
-    total = np.empty((2, distance.size), dtype=complex)
+def _of_one_centre(distance: Complex | Real, strength: Real, knot: Real, count: int) -> Complex:
+    """Value (and slope for count 2) of concentric bands at distances from their centre, shape (count, N)."""
+    total = np.empty((count, distance.size), dtype=complex)
     far = np.abs(distance) > FAR * knot.max()
-    total[:, far] = far_from(distance[far], moments_of(strength, knot))
+    total[:, far] = far_from(distance[far], moments_of(strength, knot), count)
     near = distance[~far]
-    close = np.zeros((2, near.size), dtype=complex)
+    close = np.zeros((count, near.size), dtype=complex)
     for share, width in zip(strength, knot, strict=True):
         close[0] += cauchy(near / width) * (share / width)
-        close[1] += cauchy_slope(near / width) * (share / width**2)
+        if count > 1:
+            close[1] += cauchy_slope(near / width) * (share / width**2)
     total[:, ~far] = close
     return total
 

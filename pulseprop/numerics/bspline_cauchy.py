@@ -45,20 +45,22 @@ def moments_of(strength: Real, knot: Real) -> Real:
     return np.asarray((strength[:, None] * knot[:, None] ** orders * MOMENTS[:FAR_TERMS]).sum(axis=0))
 
 
-def far_from(distance: Complex | Real, moments: Real) -> tuple[Complex | Real, Complex | Real]:
-    """sum of strength c(distance/knot)/knot and its slope, at distances of FAR widest knots and more from the centre."""
+def far_from(distance: Complex | Real, moments: Real, count: int) -> list[Complex | Real]:
+    """sum of strength c(distance/knot)/knot, and for count 2 its slope, FAR widest knots and more from the centre."""
     inverse = 1 / distance
     square = inverse * inverse
-    value = np.full_like(square, moments[-1])
-    slope = value * (2 * FAR_TERMS - 1)
-    for order in range(FAR_TERMS - 2, -1, -1):
-        value *= square
-        value += moments[order]
-        slope *= square
-        slope += moments[order] * (2 * order + 1)
-    value *= -inverse
-    slope *= square
-    return value, slope
+    found = [-inverse * _series_in(square, moments)]
+    if count > 1:
+        found.append(square * _series_in(square, moments * (2 * np.arange(FAR_TERMS) + 1)))
+    return found
+
+
+def _series_in(square: Complex | Real, coefficients: Real) -> Complex | Real:
+    total = np.full_like(square, coefficients[-1])
+    for coefficient in coefficients[-2::-1]:
+        total *= square
+        total += coefficient
+    return total
 
 
 def density(u: Real) -> Real:
@@ -113,17 +115,9 @@ def _near_slope(u: Complex) -> Complex:
 
 
 def _far(u: Complex | Real, terms: int) -> Complex:
-    inverse_square = u**-2
-    total = np.full_like(u, MOMENTS[terms - 1])
-    for moment in MOMENTS[terms - 2 :: -1]:
-        total = total * inverse_square + moment
-    return np.asarray(-total / u)
+    return np.asarray(-_series_in(u**-2, MOMENTS[:terms]) / u)
 
 
 def _far_slope(u: Complex | Real, terms: int) -> Complex:
-    inverse_square = u**-2
-    weighted = MOMENTS[:terms] * (2 * np.arange(terms) + 1)
-    total = np.full_like(u, weighted[-1])
-    for moment in weighted[-2::-1]:
-        total = total * inverse_square + moment
-    return np.asarray(total * inverse_square)
+    square = u**-2
+    return np.asarray(square * _series_in(square, MOMENTS[:terms] * (2 * np.arange(terms) + 1)))

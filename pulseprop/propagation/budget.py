@@ -12,16 +12,18 @@ from pulseprop.elements.element import Element, orders_of_element
 from pulseprop.elements.path import Path
 from pulseprop.elements.slab import Slab
 from pulseprop.grid import Grid
-from pulseprop.measures.widths import fwhm, peak
-from pulseprop.propagation.intensity import b_integral, on_axis
+from pulseprop.measures.widths import fwhm
+from pulseprop.propagation.intensity import b_integral, on_axis, peak_power
+from pulseprop.propagation.linear import blocks
 from pulseprop.propagation.result import ElementMeasures
 from pulseprop.propagation.sizing import Windows
 
 __all__ = ["Advance", "Walk", "walk"]
 
 Complex = NDArray[np.complex128]
-Advance = Callable[[Element, Grid, Complex], None]
-"""Takes a spectrum through one element in place."""
+Real = NDArray[np.float64]
+Advance = Callable[[Element, Complex, Complex], None]
+"""advance(element, exponent, spectrum) takes a spectrum through one element in place, faces left out."""
 
 FEMTO = 1e15
 PER_CM2 = 1e-4
@@ -31,10 +33,15 @@ MOST_ECHOES = 12
 
 @dataclass(kw_only=True)
 class Walk:
-    """State while walking; `rows` is the result, `spectrum` what leaves."""
+    """State while walking; `rows` is the result, `spectrum` what leaves.
+
+    transmission: |transfer|^2, and group_delay: of the direct passage in s, both of all elements so far, on the frequencies.
+    """
 
     windows: Windows
     spectrum: Complex
+    transmission: Real
+    group_delay: Real
     omega: float
     pulse_radius: float | None
     rows: list[ElementMeasures] = field(default_factory=list)
@@ -44,7 +51,15 @@ class Walk:
 
 def walk(path: Path, windows: Windows, spectrum: Complex, omega: float, radius: float | None, advance: Advance) -> Walk:
     """Take a copy of the spectrum A(omega) through the path; omega: centre in rad/s; radius: of the pulse's beam, m."""
-    state = Walk(windows=windows, spectrum=spectrum.copy(), omega=omega, pulse_radius=radius)
+    state = Walk(
+        windows=windows,
+        spectrum=spectrum.copy(),
+        transmission=np.zeros(spectrum.size),
+        group_delay=np.zeros(spectrum.size),
+        omega=omega,
+        pulse_radius=radius,
+    )
+    state.transmission[windows.grid.positive] = 1.0
     for index, element in enumerate(path):
         state.rows.append(_row(state, index, element, advance))
     return state
@@ -55,9 +70,11 @@ def _row(state: Walk, index: int, element: Element, advance: Advance) -> Element
     grid = state.windows.after(index)
     energy_in = before.energy(state.spectrum)
     radius = element.beam_radius or state.pulse_radius
-    b = _b_of(state, element, before, radius)
-    peak_in = peak(before.to_field(state.spectrum)).power if radius else None
-    advance(element, grid, state.spectrum)
+    exponent = _exponent(state, element, before)
+    b = _b_of(state, element, before, radius, exponent)
+    peak_in = peak_power(before, state.spectrum) if radius else None
+    advance(element, exponent, state.spectrum)
+    _through_faces(state, element, exponent, grid)
     orders = _orders(element, state.omega)
     state.gdd = None if orders[1] is None or state.gdd is None else state.gdd + orders[1]
     state.tod = None if orders[2] is None or state.tod is None else state.tod + orders[2]
@@ -90,13 +107,35 @@ def _scaled(value: float | None, order: int) -> float | None:
     return None if value is None else float(value * FEMTO**order)
 
 
-def _b_of(state: Walk, element: Element, grid: Grid, radius: float | None) -> float | None:
+def _exponent(state: Walk, element: Element, grid: Grid) -> Complex:
+    """ln(transfer) of the direct passage on the frequencies; adds the element's group delay to the state."""
+    exponent = np.zeros(grid.points, dtype=complex)
+    for part in blocks(grid):
+        series = element.exponent(2 * np.pi * grid.frequency[part], 2)
+        exponent[part] = series[0]
+        state.group_delay[part] += np.imag(series[1])
+    return exponent
+
+
+def _through_faces(state: Walk, element: Element, exponent: Complex, grid: Grid) -> None:
+    """Apply what the faces do, and take the whole element into the transmission."""
+    for part in blocks(grid):
+        state.transmission[part] *= np.exp(2 * exponent[part].real)
+        factor = element.factor(2 * np.pi * grid.frequency[part])
+        if factor is not None:
+            state.spectrum[part] *= factor
+            state.transmission[part] *= np.abs(factor) ** 2
+
+
+def _b_of(state: Walk, element: Element, grid: Grid, radius: float | None, exponent: Complex) -> float | None:
     if radius is None:
         return None
     if element.medium is None:
         return 0.0
     known = element.medium.nonlinear_index(state.omega)
-    return None if known is None else b_integral(element, grid, state.spectrum, state.omega, known.value, radius)
+    if known is None:
+        return None
+    return b_integral(grid, state.spectrum, exponent, state.omega, known.value, radius, element.length)
 
 
 def _digits(element: Element) -> int:

@@ -8,7 +8,6 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.elements.path import Path
 from pulseprop.errors import RangeError
 from pulseprop.grid import Grid
 from pulseprop.measures.delays import delay_split
@@ -18,7 +17,7 @@ from pulseprop.propagation.cautions import cautions_for
 from pulseprop.propagation.diagnostics import causality_of
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.hazards import hazard_facts
-from pulseprop.propagation.linear import blocks, multiply_by
+from pulseprop.propagation.linear import at_once
 from pulseprop.propagation.result import (
     Fields,
     GridMeasures,
@@ -142,7 +141,7 @@ def _propagate(experiment: Experiment, progress: Progress) -> _Propagated:
             spectrum,
             experiment.pulse.centre,
             experiment.pulse.beam_radius,
-            stepped or multiply_by,
+            stepped or at_once,
         )
         wrapped = max(
             _edge_energy(windows.grid, spectrum), _edge_energy(windows.after(len(windows.starts) - 1), walked.spectrum)
@@ -272,21 +271,13 @@ def _gdd_only(experiment: Experiment, before: PulseMeasures, gdd: float | None) 
 
 
 def _fields(experiment: Experiment, done: _Propagated) -> Fields:
-    grid = done.windows.grid
-    transmission = np.zeros(grid.points)
-    group_delay = np.zeros(grid.points)
-    path: Path = experiment.path
-    for part in blocks(grid):
-        omega = 2 * np.pi * grid.frequency[part]
-        transmission[part] = np.abs(path.transfer(omega)) ** 2
-        group_delay[part] = np.imag(path.exponent(omega, 2)[1])
     return Fields(
-        grid_in=grid,
+        grid_in=done.windows.grid,
         grid_out=done.exit,
         spectrum_in=done.spectrum_in,
         spectrum_out=done.walked.spectrum,
-        transmission=transmission,
-        group_delay=group_delay,
+        transmission=done.walked.transmission,
+        group_delay=done.walked.group_delay,
         form=experiment.grid.form,
     )
 

@@ -8,9 +8,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.elements.element import Element
-from pulseprop.grid import Grid
 from pulseprop.numerics.plans import Plan, natural
-from pulseprop.propagation.linear import blocks, multiply_by
+from pulseprop.propagation.linear import at_once
 from pulseprop.propagation.stepping import STEPPERS, FixedSteps, march
 
 __all__ = ["SteppedAdvance"]
@@ -33,22 +32,16 @@ class SteppedAdvance:
     def __post_init__(self) -> None:
         self.plan = Plan(self.points, effort="estimate")
 
-    def __call__(self, element: Element, grid: Grid, spectrum: Complex) -> None:
+    def __call__(self, element: Element, exponent: Complex, spectrum: Complex) -> None:
         """Take A(omega) through one element in place; elements without length are applied at once."""
         if element.length == 0:
-            multiply_by(element, grid, spectrum)
+            at_once(element, exponent, spectrum)
             return
-        exponent = np.zeros(grid.points, dtype=complex)
-        for part in blocks(grid):
-            omega = 2 * np.pi * grid.frequency[part]
-            exponent[part] = element.exponent(omega, 1)[0] / element.length
-            factor = element.factor(omega)
-            if factor is not None:
-                spectrum[part] *= factor
         self.plan.buffer[:] = natural(spectrum)
-        travelled = march(
-            self.plan, natural(exponent), (), element.length, STEPPERS[self.method](), FixedSteps(STEPS_PER_ELEMENT)
-        )
+        per_length = natural(exponent)
+        per_length /= element.length
+        stepper, control = STEPPERS[self.method](), FixedSteps(STEPS_PER_ELEMENT)
+        travelled = march(self.plan, per_length, (), element.length, stepper, control)
         spectrum[:] = np.fft.fftshift(self.plan.buffer)
         self.steps += travelled.steps
         self.transforms += travelled.transforms
