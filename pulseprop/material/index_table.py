@@ -152,6 +152,7 @@ def _with_absorption(omega: Real, index: Real, error: Real, k: Real, k_error: Re
         np.concatenate((error, k_error + _between_rows(omega, k))),
         np.zeros(of_index.shape[1]),
         bends / np.max(np.abs(bends)),
+        within=1.0,  # as many splines as rows: at the least factor they would follow the noise of k
     )
     density = AbsorptionDensity(edges=knots, pieces=pieces @ fit.weights[1:])
     band = Band(float(omega[0]), float(omega[-1]))

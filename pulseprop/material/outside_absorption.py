@@ -22,6 +22,11 @@ FARTHEST = 300.0
 """Last knot over the highest frequency, and half the lowest over the first knot."""
 
 
+EXACT = 1e-3
+"""Share of the uncertainties below which a fit counts as exact. More is not left to smoothness: few bands act
+on many rows, so the least factor shows the noise, and the flattest curve within all uncertainty is biased."""
+
+
 @dataclass(frozen=True, eq=False, kw_only=True)
 class OutsideAbsorption:
     """constant + bands below and above the rows; factor: least stretch of the uncertainties."""
@@ -41,7 +46,7 @@ def outside_absorption(rows: Real, places: Real, missing: Real, uncertainty: Rea
     columns = [basis_transforms(knots, pieces, places) for knots, pieces in sides]
     matrix = np.concatenate([np.ones((len(places), 1)), *columns], axis=1)
     rough = np.concatenate([[0.0], *(_roughness(known, knots) for knots, _ in sides)])
-    fit = passive_fit(matrix, missing, uncertainty, rough, np.zeros((0, matrix.shape[1])))
+    fit = passive_fit(matrix, missing, uncertainty, rough, np.zeros((0, matrix.shape[1])), within=EXACT)
     shares = np.split(fit.weights[1:], [columns[0].shape[1]])
     return OutsideAbsorption(
         constant=float(fit.weights[0]),
