@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-__all__ = ["Column", "Paragraph", "Section", "Table"]
+__all__ = ["Column", "Paragraph", "Section", "Table", "padded_rows"]
 
 
 @dataclass(frozen=True)
@@ -40,3 +40,25 @@ class Section:
     key: str
     title: str
     blocks: tuple[Table | Paragraph, ...]
+
+
+def padded_rows(table: Table, space: str = " ") -> list[tuple[str, ...]]:
+    """All rows, the footer last, with numbers padded on the right so that their points line up."""
+    rows = [*table.rows, *table.footer]
+    columns = [
+        [row[at] for row in rows] if column.words else _padded([row[at] for row in rows], space)
+        for at, column in enumerate(table.columns)
+    ]
+    return list(zip(*columns, strict=True))
+
+
+def _padded(texts: list[str], space: str) -> list[str]:
+    tails = [_tail(text) for text in texts]
+    return [
+        text + space * (max(tails) - tail) if text else "" for text, tail in zip(texts, tails, strict=True)
+    ]
+
+
+def _tail(text: str) -> int:
+    """Characters from the decimal point on; a number without one ends before its first letter or space."""
+    return next((len(text) - at for at, character in enumerate(text) if character in ".e %"), 0)

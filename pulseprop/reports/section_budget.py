@@ -91,7 +91,7 @@ def _estimate(run: Run) -> str:
     width = run.path.gdd_only_fwhm_fs
     full = span(run.pulse_out.fwhm_fs, digits_of(run))
     if width is None:
-        return "Textbook estimate from GDD alone: none here (it needs a pulse and a path whose orders are known)."
+        return "Textbook estimate from GDD alone: none, because some orders of the path are not known."
     return (
         f"Textbook estimate from GDD alone, Gaussian: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) = "
         f"{span(width, digits_of(run))}; with everything counted: {full}."

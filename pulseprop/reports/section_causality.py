@@ -10,9 +10,11 @@ __all__ = ["causality_section"]
 
 VERDICTS = {
     "causal": "Causal: what leaves ahead of a front that travels at c is no more than the noise of the test.",
-    "acausal": "Acausal: energy leaves ahead of a front that travels at c. No matter does that; the data or the model of an "
+    "acausal": "Acausal: energy leaves ahead of a front that travels at c. No matter does that; the data "
+    "or the model of an "
     "element are at fault.",
-    "unresolved": "Unresolved: the window that fits the memory hides whether anything leaves ahead of the front.",
+    "unresolved": "Unresolved: the window that fits the memory hides whether anything leaves ahead of the "
+    "front.",
 }
 
 
@@ -26,7 +28,8 @@ def causality_section(run: Run) -> Section:
     ]
     if found.left_out:
         texts.append(
-            f"Left out of the front test, because a phase alone or orders describe them: {', '.join(found.left_out)}."
+            f"Left out of the front test, because a phase alone or orders describe them: "
+            f"{', '.join(found.left_out)}."
         )
     if found.remark:
         texts.append(found.remark[0].upper() + found.remark[1:].rstrip(".") + ".")
@@ -40,8 +43,10 @@ def _front(found: Causality) -> list[str]:
     if found.energy_ahead_of_front is None or found.noise_floor is None or not found.front_points:
         return []
     return [
-        f"Energy ahead of the front, for a pulse of exactly finite length: {significant(found.energy_ahead_of_front, 2)} "
-        f"of what leaves; noise floor of the test {significant(found.noise_floor, 2)} ({found.front_points} points)."
+        f"Energy ahead of the front, for a pulse of exactly finite length: "
+        f"{significant(found.energy_ahead_of_front, 2)} "
+        f"of what leaves; noise floor of the test {significant(found.noise_floor, 2)} "
+        f"({found.front_points} points)."
     ]
 
 
@@ -49,7 +54,8 @@ def _naive(naive: NaiveFilter | None) -> list[str]:
     if naive is None:
         return []
     return [
-        "For comparison, the same path as a filter that absorbs and delays nothing (a common shortcut, and wrong): "
+        "For comparison, the same path as a filter that absorbs and delays nothing (a common shortcut, "
+        "and wrong): "
         f"{significant(naive.energy_ahead_of_front, 2)} of the energy ahead of the front, {naive.verdict}."
     ]
 

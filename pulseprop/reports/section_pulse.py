@@ -60,7 +60,8 @@ def _limits(after: PulseMeasures, digits: int) -> list[str]:
     if after.peak_ratio is None or after.two_photon_ratio is None:
         return []
     return [
-        f"Against the same transmitted spectrum with flat phase: peak power {percent(after.peak_ratio, min(digits, 3))}, "
+        f"Against the same transmitted spectrum with flat phase: peak power "
+        f"{percent(after.peak_ratio, min(digits, 3))}, "
         f"two-photon signal {percent(after.two_photon_ratio, min(digits, 3))}."
     ]
 
@@ -69,12 +70,14 @@ def _shape(after: PulseMeasures) -> list[str]:
     notes = []
     if after.split:
         notes.append(
-            "The pulse splits: it is above half maximum in more than one stretch, and its FWHM spans all of "
+            "The pulse splits: it is above half maximum in more than one stretch, and its FWHM spans all "
+            "of "
             "them. Look at the curves before quoting it."
         )
     if (after.energy_after or 0.0) >= WORTH_A_NOTE:
         notes.append(
-            f"The pulse rings or trails: {percent(after.energy_after, 2)} of its energy comes later than three FWHM "
+            f"The pulse rings or trails: {percent(after.energy_after, 2)} of its energy comes later than "
+            f"three FWHM "
             "after the peak. FWHM does not see that; the logarithmic figure does."
         )
     return notes
@@ -88,7 +91,8 @@ def delay_section(run: Run) -> Section:
     lines = [f"The energy's centroid arrives {delay} {sense} than through vacuum"]
     if path.net_group_delay_fs is not None and path.reshaping_delay_fs is not None:
         lines.append(
-            f": {span(path.net_group_delay_fs, digits)} (group delay averaged over the transmitted spectrum) "
+            f": {span(path.net_group_delay_fs, digits)} (group delay averaged over the transmitted "
+            f"spectrum) "
             f"{_signed(path.reshaping_delay_fs, path.centroid_delay_fs, digits)} (reshaping by absorption)"
         )
     text = "".join(lines) + "."
@@ -120,7 +124,8 @@ def sign_section(run: Run) -> Section | None:
     )
     rows = tuple(_sign_row(case, factor, digits) for case in run.signs)
     text = (
-        "A duration measured beside a spectrum gives the size of the chirp, not its sign. Both are carried to "
+        "A duration measured beside a spectrum gives the size of the chirp, not its sign. Both are "
+        "carried to "
         "the end of the path; the numbers above are those of the first."
     )
     return Section("signs", "Both signs of the chirp", (Paragraph(text), Table(columns, rows)))
@@ -136,12 +141,13 @@ def _sign_row(case: SignCase, factor: float, digits: int) -> Row:
 
 
 def autocorrelation_section(run: Run) -> Section | None:
-    """A measured intensity autocorrelation: the chirp that fits it, and the glass that would tell the sign."""
+    """A measured intensity autocorrelation: the chirp that fits it, the glass that would tell the sign."""
     fit = run.autocorrelation
     if fit is None:
         return None
     text = (
-        f"The measured autocorrelation is fitted by |GDD| = {significant(fit.gdd_fs2, 3)} fs^2 at the start of "
+        f"The measured autocorrelation is fitted by |GDD| = {significant(fit.gdd_fs2, 3)} fs^2 at the "
+        f"start of "
         f"the path, with a residual of {significant(fit.residual, 2)} rms of its peak."
     )
     blocks = [Paragraph(text)]
@@ -154,7 +160,9 @@ def _glass(fit: AutocorrelationFit) -> str:
     if fit.glass_mm is None or fit.fwhm_if_positive_fs is None or fit.fwhm_if_negative_fs is None:
         return ""
     return (
-        f"An intensity autocorrelation is blind to the sign. Put {significant(fit.glass_mm, 2)} mm of {fit.glass} "
-        f"in front of the autocorrelator: a trace of {span(fit.fwhm_if_positive_fs, 3)} means positive GDD, one "
+        f"An intensity autocorrelation is blind to the sign. Put {significant(fit.glass_mm, 2)} mm of "
+        f"{fit.glass} "
+        f"in front of the autocorrelator: a trace of {span(fit.fwhm_if_positive_fs, 3)} means positive "
+        f"GDD, one "
         f"of {span(fit.fwhm_if_negative_fs, 3)} negative."
     )

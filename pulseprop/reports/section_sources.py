@@ -46,14 +46,14 @@ def medium_facts(
     return "; ".join(facts) + "."
 
 
-def range_text(valid_nm: tuple[float, float] | None) -> str:
+def range_text(valid_nm: tuple[float, float] | None, digits: int = 5) -> str:
     """A range of wavelengths in a unit that reads easily."""
     if valid_nm is None:
         return "wherever it was defined"
     low, high = valid_nm
     if high >= 1e5:
-        return f"{low / 1e3:.5g} um to {high / 1e3:.5g} um"
-    return f"{low:.5g} nm to {high:.5g} nm"
+        return f"{low / 1e3:.{digits}g} um to {high / 1e3:.{digits}g} um"
+    return f"{low:.{digits}g} nm to {high:.{digits}g} nm"
 
 
 def numerics_section(run: Run) -> Section:
@@ -70,7 +70,7 @@ def numerics_section(run: Run) -> Section:
     text += f"; energy that reached the edges of the window: {significant(solver.wrapped_energy, 2)}."
     origin = (
         f"pulseprop {run.version}; scenario {run.file}, SHA-256 {run.scenario_sha256[:16]}…; "
-        f"catalogue SHA-256 {run.catalogue_sha256[:16]}…."
+        f"catalogue SHA-256 {run.catalogue_sha256[:16]}…"
     )
     return Section("numerics", "Numerics", (Paragraph(text), Paragraph(origin)))
 

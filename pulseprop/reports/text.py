@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 import textwrap
+from collections.abc import Iterable
 
 from pulseprop.propagation.result import Run
-from pulseprop.reports.blocks import Column, Paragraph, Section, Table
+from pulseprop.reports.blocks import Column, Paragraph, Section, Table, padded_rows
 from pulseprop.reports.content import sections
 
-__all__ = ["WIDTH", "section_text", "table_text", "text_report"]
+__all__ = ["WIDTH", "blocks_text", "section_text", "table_text", "text_report"]
 
 WIDTH = 108
 GAP = "  "
@@ -30,16 +31,19 @@ def _about(run: Run) -> list[str]:
 
 
 def section_text(section: Section) -> str:
-    """A heading, and below it paragraphs and tables, set apart by blank lines where tables stand."""
-    lines = [section.title.upper()]
-    for block in section.blocks:
+    """A heading, and what stands below it."""
+    return f"{section.title.upper()}\n{blocks_text(section.blocks)}"
+
+
+def blocks_text(blocks: Iterable[Table | Paragraph]) -> str:
+    """Paragraphs and tables, set apart by blank lines where tables stand."""
+    lines: list[str] = []
+    for block in blocks:
         if isinstance(block, Table):
             lines += ["", *table_text(block).splitlines(), ""]
         else:
             lines += _paragraph(block)
-    while not lines[-1]:
-        lines.pop()
-    return "\n".join(lines)
+    return "\n".join(lines).rstrip()
 
 
 def _paragraph(block: Paragraph) -> list[str]:
@@ -58,12 +62,11 @@ def _wrapped(text: str, hanging: str = "") -> list[str]:
 
 def table_text(table: Table) -> str:
     """A table with units below the headings, numbers aligned on their points, words wrapped to fit."""
-    rows = [*table.rows, *table.footer]
-    cells = [_lined_up(column, [row[at] for row in rows]) for at, column in enumerate(table.columns)]
-    cells = _fitted(table.columns, cells)
+    rows = padded_rows(table)
+    cells = _fitted(table.columns, [[row[at] for row in rows] for at in range(len(table.columns))])
     heads = [(column.heading, column.unit) for column in table.columns]
     widths = [
-        max([len(part) for part in head] + [len(line) for cell in column for line in cell])
+        max(len(part) for part in [*head, *(line for cell in column for line in cell)])
         for head, column in zip(heads, cells, strict=True)
     ]
     lines = [_line(table.columns, [head[0] for head in heads], widths)]
@@ -76,23 +79,6 @@ def table_text(table: Table) -> str:
             lines.append(rule)
         lines += _row_lines(table.columns, [column[number] for column in cells], widths)
     return "\n".join(lines)
-
-
-def _lined_up(column: Column, texts: list[str]) -> list[str]:
-    """Numbers padded on the right so that their points stand below each other; words as they are."""
-    if column.words:
-        return texts
-    tails = [_tail(text) for text in texts]
-    longest = max(tails, default=0)
-    return [text + " " * (longest - tail) if text else "" for text, tail in zip(texts, tails, strict=True)]
-
-
-def _tail(text: str) -> int:
-    """Characters from the decimal point on; a number without one ends before its first letter or space."""
-    for at, character in enumerate(text):
-        if character in ".e %" or (character.isalpha() and at):
-            return len(text) - at
-    return 0
 
 
 def _fitted(columns: tuple[Column, ...], cells: list[list[str]]) -> list[list[list[str]]]:

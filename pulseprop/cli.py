@@ -1,0 +1,281 @@
+"""The command line: it parses, calls, renders, and turns failures into one message and an exit code.
+
+Exit codes: 0 done; 1 done, and the answer is a physical "no"; 2 the input cannot be used; 3 a numerical limit
+was reached, and the answer would not be trustworthy.
+"""
+
+from __future__ import annotations
+
+import os
+import sys
+from collections.abc import Sequence
+from typing import TYPE_CHECKING
+
+import rich_click as click
+
+if TYPE_CHECKING:
+    from pulseprop.api import MediumReport
+    from pulseprop.propagation.result import Run
+    from pulseprop.reports.curves import IndexCurve
+    from pulseprop.scenario.read import Scenario
+
+__all__ = ["main"]
+
+DONE, UNUSABLE, UNTRUSTWORTHY, INTERRUPTED = 0, 2, 3, 130
+
+TRACEBACK = "PULSEPROP_TRACEBACK"
+"""Set in the environment, it shows where an unexpected failure came from."""
+
+
+def main(arguments: Sequence[str] | None = None) -> None:
+    """Entry point: run a command and leave with its exit code."""
+    _replace_unprintable()
+    try:
+        code = _guarded(arguments)
+        sys.stdout.flush()
+    except BrokenPipeError:
+        # The reader of a pipe has gone; a second failure while the interpreter closes is no news.
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        code = DONE
+    sys.exit(code)
+
+
+def _guarded(arguments: Sequence[str] | None) -> int:
+    """Exit code of a command; whatever goes wrong becomes one message."""
+    from pulseprop.errors import PulsepropError
+
+    try:
+        code = commands.main(arguments, prog_name="pulseprop", standalone_mode=False)
+        return code if isinstance(code, int) else DONE
+    except click.ClickException as error:
+        context = getattr(error, "ctx", None)
+        hint = f" `{context.command_path} --help` shows how it is used." if context else ""
+        return _failed(f"{error.format_message().rstrip('.')}.{hint}", UNUSABLE)
+    except PulsepropError as error:
+        return _failed(str(error), error.exit_code)
+    except (KeyboardInterrupt, click.Abort):
+        return _failed("interrupted; nothing half done was written.", INTERRUPTED)
+    except BrokenPipeError:
+        raise
+    except MemoryError:
+        return _failed(
+            "the memory of this machine does not suffice. Lower grid.memory in the scenario.", UNTRUSTWORTHY
+        )
+    except Exception as error:
+        if os.environ.get(TRACEBACK):
+            raise
+        return _failed(_unexpected(error), UNUSABLE if isinstance(error, OSError) else UNTRUSTWORTHY)
+
+
+def _unexpected(error: Exception) -> str:
+    told = " ".join(str(error).split())[:200]
+    return (
+        f"an unexpected failure, {type(error).__name__}: {told}. This is a fault of the program: please "
+        f"report it "
+        f"with the scenario file. {TRACEBACK}=1 in the environment shows where it happened."
+    )
+
+
+def _failed(message: str, code: int) -> int:
+    print(f"pulseprop: {message}", file=sys.stderr)
+    return code
+
+
+def _replace_unprintable() -> None:
+    """Replace what a terminal cannot show, rather than stop."""
+    for stream in (sys.stdout, sys.stderr):
+        if hasattr(stream, "reconfigure"):
+            stream.reconfigure(errors="replace")
+
+
+def _print_version(context: click.Context, parameter: click.Parameter, wanted: bool) -> None:
+    if wanted and not context.resilient_parsing:
+        from pulseprop.api import version
+
+        click.echo(f"pulseprop {version()}")
+        context.exit()
+
+
+@click.group(context_settings={"help_option_names": ["-h", "--help"]})
+@click.option(
+    "--version",
+    is_flag=True,
+    is_eager=True,
+    expose_value=False,
+    callback=_print_version,
+    help="Print the version.",
+)
+def commands() -> None:
+    """A laser pulse through causal matter: what arrives, and whether the data can be true.
+
+    Exit codes: 0 done; 1 done, and the answer is a physical "no"; 2 the input cannot be used; 3 a numerical
+    limit was reached.
+    """
+
+
+JSON_HELP = "Write the answer as one JSON document to a file, or to standard output for '-'."
+
+
+@commands.command()
+@click.argument("scenario", metavar="SCENARIO.toml")
+@click.option("--json", "json_path", metavar="PATH|-", help=JSON_HELP)
+@click.option("--save", "save_path", metavar="RESULT.nc", help="Write fields and spectra as NetCDF.")
+@click.option("--page", "page_path", metavar="REPORT.html", help="Write a self-contained page.")
+@click.option(
+    "--figures", "figures_path", metavar="DIR", help="Write figures (PNG, SVG) with their numbers (CSV)."
+)
+@click.option(
+    "--set",
+    "overrides",
+    metavar="KEY=VALUE",
+    multiple=True,
+    help='Override a value: pulse.duration="20 fs", "path.cold window.thickness=0.5 mm".',
+)
+def send(
+    scenario: str,
+    json_path: str | None,
+    save_path: str | None,
+    page_path: str | None,
+    figures_path: str | None,
+    overrides: tuple[str, ...],
+) -> int:
+    """Send the pulse of a scenario through its path, and report what arrives."""
+    from pulseprop import api
+    from pulseprop.reports.document import check_target
+    from pulseprop.reports.progress import Progress
+
+    for target in (json_path, save_path, page_path):
+        if target is not None:
+            check_target(target)
+    read = api.read(scenario, overrides)
+    with Progress(sys.stderr) as progress:
+        run = api.send(read, progress=progress)
+        if save_path:
+            progress("saving fields", 0.96)
+            _save(run, save_path)
+        if page_path or figures_path:
+            progress("drawing figures", 0.97)
+            _draw(run, read, page_path, figures_path)
+    _answer(run, json_path)
+    return run.exit_code
+
+
+def _save(run: Run, path: str) -> None:
+    from pulseprop.reports.dataset import save_dataset
+
+    save_dataset(run, path)
+
+
+def _draw(run: Run, scenario: Scenario, page: str | None, figures: str | None) -> None:
+    curves = _curves(run, scenario)
+    if page:
+        from pulseprop.reports.page import write_page
+
+        write_page(run, page, curves)
+    if figures:
+        from pulseprop.reports.figures import write_figures
+
+        write_figures(run, figures, curves)
+
+
+def _curves(run: Run, scenario: Scenario) -> list[IndexCurve]:
+    """Index curves of the media of a path over the wavelengths of the pulse."""
+    from pulseprop.reports.curves import index_curves
+    from pulseprop.scenario.build import build
+
+    low, high = run.hazards.wavelengths_at_1e_4_nm
+    return index_curves(build(scenario).path.media, low, high)
+
+
+def _answer(run: Run, json_path: str | None) -> None:
+    """The report on standard output; warnings and cautions on standard error, unless both are one screen."""
+    from pulseprop.reports.document import write_json
+
+    if json_path is not None:
+        write_json(json_path, run.as_json())
+    else:
+        from pulseprop.reports.text import text_report
+
+        click.echo(text_report(run), nl=False)
+        if sys.stdout.isatty() and sys.stderr.isatty():
+            return
+    for warning in run.warnings:
+        click.echo(f"warning: {warning}", err=True)
+    for caution in run.cautions:
+        click.echo(f"caution [{caution.code}] {caution.line}", err=True)
+
+
+@commands.command()
+@click.argument("names", metavar="[NAME | SCENARIO.toml:NAME]...", nargs=-1)
+@click.option(
+    "--at", "places", metavar="WAVELENGTH", multiple=True, help='Where to give orders, such as "800 nm".'
+)
+@click.option("--json", "json_path", metavar="PATH|-", help=JSON_HELP)
+@click.option("--figure", "figure_path", metavar="FILE", help="Draw index, GVD and absorption; .png or .svg.")
+def media(
+    names: tuple[str, ...], places: tuple[str, ...], json_path: str | None, figure_path: str | None
+) -> int:
+    """Show media: source, range, and orders at wavelengths. Without a name, list the catalogue.
+
+    The JSON document is an object for one name, and a list of such objects for several or none.
+    """
+    from pulseprop import api
+    from pulseprop.reports.document import check_target, write_json
+    from pulseprop.reports.media_text import catalogue_text, media_text
+
+    if json_path is not None:
+        check_target(json_path)
+    if not names and (places or figure_path):
+        raise click.UsageError("--at and --figure need the name of a medium")
+    found = api.media(names, places) if names else _catalogue()
+    if figure_path:
+        _draw_media(names, found, figure_path)
+    if json_path is not None:
+        documents = [medium.as_json() for medium in found]
+        write_json(json_path, documents[0] if len(names) == 1 else documents)
+    else:
+        click.echo(media_text(found) if names else catalogue_text(found), nl=False)
+    return DONE
+
+
+def _catalogue() -> tuple[MediumReport, ...]:
+    """Every record that stands by itself; those that need a state (humid air) are named by their message."""
+    from pulseprop import api
+    from pulseprop.errors import InputError
+
+    found: list[MediumReport] = []
+    for name in api.catalogue():
+        try:
+            found += api.media([name])
+        except InputError as error:
+            click.echo(f"not listed: {error}", err=True)
+    return tuple(found)
+
+
+def _draw_media(names: tuple[str, ...], found: Sequence[MediumReport], path: str) -> None:
+    """Curves over the wavelengths asked for, or over the range that all the media share in part."""
+    from pulseprop import api
+    from pulseprop.errors import InputError
+    from pulseprop.reports.curves import index_curves
+    from pulseprop.reports.document import check_target
+    from pulseprop.reports.draw_band import draw_media
+    from pulseprop.reports.figures import write_figure
+
+    check_target(path)
+    places = [row.wavelength_nm for row in found[0].at]
+    ranges = [medium.valid_nm for medium in found if medium.valid_nm is not None]
+    edges = places if len(set(places)) > 1 else [edge for valid in ranges for edge in valid]
+    if not edges:
+        raise InputError(
+            "the range to draw is not known",
+            value=", ".join(names),
+            allowed="two wavelengths or more",
+            remedy="Give the ends of the range with --at, twice",
+        )
+    curves = index_curves([api.medium(name) for name in names], min(edges), max(edges))
+    source = "; ".join(f"{medium.name}: {medium.source}" for medium in found)[:150]
+    write_figure(draw_media(curves, source), path)
+
+
+if __name__ == "__main__":
+    main()
