@@ -167,7 +167,10 @@ def _row(found: Medium, omega: float) -> OrdersRow:
     from pulseprop.errors import RangeError
 
     if not found.band.contains(np.array(omega)):
-        low, high = (2 * np.pi * SPEED_OF_LIGHT / edge * 1e9 if edge else np.inf for edge in (found.band.high, found.band.low))
+        low, high = (
+            2 * np.pi * SPEED_OF_LIGHT / edge * 1e9 if edge else np.inf
+            for edge in (found.band.high, found.band.low)
+        )
         raise RangeError(
             f"a wavelength outside the range of {found.name!r}",
             value=f"{2 * np.pi * SPEED_OF_LIGHT / omega * 1e9:.6g} nm",

@@ -46,7 +46,9 @@ class Grid:
 
     def __post_init__(self) -> None:
         if self.points < 2 or self.points % 2:
-            raise InputError("a grid needs an even number of points", value=self.points, allowed="even, 2 or more")
+            raise InputError(
+                "a grid needs an even number of points", value=self.points, allowed="even, 2 or more"
+            )
         if not (np.isfinite(self.step) and self.step > 0):
             raise InputError("a grid needs a positive time step", value=self.step, allowed="seconds above 0")
 

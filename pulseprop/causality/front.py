@@ -14,7 +14,6 @@ from collections.abc import Callable
 from dataclasses import dataclass
 
 import numpy as np
-import scipy.fft
 from numpy.typing import NDArray
 
 __all__ = ["FrontResult", "TestPulse", "front_test", "judged"]
@@ -58,7 +57,7 @@ class TestPulse:
         """Sampling step in s at which the spectrum at Nyquist is below rounding."""
         fine = 1 << 13
         x = np.arange(fine) / fine
-        spectrum = np.abs(scipy.fft.rfft(self.envelope(x), 4 * fine))
+        spectrum = np.abs(np.fft.rfft(self.envelope(x), 4 * fine))
         lobes = spectrum[: spectrum.size // LOBE * LOBE].reshape(-1, LOBE).max(axis=1)
         quiet = int(np.argmax(lobes < NYQUIST_LEVEL * spectrum[0]))
         detuning = 2 * np.pi * LOBE * quiet / (4 * self.support)
@@ -67,7 +66,7 @@ class TestPulse:
     def band(self, share: float) -> tuple[float, float]:
         """Angular frequencies (rad/s) between which the spectrum is above `share` of its peak."""
         fine = 1 << 12
-        spectrum = np.abs(scipy.fft.rfft(self.envelope(np.arange(fine) / fine), 8 * fine))
+        spectrum = np.abs(np.fft.rfft(self.envelope(np.arange(fine) / fine), 8 * fine))
         detuning = 2 * np.pi * np.flatnonzero(spectrum > share * spectrum[0])[-1] / (8 * self.support)
         return max(self.centre - detuning, 0.02 * self.centre), self.centre + detuning
 
@@ -110,7 +109,9 @@ def front_test(
     holds where that is cheap. The window is doubled until what wraps around is small enough or `most_points` are reached. absorbs: whether the naive filter |transfer| is worth a run.
     """
     step = pulse.step()
-    least, whole = (_even_power(span / (1 - AHEAD_SHARE) / step) for span in (first_span, first_span + ringing))
+    least, whole = (
+        _even_power(span / (1 - AHEAD_SHARE) / step) for span in (first_span, first_span + ringing)
+    )
     points = min(max(least, min(whole, CHEAP_POINTS), 1 << 12), most_points)
     while True:
         spectrum = _input_spectrum(pulse, points, step)
@@ -151,7 +152,7 @@ def _input_spectrum(pulse: TestPulse, points: int, step: float) -> Complex:
     first = _front_index(points)
     samples = int(np.ceil(pulse.support / step)) + 1
     field[first : first + samples] = pulse.field(step * np.arange(samples))
-    return np.asarray(scipy.fft.rfft(field, overwrite_x=True))
+    return np.asarray(np.fft.rfft(field))
 
 
 def _front_index(points: int) -> int:
@@ -173,7 +174,7 @@ def _apply(
 
 
 def _out(spectrum: Complex, points: int, pulse: TestPulse, step: float) -> tuple[float, float, float, float]:
-    field = scipy.fft.irfft(spectrum, points, overwrite_x=True)
+    field = np.fft.irfft(spectrum, points)
     field *= field
     total = float(np.sum(field))
     samples = int(np.ceil(pulse.support / step)) + 1

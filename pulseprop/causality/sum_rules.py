@@ -42,7 +42,9 @@ class SumRule:
     remark: str
 
 
-def sum_rules(chi: Callable[[Real], Complex], features: Sequence[Feature], *, relaxes: bool) -> tuple[SumRule, ...]:
+def sum_rules(
+    chi: Callable[[Real], Complex], features: Sequence[Feature], *, relaxes: bool
+) -> tuple[SumRule, ...]:
     """Both rules by quadrature refined around the features.
 
     chi: the completed susceptibility at omega > 0 (rad/s). relaxes: True where a Debye term makes the f-sum diverge or
@@ -59,12 +61,20 @@ def sum_rules(chi: Callable[[Real], Complex], features: Sequence[Feature], *, re
     if not relaxes:
         rules.append(SumRule("static", 2 / np.pi * float(np.dot(weight, absorbed / omega)) / static, ""))
         if abs(instantaneous) > 1e-9 * abs(static):
-            rules.append(SumRule("f-sum", None, "an offset at all frequencies stands for absorption further up"))
+            rules.append(
+                SumRule("f-sum", None, "an offset at all frequencies stands for absorption further up")
+            )
         else:
             strength = 2 / np.pi * float(np.dot(weight, absorbed * omega))
             edge = 30 * max(feature.centre + feature.width for feature in features)
             expected = _inertial(chi, edge)
-            rules.append(SumRule("f-sum", strength / expected, f"plasma frequency {np.sqrt(abs(strength)) * 1e-15:.4g} rad/fs"))
+            rules.append(
+                SumRule(
+                    "f-sum",
+                    strength / expected,
+                    f"plasma frequency {np.sqrt(abs(strength)) * 1e-15:.4g} rad/fs",
+                )
+            )
     return tuple(rules)
 
 

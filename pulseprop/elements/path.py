@@ -30,7 +30,9 @@ class Path:
         names = [element.name for element in self.elements]
         for name in names:
             if names.count(name) > 1:
-                raise InputError("two elements share a name", value=name, allowed="a name of its own for each element")
+                raise InputError(
+                    "two elements share a name", value=name, allowed="a name of its own for each element"
+                )
 
     def __iter__(self) -> Iterator[Element]:
         return iter(self.elements)

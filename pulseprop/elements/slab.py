@@ -51,12 +51,19 @@ class Slab:
 
     def __post_init__(self) -> None:
         if not self.thickness >= 0 or not np.isfinite(self.thickness):
-            raise InputError("a slab needs a thickness", value=self.thickness, allowed="a length of 0 or more")
+            raise InputError(
+                "a slab needs a thickness", value=self.thickness, allowed="a length of 0 or more"
+            )
         if not 0 <= self.angle < np.pi / 2:
-            raise InputError("an angle of incidence outside its range", value=self.angle, allowed="0 deg up to below 90 deg")
+            raise InputError(
+                "an angle of incidence outside its range",
+                value=self.angle,
+                allowed="0 deg up to below 90 deg",
+            )
         if self.angle > 0 and self.faces in ("fresnel", "echoes") and self.polarisation is None:
             raise InputError(
-                "a tilted slab with reflecting faces needs a polarisation", allowed='polarisation = "p" or "s"'
+                "a tilted slab with reflecting faces needs a polarisation",
+                allowed='polarisation = "p" or "s"',
             )
 
     @property

@@ -17,7 +17,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
-from pulseprop.numerics.cauchy import piecewise_cauchy, piecewise_value
+from pulseprop.numerics.cauchy import Level, cauchy_levels, piecewise_cauchy, piecewise_value
 from pulseprop.numerics.principal_value import inverse_power_cauchy
 from pulseprop.numerics.spline import cubic_pieces, derivative_pieces, linear_pieces
 
@@ -129,10 +129,14 @@ class AbsorptionDensity:
                 )
         return self._sum(omega) + 1j * self.value(omega)
 
+    @cached_property
+    def _levels(self) -> list[Level]:
+        return cauchy_levels(self.edges / self.edges[-1], self.pieces)
+
     def _sum(self, z: Numbers) -> Complex:
         unit = float(self.edges[-1])
         both = np.concatenate((z.ravel(), -z.ravel())) / unit
-        total = piecewise_cauchy(self.edges / unit, self.pieces, both)
+        total = piecewise_cauchy(self.edges / unit, self.pieces, both, self._levels)
         if self.far:
             total = total + self.far * inverse_power_cauchy(both, self.power)
         here, mirrored = np.split(total, 2)

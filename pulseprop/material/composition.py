@@ -18,7 +18,15 @@ from pulseprop.material.refraction import refraction_of, susceptibility_of
 from pulseprop.material.response import Band, Response, View, common_band
 from pulseprop.numerics.series import Series, compose, product, quotient, variable
 
-__all__ = ["Absolute", "Bruggeman", "IndexAddition", "LorentzLorenz", "MaxwellGarnett", "Scaled", "WithAbsorption"]
+__all__ = [
+    "Absolute",
+    "Bruggeman",
+    "IndexAddition",
+    "LorentzLorenz",
+    "MaxwellGarnett",
+    "Scaled",
+    "WithAbsorption",
+]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -63,7 +71,9 @@ class LorentzLorenz:
         return common_band(part for part, _ in self.parts)
 
     def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
-        shares = [fraction * _polarisability(part.series(omega, count, view)) for part, fraction in self.parts]
+        shares = [
+            fraction * _polarisability(part.series(omega, count, view)) for part, fraction in self.parts
+        ]
         return _from_polarisability(sum(shares[1:], start=shares[0]))
 
 

@@ -10,7 +10,6 @@ import numpy as np
 
 from pulseprop.errors import InputError
 from pulseprop.material.catalogue import Record, record
-from pulseprop.material.molar_density import molar_density
 from pulseprop.material.formulas import (
     MICROMETRE_OMEGA,
     Formula,
@@ -22,6 +21,7 @@ from pulseprop.material.formulas import (
 )
 from pulseprop.material.lines import Relaxation
 from pulseprop.material.medium import Medium, NonlinearIndex
+from pulseprop.material.molar_density import molar_density
 from pulseprop.material.response import Band, Constant, Response, Sum
 
 __all__ = ["catalogue_medium", "response_of_record"]
@@ -93,11 +93,16 @@ def _nonlinear_indices(entry: Record) -> tuple[NonlinearIndex, ...]:
     found = []
     for printed in entry.n2:
         value = NonlinearIndex(
-            value=printed.value, wavelength=printed.wavelength_um * 1e-6, source=printed.source, pulse=printed.pulse
+            value=printed.value,
+            wavelength=printed.wavelength_um * 1e-6,
+            source=printed.source,
+            pulse=printed.pulse,
         )
         if entry.pressure_Pa and entry.temperature_K and printed.pressure_Pa and printed.temperature_K:
             here = molar_density(entry.pressure_Pa, entry.temperature_K)
-            value = replace(value, value=printed.value * here / molar_density(printed.pressure_Pa, printed.temperature_K))
+            value = replace(
+                value, value=printed.value * here / molar_density(printed.pressure_Pa, printed.temperature_K)
+            )
         found.append(value)
     return tuple(found)
 
@@ -113,6 +118,12 @@ def _kelvin(entry: Record) -> float | None:
 
 
 def _notes(entry: Record) -> tuple[str, ...]:
-    axis = {"o": "ordinary ray", "e": "extraordinary ray"}.get(entry.axis, f"axis {entry.axis}" if entry.axis else "")
-    assumed = "the source does not say whether the index is against air or vacuum" if entry.relative_to_assumed else ""
+    axis = {"o": "ordinary ray", "e": "extraordinary ray"}.get(
+        entry.axis, f"axis {entry.axis}" if entry.axis else ""
+    )
+    assumed = (
+        "the source does not say whether the index is against air or vacuum"
+        if entry.relative_to_assumed
+        else ""
+    )
     return tuple(note for note in (axis, assumed, entry.note) if note)

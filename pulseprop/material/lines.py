@@ -86,7 +86,9 @@ class VoigtLine:
         )
 
 
-def line(*, centre: float, width: float, doppler_width: float = 0.0, strength: float = 1.0) -> LorentzLine | VoigtLine:
+def line(
+    *, centre: float, width: float, doppler_width: float = 0.0, strength: float = 1.0
+) -> LorentzLine | VoigtLine:
     """A Lorentz line, or a Voigt line where there is a Doppler width (rad/s).
 
     Raises InputError where both widths are 0, or the line is overdamped under a Doppler width.
@@ -96,7 +98,11 @@ def line(*, centre: float, width: float, doppler_width: float = 0.0, strength: f
     if doppler_width <= 0:
         return LorentzLine(strength=strength, centre=centre, width=width)
     if width >= 2 * centre:
-        raise InputError("an overdamped line has no Doppler width", value=doppler_width, allowed="width below twice the centre")
+        raise InputError(
+            "an overdamped line has no Doppler width",
+            value=doppler_width,
+            allowed="width below twice the centre",
+        )
     return VoigtLine(strength=strength, centre=centre, width=width, doppler_width=doppler_width)
 
 

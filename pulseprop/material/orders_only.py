@@ -1,6 +1,6 @@
 """A medium of which only orders are known: a polynomial k(omega), no causal model.
 
-    k(omega) = k0 + k1 d + k2 d^2/2 + k3 d^3/6 + k4 d^4/24,   d = omega - centre,   n = c k / omega.
+k(omega) = k0 + k1 d + k2 d^2/2 + k3 d^3/6 + k4 d^4/24,   d = omega - centre,   n = c k / omega.
 """
 
 from __future__ import annotations

@@ -113,5 +113,9 @@ class Sum:
         total: Series = np.zeros((count, *np.shape(omega)))
         for part in self.parts:
             share = part.series(omega, count, view)
-            total = total + share if np.iscomplexobj(share) != np.iscomplexobj(total) else np.add(total, share, out=total)  # type: ignore[arg-type]
+            total = (
+                total + share
+                if np.iscomplexobj(share) != np.iscomplexobj(total)
+                else np.add(total, share, out=total)
+            )  # type: ignore[arg-type]
         return total

@@ -5,12 +5,12 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
-import scipy.fft
 from numpy.typing import NDArray
 
 from pulseprop.measures.profile import half_maximum, power
 from pulseprop.measures.window import energy_window, quiet_start
 from pulseprop.numerics.interpolation import band_limited
+from pulseprop.numerics.transforms import fast_length
 
 __all__ = [
     "Autocorrelation",
@@ -58,9 +58,9 @@ def _gathered(envelope: Complex) -> Complex:
 
 def _correlation(left: Complex, right: Complex, length: int) -> Complex:
     """sum_t left(t) conj(right(t - tau)) for tau in fft order, zero padded to `length`."""
-    product = scipy.fft.fft(left, length)
-    product *= scipy.fft.fft(right, length).conj()
-    return np.asarray(scipy.fft.ifft(product, overwrite_x=True))
+    product = np.fft.fft(left, length)
+    product *= np.fft.fft(right, length).conj()
+    return np.asarray(np.fft.ifft(product))
 
 
 def _about_peak(field: Complex) -> Complex:
@@ -72,11 +72,11 @@ def _about_peak(field: Complex) -> Complex:
 def _doubled(field: Complex) -> Complex:
     """The same field on twice as many samples, so that its square and cube fit into their band."""
     count = field.size
-    spectrum = scipy.fft.fft(field)
+    spectrum = np.fft.fft(field)
     padded = np.zeros(2 * count, dtype=complex)
     padded[: (count + 1) // 2] = 2 * spectrum[: (count + 1) // 2]
     padded[-(count // 2) :] = 2 * spectrum[(count + 1) // 2 :]
-    return np.asarray(scipy.fft.ifft(padded, overwrite_x=True))
+    return np.asarray(np.fft.ifft(padded))
 
 
 def intensity_autocorrelation(envelope: Complex, step: float) -> Autocorrelation:
@@ -85,11 +85,11 @@ def intensity_autocorrelation(envelope: Complex, step: float) -> Autocorrelation
     The field (N,) must be oversampled twice; no wrap-around.
     """
     height = power(_gathered(envelope))
-    length = int(scipy.fft.next_fast_len(2 * height.size, real=True))
-    spectrum = scipy.fft.rfft(height, length)
+    length = fast_length(2 * height.size)
+    spectrum = np.fft.rfft(height, length)
     squared = np.square(spectrum.real) + np.square(spectrum.imag)
     # Twice as many delays: the trace fills the whole band of the field's samples.
-    signal = scipy.fft.irfft(squared, 2 * length)
+    signal = np.fft.irfft(squared, 2 * length)
     reach = 2 * height.size - 1
     signal = np.concatenate((signal[-reach:], signal[: reach + 1])) / signal[0]
     delay = np.linspace(-0.5 * step * reach, 0.5 * step * reach, signal.size)
@@ -116,7 +116,7 @@ def interferometric_autocorrelation(
         delay = _fringe_delays(1.5 * autocorrelation_fwhm(envelope, step), carrier)
     field = _doubled(_about_peak(_gathered(envelope)))
     height = power(field)
-    length = int(scipy.fft.next_fast_len(2 * field.size))
+    length = fast_length(2 * field.size)
     both = _correlation(height.astype(complex), height.astype(complex), length)
     single = _correlation(height * field, field, length) + _correlation(field, height * field, length)
     double = _correlation(field * field, field * field, length)

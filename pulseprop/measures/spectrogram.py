@@ -5,7 +5,6 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 import numpy as np
-import scipy.fft
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
@@ -13,6 +12,7 @@ from pulseprop.grid import Grid
 from pulseprop.measures.profile import power
 from pulseprop.measures.widths import rms_width
 from pulseprop.measures.window import energy_window
+from pulseprop.numerics.transforms import fast_length
 
 __all__ = ["Spectrogram", "spectrogram"]
 
@@ -75,7 +75,7 @@ def spectrogram(
 def _reduced(grid: Grid, spectrum: Complex, band: slice) -> tuple[Complex, float, float]:
     """The field of a stretch of the spectrum, twice oversampled on as few samples as that takes."""
     count = band.stop - band.start
-    points = min(2 * int(scipy.fft.next_fast_len(count)), grid.points)
+    points = min(2 * fast_length(count), grid.points)
     middle = (band.start + band.stop) // 2
     first = max(min(middle - points // 2, grid.points - points), 0)
     small = Grid(
@@ -99,6 +99,6 @@ def _slice(field: Complex, step: float, moment: float, deviation: float, detunin
     last = min(int((moment + GATE_REACH * deviation) / step) + 2, field.size)
     time = step * np.arange(first, last) - moment
     gate = np.exp(-np.square(time / (2 * deviation))) / (2 * np.pi * deviation**2) ** 0.25
-    length = int(scipy.fft.next_fast_len(max(8 * detuning.size, 2 * (last - first))))
-    strength = power(scipy.fft.ifft(field[first:last] * gate, length, norm="forward")) * step * step
+    length = fast_length(max(8 * detuning.size, 2 * (last - first)))
+    strength = power(np.fft.ifft(field[first:last] * gate, length, norm="forward")) * step * step
     return np.interp(detuning * length * step, np.arange(length), strength, period=length)

@@ -91,27 +91,37 @@ def _tiered(u: Complex | Real, near: Callable[..., Complex], far: Callable[..., 
     tier = np.searchsorted([start for start, _ in TIERS], size, side="right")
     result = np.empty(flat.shape, dtype=complex)
     close = tier == 0
-    result[close] = near(flat[close].astype(complex))
+    result[close] = near(flat[close])
     for index, (_, terms) in enumerate(TIERS, start=1):
         chosen = tier == index
         result[chosen] = far(flat[chosen], terms)
     return result.reshape(u.shape)
 
 
-def _logarithm(y: Complex) -> Complex:
-    """log of v - u for u on or above the axis: the argument runs from 0 down to -pi; 0 gives 0 (times y^2 or more)."""
+def _logarithm(y: Complex | Real) -> Complex | Real:
+    """log of v - u for u on or above the axis: the argument runs from 0 down to -pi; 0 gives 0 (times y^2 or more).
+
+    Of real y the logarithm of the size alone: what the argument adds is known in closed form.
+    """
     safe = np.where(y == 0, 1.0, y)
+    if np.isrealobj(y):
+        return np.asarray(np.log(np.abs(safe)))
     return np.log(np.abs(safe)) - 1j * np.abs(np.angle(safe))
 
 
-def _near(u: Complex) -> Complex:
+def _near(u: Complex | Real) -> Complex:
     y = KNOTS[:, None] - u
-    return np.asarray(DIFFERENCES @ (y**3 * _logarithm(y)) / 6)
+    return np.asarray(DIFFERENCES @ (y * y * y * _logarithm(y)) / 6, dtype=complex)
 
 
-def _near_slope(u: Complex) -> Complex:
+def _near_slope(u: Complex | Real) -> Complex:
     y = KNOTS[:, None] - u
-    return np.asarray(DIFFERENCES @ (y**2 * _logarithm(y)) / -2)
+    square = y * y
+    slope = np.asarray(DIFFERENCES @ (square * _logarithm(y)) / -2, dtype=complex)
+    if np.isrealobj(u):
+        slope.imag = np.pi / 2 * (DIFFERENCES @ np.where(y < 0, square, 0.0))
+        slope.imag[np.abs(u) >= 2] = 0.0
+    return slope
 
 
 def _far(u: Complex | Real, terms: int) -> Complex:

@@ -20,7 +20,7 @@ from numpy.typing import NDArray
 
 from pulseprop.numerics.principal_value import cubic_cauchy, polynomial
 
-__all__ = ["piecewise_cauchy", "piecewise_value"]
+__all__ = ["Level", "cauchy_levels", "monomial_cauchy", "piecewise_cauchy", "piecewise_value"]
 
 Real = NDArray[np.float64]
 Complex = NDArray[np.complex128]
@@ -38,7 +38,7 @@ BLOCK = 2048
 
 
 @dataclass(frozen=True)
-class _Level:
+class Level:
     """Groups of pieces: centre and half length (groups,), nodes and charges (groups, nodes)."""
 
     centre: Real
@@ -55,16 +55,18 @@ def piecewise_value(edges: Real, coefficients: Real, omega: Numbers) -> Numbers:
     return np.where(inside, polynomial(t, coefficients[piece]), 0.0)
 
 
-def piecewise_cauchy(edges: Real, coefficients: Real, z: Numbers) -> Numbers:
+def piecewise_cauchy(
+    edges: Real, coefficients: Real, z: Numbers, levels: list[Level] | None = None
+) -> Numbers:
     """F(z), shape of z; real z gives the principal value.
 
     edges: ascending, shape (pieces + 1,). coefficients: (pieces, 4) in t = (w - left)/(right - left). z: any
     shape, real or complex off the axis. Relative error about 1e-13 of int |density / (w - z)|, more only
     where that itself diverges. At an edge the logarithm is left out (see `principal_value`): the limit where
-    the density is continuous.
+    the density is continuous. levels: of the same edges and coefficients, if at hand.
     """
     places = np.asarray(z).ravel()
-    levels = _levels(edges, coefficients)
+    levels = cauchy_levels(edges, coefficients) if levels is None else levels
     result = np.empty(places.shape, dtype=np.result_type(places, np.float64))
     for start in range(0, len(places), BLOCK):
         block = places[start : start + BLOCK]
@@ -72,8 +74,8 @@ def piecewise_cauchy(edges: Real, coefficients: Real, z: Numbers) -> Numbers:
     return result.reshape(np.shape(z))
 
 
-def _levels(edges: Real, coefficients: Real) -> list[_Level]:
-    """Level 0: the pieces; each further level joins two neighbours, up to one group of all."""
+def cauchy_levels(edges: Real, coefficients: Real) -> list[Level]:
+    """The charges of all groups: the pieces first, then pairs of neighbours, up to one group of all."""
     levels = [_pieces(edges, coefficients)]
     size = 2
     while len(levels[-1].centre) > 1:
@@ -84,16 +86,16 @@ def _levels(edges: Real, coefficients: Real) -> list[_Level]:
     return levels
 
 
-def _pieces(edges: Real, coefficients: Real) -> _Level:
+def _pieces(edges: Real, coefficients: Real) -> Level:
     x, weight = np.polynomial.legendre.leggauss(GAUSS_NODES)
     length = np.diff(edges)
     t = (1 + x) / 2
     nodes = edges[:-1, None] + length[:, None] * t
     charges = length[:, None] * (weight / 2) * polynomial(t, coefficients[:, None, :])
-    return _Level((edges[:-1] + edges[1:]) / 2, length / 2, nodes, np.asarray(charges))
+    return Level((edges[:-1] + edges[1:]) / 2, length / 2, nodes, np.asarray(charges))
 
 
-def _joined(below: _Level, low: Real, high: Real) -> _Level:
+def _joined(below: Level, low: Real, high: Real) -> Level:
     """Charges of neighbours carried to the Chebyshev nodes of their union, by Chebyshev moments."""
     count = len(low)
     centre, half = (low + high) / 2, (high - low) / 2
@@ -109,7 +111,7 @@ def _joined(below: _Level, low: Real, high: Real) -> _Level:
     spread = (
         np.cos(np.arange(NODES)[:, None] * angle) * np.where(np.arange(NODES) == 0, 1, 2)[:, None] / NODES
     )
-    return _Level(centre, half, centre[:, None] + half[:, None] * np.cos(angle), moments @ spread)
+    return Level(centre, half, centre[:, None] + half[:, None] * np.cos(angle), moments @ spread)
 
 
 def _chebyshev(x: Real) -> Iterator[Real]:
@@ -121,7 +123,7 @@ def _chebyshev(x: Real) -> Iterator[Real]:
         before, now = now, 2 * x * now - before
 
 
-def _block(levels: list[_Level], edges: Real, coefficients: Real, z: Numbers) -> Numbers:
+def _block(levels: list[Level], edges: Real, coefficients: Real, z: Numbers) -> Numbers:
     total = np.zeros_like(z, dtype=np.result_type(z, np.float64))
     place = np.arange(len(z))
     group = np.zeros(len(z), dtype=np.intp)
@@ -143,7 +145,7 @@ def _children(place: Indices, group: Indices, count: int) -> tuple[Indices, Indi
     return np.concatenate((place, place))[present], group[present]
 
 
-def _from_charges(level: _Level, group: Indices, z: Numbers) -> Numbers:
+def _from_charges(level: Level, group: Indices, z: Numbers) -> Numbers:
     return np.asarray(np.sum(level.charges[group] / (level.nodes[group] - z[:, None]), axis=1))
 
 

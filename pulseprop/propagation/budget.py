@@ -49,7 +49,9 @@ class Walk:
     tod: float | None = 0.0
 
 
-def walk(path: Path, windows: Windows, spectrum: Complex, omega: float, radius: float | None, advance: Advance) -> Walk:
+def walk(
+    path: Path, windows: Windows, spectrum: Complex, omega: float, radius: float | None, advance: Advance
+) -> Walk:
     """Take a copy of the spectrum A(omega) through the path; omega: centre in rad/s; radius: of the pulse's beam, m."""
     state = Walk(
         windows=windows,
@@ -91,7 +93,9 @@ def _row(state: Walk, index: int, element: Element, advance: Advance) -> Element
         tod_sum_fs3=_scaled(state.tod, 3),
         fwhm_after_fs=fwhm(grid.to_field(state.spectrum), grid.step) * FEMTO,
         peak_fluence_J_per_cm2=on_axis(energy_in, radius) * PER_CM2 if radius else None,
-        peak_intensity_W_per_cm2=on_axis(peak_in, radius) * PER_CM2 if radius and peak_in is not None else None,
+        peak_intensity_W_per_cm2=on_axis(peak_in, radius) * PER_CM2
+        if radius and peak_in is not None
+        else None,
         b_integral_rad=b,
         digits=_digits(element),
         echoes=_echoes(element, state.omega),

@@ -15,7 +15,18 @@ __all__ = ["cautions_for"]
 IONISING_W_PER_CM2 = 1e13
 """Peak intensity from which X-rays are expected in material processing; a legal figure of one country (Germany)."""
 
-DISPLACING = ("argon", "helium", "neon", "krypton", "xenon", "nitrogen", "CO2", "carbon dioxide", "SF6", "N2O")
+DISPLACING = (
+    "argon",
+    "helium",
+    "neon",
+    "krypton",
+    "xenon",
+    "nitrogen",
+    "CO2",
+    "carbon dioxide",
+    "SF6",
+    "N2O",
+)
 
 LASER = Caution(
     code="laser-radiation",
@@ -66,7 +77,9 @@ def _xrays(intensity: float) -> Caution:
 
 
 def _gases(path: Path) -> list[Caution]:
-    names = sorted({m.name.split(" at ")[0] for m in path.media if m.name.split(" at ")[0].split(" (")[0] in DISPLACING})
+    names = sorted(
+        {m.name.split(" at ")[0] for m in path.media if m.name.split(" at ")[0].split(" (")[0] in DISPLACING}
+    )
     if not names:
         return []
     listed = ", ".join(names)
@@ -84,7 +97,9 @@ def _gases(path: Path) -> list[Caution]:
 
 def _health(path: Path) -> list[Caution]:
     return [
-        Caution(code="substance", line=f"{medium.name}: {medium.health}", text=f"{medium.name}: {medium.health}.")
+        Caution(
+            code="substance", line=f"{medium.name}: {medium.health}", text=f"{medium.name}: {medium.health}."
+        )
         for medium in path.media
         if medium.health
     ]

@@ -95,7 +95,9 @@ def _nothing_to_test(left_out: tuple[str, ...], passive: bool) -> Causality:
 
 def _test_pulse(centre: float, duration: float) -> TestPulse:
     return TestPulse(
-        envelope=lambda x: finite_field((x - 0.5) / FINITE_FWHM), support=duration / FINITE_FWHM, centre=centre
+        envelope=lambda x: finite_field((x - 0.5) / FINITE_FWHM),
+        support=duration / FINITE_FWHM,
+        centre=centre,
     )
 
 

@@ -102,9 +102,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
         path=path,
         elements=rows,
         causality=causality,
-        grid=GridMeasures(
-            points=grid_in.points, step_fs=grid_in.step * FEMTO, span_fs=grid_in.span * FEMTO
-        ),
+        grid=GridMeasures(points=grid_in.points, step_fs=grid_in.step * FEMTO, span_fs=grid_in.span * FEMTO),
         solver=_solver(experiment, done),
         media=media_used(experiment.path, omega),
         hazards=hazard_facts(
@@ -117,7 +115,11 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
             experiment.pulse.beam_radius,
             experiment.pulse.repetition_rate,
         ),
-        warnings=(*experiment.warnings, *_range_warnings(experiment, grid_in, done.spectrum_in), *_b_warnings(experiment)),
+        warnings=(
+            *experiment.warnings,
+            *_range_warnings(experiment, grid_in, done.spectrum_in),
+            *_b_warnings(experiment),
+        ),
         cautions=(*cautions_for(experiment.path, rows), *experiment.cautions),
         pulse_notes=experiment.pulse.notes,
         signs=sign_cases(experiment) if experiment.both_signs else (),
@@ -133,7 +135,11 @@ def _propagate(experiment: Experiment, progress: Progress) -> _Propagated:
         spectrum = experiment.pulse.amplitude(windows.grid.omega)
         if enlargements == 0:
             _check_range(experiment, windows.grid, spectrum)
-        stepped = None if experiment.method == "exact" else SteppedAdvance(method=experiment.method, points=spectrum.size)
+        stepped = (
+            None
+            if experiment.method == "exact"
+            else SteppedAdvance(method=experiment.method, points=spectrum.size)
+        )
         progress("propagating", 0.1)
         walked = walk(
             experiment.path,
@@ -144,7 +150,8 @@ def _propagate(experiment: Experiment, progress: Progress) -> _Propagated:
             stepped or at_once,
         )
         wrapped = max(
-            _edge_energy(windows.grid, spectrum), _edge_energy(windows.after(len(windows.starts) - 1), walked.spectrum)
+            _edge_energy(windows.grid, spectrum),
+            _edge_energy(windows.after(len(windows.starts) - 1), walked.spectrum),
         )
         if wrapped <= WRAPPED_SHARE:
             return _Propagated(
@@ -217,7 +224,11 @@ def _range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tu
 def _b_warnings(experiment: Experiment) -> tuple[str, ...]:
     if experiment.pulse.beam_radius is None:
         return ()
-    missing = [medium.name for medium in experiment.path.media if medium.nonlinear_index(experiment.pulse.centre) is None]
+    missing = [
+        medium.name
+        for medium in experiment.path.media
+        if medium.nonlinear_index(experiment.pulse.centre) is None
+    ]
     if not missing:
         return ()
     return (f"no published n2 for {', '.join(missing)}: the B-integral of the path leaves it out",)

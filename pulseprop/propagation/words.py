@@ -32,12 +32,16 @@ def share(value: float) -> str:
 
 def headline(before: PulseMeasures, after: PulseMeasures, path: PathMeasures) -> str:
     """One sentence that answers what arrives."""
-    parts = [f"{duration(after.fwhm_fs)} at the end of the path against {duration(before.fwhm_fs)} at its start"]
+    parts = [
+        f"{duration(after.fwhm_fs)} at the end of the path against {duration(before.fwhm_fs)} at its start"
+    ]
     parts.append(f"{share(after.peak_ratio or 0.0)} of the peak power of the limit")
     if path.transmission < 0.9995:
         parts.append(f"{share(path.transmission)} of the energy")
     if after.split:
         parts.append("the pulse is split")
     elif (after.energy_after or 0.0) > RINGING_WORTH_A_WORD:
-        parts.append(f"{share(after.energy_after or 0.0)} of what leaves comes more than three widths after the peak")
+        parts.append(
+            f"{share(after.energy_after or 0.0)} of what leaves comes more than three widths after the peak"
+        )
     return "; ".join(parts) + "."

@@ -8,11 +8,11 @@ from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.fft import next_fast_len
 
 from pulseprop.grid import Grid
 from pulseprop.measures.profile import power
 from pulseprop.measures.widths import peak
+from pulseprop.numerics.transforms import fast_length
 from pulseprop.pulse.source import SpectralPhase, finite_number, in_blocks, launch, positive_number
 
 __all__ = ["CutLimit", "MeasuredPulse"]
@@ -115,7 +115,7 @@ class MeasuredPulse:
     def _field_power(self) -> tuple[Real, Real]:
         low, high = self.band
         step = np.pi / (high - low)
-        points = 2 * int(next_fast_len(int(0.5 * self.window / step) + 16))
+        points = 2 * fast_length(int(0.5 * self.window / step) + 16)
         grid = Grid(points=points, step=step, start=-0.5 * points * step, carrier=(low + high) / (4 * np.pi))
         bare = replace(self, gdd=0.0, tod=0.0, fod=0.0)
         return grid.time, power(grid.to_field(bare.amplitude(grid.omega)))

@@ -8,10 +8,10 @@ from typing import Protocol, runtime_checkable
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.fft import next_fast_len
 
 from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.grid import Grid
+from pulseprop.numerics.transforms import fast_length
 
 __all__ = [
     "PulseSource",
@@ -149,7 +149,7 @@ def launch_grid(source: PulseSource, *, share: float = 1e-12, oversampling: floa
             allowed=f"up to {LARGEST_LAUNCH} points",
             remedy="State less chirp, or a shape without long wings",
         )
-    points = 2 * int(next_fast_len(int(needed / 2) + 1))
+    points = 2 * fast_length(int(needed / 2) + 1)
     start = 0.5 * (first + last) - 0.5 * points * step
     return Grid(points=points, step=step, start=start, carrier=(low + high) / (4 * np.pi))
 

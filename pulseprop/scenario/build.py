@@ -25,7 +25,8 @@ def build(scenario: Scenario) -> Experiment:
     content = scenario.content
     if not content.path:
         raise scenario.blamed(
-            InputError("the path is empty", allowed="one [[path]] table or more", remedy="Add an element"), "path"
+            InputError("the path is empty", allowed="one [[path]] table or more", remedy="Add an element"),
+            "path",
         )
     media = media_of(scenario)
     try:

@@ -83,7 +83,8 @@ def absorption_of(
     assert spec is not None
     columns = spectral_columns(scenario.path_of(spec.file), spec)
     anchors = [
-        Anchor(omega=anchor.at.omega, value=anchor.index, uncertainty=anchor.uncertainty) for anchor in table.anchor
+        Anchor(omega=anchor.at.omega, value=anchor.index, uncertainty=anchor.uncertainty)
+        for anchor in table.anchor
     ]
     return _blaming(
         columns.table,
@@ -126,7 +127,9 @@ def index_table_of(scenario: Scenario, name: str, table: MediumTable) -> Medium:
             columns.y,
             k,
             index_error=stated.n if stated else None,
-            k_error=np.maximum(np.abs(k), SMALLEST_K) * stated.k if stated and stated.k and k is not None else None,
+            k_error=np.maximum(np.abs(k), SMALLEST_K) * stated.k
+            if stated and stated.k and k is not None
+            else None,
             printed_axis=columns.table.values[:, columns.x_column],
             as_printed=table.as_printed,
             numbers=_line_numbers(columns.table),
@@ -168,7 +171,9 @@ def spectrum_columns(scenario: Scenario, spec: SpectrumFile) -> SpectrumColumns:
     columns = spectral_columns(scenario.path_of(spec.file), spec)
     phase = None
     if spec.phase is not None:
-        phase = spec.phase_sign * np.asarray(to_si(columns.table.column(spec.phase), spec.phase_unit, "phase"))
+        phase = spec.phase_sign * np.asarray(
+            to_si(columns.table.column(spec.phase), spec.phase_unit, "phase")
+        )
     return SpectrumColumns(
         x=_si_axis(_omega(columns, spec), spec.x),
         y=columns.y,

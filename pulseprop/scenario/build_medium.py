@@ -97,13 +97,20 @@ class MediaOfScenario:
         return Medium(
             name=name,
             response=Sum((response, *added)) if added else response,
-            source=table.source or (table.formula.source if table.formula else "") or base.source or "stated in the scenario",
-            temperature=f"{table.temperature:.5g} K" if table.temperature else base.temperature or "not stated",
+            source=table.source
+            or (table.formula.source if table.formula else "")
+            or base.source
+            or "stated in the scenario",
+            temperature=f"{table.temperature:.5g} K"
+            if table.temperature
+            else base.temperature or "not stated",
             temperature_K=table.temperature or base.temperature_K,
             relative_to="vacuum" if table.absolute else base.relative_to,
             causal=causal,
             resonances=(*base.resonances, *(resonance_of(line) for line in built)),
-            n2=(NonlinearIndex(value=table.kerr.n2, source="stated in the scenario"),) if table.kerr else base.n2,
+            n2=(NonlinearIndex(value=table.kerr.n2, source="stated in the scenario"),)
+            if table.kerr
+            else base.n2,
             spread=base.spread if not added else (),
             notes=(*notes, table.note) if table.note else notes,
             printed_digits=base.printed_digits,
@@ -148,7 +155,9 @@ class MediaOfScenario:
             name=name,
             response=response,
             source="; ".join(f"{medium.name}: {medium.source}" for medium, _ in parts),
-            temperature="; ".join(dict.fromkeys(medium.temperature for medium, _ in parts if medium.temperature)),
+            temperature="; ".join(
+                dict.fromkeys(medium.temperature for medium, _ in parts if medium.temperature)
+            ),
             temperature_K=first.temperature_K,
             relative_to=first.relative_to,
             causal=all(medium.causal for medium, _ in parts),
