@@ -1,9 +1,9 @@
 """Taylor coefficients of the Faddeeva function w(z) = exp(-z^2) erfc(-i z).
 
-Near the centre from w' = -2 z w + 2i/sqrt(pi) and its derivatives (M. Abramowitz, I. A. Stegun, Handbook of Mathematical
-Functions, 7.1.20). That recurrence cancels as z^2 with every order, so far away the Gauss-Hermite sum over simple poles is
-used, which is exact there to rounding (2e-14 in the fourth derivative). Measured near: 1e-12, 5e-11, 2e-9, 3e-8 in the
-first to fourth derivative at worst, where the library's w itself is only good to 1e-14.
+Near the centre from w' = -2 z w + 2i/sqrt(pi) and its derivatives (M. Abramowitz, I. A. Stegun, Handbook of
+Mathematical Functions, 7.1.20). That recurrence cancels as z^2 with every order, so far away the Gauss-Hermite sum
+over simple poles is used, which is exact there to rounding (2e-14 in the fourth derivative). Measured near: 1e-12,
+5e-11, 2e-9, 3e-8 in the first to fourth derivative at worst, where the library's w itself is only good to 1e-14.
 """
 
 from __future__ import annotations
