@@ -79,7 +79,9 @@ def catalogue() -> tuple[str, ...]:
 
 
 def medium(name: str) -> Medium:
-    """A medium by name: of the catalogue, or "SCENARIO.toml:NAME" (split at the last colon). Raises InputError."""
+    """A medium by name: of the catalogue, or "SCENARIO.toml:NAME" (split at the last colon). Raises
+    InputError.
+    """
     from pulseprop.material.library import catalogue_medium
 
     file, colon, own = name.rpartition(":")

@@ -60,7 +60,7 @@ class Grid:
     @cached_property
     def time(self) -> Real:
         """Instants in s on the clock of the front, shape (points,)."""
-        return self.start + self.step * np.arange(self.points)
+        return self.start + self.step * np.arange(self.points, dtype=float)
 
     @cached_property
     def frequency(self) -> Real:
@@ -97,14 +97,15 @@ class Grid:
 
     @cached_property
     def _offset(self) -> tuple[int, float]:
-        """Start in whole samples and a rest in s: turning samples round is exact, a phase of 1e6 rad is not."""
+        """Start in whole samples and a rest in s: rolling samples is exact, a phase of 1e6 rad is not."""
         samples = round(self.start / self.step)
         return samples % self.points, self.start - samples * self.step
 
     def _turn(self, spectrum: Complex, delay: float, scale: float) -> None:
         """Multiply by scale exp(2 pi i (f - carrier) delay), in place.
 
-        The factor is a geometric sequence: the product of a coarse and a fine one costs two exponentials of root length.
+        The factor is a geometric sequence: the product of a coarse and a fine one costs two exponentials of
+        root length.
         """
         fine = self.points & -self.points
         while fine * fine > self.points:
@@ -118,7 +119,7 @@ class Grid:
 
     def carrier_resolved(self, envelope: Complex) -> Complex:
         """The undivided analytic signal E(t) of an envelope about `carrier`."""
-        return envelope * np.exp(-2j * np.pi * self.carrier * self.time)
+        return np.asarray(envelope * np.exp(-2j * np.pi * self.carrier * self.time))
 
     def energy(self, spectrum: Complex) -> float:
         """Energy in J of a spectrum A(omega) on this grid (Parseval)."""

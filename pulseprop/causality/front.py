@@ -1,11 +1,12 @@
 """The front test: nothing may leave before a front travelling at c could have arrived.
 
-A real field that is exactly zero before its first instant and infinitely smooth is sent through a transfer; the energy of the
-square of the real field that comes out before the front, over all that comes out, is set against a measured noise floor. Analytic
-signals will not do: that of a compact pulse is not compact.
+A real field that is exactly zero before its first instant and infinitely smooth is sent through a transfer;
+the energy of the square of the real field that comes out before the front, over all that comes out, is set
+against a measured noise floor. Analytic signals will not do: that of a compact pulse is not compact.
 
-Any medium with n -> 1 at high frequency gives exactly zero (A. Sommerfeld, Ann. Phys. 44, 177 (1914)); what remains is rounding,
-aliasing and the part of the ringing that wraps around the window. True precursors come after the front and are no fault.
+Any medium with n -> 1 at high frequency gives exactly zero (A. Sommerfeld, Ann. Phys. 44, 177 (1914)); what
+remains is rounding, aliasing and the part of the ringing that wraps around the window. True precursors come
+after the front and are no fault.
 """
 
 from __future__ import annotations
@@ -26,7 +27,9 @@ AHEAD_SHARE = 0.25
 LAST_SHARE = 0.02
 """Part of the window, at its end, whose energy measures how much wraps around."""
 NYQUIST_LEVEL = 1.5e-16
-"""Spectrum at Nyquist over its peak: where a transform in double precision shows rounding and no longer the pulse."""
+"""Spectrum at Nyquist over its peak: where a transform in double precision shows rounding and no longer the
+pulse.
+"""
 LOBE = 32
 CAUSAL_FLOORS = 100.0
 ACAUSAL_FLOORS = 1e4
@@ -105,8 +108,9 @@ def front_test(
 ) -> FrontResult:
     """Send the test pulse through `transfer(omega)` (omega > 0, rad/s; against vacuum) and judge.
 
-    first_span: s, an estimate of when the answer is there; ringing: s, how long it may go on after, which the first window
-    holds where that is cheap. The window is doubled until what wraps around is small enough or `most_points` are reached. absorbs: whether the naive filter |transfer| is worth a run.
+    first_span: s, an estimate of when the answer is there; ringing: s, how long it may go on after, which the
+    first window holds where that is cheap. The window is doubled until what wraps around is small enough or
+    `most_points` are reached. absorbs: whether the naive filter |transfer| is worth a run.
     """
     step = pulse.step()
     least, whole = (
@@ -151,7 +155,7 @@ def _input_spectrum(pulse: TestPulse, points: int, step: float) -> Complex:
     field = np.zeros(points)
     first = _front_index(points)
     samples = int(np.ceil(pulse.support / step)) + 1
-    field[first : first + samples] = pulse.field(step * np.arange(samples))
+    field[first : first + samples] = pulse.field(step * np.arange(samples, dtype=float))
     return np.asarray(np.fft.rfft(field))
 
 
@@ -162,12 +166,15 @@ def _front_index(points: int) -> int:
 def _apply(
     spectrum: Complex, transfer: Callable[[Real], Complex], points: int, step: float, *, magnitude_only: bool
 ) -> None:
-    """Multiply in place; scipy's forward transform carries exp(-i omega t), so the conjugate transfer applies."""
+    """Multiply in place; numpy's forward transform carries exp(-i omega t), so the conjugate transfer
+    applies.
+    """
     spacing = 2 * np.pi / (points * step)
     for start in range(0, spectrum.size, BLOCK):
         part = slice(start, min(start + BLOCK, spectrum.size))
-        omega = spacing * np.arange(part.start, part.stop)
-        # Carriers have a pole at zero frequency; the limit of the transfer is real there, and as good a hair above.
+        omega = spacing * np.arange(part.start, part.stop, dtype=float)
+        # Carriers have a pole at zero frequency; the limit of the transfer is real there, and as good a hair
+        # above.
         omega[omega == 0] = STATIC * spacing
         values = transfer(omega)
         spectrum[part] *= np.abs(values) if magnitude_only else np.conj(values)
@@ -178,7 +185,7 @@ def _out(spectrum: Complex, points: int, pulse: TestPulse, step: float) -> tuple
     field *= field
     total = float(np.sum(field))
     samples = int(np.ceil(pulse.support / step)) + 1
-    energy_in = float(np.sum(pulse.field(step * np.arange(samples)) ** 2))
+    energy_in = float(np.sum(pulse.field(step * np.arange(samples, dtype=float)) ** 2))
     if total == 0.0:
         return 0.0, 0.0, 0.0, energy_in
     ahead = float(np.sum(field[: _front_index(points)])) / total

@@ -3,7 +3,8 @@
     static rule   (2/pi) int chi2/omega d omega   = chi(0) - chi(inf)
     f-sum rule    (2/pi) int omega chi2 d omega   = lim -omega^2 chi(omega) = plasma frequency squared
 
-(M. Altarelli, D. L. Dexter, H. M. Nussenzveig, D. Y. Smith, Phys. Rev. B 6, 4502 (1972) for the inertial rules; from memory.)
+(M. Altarelli, D. L. Dexter, H. M. Nussenzveig, D. Y. Smith, Phys. Rev. B 6, 4502 (1972) for the inertial
+rules; from memory.)
 """
 
 from __future__ import annotations
@@ -27,7 +28,7 @@ LOWEST, HIGHEST = 1e-9, 1e7
 
 @dataclass(frozen=True)
 class Feature:
-    """Where a susceptibility absorbs: centre and width in rad/s; a relaxation has centre 0 and width 1/tau."""
+    """Where a susceptibility absorbs: centre and width, rad/s; a relaxation has centre 0, width 1/tau."""
 
     centre: float
     width: float
@@ -35,7 +36,9 @@ class Feature:
 
 @dataclass(frozen=True)
 class SumRule:
-    """name of the rule; ratio of the integral over its expected value, None where the rule has no finite value."""
+    """name of the rule; ratio of the integral over its expected value, None where the rule has no finite
+    value.
+    """
 
     name: str
     ratio: float | None
@@ -47,8 +50,8 @@ def sum_rules(
 ) -> tuple[SumRule, ...]:
     """Both rules by quadrature refined around the features.
 
-    chi: the completed susceptibility at omega > 0 (rad/s). relaxes: True where a Debye term makes the f-sum diverge or
-    carriers make chi(0) infinite.
+    chi: the completed susceptibility at omega > 0 (rad/s). relaxes: True where a Debye term makes the f-sum
+    diverge or carriers make chi(0) infinite.
     """
     if not features:
         return ()
@@ -90,14 +93,14 @@ def _quadrature(features: Sequence[Feature]) -> tuple[Real, Real]:
     """Gauss-Legendre nodes and weights on pieces that shrink towards every feature."""
     slowest = min(max(feature.width, 1e-3 * feature.centre) for feature in features)
     fastest = max(feature.centre + feature.width for feature in features)
-    edges = [np.geomspace(LOWEST * slowest, HIGHEST * fastest, 160)]
+    edges: list[Real] = [np.geomspace(LOWEST * slowest, HIGHEST * fastest, 160)]
     for feature in features:
         offsets = feature.width * DYADIC
         edges += [feature.centre + offsets, feature.centre - offsets, np.array([feature.centre])]
     cut = np.unique(np.concatenate(edges))
     cut = cut[(cut > LOWEST * slowest) & (cut < HIGHEST * fastest)]
     cut = cut[np.concatenate(([True], np.diff(cut) > 1e-14 * cut[1:]))]
-    nodes, weights = np.polynomial.legendre.leggauss(NODES)
+    nodes, weights = (np.asarray(part, dtype=float) for part in np.polynomial.legendre.leggauss(NODES))
     half = 0.5 * np.diff(cut)[:, None]
     middle = (0.5 * (cut[1:] + cut[:-1]))[:, None]
     return (middle + half * nodes).ravel(), (half * weights).ravel()

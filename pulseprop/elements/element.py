@@ -9,7 +9,7 @@ from numpy.typing import NDArray
 
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
-from pulseprop.numerics.series import Series
+from pulseprop.numerics.series import Numbers, Series
 
 __all__ = ["Element", "orders_of_element", "transfer_of"]
 
@@ -21,8 +21,9 @@ Real = NDArray[np.float64]
 class Element(Protocol):
     """One element of a path. Transfers are against the same path in vacuum: the clock of a front at c.
 
-    detail: what it is in a few words. beam_radius: 1/e^2 intensity radius in m where the beam differs from the pulse's.
-    medium: what the pulse crosses, if anything. phase_only: given by a phase, not by matter: left out of the front test.
+    detail: what it is in a few words. beam_radius: 1/e^2 intensity radius in m where the beam differs from
+    the pulse's. medium: what the pulse crosses, if anything. phase_only: given by a phase, not by matter:
+    left out of the front test.
     """
 
     @property
@@ -39,12 +40,16 @@ class Element(Protocol):
     def length(self) -> float: ...
     @property
     def phase_only(self) -> bool: ...
+    @property
+    def temperature_K(self) -> float | None: ...
 
-    def exponent(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
-        """Taylor coefficients of ln(transfer) of the direct passage about each omega; shape (count, *omega.shape)."""
+    def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """Taylor coefficients of ln(transfer) of the direct passage about each omega; shape (count,
+        *omega.shape).
+        """
         ...
 
-    def factor(self, omega: Complex | Real, view: View = View.AXIS) -> Complex | None:
+    def factor(self, omega: Numbers, view: View = View.AXIS) -> Complex | None:
         """What else multiplies the transfer (faces, echoes), shape of omega; None where nothing does."""
         ...
 
@@ -53,7 +58,7 @@ class Element(Protocol):
         ...
 
 
-def transfer_of(element: Element, omega: Complex | Real, view: View = View.AXIS) -> Complex:
+def transfer_of(element: Element, omega: Numbers, view: View = View.AXIS) -> Complex:
     """The whole transfer at omega (rad/s)."""
     transfer = np.exp(element.exponent(omega, 1, view)[0])
     factor = element.factor(omega, view)
@@ -61,6 +66,8 @@ def transfer_of(element: Element, omega: Complex | Real, view: View = View.AXIS)
 
 
 def orders_of_element(element: Element, omega: float) -> tuple[float, float, float, float]:
-    """Group delay (s), GDD (s^2), TOD (s^3), FOD (s^4) of the direct passage at omega (rad/s), from the analytic series."""
+    """Group delay (s), GDD (s^2), TOD (s^3), FOD (s^4) of the direct passage at omega (rad/s), from the
+    analytic series.
+    """
     phase = np.imag(element.exponent(np.array(omega), 5, View.PRINTED))
     return float(phase[1]), float(2 * phase[2]), float(6 * phase[3]), float(24 * phase[4])

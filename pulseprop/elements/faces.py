@@ -1,11 +1,12 @@
 """The faces of a slab: what is lost at them.
 
-Fresnel amplitudes at angle theta in vacuum, q = sqrt(n^2 - sin^2 theta), convention exp(-i omega t) (M. Born, E. Wolf, Principles
-of Optics, section 1.5; from memory):
+Fresnel amplitudes at angle theta in vacuum, q = sqrt(n^2 - sin^2 theta), convention exp(-i omega t) (M. Born,
+E. Wolf, Principles of Optics, section 1.5; from memory):
 
     s:  r = (cos theta - q) / (cos theta + q)          p:  r = (n^2 cos theta - q) / (n^2 cos theta + q)
 
-Both faces of one slab together transmit 1 - r^2; coherent echoes add the geometric sum 1 / (1 - r^2 exp(2 i omega d q / c)).
+Both faces of one slab together transmit 1 - r^2; coherent echoes add the geometric sum 1 / (1 - r^2 exp(2 i
+omega d q / c)).
 """
 
 from __future__ import annotations

@@ -12,7 +12,7 @@ from pulseprop.elements.element import Element, transfer_of
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
-from pulseprop.numerics.series import Series
+from pulseprop.numerics.series import Numbers, Series
 
 __all__ = ["Path"]
 
@@ -49,14 +49,14 @@ class Path:
                 found.setdefault(element.medium.name, element.medium)
         return tuple(found.values())
 
-    def exponent(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """Taylor coefficients of ln(transfer) of the direct passage, summed over the elements."""
         total = np.zeros((count, *np.shape(omega)), dtype=complex)
         for element in self.elements:
             total += element.exponent(omega, count, view)
         return total
 
-    def transfer(self, omega: Complex | Real, view: View = View.AXIS) -> Complex:
+    def transfer(self, omega: Numbers, view: View = View.AXIS) -> Complex:
         """The product of all transfers."""
         total = np.ones(np.shape(omega), dtype=complex)
         for element in self.elements:

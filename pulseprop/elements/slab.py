@@ -1,7 +1,8 @@
 """A slab of matter, upright or tilted.
 
-Against the same path in vacuum the direct passage has the phase (omega/c) d [sqrt(n^2 - sin^2 theta) - cos theta]; the bracket is
-computed as chi / (sqrt(n^2 - sin^2 theta) + cos theta), which keeps all digits of a dilute gas.
+Against the same path in vacuum the direct passage has the phase (omega/c) d [sqrt(n^2 - sin^2 theta) - cos
+theta]; the bracket is computed as chi / (sqrt(n^2 - sin^2 theta) + cos theta), which keeps all digits of a
+dilute gas.
 """
 
 from __future__ import annotations
@@ -16,7 +17,7 @@ from pulseprop.elements.faces import Polarisation, reflection_squared
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
-from pulseprop.numerics.series import Series, product, quotient, root, variable
+from pulseprop.numerics.series import Numbers, Series, product, quotient, root, variable
 
 __all__ = ["Slab"]
 
@@ -32,8 +33,8 @@ DEPTH_OF_DECAY = 21.0
 class Slab:
     """thickness in m (>= 0), angle in rad outside, [0, pi/2).
 
-    faces: "ideal" (no loss), "fresnel" (loss at both faces), "echoes" (coherent multiple reflection), or "reflectance" with the
-    power reflectance of each face in `reflectance`.
+    faces: "ideal" (no loss), "fresnel" (loss at both faces), "echoes" (coherent multiple reflection), or
+    "reflectance" with the power reflectance of each face in `reflectance`.
     """
 
     name: str
@@ -68,10 +69,10 @@ class Slab:
 
     @property
     def length(self) -> float:
-        """Geometric path inside at the angle of refraction is taken as the thickness at normal incidence, m."""
+        """The thickness, m: what phase and B-integral are counted per."""
         return self.thickness
 
-    def exponent(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i (omega/c) d [sqrt(n^2 - sin^2) - cos], as a Taylor series."""
         if self.angle == 0:
             excess = self.medium.refraction(omega, count, view)
@@ -89,7 +90,7 @@ class Slab:
         series[0] += np.cos(self.angle)
         return series
 
-    def factor(self, omega: Complex | Real, view: View = View.AXIS) -> Complex | None:
+    def factor(self, omega: Numbers, view: View = View.AXIS) -> Complex | None:
         """Loss and echoes of the two faces."""
         if self.faces == "ideal":
             return None
@@ -100,7 +101,7 @@ class Slab:
             return 1 - squared
         return (1 - squared) / (1 - squared * self._round_trip(omega, view))
 
-    def _reflection_squared(self, omega: Complex | Real, view: View) -> Complex:
+    def _reflection_squared(self, omega: Numbers, view: View) -> Complex:
         chi = self.medium.susceptibility(omega, view)
         q = self._root_plus_cosine(chi[None])[0] - np.cos(self.angle)
         return reflection_squared(chi, q, float(np.cos(self.angle)), self.polarisation or "s")
@@ -109,7 +110,7 @@ class Slab:
         """Power reflected by one bare face at omega (rad/s); s polarisation where none is stated."""
         return float(abs(self._reflection_squared(np.array(omega), View.AXIS)))
 
-    def _round_trip(self, omega: Complex | Real, view: View) -> Complex:
+    def _round_trip(self, omega: Numbers, view: View) -> Complex:
         """exp(2 i omega d q / c)."""
         vacuum = 1j * np.asarray(omega) * (self.thickness * np.cos(self.angle) / SPEED_OF_LIGHT)
         return np.asarray(np.exp(2 * (self.exponent(omega, 1, view)[0] + vacuum)))

@@ -1,16 +1,18 @@
 """A printed formula continued beyond its range by absorption, so that it is causal on the whole axis.
 
-A pole on the real axis, or a hard cut at the end of the range, would itself be acausal or lossless. Each pole is replaced
-by the widest cubic B-spline band of absorption, in x proportional to omega^2, that lies wholly outside the range and has the
-pole's strength and first moment; its width is what keeps the refraction in range within `ALLOWED_SHIFT`:
+A pole on the real axis, or a hard cut at the end of the range, would itself be acausal or lossless. Each pole
+is replaced by the widest cubic B-spline band of absorption, in x proportional to omega^2, that lies wholly
+outside the range and has the pole's strength and first moment; its width is what keeps the refraction in
+range within `ALLOWED_SHIFT`:
 
-    weight x_j / (x_j - x)  ->  weight x_j int B_j(x') / (x' - x) dx',   shift = weight x_j variance / |x_j - x|^3.
+    weight x_j / (x_j - x)  ->  weight x_j int B_j(x') / (x' - x) dx',   shift = weight x_j variance / |x_j -
+    x|^3.
 
-Lorentz damping would not do: its absorption in range grows in proportion to the damping while the index changes with its
-square. A positive offset stays: an instantaneous response is causal. A term -D L^2
-is that of a pole at zero frequency and becomes a band just above it. Other powers of the wavelength, and terms of negative
-strength, have no band of their own: they are fitted, together with the rest, by non-negative bands outside the range; how
-well that succeeds is reported.
+Lorentz damping would not do: its absorption in range grows in proportion to the damping while the index
+changes with its square. A positive offset stays: an instantaneous response is causal. A term -D L^2 is that
+of a pole at zero frequency and becomes a band just above it. Other powers of the wavelength, and terms of
+negative strength, have no band of their own: they are fitted, together with the rest, by non- negative bands
+outside the range; how well that succeeds is reported.
 """
 
 from __future__ import annotations
@@ -22,7 +24,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.numerics.bspline_cauchy import FAR, VARIANCE, cauchy, cauchy_slope, far_from, moments_of
-from pulseprop.numerics.series import Series
+from pulseprop.numerics.series import Numbers, Series
 
 if TYPE_CHECKING:
     from pulseprop.material.formulas import Formula
@@ -38,12 +40,15 @@ ALLOWED_SHIFT = 1e-8
 CHECK_POINTS = 101
 
 WINGS = (8.0, 64.0)
-"""Widths of the wings over that of the core: they absorb the light that a narrow band alone would slow down for ages."""
+"""Widths of the wings over that of the core: they absorb the light that a narrow band alone would slow down
+for ages.
+"""
 
 
 @dataclass(frozen=True, kw_only=True)
 class Completion:
-    """offset + sum_j strength_j int B((x' - centre_j)/knot_j)/knot_j / (x' - x) dx'; x, centre, knot in um^-2.
+    """offset + sum_j strength_j int B((x' - centre_j)/knot_j)/knot_j / (x' - x) dx'; x, centre, knot in
+    um^-2.
 
     `shift` is the largest change of g in range, as measured.
     """
@@ -68,7 +73,7 @@ class Completion:
         return outer
 
 
-def _of_one_centre(distance: Complex | Real, strength: Real, knot: Real, count: int) -> Complex:
+def _of_one_centre(distance: Numbers, strength: Real, knot: Real, count: int) -> Complex:
     """Value (and slope for count 2) of concentric bands at distances from their centre, shape (count, N)."""
     total = np.empty((count, distance.size), dtype=complex)
     far = np.abs(distance) > FAR * knot.max()
@@ -105,9 +110,9 @@ def _spread(formula: Formula, static: list[float], low: float, high: float) -> C
         for pole in formula.poles
         for piece in _bands_of(pole.weight * pole.place, pole.place, low, high, count)
     ]
-    for strength in static:
-        place = 0.5 * ALLOWED_SHIFT / count * low**2 / strength
-        pieces += _bands_of(strength, place, low, high, count)
+    for free in static:
+        place = 0.5 * ALLOWED_SHIFT / count * low**2 / free
+        pieces += _bands_of(free, place, low, high, count)
     strength, centre, knot = np.array(pieces).reshape(-1, 3).T
     return Completion(offset=formula.offset, strength=strength, centre=centre, knot=knot, shift=0.0)
 

@@ -1,8 +1,9 @@
-"""Media made of media: density scaling, mixtures, an index against air made absolute, measured additions to the index.
+"""Media made of media: density scaling, mixtures, an index against air made absolute, measured additions to
+the index.
 
-Dielectric functions are eps = 1 + chi. Lorentz-Lorenz: (eps - 1)/(eps + 2) is proportional to density (H. A. Lorentz 1880,
-L. Lorenz 1880). J. C. Maxwell Garnett, Phil. Trans. R. Soc. A 203, 385 (1904); D. A. G. Bruggeman, Ann. Phys. 416, 636 (1935);
-formulas from memory.
+Dielectric functions are eps = 1 + chi. Lorentz-Lorenz: (eps - 1)/(eps + 2) goes with density (H. A. Lorentz
+1880, L. Lorenz 1880). J. C. Maxwell Garnett, Phil. Trans. R. Soc. A 203, 385 (1904);
+D. A. G. Bruggeman, Ann. Phys. 416, 636 (1935); formulas from memory.
 """
 
 from __future__ import annotations
@@ -16,7 +17,7 @@ from numpy.typing import NDArray
 from pulseprop.errors import InputError
 from pulseprop.material.refraction import refraction_of, susceptibility_of
 from pulseprop.material.response import Band, Response, View, common_band
-from pulseprop.numerics.series import Series, compose, product, quotient, variable
+from pulseprop.numerics.series import Numbers, Series, compose, product, quotient, variable
 
 __all__ = [
     "Absolute",
@@ -56,7 +57,7 @@ class Scaled:
     def band(self) -> Band:
         return self.of.band
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         return _from_polarisability(self.ratio * _polarisability(self.of.series(omega, count, view)))
 
 
@@ -70,7 +71,7 @@ class LorentzLorenz:
     def band(self) -> Band:
         return common_band(part for part, _ in self.parts)
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         shares = [
             fraction * _polarisability(part.series(omega, count, view)) for part, fraction in self.parts
         ]
@@ -79,7 +80,9 @@ class LorentzLorenz:
 
 @dataclass(frozen=True)
 class MaxwellGarnett:
-    """Spheres of `inclusion`, volume fraction f, in `host`:  eps = h (1 + 2 f b) / (1 - f b), b = (i - h)/(i + 2 h)."""
+    """Spheres of `inclusion`, volume fraction f, in `host`:  eps = h (1 + 2 f b) / (1 - f b), b = (i - h)/(i
+    + 2 h).
+    """
 
     host: Response
     inclusion: Response
@@ -89,7 +92,7 @@ class MaxwellGarnett:
     def band(self) -> Band:
         return common_band((self.host, self.inclusion))
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         host = self.host.series(omega, count, view)
         inclusion = self.inclusion.series(omega, count, view)
         below = inclusion + 2.0 * host
@@ -110,8 +113,9 @@ class MaxwellGarnett:
 class Bruggeman:
     """Two or more media on equal footing: sum f_j (e_j - e)/(e_j + 2 e) = 0.
 
-    For two media the quadratic 2 e^2 - b e - e_1 e_2 = 0, b = (3 f_1 - 1) e_1 + (3 f_2 - 1) e_2, is solved in closed
-    form; the root is the one with e -> mean at vanishing contrast, which stays in the upper half plane for passive media.
+    For two media the quadratic 2 e^2 - b e - e_1 e_2 = 0, b = (3 f_1 - 1) e_1 + (3 f_2 - 1) e_2, is solved in
+    closed form; the root is the one with e -> mean at vanishing contrast, which stays in the upper half plane
+    for passive media.
     """
 
     first: Response
@@ -122,7 +126,7 @@ class Bruggeman:
     def band(self) -> Band:
         return common_band((self.first, self.second))
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         one = self.first.series(omega, count, view).astype(complex)
         two = self.second.series(omega, count, view).astype(complex)
         one[0] += 1.0
@@ -138,8 +142,8 @@ class Bruggeman:
 def _root_into_upper_half(discriminant: Series, linear: Series) -> Series:
     """The root of the discriminant for which (linear + root)/4 is a passive dielectric function.
 
-    Both candidates' imaginary parts add up to Im linear / 2; the physical one has Im >= 0, and where both are real it is
-    the larger, by continuity from the upper half plane.
+    Both candidates' imaginary parts add up to Im linear / 2; the physical one has Im >= 0, and where both are
+    real it is the larger, by continuity from the upper half plane.
     """
     from pulseprop.numerics.series import root
 
@@ -163,7 +167,7 @@ class Absolute:
     def band(self) -> Band:
         return self.printed.band.overlap(self.air.band)
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         air = refraction_of(self.air.series(omega, count, view))
         air[0] += 1.0
         scaled = product(variable(np.asarray(omega), count), air)
@@ -183,7 +187,7 @@ class IndexAddition(Protocol):
     @property
     def band(self) -> Band: ...
 
-    def refraction_series(self, omega: Complex | Real, count: int) -> Series:
+    def refraction_series(self, omega: Numbers, count: int) -> Series:
         """Taylor coefficients of the contribution about each omega."""
         ...
 
@@ -199,7 +203,7 @@ class WithAbsorption:
     def band(self) -> Band:
         return self.background.band.overlap(self.measured.band)
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         own = refraction_of(self.background.series(omega, count, view))
         return susceptibility_of(own + self.measured.refraction_series(omega, count))
 

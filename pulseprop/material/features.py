@@ -23,7 +23,9 @@ KNOTS_TO_SHOW = (-2.0, -1.0, 1.0, 2.0)
 
 
 def features_of(response: Response) -> tuple[Place, ...]:
-    """(centre, width) in rad/s of everything that absorbs; measured tables are left out (their sums are their own)."""
+    """(centre, width) in rad/s of everything that absorbs; measured tables are left out (their sums are their
+    own).
+    """
     if isinstance(response, LorentzLine):
         return ((response.centre, response.width),)
     if isinstance(response, VoigtLine):

@@ -1,15 +1,16 @@
 """Published dispersion formulas as functions of x = 1/L^2, L the wavelength as printed, in um.
 
-With the vacuum wavelength put in, x is proportional to omega^2, so every formula is analytic in omega and even. Kinds
-have names of their own:
+With the vacuum wavelength put in, x is proportional to omega^2, so every formula is analytic in omega and
+even. Kinds have names of their own:
 
     sellmeier       n^2 - 1 = offset + sum strength L^2 / (L^2 - resonance^2)
-    gas             n - 1   = offset + sum strength / (resonance - 1/L^2)     (strength and resonance in um^-2)
+    gas             n - 1   = offset + sum strength / (resonance - 1/L^2)     (both in um^-2)
     powers          n^2 - 1 = offset + sum strength L^power                   (even powers)
     index powers    n - 1   = offset + sum strength L^power                   (even powers)
     poles           n^2 - 1 = offset + sum strength / (L^2 - resonance^2)     (strength in um^2)
 
-All are one function, g(x) = offset + sum_j weight_j x_j / (x_j - x) + sum_q coefficient_q x^q, of chi or of n - 1.
+All are one function, g(x) = offset + sum_j weight_j x_j / (x_j - x) + sum_q coefficient_q x^q, of chi or of n
+- 1.
 """
 
 from __future__ import annotations
@@ -24,7 +25,7 @@ from numpy.typing import NDArray
 from pulseprop.errors import InputError
 from pulseprop.material.completion import Completion, complete
 from pulseprop.material.response import Band, View
-from pulseprop.numerics.series import Series, power, product, reciprocal, variable
+from pulseprop.numerics.series import Numbers, Series, power, product, reciprocal, variable
 
 __all__ = ["MICROMETRE_OMEGA", "Formula", "Pole", "Power", "gas_term", "pole_term", "sellmeier_term"]
 
@@ -108,14 +109,12 @@ class Formula:
         for pole in self.poles:
             below = -x
             below[0] += pole.place
-            share = reciprocal(below)
-            share *= pole.weight * pole.place
-            total += share
+            total = total + pole.weight * pole.place * reciprocal(below)
         for term in self.powers:
-            total += term.coefficient * power(x, term.exponent)
+            total = total + term.coefficient * power(x, term.exponent)
         return total
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """chi about each omega; see `Response.series`."""
         g = self._g(np.asarray(omega), count, view)
         if self.of == "chi":
@@ -124,7 +123,7 @@ class Formula:
         doubled[0] += 2.0
         return product(g, doubled)
 
-    def _g(self, omega: Complex | Real, count: int, view: View) -> Series:
+    def _g(self, omega: Numbers, count: int, view: View) -> Series:
         scaled = variable(omega / MICROMETRE_OMEGA, count)
         scaled[1:2] /= MICROMETRE_OMEGA
         x = product(scaled, scaled)

@@ -1,7 +1,8 @@
 """Gases at another pressure and temperature than their record's.
 
-The polarisability of Lorentz and Lorenz is proportional to the number of molecules, which is p/(k T), with the second virial
-coefficient B where it is published: p = rho R T (1 + B rho), rho in mol/m^3. n2 goes with the density.
+The polarisability of Lorentz and Lorenz is proportional to the number of molecules, which is p/(k T), with
+the second virial coefficient B where it is published: p = rho R T (1 + B rho), rho in mol/m^3. n2 goes with
+the density.
 """
 
 from __future__ import annotations
@@ -21,7 +22,8 @@ __all__ = ["gas_at"]
 
 
 def gas_at(name: str, pressure: float, temperature: float, humidity: float | None = None) -> Medium:
-    """The catalogue gas `name` at pressure (Pa, >= 0) and temperature (K, > 0); humidity 0..1 for "humid air" only.
+    """The catalogue gas `name` at pressure (Pa, >= 0) and temperature (K, > 0); humidity 0..1 for "humid air"
+    only.
 
     Raises InputError for a record that is no gas, and for a state that makes no sense.
     """
@@ -66,7 +68,9 @@ def _check_state(pressure: float, temperature: float) -> None:
 
 
 def _virial(entry: Record, temperature: float) -> float:
-    """Second virial coefficient in m^3/mol at the temperature, between the published ones; 0 where none is published."""
+    """Second virial coefficient in m^3/mol at the temperature, between the published ones; 0 where none is
+    published.
+    """
     if not entry.second_virial:
         return 0.0
     known = np.array(sorted(entry.second_virial))

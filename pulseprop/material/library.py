@@ -32,13 +32,15 @@ ROOM = 295.0
 
 @cache
 def catalogue_medium(name: str) -> Medium:
-    """The medium of this exact catalogue name. Raises InputError, with the nearest names, where there is none."""
+    """The medium of this exact catalogue name. Raises InputError, with the nearest names, where there is
+    none.
+    """
     entry = record(name)
     if entry.kind == "humid air":
         raise InputError(
             "humid air needs its state",
             value=name,
-            allowed='gas = { medium = "humid air", pressure = "...", temperature = "...", humidity = "40 %" }',
+            allowed='gas = { medium = "humid air", pressure = "...", temperature = "...", humidity = "0 %" }',
         )
     return Medium(
         name=entry.name,

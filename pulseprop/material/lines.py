@@ -4,8 +4,9 @@ Every line has its partner at negative frequency. Angular frequencies in rad/s, 
 
     Lorentz   chi = S / (W0^2 - w^2 - i g w)                          S = plasma frequency squared
     Voigt     the same with the pole W = sqrt(W0^2 - g^2/4) spread by a Gaussian of standard deviation s:
-              chi = i sqrt(pi/2) S / (2 W s) [ w((z - W)/(s sqrt 2)) - w((z + W)/(s sqrt 2)) ],  z = omega + i g/2,
-              w the Faddeeva function (from int N(x; W, s) / (x - z) dx = i sqrt(pi/2)/s w((z - W)/(s sqrt 2)))
+              chi = i sqrt(pi/2) S / (2 W s) [ w((z - W)/(s sqrt 2)) - w((z + W)/(s sqrt 2)) ],
+              z = omega + i g/2, w the Faddeeva function (from
+              int N(x; W, s) / (x - z) dx = i sqrt(pi/2)/s w((z - W)/(s sqrt 2)))
     Debye     chi = D / (1 - i w tau)
     Drude     chi = -S / (w^2 + i g w)
 """
@@ -20,7 +21,7 @@ from numpy.typing import NDArray
 from pulseprop.errors import InputError
 from pulseprop.material.response import EVERYWHERE, Band, View
 from pulseprop.numerics.faddeeva import faddeeva
-from pulseprop.numerics.series import Series, product, reciprocal, variable
+from pulseprop.numerics.series import Numbers, Series, product, reciprocal, variable
 
 __all__ = ["Carriers", "LorentzLine", "Relaxation", "VoigtLine", "line"]
 
@@ -40,7 +41,7 @@ class LorentzLine:
 
     band: Band = EVERYWHERE
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         w = variable(np.asarray(omega), count)
         below = -product(w, w) - 1j * self.width * w
         below[0] += self.centre**2
@@ -66,7 +67,7 @@ class VoigtLine:
 
     band: Band = EVERYWHERE
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         pole = np.sqrt(self.centre**2 - self.width**2 / 4)
         scale = self.doppler_width * SIGMA_PER_FWHM * np.sqrt(2)
         z = np.asarray(omega) + 0.5j * self.width
@@ -78,7 +79,7 @@ class VoigtLine:
     @property
     def memory(self) -> float:
         """A time in s after which the ringing has fallen by one neper at least, and goes on falling faster."""
-        return 1 / (self.width / 2 + self.doppler_width * SIGMA_PER_FWHM / 6)
+        return float(1 / (self.width / 2 + self.doppler_width * SIGMA_PER_FWHM / 6))
 
     def with_strength(self, strength: float) -> VoigtLine:
         return VoigtLine(
@@ -114,7 +115,7 @@ class Relaxation:
     time: float
     band: Band = EVERYWHERE
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         below = -1j * self.time * variable(np.asarray(omega), count)
         below[0] += 1.0
         return self.static * reciprocal(below)
@@ -133,7 +134,7 @@ class Carriers:
     rate: float
     band: Band = EVERYWHERE
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         w = variable(np.asarray(omega), count)
         return -(self.plasma_frequency**2) * reciprocal(product(w, w) + 1j * self.rate * w)
 

@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 from pulseprop.material.orders import Orders, orders_of
 from pulseprop.material.refraction import refraction_of
 from pulseprop.material.response import Band, Response, View
-from pulseprop.numerics.series import Series
+from pulseprop.numerics.series import Numbers, Series
 
 __all__ = ["Medium", "NonlinearIndex", "Resonance"]
 
@@ -41,11 +41,11 @@ class Resonance:
 class Medium:
     """What a beam can pass through.
 
-    response: the susceptibility. causal: False where only orders or a spline as printed are known, so that causality cannot
-    be tested. temperature: as the source prints it. relative_to: what the printed index is against. resonances: what rings in
-    it. spread: names of other records of the same substance. extendable: False where the band may not be left even on request
-    (relaxation terms). index_is_relative: known up to absorption outside a table, for want of an anchor. health: a hazard of the
-    substance, common practice.
+    response: the susceptibility. causal: False where only orders or a spline as printed are known, so that
+    causality cannot be tested. temperature: as the source prints it. relative_to: what the printed index is
+    against. resonances: what rings in it. spread: names of other records of the same substance. extendable:
+    False where the band may not be left even on request (relaxation terms). index_is_relative: known up to
+    absorption outside a table, for want of an anchor. health: a hazard of the substance, common practice.
     """
 
     name: str
@@ -69,21 +69,21 @@ class Medium:
         """Where the data behind the medium hold, rad/s."""
         return self.response.band
 
-    def susceptibility(self, omega: Complex | Real, view: View = View.AXIS) -> Complex:
+    def susceptibility(self, omega: Numbers, view: View = View.AXIS) -> Complex:
         """chi(omega), omega in rad/s."""
         return np.asarray(self.response.series(np.asarray(omega), 1, view)[0], dtype=complex)
 
-    def refraction(self, omega: Complex | Real, count: int = 1, view: View = View.AXIS) -> Series:
+    def refraction(self, omega: Numbers, count: int = 1, view: View = View.AXIS) -> Series:
         """Taylor coefficients of n + ik - 1 about each omega (rad/s); shape (count, *omega.shape)."""
         return refraction_of(self.response.series(np.asarray(omega), count, view))
 
-    def index(self, omega: Complex | Real, view: View = View.AXIS) -> Complex:
+    def index(self, omega: Numbers, view: View = View.AXIS) -> Complex:
         """n + ik."""
         return np.asarray(self.refraction(omega, 1, view)[0] + 1.0, dtype=complex)
 
     def absorption(self, omega: Real) -> Real:
         """Napierian absorption coefficient of the intensity, 1/m: 2 k omega / c."""
-        return 2 * np.imag(self.refraction(omega)[0]) * omega / 299792458.0
+        return np.asarray(2 * np.imag(self.refraction(omega)[0]) * omega / 299792458.0)
 
     def nonlinear_index(self, omega: float) -> NonlinearIndex | None:
         """The published n2 measured nearest to omega (rad/s), None where there is none."""
@@ -92,7 +92,9 @@ class Medium:
         return known[0] if known else None
 
     def ringing(self, low: float, high: float) -> float:
-        """The longest memory in s of the resonances that light between low and high (rad/s) excites; 0 for none."""
+        """The longest memory in s of the resonances that light between low and high (rad/s) excites; 0 for
+        none.
+        """
         hit = [line.memory for line in self.resonances if low - line.width < line.centre < high + line.width]
         return max(hit, default=0.0)
 

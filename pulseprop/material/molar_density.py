@@ -13,8 +13,8 @@ GAS_CONSTANT = 8.31446261815324
 def molar_density(pressure: float, temperature: float, virial: float = 0.0) -> float:
     """mol/m^3 from p = rho R T (1 + B rho); pressure in Pa, temperature in K, virial B in m^3/mol.
 
-    The root that goes to the ideal gas at low pressure; where B is so negative that there is none (the gas would have
-    condensed) the result is not finite.
+    The root that goes to the ideal gas at low pressure; where B is so negative that there is none (the gas
+    would have condensed) the result is not finite.
     """
     ideal = pressure / (GAS_CONSTANT * temperature)
     discriminant = 1 + 4 * virial * ideal

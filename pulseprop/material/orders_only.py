@@ -13,7 +13,7 @@ from numpy.typing import NDArray
 
 from pulseprop.material.refraction import susceptibility_of
 from pulseprop.material.response import EVERYWHERE, Band, View
-from pulseprop.numerics.series import Series, power, quotient, variable
+from pulseprop.numerics.series import Numbers, Series, power, quotient, variable
 
 __all__ = ["OrdersOnly"]
 
@@ -35,7 +35,7 @@ class OrdersOnly:
     fod: float = 0.0
     band: Band = EVERYWHERE
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """chi = n^2 - 1 of the polynomial."""
         w = variable(np.asarray(omega), count)
         detuning = w.copy()

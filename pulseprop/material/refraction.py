@@ -1,8 +1,8 @@
 """From the susceptibility to the refraction N = n + ik - 1 and back, as Taylor series.
 
-The root is the branch continued from n = 1 at +i infinity: on and above the axis of a passive medium 1 + chi does not wind, so
-it is the principal root; there Im n >= 0 where Im chi >= 0, also where 1 + chi is negative. N = chi / (1 + n) keeps all
-digits of a dilute gas.
+The root is the branch continued from n = 1 at +i infinity: on and above the axis of a passive medium 1 + chi
+does not wind, so it is the principal root; there Im n >= 0 where Im chi >= 0, also where 1 + chi is negative.
+N = chi / (1 + n) keeps all digits of a dilute gas.
 """
 
 from __future__ import annotations

@@ -1,8 +1,8 @@
 """What a causal response is, and how responses add up.
 
 A response gives the complex susceptibility chi(omega) of the convention exp(-i omega t): analytic above the
-real axis, Im chi >= 0 for omega > 0 where it absorbs, chi(-conj(omega)) = conj(chi(omega)). It is handed out as
-truncated Taylor series, so that value, group index and all orders come from the same closed form.
+real axis, Im chi >= 0 for omega > 0 where it absorbs, chi(-conj(omega)) = conj(chi(omega)). It is handed out
+as truncated Taylor series, so that value, group index and all orders come from the same closed form.
 
 Printed formulas hold inside a range only, so every response can be seen in three ways (`View`).
 """
@@ -17,7 +17,7 @@ from typing import Protocol, runtime_checkable
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.numerics.series import Series
+from pulseprop.numerics.series import Numbers, Series
 
 __all__ = ["EVERYWHERE", "Band", "Constant", "Response", "Sum", "View", "common_band"]
 
@@ -69,11 +69,12 @@ class Response(Protocol):
         """Where the data behind it hold."""
         ...
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
-        """Taylor coefficients of chi about each omega (rad/s): shape (count, *omega.shape), unit s^m at index m.
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """Taylor coefficients of chi about each omega (rad/s): shape (count, *omega.shape), unit s^m at index
+        m.
 
-        On the real axis the value is the limit from above. `count` is 1 or more with View.PRINTED, at most 2 with
-        the others. The result is real where chi is real by construction.
+        On the real axis the value is the limit from above. `count` is 1 or more with View.PRINTED, at most 2
+        with the others. The result is real where chi is real by construction.
         """
         ...
 
@@ -93,7 +94,7 @@ class Constant:
     value: float
     band: Band = EVERYWHERE
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         series = np.zeros((count, *np.shape(omega)))
         series[0] = self.value
         return series
@@ -109,13 +110,9 @@ class Sum:
     def band(self) -> Band:
         return common_band(self.parts)
 
-    def series(self, omega: Complex | Real, count: int, view: View = View.AXIS) -> Series:
+    def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         total: Series = np.zeros((count, *np.shape(omega)))
         for part in self.parts:
             share = part.series(omega, count, view)
-            total = (
-                total + share
-                if np.iscomplexobj(share) != np.iscomplexobj(total)
-                else np.add(total, share, out=total)
-            )  # type: ignore[arg-type]
+            total = total + share
         return total

@@ -2,7 +2,7 @@
 
     c(u) = int B(v) / (v - u) dv,   B the cubic B-spline with knots -2, -1, 0, 1, 2 and unit area.
 
-Near: c = 1/6 sum_k a_k (v_k - u)^3 log(v_k - u), a = 1, -4, 6, -4, 1 (fourth differences of the knots' kernels).
+Near: c = 1/6 sum_k a_k (v_k - u)^3 log(v_k - u), a = 1, -4, 6, -4, 1 (fourth differences).
 Far: the moment series, as the closed form loses digits there as u^4.
 """
 
@@ -12,6 +12,8 @@ from collections.abc import Callable
 
 import numpy as np
 from numpy.typing import NDArray
+
+from pulseprop.numerics.series import Numbers
 
 __all__ = ["FAR", "VARIANCE", "cauchy", "cauchy_slope", "density", "far_from", "moments_of"]
 
@@ -40,25 +42,29 @@ FAR_TERMS = 5
 
 
 def moments_of(strength: Real, knot: Real) -> Real:
-    """Even moments, shape (5,), of bands of one centre: sum of strength times those of B with each knot distance."""
+    """Even moments, shape (5,), of bands of one centre: sum of strength times those of B with each knot
+    distance.
+    """
     orders = 2 * np.arange(FAR_TERMS)
     return np.asarray((strength[:, None] * knot[:, None] ** orders * MOMENTS[:FAR_TERMS]).sum(axis=0))
 
 
-def far_from(distance: Complex | Real, moments: Real, count: int) -> list[Complex | Real]:
-    """sum of strength c(distance/knot)/knot, and for count 2 its slope, FAR widest knots and more from the centre."""
+def far_from(distance: Numbers, moments: Real, count: int) -> list[Numbers]:
+    """sum of strength c(distance/knot)/knot, and for count 2 its slope, FAR widest knots and more from the
+    centre.
+    """
     inverse = 1 / distance
     square = inverse * inverse
-    found = [-inverse * _series_in(square, moments)]
+    found: list[Numbers] = [-inverse * _series_in(square, moments)]
     if count > 1:
         found.append(square * _series_in(square, moments * (2 * np.arange(FAR_TERMS) + 1)))
     return found
 
 
-def _series_in(square: Complex | Real, coefficients: Real) -> Complex | Real:
+def _series_in(square: Numbers, coefficients: Real) -> Numbers:
     total = np.full_like(square, coefficients[-1])
     for coefficient in coefficients[-2::-1]:
-        total *= square
+        np.multiply(total, square, out=total)
         total += coefficient
     return total
 
@@ -71,21 +77,22 @@ def density(u: Real) -> Real:
     return np.where(size < 1, inner, outer)
 
 
-def cauchy(u: Complex | Real) -> Complex:
+def cauchy(u: Numbers) -> Complex:
     """c(u) for u above the axis or on it (limit from above); shape kept."""
     value = _tiered(np.asarray(u), _near, _far)
     if np.isrealobj(u):
-        # Rounding must not turn the exactly transparent outside into gain: a negative index squared would flip its root.
-        value.imag = np.pi * density(u)
+        # Rounding must not turn the exactly transparent outside into gain: a negative index squared would
+        # flip its root.
+        value.imag = np.pi * density(np.real(u))
     return value
 
 
-def cauchy_slope(u: Complex | Real) -> Complex:
+def cauchy_slope(u: Numbers) -> Complex:
     """dc/du, likewise."""
     return _tiered(np.asarray(u), _near_slope, _far_slope)
 
 
-def _tiered(u: Complex | Real, near: Callable[..., Complex], far: Callable[..., Complex]) -> Complex:
+def _tiered(u: Numbers, near: Callable[..., Complex], far: Callable[..., Complex]) -> Complex:
     flat = u.ravel()
     size = np.abs(flat)
     tier = np.searchsorted([start for start, _ in TIERS], size, side="right")
@@ -98,8 +105,9 @@ def _tiered(u: Complex | Real, near: Callable[..., Complex], far: Callable[..., 
     return result.reshape(u.shape)
 
 
-def _logarithm(y: Complex | Real) -> Complex | Real:
-    """log of v - u for u on or above the axis: the argument runs from 0 down to -pi; 0 gives 0 (times y^2 or more).
+def _logarithm(y: Numbers) -> Numbers:
+    """log of v - u for u on or above the axis: the argument runs from 0 down to -pi; 0 gives 0 (times y^2 or
+    more).
 
     Of real y the logarithm of the size alone: what the argument adds is known in closed form.
     """
@@ -109,12 +117,12 @@ def _logarithm(y: Complex | Real) -> Complex | Real:
     return np.log(np.abs(safe)) - 1j * np.abs(np.angle(safe))
 
 
-def _near(u: Complex | Real) -> Complex:
+def _near(u: Numbers) -> Complex:
     y = KNOTS[:, None] - u
     return np.asarray(DIFFERENCES @ (y * y * y * _logarithm(y)) / 6, dtype=complex)
 
 
-def _near_slope(u: Complex | Real) -> Complex:
+def _near_slope(u: Numbers) -> Complex:
     y = KNOTS[:, None] - u
     square = y * y
     slope = np.asarray(DIFFERENCES @ (square * _logarithm(y)) / -2, dtype=complex)
@@ -124,10 +132,10 @@ def _near_slope(u: Complex | Real) -> Complex:
     return slope
 
 
-def _far(u: Complex | Real, terms: int) -> Complex:
+def _far(u: Numbers, terms: int) -> Complex:
     return np.asarray(-_series_in(u**-2, MOMENTS[:terms]) / u)
 
 
-def _far_slope(u: Complex | Real, terms: int) -> Complex:
+def _far_slope(u: Numbers, terms: int) -> Complex:
     square = u**-2
     return np.asarray(square * _series_in(square, MOMENTS[:terms] * (2 * np.arange(terms) + 1)))

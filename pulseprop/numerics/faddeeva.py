@@ -1,9 +1,10 @@
 """Taylor coefficients of the Faddeeva function w(z) = exp(-z^2) erfc(-i z).
 
 Near the centre from w' = -2 z w + 2i/sqrt(pi) and its derivatives (M. Abramowitz, I. A. Stegun, Handbook of
-Mathematical Functions, 7.1.20). That recurrence cancels as z^2 with every order, so far away the Gauss-Hermite sum
-over simple poles is used, which is exact there to rounding (2e-14 in the fourth derivative). Measured near: 1e-12,
-5e-11, 2e-9, 3e-8 in the first to fourth derivative at worst, where the library's w itself is only good to 1e-14.
+Mathematical Functions, 7.1.20). That recurrence cancels as z^2 with every order, so far away the Gauss-
+Hermite sum over simple poles is used, which is exact there to rounding (2e-14 in the fourth derivative).
+Measured near: 1e-12, 5e-11, 2e-9, 3e-8 in the first to fourth derivative at worst, where the library's w
+itself is only good to 1e-14.
 """
 
 from __future__ import annotations
@@ -18,7 +19,8 @@ __all__ = ["faddeeva"]
 Complex = NDArray[np.complex128]
 
 TIERS = ((7.0, 24), (40.0, 10), (1000.0, 4))
-"""(|z| from which on, Gauss-Hermite nodes): what is left out is (2n-1)!! / (2^n |z|^(2n)) of w, below 1e-16."""
+"""(|z| from which on, Gauss-Hermite nodes): what is left out is (2n-1)!! / (2^n |z|^(2n)) of w, below 1e-16.
+"""
 
 
 def faddeeva(z: Complex, count: int) -> Complex:
@@ -50,7 +52,7 @@ def _near(z: Complex, count: int) -> Complex:
     for m in range(2, count):
         derivative.append(-2 * z * derivative[m - 1] - 2 * (m - 1) * derivative[m - 2])
     factorial = np.cumprod([1.0, *range(1, count)])
-    return np.stack(derivative) / factorial[:, None]
+    return np.asarray(np.stack(derivative) / factorial[:, None], dtype=np.complex128)
 
 
 @cache

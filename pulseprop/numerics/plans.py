@@ -1,7 +1,7 @@
 """Planned in-place transforms for loops that need thousands of them, one thread, pyfftw loaded on first use.
 
-Natural FFT order, no shift: multiply by transfers that were brought into that order once (`natural`). Sign as in grid.py:
-`to_spectrum` carries exp(+i omega t) and no scale, `to_field` divides by the number of points.
+Natural FFT order, no shift: multiply by transfers that were brought into that order once (`natural`). Sign as
+in grid.py: `to_spectrum` carries exp(+i omega t) and no scale, `to_field` divides by the number of points.
 """
 
 from __future__ import annotations
@@ -24,8 +24,8 @@ def natural(ascending: Complex) -> Complex:
 class Plan:
     """A pair of planned transforms on one owned buffer.
 
-    points: length. effort: "measure" tries several algorithms first (for loops), "estimate" does not (for single shots).
-    Work on `buffer` in place: fill it, call `to_spectrum()`, multiply, call `to_field()`.
+    points: length. effort: "measure" tries several algorithms first (for loops), "estimate" does not (for
+    single shots). Work on `buffer` in place: fill it, call `to_spectrum()`, multiply, call `to_field()`.
     """
 
     def __init__(self, points: int, effort: Literal["measure", "estimate"] = "measure") -> None:

@@ -5,12 +5,18 @@ All series in one call have the same number of terms; the remaining axes are fre
 
 from __future__ import annotations
 
+from typing import Any
+
 import numpy as np
 from numpy.typing import NDArray
 
-__all__ = ["Series", "compose", "power", "product", "quotient", "reciprocal", "root", "variable"]
+__all__ = ["Numbers", "Series", "compose", "power", "product", "quotient", "reciprocal", "root", "variable"]
 
-Series = NDArray[np.float64] | NDArray[np.complex128]
+Numbers = NDArray[np.inexact[Any]]
+"""Real or complex arrays."""
+
+Series = Numbers
+"""Taylor coefficients along axis 0."""
 
 
 def variable(centre: Series, count: int) -> Series:

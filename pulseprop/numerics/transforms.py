@@ -1,8 +1,8 @@
 """Plain transforms: centred order, no scale, one thread.
 
-`forward` carries exp(+i omega t) from instants to ascending frequencies, `backward` returns; they are inverse to each
-other. Arrays of complex numbers in, new arrays out. numpy's transforms do the work everywhere outside loops: scipy's are a third
-faster on long arrays, but loading them costs a tenth of a second at every start.
+`forward` carries exp(+i omega t) from instants to ascending frequencies, `backward` returns; they are inverse
+to each other. Arrays of complex numbers in, new arrays out. numpy's transforms do the work everywhere outside
+loops: scipy's are a third faster on long arrays, but loading them costs a tenth of a second at every start.
 """
 
 from __future__ import annotations

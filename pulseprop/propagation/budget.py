@@ -35,7 +35,8 @@ MOST_ECHOES = 12
 class Walk:
     """State while walking; `rows` is the result, `spectrum` what leaves.
 
-    transmission: |transfer|^2, and group_delay: of the direct passage in s, both of all elements so far, on the frequencies.
+    transmission: |transfer|^2, and group_delay: of the direct passage in s, both of all elements so far, on
+    the frequencies.
     """
 
     windows: Windows
@@ -52,7 +53,9 @@ class Walk:
 def walk(
     path: Path, windows: Windows, spectrum: Complex, omega: float, radius: float | None, advance: Advance
 ) -> Walk:
-    """Take a copy of the spectrum A(omega) through the path; omega: centre in rad/s; radius: of the pulse's beam, m."""
+    """Take a copy of the spectrum A(omega) through the path; omega: centre in rad/s; radius: of the pulse's
+    beam, m.
+    """
     state = Walk(
         windows=windows,
         spectrum=spectrum.copy(),

@@ -1,4 +1,6 @@
-"""Causality of a path: the front test on the real field, the naive filter beside it, passivity, and sum rules."""
+"""Causality of a path: the front test on the real field, the naive filter beside it, passivity, and sum
+rules.
+"""
 
 from __future__ import annotations
 

@@ -31,8 +31,8 @@ class MeasuredAutocorrelation:
 class Experiment:
     """A scenario, built.
 
-    both_signs: the pulse's GDD came from a measured duration, so its sign is unknown. beyond_range: what to do with a
-    medium whose range the pulse leaves.
+    both_signs: the pulse's GDD came from a measured duration, so its sign is unknown. beyond_range: what to
+    do with a medium whose range the pulse leaves.
     """
 
     title: str

@@ -30,7 +30,9 @@ def hazard_facts(
     radius: float | None,
     repetition_rate: float | None,
 ) -> HazardFacts:
-    """Facts about the pulse that enters (a path without gain only weakens it) and the stray beams of the path."""
+    """Facts about the pulse that enters (a path without gain only weakens it) and the stray beams of the
+    path.
+    """
     energy = grid.energy(spectrum)
     fluences = [row.peak_fluence_J_per_cm2 for row in rows if row.peak_fluence_J_per_cm2 is not None]
     intensities = [row.peak_intensity_W_per_cm2 for row in rows if row.peak_intensity_W_per_cm2 is not None]

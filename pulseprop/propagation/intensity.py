@@ -43,10 +43,12 @@ def peak_power(grid: Grid, spectrum: Complex) -> float:
 def b_integral(
     grid: Grid, spectrum: Complex, exponent: Complex, omega: float, n2: float, radius: float, length: float
 ) -> float:
-    """B in rad of one element of `length` m, given the spectrum A(omega) that enters and ln(transfer) of the whole.
+    """B in rad of one element of `length` m, given the spectrum A(omega) that enters and ln(transfer) of the
+    whole.
 
-    omega: carrier, rad/s; n2: m^2/W; radius: m. The peak power inside is that of the pulse propagated to the depth; Simpson's
-    rule on halved intervals until the estimate stands within 1e-3, which leaves a tenth of that.
+    omega: carrier, rad/s; n2: m^2/W; radius: m. The peak power inside is that of the pulse propagated to the
+    depth; Simpson's rule on halved intervals until the estimate stands within 1e-3, which leaves a tenth of
+    that.
     """
     peaks = {place: _peak_at(grid, spectrum, exponent, place) for place in (0.0, 0.5, 1.0)}
     panels, mean = 2, _simpson(peaks, 2)

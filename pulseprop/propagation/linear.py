@@ -1,7 +1,7 @@
 """Exact linear propagation: the spectrum times the transfer of each element.
 
-Nothing is stepped: a linear path is one multiplication. Work goes in blocks, so that no more than a few arrays of the grid's
-length exist at a time.
+Nothing is stepped: a linear path is one multiplication. Work goes in blocks, so that no more than a few
+arrays of the grid's length exist at a time.
 """
 
 from __future__ import annotations

@@ -1,4 +1,6 @@
-"""What a run returns. Names are those of the JSON keys; units are in the names; None where there is no answer."""
+"""What a run returns. Names are those of the JSON keys; units are in the names; None where there is no
+answer.
+"""
 
 from __future__ import annotations
 
@@ -206,7 +208,8 @@ class HazardFacts:
 
 @dataclass(frozen=True, kw_only=True)
 class Fields:
-    """Arrays of a run. Spectra A(omega) in W^(1/2) s on the frequencies of the grid; windows on the front's clock.
+    """Arrays of a run. Spectra A(omega) in W^(1/2) s on the frequencies of the grid; windows on the front's
+    clock.
 
     grid_in and grid_out share their frequencies; transmission is |transfer|^2, group_delay in s.
     """

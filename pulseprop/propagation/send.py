@@ -67,7 +67,8 @@ def _silent(stage: str, fraction: float) -> None:
 def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: Progress = _silent) -> Run:
     """Propagate and measure. progress(stage, fraction) is called as the work goes on.
 
-    Raises RangeError where the pulse leaves the range of a medium, NumericalLimit where the grid cannot hold the answer.
+    Raises RangeError where the pulse leaves the range of a medium, NumericalLimit where the grid cannot hold
+    the answer.
     """
     done = _propagate(experiment, progress)
     grid_in, grid_out, spectrum_out = done.windows.grid, done.exit, done.walked.spectrum
@@ -168,7 +169,7 @@ def _propagate(experiment: Experiment, progress: Progress) -> _Propagated:
 
 
 def _edge_energy(grid: Grid, spectrum: Complex) -> float:
-    """Share of the energy in the last (and half as much of the first) part of the window: what would wrap around."""
+    """Share of the energy at the end (and, half as long, the start) of the window: what would wrap around."""
     field = grid.to_field(spectrum)
     power = field.real**2 + field.imag**2
     last = int(EDGE_SHARE * grid.points)
@@ -196,7 +197,7 @@ def _check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
             remedy=(
                 'Take a record that covers the spectrum, a narrower pulse, or [grid] beyond_range = "causal"'
                 if medium.extendable
-                else "Relaxation terms may not be used above their range: add a record for the higher frequencies"
+                else "Relaxation terms may not be used above their range: add what absorbs there"
             ),
             place=f"medium {medium.name}",
         )
@@ -216,7 +217,8 @@ def _range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tu
         outside = _energy_outside(grid, spectrum, medium.band.low, medium.band.high)
         if outside > RANGE_SHARE:
             said.append(
-                f"{100 * outside:.2g} % of the pulse's energy lies outside the range of {medium.name}, which was continued causally"
+                f"{100 * outside:.2g} % of the pulse's energy lies outside the range of {medium.name}, "
+                "which was continued causally"
             )
     return tuple(said)
 
@@ -269,7 +271,7 @@ def _sum(values: Iterable[float | None]) -> float | None:
 
 
 def _gdd_only(experiment: Experiment, before: PulseMeasures, gdd: float | None) -> float | None:
-    """Textbook: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) of a Gaussian, from the limit and all GDD, chirp included.
+    """Textbook: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) of a Gaussian, from the limit and all GDD with the chirp.
 
     None where a line stands in the spectrum: the GDD at one frequency says nothing then.
     """

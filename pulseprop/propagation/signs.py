@@ -1,4 +1,6 @@
-"""What a duration or an autocorrelation measured beside a spectrum says of the chirp: its size, and what would tell its sign."""
+"""What a duration or an autocorrelation measured beside a spectrum says of the chirp: its size, and what
+would tell its sign.
+"""
 
 from __future__ import annotations
 

@@ -32,7 +32,9 @@ PROBES = 1025
 
 @dataclass(frozen=True, kw_only=True)
 class GridWish:
-    """What the scenario says of the grid: span in s, points, memory in bytes, form; all optional but memory and form."""
+    """What the scenario says of the grid: span in s, points, memory in bytes, form; all optional but memory
+    and form.
+    """
 
     memory: float = 4 * 2**30
     span: float | None = None
@@ -58,7 +60,9 @@ def most_points(memory: float) -> int:
 
 
 def first_windows(pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
-    """The first guess. Raises NumericalLimit where it exceeds the memory, or a stated span or points are too small."""
+    """The first guess. Raises NumericalLimit where it exceeds the memory, or a stated span or points are too
+    small.
+    """
     step, carrier = _step_and_carrier(pulse, wish.form)
     first, last = pulse.field_extent(FIELD_SHARE)
     delays = _delays(pulse, path)
@@ -98,7 +102,9 @@ def _step_and_carrier(pulse: PulseSource, form: str) -> tuple[float, float]:
 
 
 def _delays(pulse: PulseSource, path: Path) -> list[Real]:
-    """Group delays in s at probe frequencies, summed up to and including each element, where light still passes."""
+    """Group delays in s at probe frequencies, summed up to and including each element, where light still
+    passes.
+    """
     low, high = pulse.spectral_extent(DELAY_SHARE)
     omega = np.linspace(max(low, high / 1e4), high, PROBES)
     total, opacity, sums = np.zeros(PROBES), np.zeros(PROBES), []
@@ -123,7 +129,9 @@ def _ringing(pulse: PulseSource, path: Path) -> float:
 
 
 def _points(needed: float, ringing: float, step: float, wish: GridWish) -> int:
-    """Points for the window; ringing may be cut to what memory allows, as a faint one matters little (it is checked)."""
+    """Points for the window; ringing may be cut to what memory allows, as a faint one matters little (it is
+    checked).
+    """
     most = most_points(wish.memory)
     least = _power_of_two((wish.span if wish.span is not None else needed) / step)
     if least > most:
@@ -166,7 +174,7 @@ def larger(windows: Windows, pulse: PulseSource, path: Path, wish: GridWish) -> 
         raise NumericalLimit(
             "part of the pulse wraps around the stated window",
             value=f"{windows.grid.span * 1e12:.4g} ps",
-            remedy="leave grid.span and grid.points out, so that the grid sizes itself, or state a longer span",
+            remedy="leave grid.span and grid.points out: the grid sizes itself; or state a longer span",
         )
     if points > most_points(wish.memory):
         raise too_large(points, wish.memory)

@@ -1,4 +1,6 @@
-"""A slab taken in split steps instead of at once: the loop that nonlinear terms need, on a linear path the exact answer."""
+"""A slab taken in split steps instead of at once: the loop that nonlinear terms need, on a linear path the
+exact answer.
+"""
 
 from __future__ import annotations
 

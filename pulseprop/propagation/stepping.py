@@ -1,10 +1,11 @@
 """One loop for everything that must be stepped: terms, steppers, step control.
 
-The field obeys dE/dz = L E + sum of terms N(E), L diagonal in frequency. A `Term` acts on the field in time; a `Stepper` advances
-by one step; a `StepControl` says how long the next step is. Without terms the steppers reproduce the exact linear answer to
-rounding. A new method is one class here and one line in `STEPPERS`.
+The field obeys dE/dz = L E + sum of terms N(E), L diagonal in frequency. A `Term` acts on the field in time;
+a `Stepper` advances by one step; a `StepControl` says how long the next step is. Without terms the steppers
+reproduce the exact linear answer to rounding. A new method is one class here and one line in `STEPPERS`.
 
-Symmetric split step: exp(L h/2) exp(N h) exp(L h/2), globally of second order (G. Strang, SIAM J. Numer. Anal. 5, 506 (1968)).
+Symmetric split step: exp(L h/2) exp(N h) exp(L h/2), globally of second order (G. Strang, SIAM J. Numer.
+Anal. 5, 506 (1968)).
 """
 
 from __future__ import annotations
@@ -36,7 +37,8 @@ class Stepper(Protocol):
     """Advances the spectrum in a plan's buffer by one step."""
 
     def step(self, plan: Plan, exponent: Complex, terms: Sequence[Term], length: float) -> float | None:
-        """Advance plan.buffer (natural order spectrum) in place; returns a local error estimate where the method has one.
+        """Advance plan.buffer (natural order spectrum) in place; returns a local error estimate where the
+        method has one.
 
         exponent: L in 1/m in natural order.
         """
@@ -62,7 +64,9 @@ class FixedSteps:
 
 
 class SymmetricSplit:
-    """Half a linear step, the terms, half a linear step; neighbouring halves are not merged, so every step ends whole."""
+    """Half a linear step, the terms, half a linear step; neighbouring halves are not merged, so every step
+    ends whole.
+    """
 
     def __init__(self) -> None:
         self._length = 0.0

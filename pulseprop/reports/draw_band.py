@@ -178,7 +178,7 @@ def draw_budget(run: Run) -> Drawing:
     right.set_ylabel(f"FWHM after it, {unit}", color=COLOURS["warm"])
     right.set_ylim(0, 1.08 * float(width.max()) * factor)
     panel.set_title("What each element adds, and the pulse after it")
-    columns = {
+    columns: dict[str, Real | tuple[str, ...]] = {
         "element": ("start", *names),
         "gdd_fs2": np.concatenate(([np.nan], gdd)),
         "fwhm_after_fs": width,

@@ -154,7 +154,7 @@ def _deep_curve(grid: Grid, envelope: Complex) -> PulseCurve:
 
 
 def _above_floor(curve: PulseCurve) -> Real:
-    """Power over the peak; a line breaks where it falls below the last decade, and runs along no made-up floor."""
+    """Power over the peak; a line breaks where it falls below the last decade: no floor is made up."""
     ratio = curve.power / curve.power.max()
     return np.where(ratio >= FLOOR, ratio, np.nan)
 

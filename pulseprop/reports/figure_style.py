@@ -27,7 +27,7 @@ Drawn = TypeVar("Drawn")
 COLOURS = {
     "ink": "#22303c",
     "faint": "#c3ccd4",
-    "before": "#808b95",
+    "before": "#6b757e",
     "after": "#1b5e92",
     "warm": "#b5600c",
     "green": "#2b7d6d",

@@ -3,7 +3,7 @@
 Strengths are turned into the plasma frequency squared S of chi = S / (W0^2 - w^2 - i g w):
 
     peak absorption alpha, Napierian, of the broadened line alone at its centre: Im chi = n_b alpha c / W0
-    integrated absorption over ordinary frequency:    S = 4 n_b c int alpha d nu    (int w Im chi dw = pi S / 2)
+    integrated absorption over ordinary frequency:    S = 4 n_b c int alpha d nu   (int w Im chi dw = pi S/2)
     oscillator strength f, number density N:          S = N f e^2 / (eps0 m_e)      (CODATA 2022)
     static susceptibility:                            chi(0) of the line
 """

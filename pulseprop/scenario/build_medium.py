@@ -36,7 +36,9 @@ VACUUM = Constant(0.0)
 
 
 class MediaOfScenario:
-    """Builds and keeps the media that a scenario's elements name. Raises InputError with the place in the scenario."""
+    """Builds and keeps the media that a scenario's elements name. Raises InputError with the place in the
+    scenario.
+    """
 
     def __init__(self, scenario: Scenario) -> None:
         self._scenario = scenario

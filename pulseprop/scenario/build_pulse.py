@@ -23,7 +23,9 @@ UNSTATED_ENERGY = 1e-9
 
 
 def built_pulse(scenario: Scenario) -> tuple[Pulse | MeasuredPulse, bool]:
-    """The pulse, and whether the sign of its GDD is unknown (a measured duration gives |GDD| only: + is taken)."""
+    """The pulse, and whether the sign of its GDD is unknown (a measured duration gives |GDD| only: + is
+    taken).
+    """
     table = scenario.content.pulse
     pulse = _measured(scenario) if table.shape == "measured" else _named(table)
     both_signs = table.measured_duration is not None
