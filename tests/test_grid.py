@@ -25,7 +25,9 @@ def noise(points: int, seed: int) -> np.ndarray:
 
 
 def test_a_delayed_gaussian_has_the_transform_of_the_textbook():
-    """int exp(-(t-t0)^2/2s^2) exp(i d t) dt = s sqrt(2 pi) exp(-d^2 s^2/2) exp(+i d t0): the sign of exp(-i omega t)."""
+    """int exp(-(t-t0)^2/2s^2) exp(i d t) dt = s sqrt(2 pi) exp(-d^2 s^2/2) exp(+i d t0): the sign of exp(-i
+    omega t).
+    """
     grid, delay, width = a_grid(), 37.3e-15, 20e-15
     spectrum = grid.to_spectrum(np.exp(-((grid.time - delay) ** 2) / (2 * width**2)).astype(complex))
     detuning = grid.omega - 2 * np.pi * grid.carrier

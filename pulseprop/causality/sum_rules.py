@@ -95,7 +95,7 @@ def _quadrature(features: Sequence[Feature]) -> tuple[Real, Real]:
     fastest = max(feature.centre + feature.width for feature in features)
     edges: list[Real] = [np.geomspace(LOWEST * slowest, HIGHEST * fastest, 160)]
     for feature in features:
-        offsets = feature.width * DYADIC
+        offsets = np.asarray(feature.width * DYADIC, dtype=np.float64)
         edges += [feature.centre + offsets, feature.centre - offsets, np.array([feature.centre])]
     cut = np.unique(np.concatenate(edges))
     cut = cut[(cut > LOWEST * slowest) & (cut < HIGHEST * fastest)]

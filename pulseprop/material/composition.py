@@ -134,22 +134,24 @@ class Bruggeman:
         share = self.fraction_first
         linear = (3 * share - 1) * one + (2 - 3 * share) * two
         discriminant = product(linear, linear) + 8.0 * product(one, two)
-        eps = (linear + _root_into_upper_half(discriminant, linear[0])) / 4.0
+        side = np.where(np.real(omega) < 0, -1.0, 1.0)
+        eps = (linear + _passive_root(discriminant, linear[0], side)) / 4.0
         eps[0] -= 1.0
         return eps
 
 
-def _root_into_upper_half(discriminant: Series, linear: Series) -> Series:
+def _passive_root(discriminant: Series, linear: Series, side: Real) -> Series:
     """The root of the discriminant for which (linear + root)/4 is a passive dielectric function.
 
     Both candidates' imaginary parts add up to Im linear / 2; the physical one has Im >= 0, and where both are
-    real it is the larger, by continuity from the upper half plane.
+    real it is the larger, by continuity from the upper half plane. At negative frequencies
+    (side -1) the signs turn round.
     """
     from pulseprop.numerics.series import root
 
     leading = np.sqrt(discriminant[0])
-    plus, minus = linear + leading, linear - leading
-    flip = (minus.imag > plus.imag * (1 + 1e-12) + 1e-300) & (plus.imag < 0)
+    plus, minus = side * (linear + leading).imag, side * (linear - leading).imag
+    flip = (minus > plus * (1 + 1e-12) + 1e-300) & (plus < 0)
     return root(discriminant, np.where(flip, -leading, leading))
 
 

@@ -130,11 +130,19 @@ class Formula:
         if view is View.PRINTED:
             return self.printed(x)
         if view is View.COMPLETED:
-            return self.completion.series(x)
+            return self._completed(omega, x)
         inside = self.band.contains(np.real(omega))
         if inside.all():
             return self.printed(x)
         g = np.empty(x.shape, dtype=complex)
         g[:, inside] = self.printed(x[:, inside])
-        g[:, ~inside] = self.completion.series(x[:, ~inside])
+        g[:, ~inside] = self._completed(np.asarray(omega)[~inside], x[:, ~inside])
         return g
+
+    def _completed(self, omega: Series, x: Series) -> Series:
+        """The completion; x = omega^2 does not tell omega from -conj(omega), whose responses are conjugate."""
+        mirrored = np.real(omega) < 0
+        if not mirrored.any():
+            return self.completion.series(x)
+        g = self.completion.series(np.where(mirrored, np.conj(x), x))
+        return np.where(mirrored, np.conj(g), g)

@@ -1,7 +1,8 @@
 """Dispersion orders of a medium from the Taylor series of its refraction.
 
 With k(omega) = omega n / c: group index n_g = c dk/domega, GVD = d2k/domega2, TOD = d3k/domega3,
-FOD = d4k/domega4, all of the real part. The series come in closed form from every response, so no step width enters.
+FOD = d4k/domega4, all of the real part. The series come in closed form from every response, so no step width
+enters.
 """
 
 from __future__ import annotations

@@ -106,15 +106,9 @@ def _tiered(u: Numbers, near: Callable[..., Complex], far: Callable[..., Complex
 
 
 def _logarithm(y: Numbers) -> Numbers:
-    """log of v - u for u on or above the axis: the argument runs from 0 down to -pi; 0 gives 0 (times y^2 or
-    more).
-
-    Of real y the logarithm of the size alone: what the argument adds is known in closed form.
-    """
+    """log of v - u, 0 for 0 (it is times y^2); of real y that of the size: the rest has a closed form."""
     safe = np.where(y == 0, 1.0, y)
-    if np.isrealobj(y):
-        return np.asarray(np.log(np.abs(safe)))
-    return np.log(np.abs(safe)) - 1j * np.abs(np.angle(safe))
+    return np.asarray(np.log(np.abs(safe) if np.isrealobj(y) else safe))
 
 
 def _near(u: Numbers) -> Complex:

@@ -29,9 +29,9 @@ LASER = Caution(
     line="laser radiation: work under the local laser safety officer",
     text=(
         "Laser radiation. Work only under the local laser safety officer and after an assessment to "
-        "IEC 60825-1 and, where it applies, ANSI Z136.1. This program gives no laser class, no exposure limit "
-        "and no eyewear figure, and replaces neither local codes nor licensed practice. Ultrashort pulses need "
-        "protection rated for ultrashort pulses."
+        "IEC 60825-1 and, where it applies, ANSI Z136.1. This program gives no laser class, no exposure "
+        "limit and no eyewear figure, and replaces neither local codes nor licensed practice. Ultrashort "
+        "pulses need protection rated for ultrashort pulses."
     ),
 )
 
@@ -64,9 +64,9 @@ def _strong_light(rows: Sequence[ElementMeasures]) -> Iterator[Caution]:
             code="x-rays",
             line=f"peak intensity {intensity:.2g} W/cm^2: ask the radiation protection officer about X-rays",
             text=(
-                f"The peak intensity reaches {intensity:.3g} W/cm^2. On matter, intensities above 1e13 W/cm^2 "
-                "can make X-rays; German radiation-protection law asks for notice or permission there, mainly "
-                "in material processing. The figure is that of one country: ask the local radiation "
+                f"The peak intensity reaches {intensity:.3g} W/cm^2. On matter, intensities above 1e13 "
+                "W/cm^2 can make X-rays; German radiation-protection law asks for notice or permission there, "
+                "mainly in material processing. The figure is that of one country: ask the local radiation "
                 "protection officer."
             ),
         )
@@ -81,7 +81,7 @@ def _gases(path: Path) -> Iterator[Caution]:
             line=f"{listed}: displaces oxygen in closed rooms",
             text=(
                 f"The path holds {listed}, which displaces oxygen in closed rooms. Ventilate, and follow the "
-                "local rules for compressed gases; mechanical strength of cells and windows is not considered."
+                "local rules for compressed gases; the strength of cells and windows is not considered."
             ),
         )
 
@@ -112,7 +112,7 @@ def _of_medium(medium: Medium) -> Iterator[Caution]:
             code="not-a-causal-model",
             line=f"{medium.name}: not a causal model, left out of the causality diagnostics",
             text=(
-                f"{medium.name} is given by numbers that are no causal model (orders, or a table as printed). "
+                f"{medium.name} is given by numbers that are no causal model (orders, a table as printed). "
                 "It is left out of the front test, and its absorption says nothing about its dispersion."
             ),
         )

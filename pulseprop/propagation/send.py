@@ -271,7 +271,7 @@ def _sum(values: Iterable[float | None]) -> float | None:
 
 
 def _gdd_only(experiment: Experiment, before: PulseMeasures, gdd: float | None) -> float | None:
-    """Textbook: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) of a Gaussian, from the limit and all GDD with the chirp.
+    """Textbook: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) of a Gaussian, from the limit and all GDD, chirp too.
 
     None where a line stands in the spectrum: the GDD at one frequency says nothing then.
     """

@@ -27,7 +27,7 @@ Drawn = TypeVar("Drawn")
 COLOURS = {
     "ink": "#22303c",
     "faint": "#c3ccd4",
-    "before": "#6b757e",
+    "before": "#5f6a73",
     "after": "#1b5e92",
     "warm": "#b5600c",
     "green": "#2b7d6d",

@@ -40,7 +40,9 @@ def test_value_and_slope(u):
 
 @pytest.mark.parametrize("u", [-1.7, -0.4, 0.0, 1.0, 1.3])
 def test_on_the_axis_the_limit_from_above_is_taken(u):
-    """Im c(u + i0) = pi B(u); Re c is a principal value: (B(v) - B(u))/(v - u) is regular, the rest a logarithm."""
+    """Im c(u + i0) = pi B(u); Re c is a principal value: (B(v) - B(u))/(v - u) is regular, the rest a
+    logarithm.
+    """
     with mp.workdps(30):
         there = spline(mp.mpf(u))
         edges = sorted({*KNOTS, u})
