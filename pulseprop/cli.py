@@ -57,6 +57,8 @@ def _guarded(arguments: Sequence[str] | None) -> int:
         return _failed("interrupted; nothing half done was written.", INTERRUPTED)
     except BrokenPipeError:
         raise
+    except SystemExit as left:
+        raise BrokenPipeError from left  # so the parser leaves when the reader of a pipe has gone
     except MemoryError:
         return _failed(
             "the memory of this machine does not suffice. Lower grid.memory in the scenario.", UNTRUSTWORTHY

@@ -63,7 +63,9 @@ class Scaled:
 
 @dataclass(frozen=True)
 class LorentzLorenz:
-    """Volume fractions before mixing; polarisabilities add. Fractions need not sum to 1: the rest is vacuum."""
+    """Volume fractions before mixing; polarisabilities add. Fractions need not sum to 1: the rest is
+    vacuum.
+    """
 
     parts: tuple[tuple[Response, float], ...]
 

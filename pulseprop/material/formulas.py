@@ -140,7 +140,9 @@ class Formula:
         return g
 
     def _completed(self, omega: Series, x: Series) -> Series:
-        """The completion; x = omega^2 does not tell omega from -conj(omega), whose responses are conjugate."""
+        """The completion; x = omega^2 does not tell omega from -conj(omega), whose responses are
+        conjugate.
+        """
         mirrored = np.real(omega) < 0
         if not mirrored.any():
             return self.completion.series(x)

@@ -78,7 +78,9 @@ class VoigtLine:
 
     @property
     def memory(self) -> float:
-        """A time in s after which the ringing has fallen by one neper at least, and goes on falling faster."""
+        """A time in s after which the ringing has fallen by one neper at least, and goes on falling
+        faster.
+        """
         return float(1 / (self.width / 2 + self.doppler_width * SIGMA_PER_FWHM / 6))
 
     def with_strength(self, strength: float) -> VoigtLine:

@@ -30,7 +30,9 @@ class NonlinearIndex:
 
 @dataclass(frozen=True)
 class Resonance:
-    """A line that rings: centre in rad/s, full width in rad/s (all broadening), memory (T2 or shorter) in s."""
+    """A line that rings: centre in rad/s, full width in rad/s (all broadening), memory (T2 or shorter) in
+    s.
+    """
 
     centre: float
     width: float

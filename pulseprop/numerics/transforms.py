@@ -16,7 +16,9 @@ Complex = NDArray[np.complex128]
 
 
 def forward(envelope: Complex) -> Complex:
-    """Sum over instants j of envelope[j] exp(+2 pi i (m - N/2) j / N), for ascending m; shape (N,) to (N,)."""
+    """Sum over instants j of envelope[j] exp(+2 pi i (m - N/2) j / N), for ascending m; shape (N,) to
+    (N,).
+    """
     n = envelope.shape[-1]
     spectrum = np.fft.ifft(envelope, norm="forward")
     return np.concatenate((spectrum[n // 2 :], spectrum[: n // 2]))
@@ -30,7 +32,9 @@ def backward(spectrum: Complex) -> Complex:
 
 
 def fast_length(least: int) -> int:
-    """The smallest product of twos, threes and fives that is not below `least`: a length of fast transforms."""
+    """The smallest product of twos, threes and fives that is not below `least`: a length of fast
+    transforms.
+    """
     best = 1 << max(least - 1, 0).bit_length()
     fives = 1
     while fives < best:

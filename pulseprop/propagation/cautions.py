@@ -65,7 +65,7 @@ def _strong_light(rows: Sequence[ElementMeasures]) -> Iterator[Caution]:
             line=f"peak intensity {intensity:.2g} W/cm^2: ask the radiation protection officer about X-rays",
             text=(
                 f"The peak intensity reaches {intensity:.3g} W/cm^2. On matter, intensities above 1e13 "
-                "W/cm^2 can make X-rays; German radiation-protection law asks for notice or permission there, "
+                "W/cm^2 can make X-rays; German radiation-protection law asks for notice or leave there, "
                 "mainly in material processing. The figure is that of one country: ask the local radiation "
                 "protection officer."
             ),

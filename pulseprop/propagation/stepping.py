@@ -91,7 +91,9 @@ STEPPERS: dict[str, Callable[[], Stepper]] = {"split-step": SymmetricSplit}
 
 @dataclass(frozen=True)
 class Travelled:
-    """What a march took: steps, transforms, and the largest local error estimate where the method gives one."""
+    """What a march took: steps, transforms, and the largest local error estimate where the method gives
+    one.
+    """
 
     steps: int
     transforms: int
