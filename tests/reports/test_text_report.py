@@ -1,0 +1,128 @@
+"""The report for a person: it answers first, fits the screen, and never shows more digits than there are."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+import pytest
+
+from pulseprop.propagation.result import Run
+from pulseprop.reports.numbers import fixed, percent, quantity, significant, span
+from pulseprop.reports.text import text_report
+
+
+def row_of(report: str, name: str) -> list[str]:
+    return next(line for line in report.splitlines() if line.startswith(name)).split()
+
+
+def test_first_line_answers_the_question(run: Run) -> None:
+    assert text_report(run).splitlines()[0] == run.headline
+
+
+def test_no_line_is_wider_than_110_columns(run: Run) -> None:
+    long = replace(run.elements[0], name="a very long name of an element that " * 4)
+    report = text_report(replace(run, elements=(long, *run.elements)))
+    assert max(map(len, report.splitlines())) <= 110
+
+
+def test_rows_carry_the_digits_of_their_data_and_sums_those_of_their_coarsest_term(run: Run) -> None:
+    report = text_report(run)
+    assert "108.5" in row_of(report, "cryostat window")
+    assert "108.46" not in report
+    # 141.5433 known to two digits is 140, and the sum 250.0 is then known to tens.
+    objective = row_of(report, "objective")
+    assert "140" in objective
+    assert "250" in objective
+    assert "250.0" not in report
+
+
+def test_textbook_estimate_stands_beside_the_total(run: Run) -> None:
+    # 12 fs and 250 fs^2: 59.0 fs by the closed form; two digits because of the objective.
+    assert "FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) = 59 fs" in " ".join(text_report(run).split())
+
+
+def test_numbers_line_up_on_their_points(run: Run) -> None:
+    whole = [replace(element, digits=4) for element in run.elements]
+    lines = [
+        line
+        for line in text_report(replace(run, elements=tuple(whole))).splitlines()
+        if line.startswith(("FWHM, outer", "RMS width"))
+    ]
+    assert len({line.index(".") for line in lines}) == 1
+
+
+@pytest.mark.parametrize(
+    "phrase",
+    [
+        "[laser-radiation]",
+        "Left out of the front test",
+        "objective",
+        "0.011 of the energy ahead of the front, acausal",
+        "noise floor of the test 1.0e-28",
+        "I. H. Malitson (1965); temperature: 20 degC; valid 210 nm to 3710 nm; index against air",
+        "fused silica (Arosa 2020) 35.86",
+        "|GDD| = 302 fs^2",
+        "5.0 mm of fused silica",
+        "92.0 fs means positive GDD, one of 38.0 fs negative",
+        "+ 0 (reshaping by absorption)",
+        "the objective is known by two orders only",
+        "Invented laboratory, invented data.",
+    ],
+)
+def test_report_says(run: Run, phrase: str) -> None:
+    assert phrase in " ".join(text_report(run).split())
+
+
+def test_ringing_and_splitting_are_said_aloud(run: Run) -> None:
+    rings = replace(run.pulse_out, split=True, energy_after=0.0078)
+    report = " ".join(text_report(replace(run, pulse_out=rings)).split())
+    assert "The pulse splits" in report
+    assert "0.78 % of its energy comes later than three FWHM after the peak" in report
+    assert "splits" not in text_report(run)
+
+
+def test_what_has_no_answer_is_a_dash(run: Run) -> None:
+    unknown = replace(run.elements[0], gdd_fs2=None, gdd_sum_fs2=None)
+    assert "–" in row_of(text_report(replace(run, elements=(unknown,))), "cryostat window")
+
+
+def test_empty_path(run: Run) -> None:
+    assert "The path is empty" in text_report(replace(run, elements=(), media=()))
+
+
+@pytest.mark.parametrize(
+    ("value", "digits", "text"),
+    [
+        (36.1649, 4, "36.16"),
+        (1234.5, 2, "1200"),
+        (0.000123456, 3, "0.000123"),
+        (9.996, 3, "10.0"),
+        (1.2e-9, 2, "1.2e-9"),
+        (0.0, 3, "0"),
+        (-0.04, 1, "-0.04"),
+        (None, 3, "–"),
+        (float("nan"), 3, "–"),
+    ],
+)
+def test_significant_digits(value: float | None, digits: int, text: str) -> None:
+    assert significant(value, digits) == text
+
+
+def test_rounding_to_zero_has_no_sign() -> None:
+    assert fixed(-0.004, -1) == "0.0"
+
+
+@pytest.mark.parametrize(
+    ("share", "text"),
+    [(1.0, "100 %"), (0.93261, "93.3 %"), (0.999987, "99.9987 %"), (0.0661, "6.61 %"), (3.2e-7, "3.20e-5 %")],
+)
+def test_shares_near_the_whole_keep_what_is_missing(share: float, text: str) -> None:
+    assert percent(share) == text
+
+
+def test_units_of_readable_size() -> None:
+    assert quantity(391432.2, "W") == "391 kW"
+    assert quantity(5e-9, "J") == "5.00 nJ"
+    assert quantity(999.9e3, "W") == "1.00 MW"
+    assert span(12345.6, 4) == "12.35 ps"
+    assert span(4.9e6, 2) == "4.9 ns"
