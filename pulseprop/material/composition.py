@@ -175,8 +175,8 @@ class Absolute:
         air = refraction_of(self.air.series(omega, count, view))
         air[0] += 1.0
         scaled = product(variable(np.asarray(omega), count), air)
-        if np.iscomplexobj(scaled) and np.isrealobj(omega):
-            scaled = np.asarray(scaled.real)
+        if view is not View.COMPLETED and np.isrealobj(omega):
+            scaled = np.asarray(np.real(scaled))
         outer = refraction_of(self.printed.series(scaled[0], count, view))
         index = compose(outer, scaled)
         index[0] += 1.0
