@@ -8,7 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.elements.path import Path
-from pulseprop.errors import NumericalLimit
+from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.grid import Grid
 from pulseprop.pulse.source import PulseSource
 
@@ -68,6 +68,7 @@ def first_windows(pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
     delays = _delays(pulse, path)
     needed = (last - first) + float(np.ptp(delays[-1])) if len(delays) else last - first
     needed *= MARGIN
+    _refuse_gigantic(wish, step)
     points = _points(needed, MARGIN * _ringing(pulse, path), step, wish)
     if wish.span is not None and wish.points is None:
         step = wish.span / points
@@ -78,6 +79,20 @@ def first_windows(pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
         carrier = 0.5 / step
     grid = Grid(points=points, step=step, start=_start(first, last, points * step), carrier=carrier)
     return _placed(grid, first, last, delays)
+
+
+def _refuse_gigantic(wish: GridWish, step: float) -> None:
+    """What the scenario itself asks for must fit into the memory it allows."""
+    most = most_points(wish.memory)
+    for key, points in (("points", wish.points), ("span", wish.span and wish.span / step)):
+        if points and points > most:
+            raise InputError(
+                f"grid.{key} asks for more than the memory limit holds",
+                value=f"{points:.4g} points, about {points * ARRAYS_AT_A_TIME * BYTES_PER_POINT / 2**30:.3g} GiB",
+                allowed=f"{most} points in {wish.memory / 2**30:.3g} GiB (grid.memory)",
+                remedy="Leave it out, so that the grid sizes itself, or raise grid.memory",
+                place=f"grid.{key}",
+            )
 
 
 def _step_of(points: int, span: float | None, needed: float, coarsest: float) -> float:
@@ -149,7 +164,7 @@ def too_large(points: int, memory: float) -> NumericalLimit:
         "the grid would not fit into the memory limit",
         value=f"{points} points, about {points * ARRAYS_AT_A_TIME * BYTES_PER_POINT / 2**30:.3g} GiB",
         allowed=f"{memory / 2**30:.3g} GiB (grid.memory)",
-        remedy="raise grid.memory, or shorten what makes the answer long: narrow lines, echoes, dispersion",
+        remedy="Raise grid.memory, or shorten what makes the answer long: narrow lines, echoes, dispersion",
     )
 
 

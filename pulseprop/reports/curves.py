@@ -13,7 +13,16 @@ from pulseprop.material.medium import Medium
 from pulseprop.measures.contrast import thinned
 from pulseprop.numerics.interpolation import band_limited, mean_turn
 
-__all__ = ["POINTS", "IndexCurve", "PulseCurve", "bounds_of", "index_curves", "pulse_curve", "thin_pairs"]
+__all__ = [
+    "POINTS",
+    "IndexCurve",
+    "PulseCurve",
+    "bounds_of",
+    "extremes",
+    "index_curves",
+    "pulse_curve",
+    "thin_pairs",
+]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -109,13 +118,18 @@ def pulse_curve(grid: Grid, envelope: Complex, before: float, after: float) -> P
     return PulseCurve(time, np.abs(field) ** 2, (field * carrier).real)
 
 
+def extremes(values: Real, group: int) -> NDArray[np.intp]:
+    """Indices of the lowest and of the highest of each group of values (N,), ascending; a short rest is left out."""
+    whole = values.size // group * group
+    blocks = values[:whole].reshape(-1, group)
+    ends = np.sort(np.stack((blocks.argmin(axis=1), blocks.argmax(axis=1)), axis=1), axis=1)
+    return np.asarray((ends + np.arange(0, whole, group)[:, None]).ravel())
+
+
 def thin_pairs(x: Real, y: Real, points: int) -> tuple[Real, Real]:
-    """Lowest and highest sample of each group, in their order: fringes keep both their edges."""
+    """At most about `points` pairs: fringes keep both their edges."""
     group = -(-2 * x.size // points)
     if group <= 2:
         return x, y
-    whole = x.size // group * group
-    blocks = y[:whole].reshape(-1, group)
-    ends = np.sort(np.stack((blocks.argmin(axis=1), blocks.argmax(axis=1)), axis=1), axis=1)
-    index = (ends + np.arange(0, whole, group)[:, None]).ravel()
+    index = extremes(y, group)
     return x[index], y[index]

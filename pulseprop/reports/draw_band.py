@@ -9,9 +9,8 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.measures.contrast import thinned
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import POINTS, SPEED_OF_LIGHT, IndexCurve
+from pulseprop.reports.curves import POINTS, SPEED_OF_LIGHT, IndexCurve, extremes
 from pulseprop.reports.drawing import Drawing, source_line
 from pulseprop.reports.figure_style import COLOURS, canvas, styled
 from pulseprop.reports.numbers import scaled, span
@@ -28,6 +27,9 @@ SHOWN = 1e-3
 
 TRUSTED = 1e-6
 """Spectral energy over its peak below which no group delay is drawn."""
+
+MOST_NM = 1e4
+"""Wavelength from which on an axis is in micrometres."""
 
 LINES = ("after", "warm", "green", "before", "ink")
 STYLES = ("-", "--", "-.", ":", "-")
@@ -90,12 +92,15 @@ def _bands(run: Run) -> tuple[Real, Real, Real, Real, Real]:
 
 
 def _thin(rows: list[Real]) -> tuple[Real, Real, Real, Real, Real]:
-    """Every column at the frequencies where the leaving spectrum deviates most from the entering one."""
+    """Every column where the leaving spectrum or the transmission is lowest or highest of its group.
+
+    Fringes finer than a screen so become a band between their edges, and no beat of them with the pixels.
+    """
     frequency, before, after, delay, transmission = rows
-    if frequency.size > POINTS:
-        position, _ = thinned(0.0, 1.0, np.abs(before - after) + 1e-12 * before, POINTS)
-        index = position.astype(int)
-        return tuple(column[index] for column in rows)
+    group = -(-frequency.size // (POINTS // 2))
+    if group > 4:
+        kept = np.unique(np.concatenate([extremes(column, group) for column in (after, transmission)]))
+        frequency, before, after, delay, transmission = (column[kept] for column in rows)
     return frequency, before, after, delay, transmission
 
 
@@ -103,7 +108,7 @@ def _wavelength_axis(panel: Axes, low: float, high: float) -> None:
     """Vacuum wavelength along the top of an axis from low to high THz: nm, or um from ten micrometres on."""
     from matplotlib.ticker import MaxNLocator
 
-    unit, scale = ("nm", 1e-3) if SPEED_OF_LIGHT * 1e-3 / high < 1e4 else ("um", 1e-6)
+    unit, scale = ("nm", 1e-3) if SPEED_OF_LIGHT * 1e-3 / high < MOST_NM else ("um", 1e-6)
 
     def turned(value: Any) -> Any:
         return SPEED_OF_LIGHT * scale / np.maximum(np.asarray(value, dtype=float), 1e-9)
@@ -120,11 +125,13 @@ def draw_media(curves: Sequence[IndexCurve], source: str) -> Drawing:
     """Index, absorption and GVD of media over wavelength."""
     absorbs = any(float(np.max(curve.k, initial=0.0)) > 1e-12 for curve in curves)
     figure, panels = canvas((1.0,) * (3 if absorbs else 2), source=source)
+    longest = max(float(curve.wavelength_nm.max()) for curve in curves)
+    unit, scale = ("nm", 1.0) if longest < MOST_NM else ("um", 1e-3)
     for number, curve in enumerate(curves):
-        k = np.where(curve.k > 0, curve.k, np.nan)
+        wavelength, k = curve.wavelength_nm * scale, np.where(curve.k > 0, curve.k, np.nan)
         for panel, values in zip(panels, (curve.n, curve.gvd, k), strict=False):
             panel.plot(
-                curve.wavelength_nm,
+                wavelength,
                 values,
                 label=curve.name,
                 color=COLOURS[LINES[number % 5]],
@@ -139,7 +146,7 @@ def draw_media(curves: Sequence[IndexCurve], source: str) -> Drawing:
         panel.margins(x=0)
     for panel in panels[:-1]:
         panel.tick_params(labelbottom=False)
-    panels[-1].set_xlabel("vacuum wavelength, nm")
+    panels[-1].set_xlabel(f"vacuum wavelength, {unit}")
     figure.align_ylabels(panels)
     panels[0].legend(loc="lower left", bbox_to_anchor=(0, 1), ncols=min(len(curves), 4))
     columns = {}

@@ -54,17 +54,18 @@ def draw_pulse(run: Run) -> Drawing:
     unit, factor = scaled([1e15 * float(np.ptp(after.time))])
     cycles = float(np.ptp(after.time)) * run.fields.grid_out.carrier
     rings = bool(run.pulse_out.split) or (run.pulse_out.energy_after or 0.0) > RINGS
-    lower = rings or cycles <= MOST_CYCLES
-    figure, panels = canvas((3.0, 2.0) if lower else (1.0,), source=source_line(run))
+    heights = (3.0, *((2.0,) if cycles <= MOST_CYCLES else ()), *((2.0,) if rings else ()))
+    figure, panels = canvas(heights, source=source_line(run))
     _linear(panels[0], before, after, 1e15 * factor)
     panels[0].set_title(f"{span(run.pulse_in.fwhm_fs, 3)} enters, {span(run.pulse_out.fwhm_fs, 3)} leaves")
-    if rings:
-        unit = _decades(panels[1], run)[0]
-    elif lower:
+    if cycles <= MOST_CYCLES:
         panels[0].tick_params(labelbottom=False)
         _fields(panels[1], before, after, 1e15 * factor)
         panels[1].set_xlim(panels[0].get_xlim())
-    panels[-1].set_xlabel(f"time from the peak of each pulse, {unit}")
+    panels[-2 if rings else -1].set_xlabel(f"time from the peak of each pulse, {unit}")
+    if rings:
+        panels[-1].set_xlabel(f"the same, {_decades(panels[-1], run)[0]}")
+    figure.align_ylabels(panels)
     delay = span(run.path.centroid_delay_fs, 4)
     caption = (
         f"Power before and after the path, each from its peak; the centroid leaves {delay} after that of the "

@@ -23,8 +23,11 @@ PREFIXES = (
     (1e-15, "f"),
 )
 
-TIMES = ((1e9, "us", 1e-9), (1e6, "ns", 1e-6), (1e4, "ps", 1e-3), (0.0, "fs", 1.0))
+TIMES = ((1e9, "us", 1e-9), (1e6, "ns", 1e-6), (1e3, "ps", 1e-3), (0.0, "fs", 1.0))
 """From how many femtoseconds on a unit is used, its symbol, and its value of one femtosecond."""
+
+ROOM = 10.0
+"""A column keeps its unit up to ten times longer than a single value does, for the sake of its small entries."""
 
 
 def significant(value: float | None, digits: int) -> str:
@@ -69,16 +72,19 @@ def percent(share: float | None, digits: int = 3) -> str:
 
 
 def scaled(femtoseconds: Iterable[float | None]) -> tuple[str, float]:
-    """Unit for a row of durations, and the factor that takes femtoseconds to it."""
-    largest = max((abs(value) for value in femtoseconds if value is not None), default=0.0)
-    return next((unit, factor) for least, unit, factor in TIMES if largest >= least)
+    """Unit for a column of durations, and the factor that takes femtoseconds to it."""
+    return _time_unit(max((abs(value) for value in femtoseconds if value is not None), default=0.0) / ROOM)
+
+
+def _time_unit(femtoseconds: float) -> tuple[str, float]:
+    return next((unit, factor) for least, unit, factor in TIMES if femtoseconds >= least)
 
 
 def span(femtoseconds: float | None, digits: int) -> str:
     """A duration with its unit."""
     if femtoseconds is None or not math.isfinite(femtoseconds):
         return NOTHING
-    unit, factor = scaled([femtoseconds])
+    unit, factor = _time_unit(abs(femtoseconds) * 1.0005)
     return f"{significant(femtoseconds * factor, digits)} {unit}"
 
 

@@ -61,10 +61,10 @@ def numerics_section(run: Run) -> Section:
     grid, solver = run.grid, run.solver
     text = (
         f"{grid.points} points of {span(grid.step_fs, 4)}, a window of {span(grid.span_fs, 4)}"
-        f"{_enlarged(solver.enlargements)}; method {solver.method}, {solver.transforms} transforms"
+        f"{_enlarged(solver.enlargements)}; method {solver.method}, {_counted(solver.transforms, 'transform')}"
     )
     if solver.steps:
-        text += f", {solver.steps} steps"
+        text += f", {_counted(solver.steps, 'step')}"
     if solver.estimated_error is not None:
         text += f", estimated error {significant(solver.estimated_error, 2)}"
     text += f"; energy that reached the edges of the window: {significant(solver.wrapped_energy, 2)}."
@@ -78,7 +78,11 @@ def numerics_section(run: Run) -> Section:
 def _enlarged(times: int) -> str:
     if not times:
         return ""
-    return f" (enlarged {times} time{'s' if times > 1 else ''} after the check for wrap-around)"
+    return f" (enlarged {_counted(times, 'time')} after the check for wrap-around)"
+
+
+def _counted(number: int, thing: str) -> str:
+    return f"{number} {thing}" if number == 1 else f"{number} {thing}s"
 
 
 def warning_section(run: Run) -> Section | None:

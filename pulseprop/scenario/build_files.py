@@ -113,6 +113,7 @@ def _measured_values(columns: Columns, spec: AbsorptionFile) -> Real:
 
 def index_table_of(scenario: Scenario, name: str, table: MediumTable) -> Medium:
     """The medium of a table of n, or n and k."""
+    from pulseprop.material.held_at_ends import HeldAtEnds
     from pulseprop.material.index_table import index_table
 
     spec = table.index
@@ -137,7 +138,7 @@ def index_table_of(scenario: Scenario, name: str, table: MediumTable) -> Medium:
     )
     return Medium(
         name=name,
-        response=WithAbsorption(Constant(0.0), found),
+        response=WithAbsorption(Constant(0.0), found if found.causal else HeldAtEnds(found)),
         source=table.source or f"table {Path(spec.file).name}",
         relative_to=spec.relative_to or "not stated",
         causal=found.causal,

@@ -49,10 +49,7 @@ def send_cost() -> tuple[float, float]:
 
 def send_compiles_nothing() -> bool:
     """Whether the run leaves the just-in-time compiler unloaded."""
-    code = (
-        "import sys; import pulseprop as pp; "
-        f"pp.send({str(SCENARIO)!r}); print('numba' in sys.modules)"
-    )
+    code = f"import sys; import pulseprop as pp; pp.send({str(SCENARIO)!r}); print('numba' in sys.modules)"
     done = subprocess.run([sys.executable, "-c", code], check=True, capture_output=True, text=True)
     return done.stdout.strip() == "False"
 

@@ -1,0 +1,17 @@
+"""`python -m tests.benchmarks`: every figure, each with what it is measured against."""
+
+from __future__ import annotations
+
+from importlib import import_module
+
+PARTS = ("dispersion", "kramers_kronig", "resonance", "speed")
+
+
+def main() -> None:
+    for part in PARTS:
+        print(f"== {part}", flush=True)
+        import_module(f"tests.benchmarks.{part}").main()
+
+
+if __name__ == "__main__":
+    main()
