@@ -36,9 +36,11 @@ LASER = Caution(
 )
 
 
-def cautions_for(path: Path, rows: Sequence[ElementMeasures]) -> tuple[Caution, ...]:
-    """The cautions of a run, most general first."""
-    found = [LASER, *_strong_light(rows), *_gases(path)]
+def cautions_for(
+    path: Path, rows: Sequence[ElementMeasures], substances: Sequence[str] = ()
+) -> tuple[Caution, ...]:
+    """The cautions of a run, most general first; substances: what media of other names are made of."""
+    found = [LASER, *_strong_light(rows), *_gases([*(medium.name for medium in path.media), *substances])]
     for element in path:
         found += _temperature(element)
     for medium in path.media:
@@ -72,8 +74,8 @@ def _strong_light(rows: Sequence[ElementMeasures]) -> Iterator[Caution]:
         )
 
 
-def _gases(path: Path) -> Iterator[Caution]:
-    names = {medium.name.split(" at ")[0].split(" (")[0] for medium in path.media}
+def _gases(media: Sequence[str]) -> Iterator[Caution]:
+    names = {name.split(" at ")[0].split(" (")[0] for name in media}
     listed = ", ".join(sorted(names.intersection(DISPLACING)))
     if listed:
         yield Caution(

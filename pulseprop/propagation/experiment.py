@@ -31,8 +31,9 @@ class MeasuredAutocorrelation:
 class Experiment:
     """A scenario, built.
 
-    both_signs: the pulse's GDD came from a measured duration, so its sign is unknown. beyond_range: what to
-    do with a medium whose range the pulse leaves.
+    both_signs: the pulse's GDD came from a measured duration, so its sign is unknown. energy_stated: False where the
+    scenario gives neither energy nor peak power: then nothing that scales with it is reported. beyond_range: what to
+    do with a medium whose range the pulse leaves. substances: catalogue media that others are made of.
     """
 
     title: str
@@ -44,10 +45,12 @@ class Experiment:
     text: str = ""
     sha256: str = ""
     both_signs: bool = False
+    energy_stated: bool = True
     grid: GridWish = field(default_factory=GridWish)
     beyond_range: Literal["refuse", "causal"] = "refuse"
     method: Literal["exact", "split-step"] = "exact"
     local_error: float = 1e-8
     autocorrelation: MeasuredAutocorrelation | None = None
+    substances: tuple[str, ...] = ()
     warnings: tuple[str, ...] = ()
     cautions: tuple[Caution, ...] = ()

@@ -2,15 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.elements.path import Path
 from pulseprop.elements.slab import Slab
 from pulseprop.grid import Grid
 from pulseprop.measures.limits import TransformLimit
+from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.result import ElementMeasures, HazardFacts
 
 __all__ = ["hazard_facts"]
@@ -21,34 +21,35 @@ SPEED_OF_LIGHT = 299792458.0
 
 
 def hazard_facts(
+    experiment: Experiment,
     grid: Grid,
     spectrum: Complex,
     limit: TransformLimit,
-    path: Path,
     rows: Sequence[ElementMeasures],
-    omega: float,
-    radius: float | None,
-    repetition_rate: float | None,
 ) -> HazardFacts:
-    """Facts about the pulse that enters (a path without gain only weakens it) and the stray beams of the
-    path.
+    """Facts about the pulse that enters, A(omega) on the grid (a path without gain only weakens it), and the
+    stray beams of the path.
     """
-    energy = grid.energy(spectrum)
-    fluences = [row.peak_fluence_J_per_cm2 for row in rows if row.peak_fluence_J_per_cm2 is not None]
-    intensities = [row.peak_intensity_W_per_cm2 for row in rows if row.peak_intensity_W_per_cm2 is not None]
+    pulse, known = experiment.pulse, experiment.energy_stated
+    energy, rate = grid.energy(spectrum), pulse.repetition_rate
+    slabs = [element for element in experiment.path if isinstance(element, Slab)]
     return HazardFacts(
         wavelengths_at_1_percent_nm=_wavelengths(grid, spectrum, 1e-2),
         wavelengths_at_1e_4_nm=_wavelengths(grid, spectrum, 1e-4),
-        pulse_energy_J=energy,
-        repetition_rate_Hz=repetition_rate,
-        average_power_W=None if repetition_rate is None else energy * repetition_rate,
+        pulse_energy_J=energy if known else None,
+        repetition_rate_Hz=rate,
+        average_power_W=energy * rate if known and rate is not None else None,
         shortest_possible_fwhm_fs=limit.fwhm * 1e15,
-        peak_power_at_limit_W=limit.peak_power,
-        beam_radius_m=radius,
-        peak_fluence_J_per_cm2=max(fluences, default=None),
-        peak_intensity_W_per_cm2=max(intensities, default=None),
-        stray_beams=tuple(_stray(element, omega) for element in path if isinstance(element, Slab)),
+        peak_power_at_limit_W=limit.peak_power if known else None,
+        beam_radius_m=pulse.beam_radius,
+        peak_fluence_J_per_cm2=_largest(row.peak_fluence_J_per_cm2 for row in rows),
+        peak_intensity_W_per_cm2=_largest(row.peak_intensity_W_per_cm2 for row in rows),
+        stray_beams=tuple(_stray(slab, pulse.centre) for slab in slabs),
     )
+
+
+def _largest(values: Iterable[float | None]) -> float | None:
+    return max((value for value in values if value is not None), default=None)
 
 
 def _wavelengths(grid: Grid, spectrum: Complex, level: float) -> tuple[float, float]:

@@ -195,11 +195,11 @@ class HazardFacts:
 
     wavelengths_at_1_percent_nm: tuple[float, float]
     wavelengths_at_1e_4_nm: tuple[float, float]
-    pulse_energy_J: float
+    pulse_energy_J: float | None
     repetition_rate_Hz: float | None
     average_power_W: float | None
     shortest_possible_fwhm_fs: float
-    peak_power_at_limit_W: float
+    peak_power_at_limit_W: float | None
     beam_radius_m: float | None
     peak_fluence_J_per_cm2: float | None
     peak_intensity_W_per_cm2: float | None
@@ -284,6 +284,7 @@ class Run:
             "media": [asdict(medium) for medium in self.media],
             "pulse_notes": list(self.pulse_notes),
             "signs": [asdict(case) for case in self.signs],
+            "autocorrelation": self.autocorrelation and asdict(self.autocorrelation),
             "hazard_assessment": asdict(self.hazards),
             "warnings": list(self.warnings),
             "cautions": [{"code": caution.code, "text": caution.text} for caution in self.cautions],
@@ -302,7 +303,7 @@ def _plain(value: Any) -> Any:
     """Plain JSON values: numpy scalars unwrapped, tuples as lists, numbers that are not finite as None."""
     if isinstance(value, dict):
         return {key: _plain(item) for key, item in value.items()}
-    if isinstance(value, list | tuple):
+    if isinstance(value, list | tuple | np.ndarray):
         return [_plain(item) for item in value]
     if isinstance(value, np.bool_ | bool):
         return bool(value)

@@ -31,6 +31,7 @@ from pulseprop.propagation.sizing import Windows, first_windows, larger
 from pulseprop.propagation.sources import media_used
 from pulseprop.propagation.stepped import SteppedAdvance
 from pulseprop.propagation.words import headline
+from pulseprop.pulse.pulse import Pulse
 
 __all__ = ["Progress", "run"]
 
@@ -81,7 +82,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
     causality = causality_of(
         experiment.path,
         experiment.pulse.centre,
-        before.transform_limit_fwhm_fs / FEMTO,
+        _test_duration(experiment, before),
         experiment.grid.memory,
         lambda fraction: progress("causality", 0.6 + 0.3 * fraction),
     )
@@ -106,27 +107,24 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
         grid=GridMeasures(points=grid_in.points, step_fs=grid_in.step * FEMTO, span_fs=grid_in.span * FEMTO),
         solver=_solver(experiment, done),
         media=media_used(experiment.path, omega),
-        hazards=hazard_facts(
-            grid_in,
-            done.spectrum_in,
-            limit_in,
-            experiment.path,
-            rows,
-            omega,
-            experiment.pulse.beam_radius,
-            experiment.pulse.repetition_rate,
-        ),
+        hazards=hazard_facts(experiment, grid_in, done.spectrum_in, limit_in, rows),
         warnings=(
             *experiment.warnings,
             *_range_warnings(experiment, grid_in, done.spectrum_in),
             *_b_warnings(experiment),
         ),
-        cautions=(*cautions_for(experiment.path, rows), *experiment.cautions),
+        cautions=(*cautions_for(experiment.path, rows, experiment.substances), *experiment.cautions),
         pulse_notes=experiment.pulse.notes,
         signs=sign_cases(experiment) if experiment.both_signs else (),
         autocorrelation=autocorrelation_fit(experiment),
         fields=fields,
     )
+
+
+def _test_duration(experiment: Experiment, before: PulseMeasures) -> float:
+    """FWHM in s of the finite pulse of the front test: the pulse's own, at its transform limit if measured."""
+    pulse = experiment.pulse
+    return pulse.duration if isinstance(pulse, Pulse) else before.transform_limit_fwhm_fs / FEMTO
 
 
 def _propagate(experiment: Experiment, progress: Progress) -> _Propagated:
@@ -147,7 +145,7 @@ def _propagate(experiment: Experiment, progress: Progress) -> _Propagated:
             windows,
             spectrum,
             experiment.pulse.centre,
-            experiment.pulse.beam_radius,
+            experiment.pulse.beam_radius if experiment.energy_stated else None,
             stepped or at_once,
         )
         wrapped = max(
@@ -224,7 +222,7 @@ def _range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tu
 
 
 def _b_warnings(experiment: Experiment) -> tuple[str, ...]:
-    if experiment.pulse.beam_radius is None:
+    if experiment.pulse.beam_radius is None or not experiment.energy_stated:
         return ()
     missing = [
         medium.name

@@ -119,7 +119,7 @@ def pulse_curve(grid: Grid, envelope: Complex, before: float, after: float) -> P
 
 
 def extremes(values: Real, group: int) -> NDArray[np.intp]:
-    """Indices of the lowest and of the highest of each group of values (N,), ascending; a short rest is left out."""
+    """Indices of the lowest and highest of each group of values (N,), ascending; a short rest is left out."""
     whole = values.size // group * group
     blocks = values[:whole].reshape(-1, group)
     ends = np.sort(np.stack((blocks.argmin(axis=1), blocks.argmax(axis=1)), axis=1), axis=1)

@@ -112,7 +112,7 @@ def _linear(panel: Axes, before: PulseCurve, after: PulseCurve, scale: float) ->
         color=COLOURS["after"],
         label=f"leaves (peak {percent(leaving / top, 2)} of the entering)" if own else "leaves",
     )
-    panel.set_ylabel("power / own peak" if own else "power / entering peak")
+    panel.set_ylabel("relative power")
     panel.set_ylim(0, None)
     panel.margins(x=0)
     panel.legend(loc="upper right")
@@ -125,7 +125,7 @@ def _fields(panel: Axes, before: PulseCurve, after: PulseCurve, scale: float) ->
     for sign in (1, -1):
         envelope = sign * np.sqrt(after.power) / top
         panel.plot(after.time * scale, envelope, color=COLOURS["after"], linewidth=1.0, alpha=0.6)
-    panel.set_ylabel("field, relative")
+    panel.set_ylabel("field")
 
 
 def _decades(panel: Axes, run: Run) -> tuple[str, PulseCurve, PulseCurve]:
@@ -143,7 +143,7 @@ def _decades(panel: Axes, run: Run) -> tuple[str, PulseCurve, PulseCurve]:
         panel.semilogy(time, ratio, color=COLOURS[name], linestyle=style, label=label, linewidth=2.0)
     panel.set_ylim(FLOOR, 3)
     panel.margins(x=0.02)
-    panel.set_ylabel("power / own peak")
+    panel.set_ylabel("log power")
     panel.grid(axis="y", color=COLOURS["faint"], linewidth=0.8)
     return unit, curves[0], curves[1]
 

@@ -23,11 +23,14 @@ PREFIXES = (
     (1e-15, "f"),
 )
 
+LONGEST = 1e6
+"""From here on numbers have an exponent."""
+
 TIMES = ((1e9, "us", 1e-9), (1e6, "ns", 1e-6), (1e3, "ps", 1e-3), (0.0, "fs", 1.0))
 """From how many femtoseconds on a unit is used, its symbol, and its value of one femtosecond."""
 
 ROOM = 10.0
-"""A column keeps its unit up to ten times longer than a single value does, for the sake of its small entries."""
+"""A column keeps its unit ten times longer than a single value, for the sake of its small entries."""
 
 
 def significant(value: float | None, digits: int) -> str:
@@ -38,7 +41,7 @@ def significant(value: float | None, digits: int) -> str:
         return "0"
     rounded = float(f"{value:.{digits - 1}e}")
     size = math.floor(math.log10(abs(rounded)))
-    if -4 <= size < 6:
+    if 1e-4 <= abs(rounded) < LONGEST:
         return fixed(value, size - digits + 1)
     mantissa, exponent = f"{rounded:.{digits - 1}e}".split("e")
     return f"{mantissa}e{int(exponent)}"
@@ -56,6 +59,8 @@ def fixed(value: float | None, place: int) -> str:
     if value is None or not math.isfinite(value):
         return NOTHING
     rounded = round(value, -place) + 0.0
+    if abs(rounded) >= LONGEST:
+        return significant(value, max(math.floor(math.log10(abs(rounded))) - place + 1, 1))
     return f"{rounded:.{max(-place, 0)}f}"
 
 

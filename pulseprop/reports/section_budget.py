@@ -91,7 +91,10 @@ def _estimate(run: Run) -> str:
     width = run.path.gdd_only_fwhm_fs
     full = span(run.pulse_out.fwhm_fs, digits_of(run))
     if width is None:
-        return "Textbook estimate from GDD alone: none, because some orders of the path are not known."
+        return (
+            "Textbook estimate from GDD alone: none. A line stands in the pulse's spectrum, or an order is not "
+            "known: the GDD at one frequency would mislead."
+        )
     return (
         f"Textbook estimate from GDD alone, Gaussian: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) = "
         f"{span(width, digits_of(run))}; with everything counted: {full}."

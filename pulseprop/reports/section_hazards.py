@@ -36,11 +36,11 @@ def _facts(facts: HazardFacts) -> list[tuple[str, str]]:
             range_text(facts.wavelengths_at_1_percent_nm),
         ),
         ("wavelengths down to 1e-4 of the peak", range_text(facts.wavelengths_at_1e_4_nm, 4)),
-        ("pulse energy", quantity(facts.pulse_energy_J, "J")),
+        ("pulse energy", _or_unstated(quantity(facts.pulse_energy_J, "J"))),
         ("repetition rate", _or_unstated(quantity(facts.repetition_rate_Hz, "Hz"))),
         ("average power", _or_unstated(quantity(facts.average_power_W, "W"))),
         ("shortest possible duration (flat phase, FWHM)", span(facts.shortest_possible_fwhm_fs, 3)),
-        ("peak power at that duration", quantity(facts.peak_power_at_limit_W, "W")),
+        ("peak power at that duration", _or_unstated(quantity(facts.peak_power_at_limit_W, "W"))),
         ("beam radius (1/e^2 of intensity)", _or_unstated(quantity(facts.beam_radius_m, "m"))),
         ("highest peak fluence in the path", _with_unit(fluence, "J/cm^2")),
         ("highest peak intensity in the path", _with_unit(intensity, "W/cm^2")),
@@ -53,5 +53,5 @@ def _or_unstated(text: str) -> str:
 
 def _with_unit(value: float | None, unit: str) -> str:
     if value is None:
-        return "not known: the scenario states no beam radius"
+        return "not known: the scenario states no energy or no beam radius"
     return f"{significant(value, 2)} {unit}"

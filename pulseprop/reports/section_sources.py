@@ -61,7 +61,8 @@ def numerics_section(run: Run) -> Section:
     grid, solver = run.grid, run.solver
     text = (
         f"{grid.points} points of {span(grid.step_fs, 4)}, a window of {span(grid.span_fs, 4)}"
-        f"{_enlarged(solver.enlargements)}; method {solver.method}, {_counted(solver.transforms, 'transform')}"
+        f"{_enlarged(solver.enlargements)}; method {solver.method}, "
+        f"{_counted(solver.transforms, 'transform')}"
     )
     if solver.steps:
         text += f", {_counted(solver.steps, 'step')}"

@@ -20,6 +20,13 @@ def media_of(scenario: Scenario) -> MediaOfScenario:
     return MediaOfScenario(scenario)
 
 
+def _warnings(scenario: Scenario) -> tuple[str, ...]:
+    pulse = scenario.content.pulse
+    if pulse.given("energy", "peak_power"):
+        return ()
+    return ("neither energy nor peak_power is stated: 1 nJ was taken, and what scales with it is a guess",)
+
+
 def build(scenario: Scenario) -> Experiment:
     """Build pulse, media and path. Raises InputError with file and place for what cannot be built."""
     content = scenario.content
@@ -34,6 +41,7 @@ def build(scenario: Scenario) -> Experiment:
         trace = autocorrelation_of(scenario)
     except PulsepropError as error:
         raise scenario.blamed(error, "pulse") from None
+    path = built_path(scenario, media, pulse.centre)
     method = content.propagation.method
     wish = GridWish(span=content.grid.span, points=content.grid.points, form=content.propagation.form)
     if content.grid.memory is not None:
@@ -43,11 +51,14 @@ def build(scenario: Scenario) -> Experiment:
         question=content.question,
         note=" ".join(part for part in (content.laboratory, content.note) if part),
         pulse=pulse,
-        path=built_path(scenario, media, pulse.centre),
+        path=path,
+        substances=tuple(media.substances),
         file=scenario.file,
         text=scenario.text,
         sha256=scenario.sha256,
         both_signs=both_signs,
+        energy_stated=bool(content.pulse.given("energy", "peak_power")),
+        warnings=_warnings(scenario),
         grid=wish,
         beyond_range=content.grid.beyond_range,
         method="exact" if method == "auto" else method,

@@ -45,6 +45,8 @@ class MediaOfScenario:
         self._tables = scenario.content.medium
         self._built: dict[str, Medium] = {}
         self._open: list[str] = []
+        self.substances: list[str] = []
+        """Names of the catalogue media that were taken, also for a part of another."""
 
     def medium(self, name: str) -> Medium:
         """The medium of that name: the scenario's own, else the catalogue's."""
@@ -54,7 +56,7 @@ class MediaOfScenario:
 
     def _from_catalogue(self, name: str) -> Medium:
         try:
-            return catalogue_medium(name)
+            return self._taken(catalogue_medium(name))
         except InputError as error:
             if not self._tables or "no medium of this exact name" not in error.complaint.problem:
                 raise
@@ -66,6 +68,10 @@ class MediaOfScenario:
                 allowed=f"a [medium.NAME] of this scenario ({own}) or a name that `pulseprop media` lists",
                 remedy=f"Did you mean {near}?" if near else "Check the spelling",
             ) from None
+
+    def _taken(self, medium: Medium) -> Medium:
+        self.substances.append(medium.name)
+        return medium
 
     def _from_table(self, name: str) -> Medium:
         if name in self._open:
@@ -136,7 +142,8 @@ class MediaOfScenario:
         if table.index is not None:
             return index_table_of(self._scenario, name, table)
         if table.gas is not None:
-            return gas_at(table.gas.medium, table.gas.pressure, table.gas.temperature, table.gas.humidity)
+            gas = table.gas
+            return self._taken(gas_at(gas.medium, gas.pressure, gas.temperature, gas.humidity))
         if table.mixture is not None:
             return self._mixture(name, table)
         if table.orders is not None:

@@ -98,6 +98,9 @@ def test_empty_path(run: Run) -> None:
         (0.000123456, 3, "0.000123"),
         (9.996, 3, "10.0"),
         (1.2e-9, 2, "1.2e-9"),
+        (-289_000.4, 3, "-289000"),
+        (6.966e13, 4, "6.966e13"),
+        (999_999.6, 6, "1.00000e6"),
         (0.0, 3, "0"),
         (-0.04, 1, "-0.04"),
         (None, 3, "–"),
@@ -110,6 +113,10 @@ def test_significant_digits(value: float | None, digits: int, text: str) -> None
 
 def test_rounding_to_zero_has_no_sign() -> None:
     assert fixed(-0.004, -1) == "0.0"
+
+
+def test_long_sums_have_an_exponent() -> None:
+    assert fixed(69_660_000_000_000.0, 10) == "6.966e13"
 
 
 @pytest.mark.parametrize(
