@@ -30,7 +30,7 @@ MOST_POINTS = 1 << 22
 RESONANT_POINTS = 1 << 24
 LOSSLESS = 1e-12
 DIP = 1e-6
-"""Of the largest absorption: how far the smooth curve through a rounded table may dip below zero between rows."""
+"""Of the largest absorption: how far the curve through a rounded table may dip below zero."""
 WEIGHTY = 1e-4
 """Spectral amplitude over its peak down to which frequencies set the first window of the test."""
 

@@ -122,7 +122,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
 
 
 def _test_duration(experiment: Experiment, before: PulseMeasures) -> float:
-    """FWHM in s of the finite pulse of the front test: the pulse's own, at its transform limit if measured."""
+    """FWHM in s of the front test's finite pulse: the pulse's own, its transform limit if measured."""
     pulse = experiment.pulse
     return pulse.duration if isinstance(pulse, Pulse) else before.transform_limit_fwhm_fs / FEMTO
 

@@ -88,7 +88,7 @@ def _refuse_gigantic(wish: GridWish, step: float) -> None:
         if points and points > most:
             raise InputError(
                 f"grid.{key} asks for more than the memory limit holds",
-                value=f"{points:.4g} points, about {points * ARRAYS_AT_A_TIME * BYTES_PER_POINT / 2**30:.3g} GiB",
+                value=f"{points:.4g} points, {points * ARRAYS_AT_A_TIME * BYTES_PER_POINT / 2**30:.3g} GiB",
                 allowed=f"{most} points in {wish.memory / 2**30:.3g} GiB (grid.memory)",
                 remedy="Leave it out, so that the grid sizes itself, or raise grid.memory",
                 place=f"grid.{key}",
