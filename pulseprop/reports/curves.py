@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 from pulseprop.grid import Grid
 from pulseprop.material.medium import Medium
 from pulseprop.measures.contrast import thinned
+from pulseprop.measures.profile import find_peak
 from pulseprop.numerics.interpolation import band_limited, mean_turn
 
 __all__ = [
@@ -99,22 +100,23 @@ def bounds_of(envelope: Complex, step: float, least: float = VISIBLE) -> tuple[f
 
 
 def pulse_curve(grid: Grid, envelope: Complex, before: float, after: float) -> PulseCurve:
-    """A stretch of a pulse about its highest sample, seconds before and after it.
+    """A stretch of a pulse about its peak, seconds before and after it.
 
     Between samples the field is band-limited; where a stretch has more samples than a screen has columns, the
     highest of each group stands for it.
     """
     height = envelope.real**2 + envelope.imag**2
-    peak = int(np.argmax(height))
+    position = find_peak(envelope).position
+    peak = round(position)
     first, last = -before / grid.step, after / grid.step
     if last - first > POINTS:
         index = np.arange(int(first), int(last) + 1)
         time, power = thinned(grid.step * index[0], grid.step, height[(peak + index) % height.size], POINTS)
         return PulseCurve(time, power, np.full(time.shape, np.nan))
     offset = np.linspace(first, last, POINTS)
-    field = band_limited(envelope, offset, origin=peak, turn=mean_turn(envelope))
+    field = band_limited(envelope, offset + (position - peak), origin=peak, turn=mean_turn(envelope))
     time = grid.step * offset
-    carrier = np.exp(-2j * np.pi * grid.carrier * (time + grid.start + grid.step * peak))
+    carrier = np.exp(-2j * np.pi * grid.carrier * (time + grid.start + grid.step * position))
     return PulseCurve(time, np.abs(field) ** 2, (field * carrier).real)
 
 

@@ -29,7 +29,7 @@ COLOURS = {
     "faint": "#c3ccd4",
     "before": "#5f6a73",
     "after": "#1b5e92",
-    "warm": "#b5600c",
+    "warm": "#a8580a",
     "green": "#2b7d6d",
 }
 """Names by meaning; a page replaces each by a style variable of the same name."""

@@ -92,8 +92,8 @@ def _estimate(run: Run) -> str:
     full = span(run.pulse_out.fwhm_fs, digits_of(run))
     if width is None:
         return (
-            "Textbook estimate from GDD alone: none. A line stands in the pulse's spectrum, or an order is not "
-            "known: the GDD at one frequency would mislead."
+            "Textbook estimate from GDD alone: none. A line stands in the pulse's spectrum, or an order is "
+            "not known: the GDD at one frequency would mislead."
         )
     return (
         f"Textbook estimate from GDD alone, Gaussian: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) = "
