@@ -29,6 +29,7 @@ RINGING_PER_DEPTH = 32.0 / 21.0
 MOST_POINTS = 1 << 22
 RESONANT_POINTS = 1 << 24
 LOSSLESS = 1e-12
+ROUNDING = 1e-12
 DIP = 1e-6
 """Of the largest absorption: how far the curve through a rounded table may dip below zero."""
 WEIGHTY = 1e-4
@@ -134,10 +135,13 @@ def _absorbs(path: Path, low: float, high: float) -> bool:
 
 def _is_passive(medium: Medium, centre: float) -> bool:
     """Im chi >= 0 at every resonance, and but for dips over two decades about the centre."""
-    axis = medium.susceptibility(np.geomspace(centre / 10, centre * 10, 801)).imag
+    axis = medium.susceptibility(np.geomspace(centre / 10, centre * 10, 801))
     lines = medium.susceptibility(np.array([line.centre for line in medium.resonances]))
-    dip = DIP * max(float(axis.max()), 0.0)
-    return bool(np.all(axis >= -dip - 1e-12) and np.all(lines.imag >= -1e-12 * np.abs(lines)))
+    dip = DIP * max(float(axis.imag.max()), 0.0)
+    return bool(
+        np.all(axis.imag >= -dip - ROUNDING * np.abs(axis))
+        and np.all(lines.imag >= -ROUNDING * np.abs(lines))
+    )
 
 
 def _remark(verdict: str, span: float) -> str:

@@ -33,7 +33,8 @@ class Experiment:
 
     both_signs: the pulse's GDD came from a measured duration, so its sign is unknown. energy_stated: False
     where the scenario gives neither energy nor peak power: then nothing that scales with it is reported.
-    beyond_range: what to do with a medium whose range the pulse leaves. substances: catalogue media that others are made of.
+    beyond_range: what to do with a medium whose range the pulse leaves. substances: catalogue media that
+    others are made of.
     """
 
     title: str
