@@ -38,6 +38,9 @@ BEST_FLOOR = 1e-27
 GOOD_FLOOR = 2e-11
 CHEAP_POINTS = 1 << 17
 """Up to here the window is doubled towards BEST_FLOOR, beyond only towards GOOD_FLOOR."""
+SHORTER = 0.93
+"""Length of a second window over the first: what came round its end stands elsewhere in it, what is early stays."""
+SAME_PLACE = 0.01
 BLOCK = 1 << 15
 STATIC = 1e-6
 
@@ -131,6 +134,9 @@ def front_test(
         points *= 2
         if progress:
             progress(points / most_points)
+    verdict = judged(ahead, floor)
+    if verdict == "acausal" and _came_round(pulse, transfer, points, step):
+        verdict = "unresolved"
     naive, naive_verdict = None, None
     if naive_input is not None:
         _apply(naive_input, transfer, points, step, magnitude_only=True)
@@ -139,12 +145,26 @@ def front_test(
     return FrontResult(
         energy_ahead=ahead,
         noise_floor=floor,
-        verdict=judged(ahead, floor),
+        verdict=verdict,
         points=points,
         span=points * step,
         naive_energy_ahead=naive,
         naive_verdict=naive_verdict,
     )
+
+
+def _came_round(pulse: TestPulse, transfer: Callable[[Real], Complex], points: int, step: float) -> bool:
+    """Whether what seems early is later than the window that fits."""
+    places = [_place_ahead(pulse, transfer, points, step * share) for share in (1.0, SHORTER)]
+    return abs(places[0] - places[1]) > SAME_PLACE * points * step
+
+
+def _place_ahead(pulse: TestPulse, transfer: Callable[[Real], Complex], points: int, step: float) -> float:
+    """Centroid in s, against the front, of the energy that stands before it."""
+    spectrum = _input_spectrum(pulse, points, step)
+    _apply(spectrum, transfer, points, step, magnitude_only=False)
+    early = np.fft.irfft(spectrum, points)[: _front_index(points)] ** 2
+    return float(np.dot(early, np.arange(early.size) - early.size) * step / early.sum())
 
 
 def _even_power(size: float) -> int:
