@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 import mpmath as mp
 import numpy as np
 import pytest
@@ -85,7 +87,7 @@ def test_kramers_kronig_of_the_completion(name):
     total = 0.0
     for centre, knot in sorted(set(zip(completion.centre, completion.knot, strict=True))):
         edges = centre + knot * np.arange(-2, 3)
-        for a, b in zip(edges, edges[1:], strict=False):
+        for a, b in pairwise(edges):
             v = (a + b) / 2 + (b - a) / 2 * nodes
             mine = [
                 strength / width * _spline((v - middle) / width)

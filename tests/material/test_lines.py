@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 import mpmath as mp
 import numpy as np
 import pytest
@@ -144,7 +146,7 @@ def test_kramers_kronig_by_quadrature(name, omega):
         (b - a)
         / 2
         * sum(w * regular((a + b) / 2 + (b - a) / 2 * x) for x, w in zip(nodes, weights, strict=True))
-        for a, b in zip(edges, edges[1:], strict=False)
+        for a, b in pairwise(edges)
     )
     # P int_0^X dx/(x^2 - w^2) = ln|(X - w)/(X + w)| / 2w.
     top = edges[-1]

@@ -194,7 +194,7 @@ def test_an_exact_lorentz_line_answers_a_finite_pulse_to_1e_9():
 
 
 def test_the_single_pole_closed_form_agrees_to_two_over_omega_t2():
-    """D. C. Burnham, R. Y. Chiao, Phys. Rev. 188, 667 (1969): delta - exp(-t/T2) sqrt(b/t) J1(2 sqrt(b t))."""
+    """D. C. Burnham, R. Y. Chiao, Phys. Rev. 188, 667 (1969): -exp(-t/T2) sqrt(b/t) J1(2 sqrt(b t))."""
     _, field = response()
     b = DEPTH / (2 * T2)
 

@@ -1,4 +1,4 @@
-"""The stepping loop: exact without terms; with a Kerr phase the published soliton and the order of convergence."""
+"""The stepping loop: exact without terms; with a Kerr phase the published soliton, and its order."""
 
 from __future__ import annotations
 
@@ -24,7 +24,7 @@ SINKIN = "O. V. Sinkin et al., J. Lightwave Technol. 21, 61 (2003)"
 
 @pytest.mark.parametrize(("thickness", "tolerance"), [(0.2e-3, 1e-12), (10e-3, 3e-11)])
 def test_without_terms_the_loop_is_the_exact_transfer(thickness, tolerance):
-    """To 1e-12, and where the phase itself (3.6 rad a micrometre) is only known to rounding, to four roundings."""
+    """To 1e-12, and to four roundings where the phase itself, 3.6 rad a micrometre, is large."""
     grid = Grid(points=4096, step=0.5e-15, start=-1e-12, carrier=375e12)
     slab = Slab(name="window", medium=catalogue_medium("fused silica"), thickness=thickness)
     seen = (grid.omega > slab.medium.band.low) & (grid.omega < slab.medium.band.high) & (grid.omega > 0)
@@ -80,7 +80,7 @@ def soliton(length, steps):
     ],
 )
 def test_second_order_soliton(x, t, power):
-    """Values of |u|^2 to 12 digits from the closed form (Satsuma, Yajima 1974); 6400 steps leave some 5e-6."""
+    """Values of |u|^2 to 12 digits from the closed form (Satsuma, Yajima 1974); 6400 steps leave 5e-6."""
     field, _ = soliton(x, 6400)
     spectrum = np.fft.fft(field)
     here = np.mean(spectrum * np.exp(2j * np.pi * np.fft.fftfreq(POINTS) * (t - TIME[0]) / (SPAN / POINTS)))
