@@ -143,12 +143,9 @@ def send(
 ) -> int:
     """Send the pulse of a scenario through its path, and report what arrives."""
     from pulseprop import api
-    from pulseprop.reports.document import check_target
     from pulseprop.reports.progress import Progress
 
-    for target in (json_path, save_path, page_path):
-        if target is not None:
-            check_target(target)
+    _check_outputs(json_path, (save_path, page_path), figures_path)
     read = api.read(scenario, overrides)
     with Progress(sys.stderr) as progress:
         run = api.send(read, progress=progress)
@@ -160,6 +157,19 @@ def send(
             _draw(run, read, page_path, figures_path)
     _answer(run, json_path)
     return run.exit_code
+
+
+def _check_outputs(json_path: str | None, files: Sequence[str | None], directory: str | None) -> None:
+    """Whatever cannot be written is told before the work begins."""
+    from pulseprop.reports.document import STDOUT, check_directory, check_target
+
+    if STDOUT in files:
+        raise click.UsageError("only --json can go to standard output; give the others a file name")
+    for target in (json_path, *files):
+        if target is not None:
+            check_target(target)
+    if directory is not None:
+        check_directory(directory)
 
 
 def _save(run: Run, path: str) -> None:

@@ -110,6 +110,8 @@ def test_an_acausal_answer_leaves_with_one(
         (["send", "missing.toml"], ["missing.toml", "no such file"]),
         (["send"], ["Missing argument", "pulseprop send --help"]),
         (["send", "x.toml", "--jsn", "-"], ["No such option", "--json"]),
+        (["send", "x.toml", "--page", "-"], ["only --json can go to standard output"]),
+        (["send", "x.toml", "--figures", "/nowhere/slides"], ["/nowhere/slides", "no directory"]),
         (["fly"], ["No such command"]),
         (["media", "unobtainium"], ["unobtainium", "pulseprop media"]),
         (["media", "fused silica", "--at", "800"], ["unit", "800"]),

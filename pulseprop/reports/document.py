@@ -12,7 +12,16 @@ from typing import Any
 
 from pulseprop.errors import InputError
 
-__all__ = ["STDOUT", "check_target", "json_text", "write_bytes", "write_json", "write_text", "written_whole"]
+__all__ = [
+    "STDOUT",
+    "check_directory",
+    "check_target",
+    "json_text",
+    "write_bytes",
+    "write_json",
+    "write_text",
+    "written_whole",
+]
 
 STDOUT = "-"
 """The target that means standard output."""
@@ -65,6 +74,22 @@ def check_target(target: str | Path) -> None:
         )
     if not os.access(target.parent, os.W_OK):
         raise _unwritable(target, PermissionError(13, "Permission denied"))
+
+
+def check_directory(directory: str | Path) -> None:
+    """Raise InputError where files cannot be put into a directory of this name, or it cannot be made."""
+    directory = Path(directory)
+    if not directory.is_dir():
+        check_target(directory)
+        if directory.exists():
+            raise InputError(
+                "a file stands where a directory is wanted",
+                file=str(directory),
+                allowed="a directory, or a new name in one that exists",
+                remedy="Name another place",
+            )
+    elif not os.access(directory, os.W_OK):
+        raise _unwritable(directory, PermissionError(13, "Permission denied"))
 
 
 def write_bytes(target: str | Path, data: bytes) -> None:

@@ -31,6 +31,15 @@ TRUSTED = 1e-6
 MOST_NM = 1e4
 """Wavelength from which on an axis is in micrometres."""
 
+LEAST_DELAY = 0.1
+"""Height of the axis of group delay in widths of the pulse: less than that cannot be seen in its shape."""
+
+CLOSEST = 0.07
+"""Distance of two marks on the axis of wavelength over the length of the axis."""
+
+WIDEST_LABELS = 8
+"""Elements whose names fit below their bars in the ordinary size of type."""
+
 LINES = ("after", "warm", "green", "before", "ink")
 STYLES = ("-", "--", "-.", ":", "-")
 
@@ -52,11 +61,12 @@ def draw_spectrum(run: Run) -> Drawing:
     panels[0].legend(loc="upper right")
     _wavelength_axis(panels[0], float(frequency[0]), float(frequency[-1]))
     panels[1].plot(frequency, (delay - mean) * factor, color=COLOURS["warm"])
+    _room(panels[1], LEAST_DELAY * run.pulse_in.fwhm_fs * factor)
     panels[1].set_ylabel(f"group delay, {unit}", color=COLOURS["warm"])
     panels[1].set_xlabel("frequency, THz")
     right = panels[1].twinx()
     right.spines.right.set_visible(True)
-    right.plot(frequency, transmission, color=COLOURS["green"], linestyle="-.", linewidth=2.0)
+    right.plot(frequency, transmission, color=COLOURS["green"], linewidth=1.4)
     right.set_ylabel("transmission", color=COLOURS["green"])
     right.set_ylim(0, 1.05)
     for panel in panels:
@@ -116,8 +126,19 @@ def _wavelength_axis(panel: Axes, low: float, high: float) -> None:
     top = panel.secondary_xaxis("top", functions=(turned, turned))
     top.set_xlabel(f"vacuum wavelength, {unit}")
     shortest, longest = SPEED_OF_LIGHT * scale / high, SPEED_OF_LIGHT * scale / max(low, 0.1 * high)
-    ticks = MaxNLocator(6).tick_values(shortest, longest)
-    top.set_xticks([tick for tick in ticks if shortest <= tick <= longest])
+    ticks: list[float] = []
+    for tick in MaxNLocator(6).tick_values(shortest, longest):
+        apart = not ticks or turned(ticks[-1]) - turned(tick) > CLOSEST * (high - low)
+        if shortest <= tick <= longest and apart:
+            ticks.append(tick)
+    top.set_xticks(ticks)
+
+
+def _room(panel: Axes, least: float) -> None:
+    """At least this much height, so that rounding is not blown up into structure."""
+    low, high = panel.get_ylim()
+    lacking = max(least - (high - low), 0.0)
+    panel.set_ylim(low - lacking / 2, high + lacking / 2)
 
 
 @styled
@@ -184,6 +205,7 @@ def draw_budget(run: Run) -> Drawing:
     )
     right.set_ylabel(f"FWHM after it, {unit}", color=COLOURS["warm"])
     right.set_ylim(0, 1.08 * float(width.max()) * factor)
+    panel.tick_params(axis="x", labelsize=17 * min(1.0, WIDEST_LABELS / len(names)))
     panel.set_title("What each element adds, and the pulse after it")
     columns: dict[str, Real | tuple[str, ...]] = {
         "element": ("start", *names),
@@ -196,4 +218,4 @@ def draw_budget(run: Run) -> Drawing:
 
 def _short(name: str, count: int) -> str:
     """A name on lines short enough to stand beside its neighbours."""
-    return "\n".join(textwrap.wrap(name, max(90 // (count + 1), 8))[:3])
+    return "\n".join(textwrap.wrap(name, max(90 // (min(count, WIDEST_LABELS) + 1), 8))[:3])

@@ -11,9 +11,10 @@ import re
 from collections.abc import Callable
 from functools import wraps
 from pathlib import Path
-from typing import TYPE_CHECKING, Any, ParamSpec, TypeVar
+from typing import TYPE_CHECKING, Any, ParamSpec
 
 from pulseprop.reports.document import written_whole
+from pulseprop.reports.drawing import Drawing
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -22,7 +23,6 @@ if TYPE_CHECKING:
 __all__ = ["COLOURS", "INLINE", "canvas", "inline_svg", "night_map", "save_png", "save_svg", "styled"]
 
 Words = ParamSpec("Words")
-Drawn = TypeVar("Drawn")
 
 COLOURS = {
     "ink": "#22303c",
@@ -84,15 +84,21 @@ def canvas(heights: tuple[float, ...] = (1.0,), *, source: str) -> tuple[Figure,
     return figure, panels
 
 
-def styled(draw: Callable[Words, Drawn]) -> Callable[Words, Drawn]:
-    """Let everything a function draws have the style, legends and twin axes that come late included."""
+def styled(draw: Callable[Words, Drawing]) -> Callable[Words, Drawing]:
+    """Let everything a function draws have the style, legends and twin axes that come late included.
+
+    The panels are laid out once, and not again for every format in which the figure is saved.
+    """
 
     @wraps(draw)
-    def drawn(*given: Words.args, **named: Words.kwargs) -> Drawn:
+    def drawn(*given: Words.args, **named: Words.kwargs) -> Drawing:
         from matplotlib import rc_context
 
         with rc_context(STYLE):
-            return draw(*given, **named)
+            drawing = draw(*given, **named)
+            drawing.figure.draw_without_rendering()
+            drawing.figure.set_layout_engine("none")
+            return drawing
 
     return drawn
 

@@ -8,7 +8,7 @@ from pathlib import Path
 from pulseprop.errors import InputError
 from pulseprop.propagation.result import Run
 from pulseprop.reports.curves import IndexCurve
-from pulseprop.reports.document import write_text
+from pulseprop.reports.document import check_directory, write_text
 from pulseprop.reports.draw_band import draw_budget, draw_media, draw_spectrum
 from pulseprop.reports.draw_time import (
     draw_autocorrelation,
@@ -48,17 +48,9 @@ def write_figures(run: Run, directory: str | Path, curves: Sequence[IndexCurve] 
 
     Raises InputError where it cannot be written.
     """
+    check_directory(directory)
     directory = Path(directory)
-    try:
-        directory.mkdir(exist_ok=True)
-    except OSError as error:
-        raise InputError(
-            "the directory for figures cannot be made",
-            value=error.strerror,
-            file=str(directory),
-            allowed="a directory, or a new name in one that exists",
-            remedy="Name another place",
-        ) from error
+    directory.mkdir(exist_ok=True)
     written: list[Path] = []
     for drawing in drawings(run, curves):
         written.append(save_png(drawing.figure, directory / f"{drawing.name}.png"))

@@ -29,6 +29,9 @@ LONGEST = 1e6
 TIMES = ((1e9, "us", 1e-9), (1e6, "ns", 1e-6), (1e3, "ps", 1e-3), (0.0, "fs", 1.0))
 """From how many femtoseconds on a unit is used, its symbol, and its value of one femtosecond."""
 
+FINEST = -6
+"""Power of ten of the last decimal of a percentage near the whole; beyond it lies rounding."""
+
 ROOM = 10.0
 """A column keeps its unit ten times longer than a single value, for the sake of its small entries."""
 
@@ -65,14 +68,15 @@ def fixed(value: float | None, place: int) -> str:
 
 
 def percent(share: float | None, digits: int = 3) -> str:
-    """A share as per cent. Near the whole the digits count from what is missing: 99.9987 %, never 100 %."""
+    """A share as per cent. Near the whole the digits count from what is missing: 99.9987 %, not 100.0 %."""
     if share is None or not math.isfinite(share):
         return NOTHING
-    missing = 1.0 - share
-    if 0 < missing < 0.1:
-        place = last_place(100 * missing, max(digits - 1, 1))
-        assert place is not None
-        return f"{fixed(100 * share, max(place, -6))} %"
+    missing = 100 * (1.0 - share)
+    if abs(missing) < 0.5 * 10.0**FINEST:
+        return "100 %"
+    place = last_place(missing, max(digits - 1, 1))
+    if 0 < missing < 10 and place is not None:
+        return f"{fixed(100 * share, max(place, FINEST))} %"
     return f"{significant(100 * share, digits)} %"
 
 

@@ -126,7 +126,9 @@ def test_a_figure_needs_a_known_ending(run: Run, tmp_path: Path) -> None:
 
 def test_a_directory_that_cannot_be_made(run: Run, tmp_path: Path) -> None:
     (tmp_path / "taken").write_text("")
-    with pytest.raises(InputError, match=r"taken.*cannot be made"):
+    with pytest.raises(InputError, match=r"taken.*a file stands where a directory is wanted"):
+        write_figures(run, tmp_path / "taken")
+    with pytest.raises(InputError, match=r"figures: .*no directory .*taken"):
         write_figures(run, tmp_path / "taken" / "figures")
 
 

@@ -121,7 +121,15 @@ def test_long_sums_have_an_exponent() -> None:
 
 @pytest.mark.parametrize(
     ("share", "text"),
-    [(1.0, "100 %"), (0.93261, "93.3 %"), (0.999987, "99.9987 %"), (0.0661, "6.61 %"), (3.2e-7, "3.20e-5 %")],
+    [
+        (1.0, "100 %"),
+        (0.93261, "93.3 %"),
+        (0.999987, "99.9987 %"),
+        (1 - 1e-13, "100 %"),
+        (1.25, "125 %"),
+        (0.0661, "6.61 %"),
+        (3.2e-7, "3.20e-5 %"),
+    ],
 )
 def test_shares_near_the_whole_keep_what_is_missing(share: float, text: str) -> None:
     assert percent(share) == text
