@@ -79,7 +79,9 @@ def _unexpected(error: Exception) -> str:
 
 
 def _failed(message: str, code: int) -> int:
-    print(f"pulseprop: {message}", file=sys.stderr)
+    from pulseprop.reports.text import printable
+
+    print(f"pulseprop: {printable(message)}", file=sys.stderr)
     return code
 
 
@@ -202,19 +204,18 @@ def _curves(run: Run, scenario: Scenario) -> list[IndexCurve]:
 def _answer(run: Run, json_path: str | None) -> None:
     """The report on standard output; warnings and cautions on standard error, unless both are one screen."""
     from pulseprop.reports.document import write_json
+    from pulseprop.reports.text import printable, text_report
 
     if json_path is not None:
         write_json(json_path, run.as_json())
     else:
-        from pulseprop.reports.text import text_report
-
         click.echo(text_report(run), nl=False)
         if sys.stdout.isatty() and sys.stderr.isatty():
             return
-    for warning in run.warnings:
-        click.echo(f"warning: {warning}", err=True)
-    for caution in run.cautions:
-        click.echo(f"caution [{caution.code}] {caution.line}", err=True)
+    asides = [f"warning: {warning}" for warning in run.warnings]
+    asides += [f"caution [{caution.code}] {caution.line}" for caution in run.cautions]
+    for aside in asides:
+        click.echo(printable(aside), err=True)
 
 
 @commands.command()

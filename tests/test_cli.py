@@ -222,6 +222,24 @@ def test_a_medium_for_a_person(capsys: pytest.CaptureFixture[str]) -> None:
     assert "Malitson" in told
 
 
+def test_a_medium_of_a_scenario(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    path = tmp_path / "cell.toml"
+    line = '{ centre = "780.24 nm", width = "1 GHz", peak_absorption = "12 cm^-1" }'
+    path.write_text(f'{SCENARIO}[medium."cell: vapour"]\nbackground = "vacuum"\nlines = [{line}]\n')
+    # The name holds a colon of its own, which the last colon of the argument would split: the message says so.
+    assert called("media", f"{path}:cell: vapour") == 2
+    path.write_text(path.read_text().replace("cell: vapour", "cell vapour"))
+    capsys.readouterr()
+    assert called("media", f"{path}:cell vapour", "--at", "780.24 nm", "--json", "-") == 0
+    document = json.loads(capsys.readouterr().out)
+    # The Napierian peak absorption that the scenario states: 12 per cm.
+    assert document["at"][0]["absorption_per_mm"] == pytest.approx(1.2, rel=1e-6)
+    assert called("media", f"{path}:cell vapour", "--figure", str(tmp_path / "cell.png")) == 2
+    assert "--at, twice" in capsys.readouterr().err
+    ends = ["--at", "779 nm", "--at", "781 nm"]
+    assert called("media", f"{path}:cell vapour", *ends, "--figure", str(tmp_path / "cell.png")) == 0
+
+
 def test_the_catalogue_is_listed(capsys: pytest.CaptureFixture[str]) -> None:
     assert called("media") == 0
     told = capsys.readouterr().out

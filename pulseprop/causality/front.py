@@ -39,7 +39,7 @@ GOOD_FLOOR = 2e-11
 CHEAP_POINTS = 1 << 17
 """Up to here the window is doubled towards BEST_FLOOR, beyond only towards GOOD_FLOOR."""
 SHORTER = 0.93
-"""A second window over the first, in length: what came round its end stands elsewhere, what is early stays."""
+"""A second window over the first, in length: what came round its end stands elsewhere, what is early not."""
 SAME_PLACE = 0.01
 BLOCK = 1 << 15
 STATIC = 1e-6

@@ -197,6 +197,7 @@ def _check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
                 if medium.extendable
                 else "Relaxation terms may not be used above their range: add what absorbs there"
             ),
+            file=experiment.file,
             place=f"medium {medium.name}",
         )
 
@@ -231,7 +232,7 @@ def _b_warnings(experiment: Experiment) -> tuple[str, ...]:
     ]
     if not missing:
         return ()
-    return (f"no published n2 for {', '.join(missing)}: the B-integral of the path leaves it out",)
+    return (f"no n2 is known for {', '.join(missing)}: the B-integral of the path leaves it out",)
 
 
 def _path_measures(

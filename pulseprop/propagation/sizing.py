@@ -189,7 +189,7 @@ def larger(windows: Windows, pulse: PulseSource, path: Path, wish: GridWish) -> 
         raise NumericalLimit(
             "part of the pulse wraps around the stated window",
             value=f"{windows.grid.span * 1e12:.4g} ps",
-            remedy="leave grid.span and grid.points out: the grid sizes itself; or state a longer span",
+            remedy="Leave grid.span and grid.points out: the grid sizes itself; or state a longer span",
         )
     if points > most_points(wish.memory):
         raise too_large(points, wish.memory)

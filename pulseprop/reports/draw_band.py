@@ -12,7 +12,7 @@ from numpy.typing import NDArray
 from pulseprop.propagation.result import Run
 from pulseprop.reports.curves import POINTS, SPEED_OF_LIGHT, IndexCurve, extremes
 from pulseprop.reports.drawing import Drawing, source_line
-from pulseprop.reports.figure_style import COLOURS, canvas, styled
+from pulseprop.reports.figure_style import COLOURS, canvas, styled, words
 from pulseprop.reports.numbers import scaled, span
 
 if TYPE_CHECKING:
@@ -154,7 +154,7 @@ def draw_media(curves: Sequence[IndexCurve], source: str) -> Drawing:
             panel.plot(
                 wavelength,
                 values,
-                label=curve.name,
+                label=words(curve.name),
                 color=COLOURS[LINES[number % 5]],
                 linestyle=STYLES[number % 5],
             )
@@ -218,4 +218,4 @@ def draw_budget(run: Run) -> Drawing:
 
 def _short(name: str, count: int) -> str:
     """A name on lines short enough to stand beside its neighbours."""
-    return "\n".join(textwrap.wrap(name, max(90 // (min(count, WIDEST_LABELS) + 1), 8))[:3])
+    return "\n".join(textwrap.wrap(words(name), max(90 // (min(count, WIDEST_LABELS) + 1), 8))[:3])

@@ -8,7 +8,9 @@ from __future__ import annotations
 
 import io
 import re
-from collections.abc import Callable
+import warnings
+from collections.abc import Callable, Iterator
+from contextlib import contextmanager
 from functools import wraps
 from pathlib import Path
 from typing import TYPE_CHECKING, Any, ParamSpec
@@ -20,7 +22,7 @@ if TYPE_CHECKING:
     from matplotlib.axes import Axes
     from matplotlib.figure import Figure
 
-__all__ = ["COLOURS", "INLINE", "canvas", "inline_svg", "night_map", "save_png", "save_svg", "styled"]
+__all__ = ["COLOURS", "canvas", "inline_svg", "night_map", "save_png", "save_svg", "styled", "words"]
 
 Words = ParamSpec("Words")
 
@@ -67,9 +69,6 @@ STYLE = {
     "axes.formatter.useoffset": False,
 }
 
-INLINE = {"svg.fonttype": "none"}
-"""Text stays text on a page: small, searchable, and read aloud."""
-
 
 def canvas(heights: tuple[float, ...] = (1.0,), *, source: str) -> tuple[Figure, list[Axes]]:
     """A figure with panels above each other and its source in small print."""
@@ -80,7 +79,7 @@ def canvas(heights: tuple[float, ...] = (1.0,), *, source: str) -> tuple[Figure,
     figure = Figure(figsize=SIZE, layout=layout, facecolor="none")
     grid = figure.add_gridspec(len(heights), 1, height_ratios=heights)
     panels = [figure.add_subplot(grid[row, 0], facecolor="none") for row in range(len(heights))]
-    figure.text(0.012, 0.012, source, fontsize=11, color=COLOURS["before"], va="bottom")
+    figure.text(0.012, 0.012, words(source), fontsize=11, color=COLOURS["before"], va="bottom")
     return figure, panels
 
 
@@ -92,9 +91,7 @@ def styled(draw: Callable[Words, Drawing]) -> Callable[Words, Drawing]:
 
     @wraps(draw)
     def drawn(*given: Words.args, **named: Words.kwargs) -> Drawing:
-        from matplotlib import rc_context
-
-        with rc_context(STYLE):
+        with _in_style():
             drawing = draw(*given, **named)
             drawing.figure.draw_without_rendering()
             drawing.figure.set_layout_engine("none")
@@ -111,12 +108,27 @@ def night_map() -> Any:
     return LinearSegmentedColormap.from_list("night", stops)
 
 
-def save_png(figure: Figure, path: Path) -> Path:
-    """A picture of 1920 x 1080 dots on white."""
+@contextmanager
+def _in_style(**more: str) -> Iterator[None]:
+    """The style while it draws. A name in a script that the font lacks is shown as boxes, without a complaint."""
     from matplotlib import rc_context
 
+    with rc_context({**STYLE, **more}), warnings.catch_warnings():
+        warnings.filterwarnings("ignore", message="Glyph .* missing from")
+        yield
+
+
+def words(text: str) -> str:
+    """Text of a scenario as it stands: no formula, no control characters, and never taken for a hidden label."""
+    text = re.sub(r"[\x00-\x1f\x7f-\x9f]", "\ufffd", text).replace("$", r"\$")
+    return f" {text}" if text.startswith("_") else text
+
+
+def save_png(figure: Figure, path: Path) -> Path:
+    """A picture of 1920 x 1080 dots on white."""
+
     def write(target: Path) -> None:
-        with rc_context(STYLE):
+        with _in_style():
             figure.savefig(target, format="png", dpi=DOTS_PER_INCH, facecolor="white")
 
     return written_whole(path, write)
@@ -124,21 +136,21 @@ def save_png(figure: Figure, path: Path) -> Path:
 
 def save_svg(figure: Figure, path: Path) -> Path:
     """A drawing whose letters are outlines, so that it looks alike everywhere."""
-    from matplotlib import rc_context
 
     def write(target: Path) -> None:
-        with rc_context({**STYLE, "svg.fonttype": "path", "svg.hashsalt": path.stem}):
+        with _in_style(**{"svg.fonttype": "path", "svg.hashsalt": path.stem}):
             figure.savefig(target, format="svg", facecolor="white", metadata={"Date": None})
 
     return written_whole(path, write)
 
 
 def inline_svg(figure: Figure, name: str) -> str:
-    """The drawing as markup for a page: no outside references, colours as style variables, its own ids."""
-    from matplotlib import rc_context
+    """The drawing as markup for a page: no outside references, colours as style variables, its own ids.
 
+    Text stays text: small, searchable, and read aloud.
+    """
     buffer = io.StringIO()
-    with rc_context({**STYLE, **INLINE, "svg.hashsalt": name}):
+    with _in_style(**{"svg.fonttype": "none", "svg.hashsalt": name}):
         figure.savefig(buffer, format="svg", facecolor="none", metadata={"Date": None, "Creator": None})
     text = buffer.getvalue()
     text = text[text.index("<svg") :]

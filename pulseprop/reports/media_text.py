@@ -8,7 +8,7 @@ from typing import Protocol
 from pulseprop.reports.blocks import Column, Paragraph, Table
 from pulseprop.reports.numbers import significant
 from pulseprop.reports.section_sources import medium_facts, range_text
-from pulseprop.reports.text import blocks_text, table_text
+from pulseprop.reports.text import blocks_text, printable, table_text
 
 __all__ = ["MediumFacts", "OrdersFacts", "catalogue_text", "media_text"]
 
@@ -69,7 +69,7 @@ class MediumFacts(Protocol):
 
 def media_text(media: Iterable[MediumFacts]) -> str:
     """A section a medium: source, temperature, range; orders where wavelengths were asked for."""
-    return "\n\n".join(_medium(medium) for medium in media) + "\n"
+    return printable("\n\n".join(_medium(medium) for medium in media)) + "\n"
 
 
 def _medium(medium: MediumFacts) -> str:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 import textwrap
 from collections.abc import Iterable
 
@@ -9,7 +10,7 @@ from pulseprop.propagation.result import Run
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table, padded_rows
 from pulseprop.reports.content import sections
 
-__all__ = ["WIDTH", "blocks_text", "section_text", "table_text", "text_report"]
+__all__ = ["WIDTH", "blocks_text", "printable", "section_text", "table_text", "text_report"]
 
 WIDTH = 108
 GAP = "  "
@@ -22,7 +23,12 @@ def text_report(run: Run) -> str:
     opening = [*_wrapped(run.headline), ""]
     opening += [line for text in _about(run) for line in _wrapped(text)]
     parts = ["\n".join(opening), *(section_text(section) for section in sections(run))]
-    return "\n\n".join(parts) + "\n"
+    return printable("\n\n".join(parts)) + "\n"
+
+
+def printable(text: str) -> str:
+    """Text without control characters, with which a scenario could steer a terminal."""
+    return re.sub(r"[\x00-\x09\x0b-\x1f\x7f-\x9f]", "\ufffd", text)
 
 
 def _about(run: Run) -> list[str]:

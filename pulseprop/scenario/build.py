@@ -2,17 +2,24 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import replace
+from math import pi
 
 from pulseprop.errors import InputError, PulsepropError
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.sizing import GridWish
+from pulseprop.pulse.source import PulseSource
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_path import built_path
 from pulseprop.scenario.build_pulse import autocorrelation_of, built_pulse
 from pulseprop.scenario.read import Scenario
+from pulseprop.units import LIGHT_SPEED
 
 __all__ = ["build", "media_of"]
+
+RANGE_SHARE = 1e-6
+"""Share of the pulse's energy that may lie where a medium was not measured."""
 
 
 def media_of(scenario: Scenario) -> MediaOfScenario:
@@ -25,6 +32,21 @@ def _warnings(scenario: Scenario) -> tuple[str, ...]:
     if pulse.given("energy", "peak_power"):
         return ()
     return ("neither energy nor peak_power is stated: 1 nJ was taken, and what scales with it is a guess",)
+
+
+def _beyond_rows(pulse: PulseSource, media: MediaOfScenario) -> Iterator[str]:
+    """Measured absorptions whose rows do not cover the pulse: there the tails are assumed."""
+    low, high = pulse.spectral_extent(RANGE_SHARE)
+    for name, (first, last) in media.rows.items():
+        if low < first or high > last:
+            yield (
+                f"the pulse reaches beyond the rows of {name}, {_nanometres(last)} to {_nanometres(first)} "
+                "nm: its absorption there is assumed, not measured"
+            )
+
+
+def _nanometres(omega: float) -> str:
+    return f"{2e9 * pi * LIGHT_SPEED / omega:.6g}"
 
 
 def build(scenario: Scenario) -> Experiment:
@@ -58,7 +80,7 @@ def build(scenario: Scenario) -> Experiment:
         sha256=scenario.sha256,
         both_signs=both_signs,
         energy_stated=bool(content.pulse.given("energy", "peak_power")),
-        warnings=_warnings(scenario),
+        warnings=(*_warnings(scenario), *_beyond_rows(pulse, media)),
         grid=wish,
         beyond_range=content.grid.beyond_range,
         method="exact" if method == "auto" else method,

@@ -49,6 +49,9 @@ DIGITS_OF_TABLES = 3
 SMALLEST_K = 1e-12
 """Below this, a share of k is no uncertainty: it keeps the linear programme scaled."""
 
+BESIDE_THE_TABLE = ("anchor", "background", "uncertainty")
+"""Places of complaints that belong to the scenario, not to the file of the table."""
+
 Y_KINDS = {"alpha": "inverse_length", "molar": "molar_absorption"}
 
 
@@ -213,7 +216,10 @@ def time_and_signal(scenario: Scenario, spec: TraceFile | AutocorrelationFile) -
 
 
 def _blaming(numbers: NumberTable, make: Callable[[], T]) -> T:
+    """make(), its complaints located in the table, but for those of what the scenario says beside it."""
     try:
         return make()
     except InputError as error:
+        if error.complaint.place in BESIDE_THE_TABLE:
+            raise
         raise error.located(file=numbers.file) from None

@@ -47,6 +47,8 @@ class MediaOfScenario:
         self._open: list[str] = []
         self.substances: list[str] = []
         """Names of the catalogue media that were taken, also for a part of another."""
+        self.rows: dict[str, tuple[float, float]] = {}
+        """First and last row of measured absorptions, rad/s, by the name of the medium."""
 
     def medium(self, name: str) -> Medium:
         """The medium of that name: the scenario's own, else the catalogue's."""
@@ -94,6 +96,7 @@ class MediaOfScenario:
         if table.absorption is not None:
             measured = absorption_of(self._scenario, table, _index_function(response))
             response = WithAbsorption(response, measured)
+            self.rows[name] = (float(measured.omega[0]), float(measured.omega[-1]))
             notes = (*notes, *measured.notes)
             relative = any(code == "no-anchor" for code, _ in measured.cautions)
         lines = [*table.lines, *lines_of(self._scenario, table)]

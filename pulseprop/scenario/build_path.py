@@ -2,11 +2,15 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+from functools import partial
+
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
 from pulseprop.elements.phase_orders import Loss, PhaseOrders
 from pulseprop.elements.slab import Slab
 from pulseprop.errors import PulsepropError
+from pulseprop.material.medium import Medium
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.read import Scenario
 from pulseprop.scenario.schema_path import (
@@ -19,7 +23,8 @@ from pulseprop.scenario.schema_path import (
 
 __all__ = ["built_path"]
 
-SCALES = ((1.0, "m"), (1e-3, "mm"), (1e-6, "um"), (1e-9, "nm"))
+SCALES = ((1.0, 1.0, "m"), (1e-4, 1e-3, "mm"), (1e-6, 1e-6, "um"), (0.0, 1e-9, "nm"))
+"""From which length on, in m, a unit is used, and its size."""
 
 
 def built_path(scenario: Scenario, media: MediaOfScenario, centre: float) -> Path:
@@ -27,15 +32,22 @@ def built_path(scenario: Scenario, media: MediaOfScenario, centre: float) -> Pat
     elements = []
     for number, table in enumerate(scenario.content.path, start=1):
         try:
-            elements.append(_built(table, number, media, centre))
+            elements.append(_built(table, number, partial(_medium, scenario, media, number), centre))
         except PulsepropError as error:
             raise scenario.blamed(error, "path", number - 1) from None
     return Path(tuple(elements))
 
 
-def _built(table: ElementTable, number: int, media: MediaOfScenario, centre: float) -> Element:
+def _medium(scenario: Scenario, media: MediaOfScenario, number: int, name: str) -> Medium:
+    try:
+        return media.medium(name)
+    except PulsepropError as error:
+        raise scenario.blamed(error, "path", number - 1, "medium") from None
+
+
+def _built(table: ElementTable, number: int, medium: Callable[[str], Medium], centre: float) -> Element:
     if isinstance(table, SlabTable):
-        return _slab(table, number, media)
+        return _slab(table, number, medium(table.medium))
     if isinstance(table, LossTable):
         share = f"{100 * table.transmittance:.4g} % transmitted"
         return Loss(
@@ -60,8 +72,7 @@ def _built(table: ElementTable, number: int, media: MediaOfScenario, centre: flo
     )
 
 
-def _slab(table: SlabTable, number: int, media: MediaOfScenario) -> Slab:
-    medium = media.medium(table.medium)
+def _slab(table: SlabTable, number: int, medium: Medium) -> Slab:
     stated = table.reflectance is not None
     return Slab(
         name=table.name or f"{table.medium} {number}",
@@ -78,7 +89,5 @@ def _slab(table: SlabTable, number: int, media: MediaOfScenario) -> Slab:
 
 
 def _length(metres: float) -> str:
-    for scale, unit in SCALES:
-        if metres >= scale:
-            return f"{metres / scale:.4g} {unit}"
-    return f"{metres / 1e-9:.4g} nm"
+    size, unit = next((size, unit) for least, size, unit in SCALES if metres >= least)
+    return f"{metres / size:.4g} {unit}"

@@ -13,7 +13,8 @@ import pytest
 
 from pulseprop.errors import InputError
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import pulse_curve, thin_pairs
+from pulseprop.reports.curves import IndexCurve, pulse_curve, thin_pairs
+from pulseprop.reports.draw_band import draw_budget, draw_media
 from pulseprop.reports.draw_time import draw_pulse
 from pulseprop.reports.figure_style import COLOURS
 from pulseprop.reports.figures import drawings, write_figure, write_figures
@@ -138,3 +139,16 @@ def test_colours_differ_for_every_eye() -> None:
     after, warm = ([int(COLOURS[name][at : at + 2], 16) for at in (1, 3, 5)] for name in ("after", "warm"))
     assert after[2] > max(after[:2])
     assert warm[2] < min(warm[:2])
+
+
+@pytest.mark.parametrize("name", ["costs $5 and $6", "$\\frac{", "_hidden", "\x1b]0;title\x07", "窓 🪟"])
+def test_any_name_can_stand_in_a_figure(run: Run, tmp_path: Path, name: str) -> None:
+    elements = (replace(run.elements[0], name=name), run.elements[1])
+    named = replace(run, scenario=name, elements=elements, media=(replace(run.media[0], name=name),))
+    nm = np.linspace(700.0, 900.0, 5)
+    curve = IndexCurve(name, nm, 1.45 + 0 * nm, 0 * nm, 36 + 0 * nm)
+    for drawing in (draw_budget(named), draw_media([curve], name)):
+        path = write_figure(drawing, tmp_path / "drawing.svg")
+        assert tree.fromstring(path.read_text()).tag.endswith("svg")
+        write_figure(drawing, tmp_path / "picture.png")
+    assert draw_media([curve], name).figure.axes[0].get_legend().get_texts()

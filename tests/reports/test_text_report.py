@@ -141,3 +141,8 @@ def test_units_of_readable_size() -> None:
     assert quantity(999.9e3, "W") == "1.00 MW"
     assert span(12345.6, 4) == "12.35 ps"
     assert span(4.9e6, 2) == "4.9 ns"
+
+
+def test_a_scenario_cannot_steer_the_terminal(run: Run) -> None:
+    report = text_report(replace(run, scenario="\x1b]0;owned\x07\x9b2J", note="\x1b[2J"))
+    assert not set(report) & {"\x1b", "\x07", "\x9b"}

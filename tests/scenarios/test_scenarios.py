@@ -85,7 +85,7 @@ def test_says_what_it_asks_and_that_it_is_invented(file: Path) -> None:
     assert content.question.endswith("?")
     assert content.answer.endswith(".")
     assert "Larkmoor Bench, an invented laboratory" in content.laboratory
-    assert content.laboratory.endswith("data are invented")
+    assert content.laboratory.endswith("data are invented.")
     assert len(content.expect) >= 4
 
 
