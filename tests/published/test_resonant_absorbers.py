@@ -1,8 +1,8 @@
 """Resonant absorbers: shared/published_checks.json, group F, row by row.
 
 Sources stand in the file beside each row; a row says there where its figures were computed anew from a
-published formula. Rows of a single pole are put through the grid as a function of frequency; the oscillator of
-a real line, which has a partner at negative frequency, is held to 3/(omega0 T2) of them.
+published formula. Rows of a single pole are put through the grid as a function of frequency; the oscillator
+of a real line, which has a partner at negative frequency, is held to 3/(omega0 T2) of them.
 """
 
 from __future__ import annotations
