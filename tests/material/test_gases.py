@@ -87,7 +87,7 @@ def _virial_of(name):
 
 
 def test_n2_goes_with_density():
-    """Wahlstrand et al. 2012: argon 9.7e-24 m^2/W at 1 atm; from the state of the record to twice its density."""
+    """From the state of the record to twice its density; argon after Wahlstrand et al. 2012."""
     entry = record("argon")
     base = catalogue_medium("argon")
     ratio = 2 * entry.pressure_Pa, entry.temperature_K
