@@ -181,15 +181,15 @@ def _save(run: Run, path: str) -> None:
 
 
 def _draw(run: Run, scenario: Scenario, page: str | None, figures: str | None) -> None:
-    curves = _curves(run, scenario)
+    from pulseprop.reports.figures import drawings, write_figures
+
+    drawn = list(drawings(run, _curves(run, scenario)))
     if page:
         from pulseprop.reports.page import write_page
 
-        write_page(run, page, curves)
+        write_page(run, page, drawn)
     if figures:
-        from pulseprop.reports.figures import write_figures
-
-        write_figures(run, figures, curves)
+        write_figures(drawn, figures)
 
 
 def _curves(run: Run, scenario: Scenario) -> list[IndexCurve]:

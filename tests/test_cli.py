@@ -226,7 +226,7 @@ def test_a_medium_of_a_scenario(tmp_path: Path, capsys: pytest.CaptureFixture[st
     path = tmp_path / "cell.toml"
     line = '{ centre = "780.24 nm", width = "1 GHz", peak_absorption = "12 cm^-1" }'
     path.write_text(f'{SCENARIO}[medium."cell: vapour"]\nbackground = "vacuum"\nlines = [{line}]\n')
-    # The name holds a colon of its own, which the last colon of the argument would split: the message says so.
+    # The last colon splits, so a name with a colon of its own is not found.
     assert called("media", f"{path}:cell: vapour") == 2
     path.write_text(path.read_text().replace("cell: vapour", "cell vapour"))
     capsys.readouterr()

@@ -110,7 +110,7 @@ def night_map() -> Any:
 
 @contextmanager
 def _in_style(**more: str) -> Iterator[None]:
-    """The style while it draws. A name in a script that the font lacks is shown as boxes, without a complaint."""
+    """The style while it draws. A name in a script that the font lacks becomes boxes, without a complaint."""
     from matplotlib import rc_context
 
     with rc_context({**STYLE, **more}), warnings.catch_warnings():
@@ -119,7 +119,7 @@ def _in_style(**more: str) -> Iterator[None]:
 
 
 def words(text: str) -> str:
-    """Text of a scenario as it stands: no formula, no control characters, and never taken for a hidden label."""
+    """Text of a scenario as it stands: no formula, no control characters, never taken for a hidden label."""
     text = re.sub(r"[\x00-\x1f\x7f-\x9f]", "\ufffd", text).replace("$", r"\$")
     return f" {text}" if text.startswith("_") else text
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from pathlib import Path
 
 from pulseprop.errors import InputError
@@ -31,7 +31,7 @@ ALWAYS: tuple[Callable[[Run], Drawing], ...] = (
 )
 
 
-def drawings(run: Run, curves: Sequence[IndexCurve] | None = None) -> Iterator[Drawing]:
+def drawings(run: Run, curves: Sequence[IndexCurve] = ()) -> Iterator[Drawing]:
     """Every figure that has something to show, one at a time. curves: the media, for a figure of them."""
     for draw in ALWAYS:
         yield draw(run)
@@ -43,8 +43,8 @@ def drawings(run: Run, curves: Sequence[IndexCurve] | None = None) -> Iterator[D
         yield draw_media(curves, source_line(run))
 
 
-def write_figures(run: Run, directory: str | Path, curves: Sequence[IndexCurve] | None = None) -> list[Path]:
-    """PNG, SVG and CSV of every figure into a directory, which is made where its parent exists.
+def write_figures(drawn: Iterable[Drawing], directory: str | Path) -> list[Path]:
+    """PNG, SVG and CSV of figures into a directory, which is made where its parent exists.
 
     Raises InputError where it cannot be written.
     """
@@ -52,7 +52,7 @@ def write_figures(run: Run, directory: str | Path, curves: Sequence[IndexCurve] 
     directory = Path(directory)
     directory.mkdir(exist_ok=True)
     written: list[Path] = []
-    for drawing in drawings(run, curves):
+    for drawing in drawn:
         written.append(save_png(drawing.figure, directory / f"{drawing.name}.png"))
         written.append(save_svg(drawing.figure, directory / f"{drawing.name}.svg"))
         write_text(directory / f"{drawing.name}.csv", csv_text(drawing))

@@ -3,17 +3,16 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Sequence
+from collections.abc import Iterable
 from pathlib import Path
 from typing import TYPE_CHECKING
 
 from pulseprop.propagation.result import Run
 from pulseprop.reports.blocks import Table, padded_rows
 from pulseprop.reports.content import sections
-from pulseprop.reports.curves import IndexCurve
 from pulseprop.reports.document import write_text
+from pulseprop.reports.drawing import Drawing
 from pulseprop.reports.figure_style import inline_svg
-from pulseprop.reports.figures import drawings
 from pulseprop.reports.section_hazards import hazard_section
 
 if TYPE_CHECKING:
@@ -37,8 +36,8 @@ ELSEWHERE = ("cautions",)
 """Sections of the text report that the page shows in full, in a place of their own."""
 
 
-def page_html(run: Run, curves: Sequence[IndexCurve] | None = None) -> str:
-    """The page. Everything that comes from the scenario is escaped; nothing is fetched from anywhere."""
+def page_html(run: Run, drawn: Iterable[Drawing]) -> str:
+    """The page, with the figures `drawn`; what comes from the scenario is escaped, and nothing is fetched."""
     from jinja2 import Environment, PackageLoader, StrictUndefined
 
     environment = Environment(
@@ -52,7 +51,7 @@ def page_html(run: Run, curves: Sequence[IndexCurve] | None = None) -> str:
     environment.globals["lined_up"] = _lined_up
     figures = {
         drawing.name: (drawing.caption, _trusted(inline_svg(drawing.figure, drawing.name)))
-        for drawing in drawings(run, curves)
+        for drawing in drawn
     }
     shown = [section for section in sections(run) if section.key not in ELSEWHERE]
     return environment.get_template("page.html").render(
@@ -66,9 +65,9 @@ def page_html(run: Run, curves: Sequence[IndexCurve] | None = None) -> str:
     )
 
 
-def write_page(run: Run, path: str | Path, curves: Sequence[IndexCurve] | None = None) -> None:
+def write_page(run: Run, path: str | Path, drawn: Iterable[Drawing]) -> None:
     """The page to a file, whole or not at all. Raises InputError where it cannot be written."""
-    write_text(path, page_html(run, curves))
+    write_text(path, page_html(run, drawn))
 
 
 def _lined_up(table: Table) -> tuple[list[tuple[str, ...]], list[tuple[str, ...]]]:

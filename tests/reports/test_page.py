@@ -11,6 +11,7 @@ import pytest
 
 from pulseprop.propagation.result import Caution, Run
 from pulseprop.reports.curves import IndexCurve
+from pulseprop.reports.figures import drawings
 from pulseprop.reports.page import page_html
 
 HOSTILE = '</title><script>alert("1")</script><img src=x onerror=alert(1)>{{ 7*7 }}'
@@ -57,7 +58,8 @@ def outline_of(page: str) -> Outline:
 @pytest.fixture(scope="module")
 def page(run: Run) -> str:
     nm = np.linspace(700.0, 900.0, 11)
-    return page_html(run, [IndexCurve("fused silica", nm, 1.45 + 0 * nm, 0 * nm, 36 + 0 * nm)])
+    curve = IndexCurve("fused silica", nm, 1.45 + 0 * nm, 0 * nm, 36 + 0 * nm)
+    return page_html(run, drawings(run, [curve]))
 
 
 def test_nothing_is_fetched(page: str) -> None:
@@ -142,9 +144,9 @@ def test_hostile_scenarios_stay_text(run: Run) -> None:
         warnings=(HOSTILE,),
         cautions=(caution,),
     )
-    outline = outline_of(page_html(hostile))
-    assert not {"script", "img"} & outline.tags
-    assert "{{ 7*7 }}" in page_html(hostile)
+    page = page_html(hostile, drawings(hostile))
+    assert not {"script", "img"} & outline_of(page).tags
+    assert "{{ 7*7 }}" in page
 
 
 def luminance(colour: str) -> float:
