@@ -14,12 +14,14 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 
 if TYPE_CHECKING:
+    import xarray
+
     from pulseprop.material.medium import Medium
     from pulseprop.propagation.result import Run
     from pulseprop.propagation.send import Progress
     from pulseprop.scenario.read import Scenario
 
-__all__ = ["MediumReport", "OrdersRow", "catalogue", "media", "medium", "read", "send", "version"]
+__all__ = ["MediumReport", "OrdersRow", "catalogue", "dataset", "media", "medium", "read", "send", "version"]
 
 SPEED_OF_LIGHT = 299792458.0
 
@@ -57,6 +59,13 @@ def send(
     if progress is None:
         return run(experiment, version(), catalogue_checksum())
     return run(experiment, version(), catalogue_checksum(), progress)
+
+
+def dataset(run: Run) -> xarray.Dataset:
+    """The fields of a run as an xarray.Dataset: complex in memory, units in the attributes."""
+    from pulseprop.reports.dataset import to_dataset
+
+    return to_dataset(run)
 
 
 @cache

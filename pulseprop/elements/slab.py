@@ -61,6 +61,10 @@ class Slab:
                 value=self.angle,
                 allowed="0 deg up to below 90 deg",
             )
+        if not 0 <= self.reflectance < 1:
+            raise InputError(
+                "a reflectance outside its range", value=self.reflectance, allowed="0 to below 1"
+            )
         if self.angle > 0 and self.faces in ("fresnel", "echoes") and self.polarisation is None:
             raise InputError(
                 "a tilted slab with reflecting faces needs a polarisation",

@@ -15,7 +15,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
-from pulseprop.material.refraction import refraction_of, susceptibility_of
+from pulseprop.material.refraction import refraction_of, refraction_series, susceptibility_of
 from pulseprop.material.response import Band, Response, View, common_band
 from pulseprop.numerics.series import Numbers, Series, compose, product, quotient, variable
 
@@ -208,8 +208,12 @@ class WithAbsorption:
         return self.background.band.overlap(self.measured.band)
 
     def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
-        own = refraction_of(self.background.series(omega, count, view))
-        return susceptibility_of(own + self.measured.refraction_series(omega, count))
+        return susceptibility_of(self.refraction(omega, count, view))
+
+    def refraction(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """n + ik - 1 of the background and what was measured, side by side."""
+        own = refraction_series(self.background, omega, count, view)
+        return np.asarray(own + self.measured.refraction_series(omega, count))
 
 
 def checked_fractions(fractions: tuple[float, ...]) -> None:

@@ -98,7 +98,9 @@ def line(
     """
     if width <= 0 and doppler_width <= 0:
         raise InputError("a line needs a width", value=0.0, allowed="width or doppler_width above 0")
-    if doppler_width <= 0:
+    if width < 0 or doppler_width < 0:
+        raise InputError("a width is negative", value=min(width, doppler_width), allowed="0 or more")
+    if doppler_width == 0:
         return LorentzLine(strength=strength, centre=centre, width=width)
     if width >= 2 * centre:
         raise InputError(

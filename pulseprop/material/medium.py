@@ -8,7 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.material.orders import Orders, orders_of
-from pulseprop.material.refraction import refraction_of
+from pulseprop.material.refraction import refraction_series
 from pulseprop.material.response import Band, Response, View
 from pulseprop.numerics.series import Numbers, Series
 
@@ -77,7 +77,7 @@ class Medium:
 
     def refraction(self, omega: Numbers, count: int = 1, view: View = View.AXIS) -> Series:
         """Taylor coefficients of n + ik - 1 about each omega (rad/s); shape (count, *omega.shape)."""
-        return refraction_of(self.response.series(np.asarray(omega), count, view))
+        return refraction_series(self.response, np.asarray(omega), count, view)
 
     def index(self, omega: Numbers, view: View = View.AXIS) -> Complex:
         """n + ik."""

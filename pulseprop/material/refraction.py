@@ -9,9 +9,10 @@ from __future__ import annotations
 
 import numpy as np
 
-from pulseprop.numerics.series import Series, product, quotient, root
+from pulseprop.material.response import IndexResponse, Response, View
+from pulseprop.numerics.series import Numbers, Series, product, quotient, root
 
-__all__ = ["refraction_of", "susceptibility_of"]
+__all__ = ["refraction_of", "refraction_series", "susceptibility_of"]
 
 
 def refraction_of(chi: Series) -> Series:
@@ -24,6 +25,13 @@ def refraction_of(chi: Series) -> Series:
     one_more = root(squared, leading)
     one_more[0] += 1.0
     return quotient(chi, one_more)
+
+
+def refraction_series(response: Response, omega: Numbers, count: int, view: View) -> Series:
+    """Taylor coefficients of n + ik - 1 of a response about each omega, without a root if not needed."""
+    if isinstance(response, IndexResponse):
+        return response.refraction(omega, count, view)
+    return refraction_of(response.series(omega, count, view))
 
 
 def _principal(squared: Series) -> Series:

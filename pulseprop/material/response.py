@@ -19,7 +19,7 @@ from numpy.typing import NDArray
 
 from pulseprop.numerics.series import Numbers, Series
 
-__all__ = ["EVERYWHERE", "Band", "Constant", "Response", "Sum", "View", "common_band"]
+__all__ = ["EVERYWHERE", "Band", "Constant", "IndexResponse", "Response", "Sum", "View", "common_band"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -76,6 +76,19 @@ class Response(Protocol):
         On the real axis the value is the limit from above. `count` is 1 or more with View.PRINTED, at most 2
         with the others. The result is real where chi is real by construction.
         """
+        ...
+
+
+@runtime_checkable
+class IndexResponse(Response, Protocol):
+    """A response that is given as n + ik - 1 itself, so that no root has to be taken.
+
+    The index of a Stieltjes transform of k may pass through zero beyond a strong band; the root of 1 + chi
+    would then have to change sheets.
+    """
+
+    def refraction(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """Taylor coefficients of n + ik - 1, as `Response.series` gives those of chi."""
         ...
 
 

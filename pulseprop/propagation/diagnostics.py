@@ -163,13 +163,13 @@ def _absorbs(path: Path, low: float, high: float) -> bool:
 
 
 def _is_passive(medium: Medium, centre: float) -> bool:
-    """Im chi >= 0 at every resonance, and but for dips over two decades about the centre."""
-    axis = medium.susceptibility(np.geomspace(centre / 10, centre * 10, 801))
-    lines = medium.susceptibility(np.array([line.centre for line in medium.resonances]))
+    """k >= 0 at every resonance, and but for dips over two decades about the centre."""
+    axis = medium.index(np.geomspace(centre / 10, centre * 10, 801))
+    lines = medium.index(np.array([line.centre for line in medium.resonances]))
     dip = DIP * max(float(axis.imag.max()), 0.0)
     return bool(
-        np.all(axis.imag >= -dip - ROUNDING * np.abs(axis))
-        and np.all(lines.imag >= -ROUNDING * np.abs(lines))
+        np.all(axis.imag >= -dip - ROUNDING * np.abs(axis - 1))
+        and np.all(lines.imag >= -ROUNDING * np.abs(lines - 1))
     )
 
 

@@ -12,12 +12,15 @@ from pulseprop.grid import Grid
 from pulseprop.measures.limits import TransformLimit
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.result import ElementMeasures, HazardFacts
+from pulseprop.propagation.words import share
 
 __all__ = ["hazard_facts"]
 
 Complex = NDArray[np.complex128]
 
 SPEED_OF_LIGHT = 299792458.0
+FAINT = 1e-6
+"""Faces of gases reflect less than this: no beam."""
 
 
 def hazard_facts(
@@ -33,6 +36,7 @@ def hazard_facts(
     pulse, known = experiment.pulse, experiment.energy_stated
     energy, rate = grid.energy(spectrum), pulse.repetition_rate
     slabs = [element for element in experiment.path if isinstance(element, Slab)]
+    stray = [_stray(slab, pulse.centre) for slab in slabs]
     return HazardFacts(
         wavelengths_at_1_percent_nm=_wavelengths(grid, spectrum, 1e-2),
         wavelengths_at_1e_4_nm=_wavelengths(grid, spectrum, 1e-4),
@@ -44,7 +48,7 @@ def hazard_facts(
         beam_radius_m=pulse.beam_radius,
         peak_fluence_J_per_cm2=_largest(row.peak_fluence_J_per_cm2 for row in rows),
         peak_intensity_W_per_cm2=_largest(row.peak_intensity_W_per_cm2 for row in rows),
-        stray_beams=tuple(_stray(slab, pulse.centre) for slab in slabs),
+        stray_beams=tuple(text for text in stray if text),
     )
 
 
@@ -63,5 +67,7 @@ def _stray(slab: Slab, omega: float) -> str:
     if slab.faces == "reflectance":
         return f"{slab.name}: each face reflects {100 * slab.reflectance:.2g} % as stated"
     reflectance = slab.face_reflectance(omega)
+    if reflectance < FAINT:
+        return ""
     coated = "" if slab.faces in ("fresnel", "echoes") else " if uncoated"
-    return f"{slab.name}: each face reflects about {100 * reflectance:.2g} %{coated}"
+    return f"{slab.name}: each face reflects about {share(reflectance)}{coated}"

@@ -20,7 +20,7 @@ from pulseprop.material.gases import gas_at
 from pulseprop.material.library import catalogue_medium
 from pulseprop.material.medium import Medium, NonlinearIndex
 from pulseprop.material.orders_only import OrdersOnly
-from pulseprop.material.refraction import refraction_of
+from pulseprop.material.refraction import refraction_series
 from pulseprop.material.response import Band, Constant, Response, Sum, View
 from pulseprop.scenario.air import omega_of_air_wavelength
 from pulseprop.scenario.build_files import absorption_of, index_table_of, lines_of
@@ -225,7 +225,7 @@ def _printed_against_air(table: MediumTable) -> bool:
 
 def _index_function(response: Response) -> Callable[[np.ndarray], np.ndarray]:
     def index(omega: np.ndarray) -> np.ndarray:
-        return np.asarray(1.0 + refraction_of(response.series(np.asarray(omega), 1, View.AXIS))[0])
+        return np.asarray(1.0 + refraction_series(response, np.asarray(omega), 1, View.AXIS)[0])
 
     return index
 
