@@ -25,6 +25,8 @@ FARTHEST = 300.0
 EXACT = 1e-3
 """Share of the uncertainties below which a fit counts as exact. More is not left to smoothness: few bands act
 on many rows, so the least factor shows the noise, and the flattest curve within all uncertainty is biased."""
+STRENGTH = 0.3
+"""Weight of strength beside roughness: bands then lie about a third of the first row's frequency."""
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)
@@ -76,10 +78,14 @@ def _roughness(rows: Real, knots: Real) -> Real:
     """For each B-spline outside the rows, the fourth derivative of its n at the nearest end of the rows.
 
     Of area a at the distance d it is 24 a / d^5 times w/(w + nearest row), dimensionless: in units of the
-    last row.
+    last row. Below the rows strength is added: any place there explains a fall of the index as 1/w^2, but the
+    lower it lies the more it must absorb, until Re n < 0 in it and chi amplifies.
     """
     unit = rows[-1]
+    first = rows[0] / unit
     centre = (knots[:-4] + knots[4:]) / 2 / unit
     area = (knots[4:] - knots[:-4]) / 4 / unit
-    nearest = np.clip(centre, rows[0] / unit, 1.0)
-    return np.asarray(24 * area * centre / (centre + nearest) / np.abs(centre - nearest) ** 5)
+    nearest = np.clip(centre, first, 1.0)
+    ripple = 24 / np.abs(centre - nearest) ** 5
+    strength = np.where(centre < first, STRENGTH * 24 / first**5 * (first / centre) ** 2, 0.0)
+    return np.asarray(area * centre / (centre + nearest) * (ripple + strength))

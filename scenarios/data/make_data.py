@@ -44,6 +44,12 @@ DARK_COUNTS, PEAK_COUNTS = 120.0, 42000.0
 CYCLE_PS = 0.22
 """s of the waveform -(t/s) exp(1/2 - t^2/(2 s^2))."""
 
+CRYSTAL = ((1.462, 0.0106), (0.930, 96.0))
+"""Invented crystal: strength and squared resonance (um^2) of its Sellmeier terms."""
+
+AIR_AT = 1.00027
+"""Index of air, in which the vendor of the crystal measures."""
+
 
 def noise(seed: int) -> Iterator[float]:
     """Even noise between -1 and 1."""
@@ -112,12 +118,26 @@ def reference_waveform() -> Iterable[str]:
         yield f"{time:.2f},{-scaled * math.exp(0.5 - scaled**2 / 2) + 1e-4 * next(rattle):.5f}"
 
 
+def crystal_index(wavelength: float) -> float:
+    """Index of the crystal against vacuum; wavelength in um."""
+    square = wavelength**2
+    return math.sqrt(1 + sum(strength * square / (square - place) for strength, place in CRYSTAL))
+
+
+def crystal_table() -> Iterable[str]:
+    """Index against air at wavelengths in air, to five decimals."""
+    yield "wavelength_um,n"
+    for wavelength in steps(0.5, 2.0, 0.05):
+        yield f"{wavelength:.2f},{crystal_index(wavelength * AIR_AT) / AIR_AT:.5f}"
+
+
 FILES = {
     "green_filter.csv": green_filter,
     "gas_lines.csv": gas_lines,
     "oscillator_spectrum.csv": oscillator_spectrum,
     "oscillator_autocorrelation.csv": oscillator_autocorrelation,
     "reference_waveform.csv": reference_waveform,
+    "crystal.csv": crystal_table,
 }
 
 

@@ -343,6 +343,15 @@ def test_front() -> None:
     agrees(ahead, "front", "causality.naive_filter.energy_ahead_of_front")
 
 
+def test_vendor_crystal() -> None:
+    strengths, squares = zip(*made_data().CRYSTAL, strict=True)
+    index = sellmeier(strengths, squares)
+    omega = omega_of(1030)
+    agrees(float(index(omega)), "vendor_crystal", "media.crystal LB-7.index")
+    agrees(gdd(index, omega, 6.0), "vendor_crystal", "path.gdd_fs2")
+    agrees(chirped(60, gdd(index, omega, 6.0)), "vendor_crystal", "pulse_out.fwhm_fs")
+
+
 def print_all() -> None:
     """All numbers, for whoever writes or changes a scenario."""
     globals()["agrees"] = partial(print)

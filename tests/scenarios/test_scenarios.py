@@ -138,7 +138,13 @@ def test_a_second_piece_of_glass_tells_the_sign() -> None:
 
 def test_stated_places_of_the_answers_are_their_numbers() -> None:
     """The answer in words gives the duration that leaves, where it gives one in fs."""
-    spoken = {"cryostat": 182, "argon_metre": 10.2, "brewster_plate": 43, "coolant_mixture": 64}
+    spoken = {
+        "cryostat": 182,
+        "argon_metre": 10.2,
+        "brewster_plate": 43,
+        "coolant_mixture": 64,
+        "vendor_crystal": 61,
+    }
     for name, number in spoken.items():
         words = pp.read(SCENARIOS / f"{name}.toml").content.answer
         assert re.search(rf"\b{number:g} fs\b", words)
