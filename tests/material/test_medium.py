@@ -26,7 +26,7 @@ def test_index_squared_is_one_plus_chi_with_the_root_of_passive_matter(chi):
     chi = complex(chi.real, abs(chi.imag))
     excess = complex(refraction_of(np.array([chi]))[0])
     assert (1 + excess) ** 2 == pytest.approx(1 + chi, rel=1e-12, abs=1e-12)
-    assert (1 + excess).real >= 0
+    assert (1 + excess).real >= -1e-15 * abs(1 + excess)  # rounding of a root on the imaginary axis
     assert (1 + excess).imag >= 0
 
 
