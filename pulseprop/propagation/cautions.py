@@ -11,6 +11,7 @@ from collections.abc import Iterator, Sequence
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
 from pulseprop.material.medium import Medium
+from pulseprop.propagation.numerals import significant
 from pulseprop.propagation.result import Caution, ElementMeasures
 
 __all__ = ["cautions_for"]
@@ -53,21 +54,28 @@ def _strong_light(rows: Sequence[ElementMeasures]) -> Iterator[Caution]:
     if fluence > 0:
         yield Caution(
             code="damage-threshold",
-            line=f"peak fluence {fluence:.2g} J/cm^2: compare with the maker's damage threshold (ISO 21254)",
+            line=(
+                f"peak fluence {significant(fluence, 2)} J/cm^2: compare with the maker's damage threshold "
+                "(ISO 21254)"
+            ),
             text=(
-                f"The highest on-axis fluence in the path is {fluence:.3g} J/cm^2. Compare it with damage "
-                "thresholds measured to ISO 21254 at the same wavelength, pulse duration and beam diameter; "
-                "thresholds do not carry over from others. Hot spots and dust lower them."
+                f"The highest on-axis fluence in the path is {significant(fluence, 2)} J/cm^2. Compare it "
+                "with damage thresholds measured to ISO 21254 at the same wavelength, duration and beam "
+                "diameter; thresholds do not carry over from others. Hot spots and dust lower them."
             ),
         )
     intensity = max((row.peak_intensity_W_per_cm2 or 0.0 for row in rows), default=0.0)
     if intensity > IONISING_W_PER_CM2:
         yield Caution(
             code="x-rays",
-            line=f"peak intensity {intensity:.2g} W/cm^2: ask the radiation protection officer about X-rays",
+            line=(
+                f"peak intensity {significant(intensity, 2)} W/cm^2: ask the radiation protection officer "
+                "about X-rays"
+            ),
             text=(
-                f"The peak intensity reaches {intensity:.3g} W/cm^2. On matter, intensities above 1e13 "
-                "W/cm^2 can make X-rays; German radiation-protection law asks for notice or leave there, "
+                f"The peak intensity reaches {significant(intensity, 2)} W/cm^2. On matter, intensities "
+                "above 1e13 W/cm^2 can make X-rays; German radiation-protection law asks for notice or leave "
+                "there, "
                 "mainly in material processing. The figure is that of one country: ask the local radiation "
                 "protection officer."
             ),

@@ -34,13 +34,14 @@ class Experiment:
     both_signs: the pulse's GDD came from a measured duration, so its sign is unknown. energy_stated: False
     where the scenario gives neither energy nor peak power: then nothing that scales with it is reported.
     beyond_range: what to do with a medium whose range the pulse leaves. substances: catalogue media that
-    others are made of.
+    others are made of. answer: what the scenario expects, in words.
     """
 
     title: str
     pulse: Pulse | MeasuredPulse
     path: Path
     question: str = ""
+    answer: str = ""
     note: str = ""
     file: str = ""
     text: str = ""

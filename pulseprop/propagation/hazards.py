@@ -11,8 +11,8 @@ from pulseprop.elements.slab import Slab
 from pulseprop.grid import Grid
 from pulseprop.measures.limits import TransformLimit
 from pulseprop.propagation.experiment import Experiment
+from pulseprop.propagation.numerals import percent
 from pulseprop.propagation.result import ElementMeasures, HazardFacts
-from pulseprop.propagation.words import share
 
 __all__ = ["hazard_facts"]
 
@@ -65,9 +65,9 @@ def _wavelengths(grid: Grid, spectrum: Complex, level: float) -> tuple[float, fl
 
 def _stray(slab: Slab, omega: float) -> str:
     if slab.faces == "reflectance":
-        return f"{slab.name}: each face reflects {100 * slab.reflectance:.2g} % as stated"
+        return f"{slab.name}: each face reflects {percent(slab.reflectance, 2)} as stated"
     reflectance = slab.face_reflectance(omega)
     if reflectance < FAINT:
         return ""
     coated = "" if slab.faces in ("fresnel", "echoes") else " if uncoated"
-    return f"{slab.name}: each face reflects about {share(reflectance)}{coated}"
+    return f"{slab.name}: each face reflects about {percent(reflectance, 2)}{coated}"

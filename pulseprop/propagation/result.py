@@ -235,7 +235,7 @@ class Fields:
 
 @dataclass(frozen=True, kw_only=True)
 class Run:
-    """The answer to `send`."""
+    """The answer to `send`; `answer` is what the scenario says to expect."""
 
     scenario: str
     question: str
@@ -260,6 +260,7 @@ class Run:
     pulse_notes: tuple[str, ...] = ()
     signs: tuple[SignCase, ...] = ()
     autocorrelation: AutocorrelationFit | None = None
+    answer: str = ""
     fields: Fields = field(repr=False)
 
     @property
@@ -272,6 +273,7 @@ class Run:
         document = {
             "scenario": self.scenario,
             "question": self.question,
+            "answer": self.answer,
             "version": self.version,
             "headline": self.headline,
             "pulse_in": _without_unasked(asdict(self.pulse_in)),

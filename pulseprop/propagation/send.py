@@ -18,6 +18,7 @@ from pulseprop.propagation.diagnostics import causality_of
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.hazards import hazard_facts
 from pulseprop.propagation.linear import at_once
+from pulseprop.propagation.numerals import percent
 from pulseprop.propagation.result import (
     Fields,
     GridMeasures,
@@ -92,6 +93,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
     return Run(
         scenario=experiment.title,
         question=experiment.question,
+        answer=experiment.answer,
         note=experiment.note,
         file=experiment.file,
         scenario_text=experiment.text,
@@ -190,7 +192,7 @@ def _check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
         covered = f"{_nanometres(high)} to {_nanometres(low)}"
         raise RangeError(
             f"the pulse leaves the range of medium {medium.name!r}",
-            value=f"{100 * outside:.2g} % of the pulse's energy lies outside {covered}",
+            value=f"{percent(outside, 2)} of the pulse's energy lies outside {covered}",
             allowed=f"at most {RANGE_SHARE:g} of the energy outside the range of a record",
             remedy=(
                 'Take a record that covers the spectrum, a narrower pulse, or [grid] beyond_range = "causal"'
@@ -216,7 +218,7 @@ def _range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tu
         outside = _energy_outside(grid, spectrum, medium.band.low, medium.band.high)
         if outside > RANGE_SHARE:
             said.append(
-                f"{100 * outside:.2g} % of the pulse's energy lies outside the range of {medium.name}, "
+                f"{percent(outside, 2)} of the pulse's energy lies outside the range of {medium.name}, "
                 "which was continued causally"
             )
     return tuple(said)

@@ -9,11 +9,11 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.propagation.numerals import scaled, span
 from pulseprop.propagation.result import Run
 from pulseprop.reports.curves import POINTS, SPEED_OF_LIGHT, IndexCurve, extremes
 from pulseprop.reports.drawing import Drawing, source_line
 from pulseprop.reports.figure_style import COLOURS, canvas, styled, words
-from pulseprop.reports.numbers import scaled, span
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes

@@ -14,11 +14,11 @@ from pulseprop.measures.autocorrelation import (
     interferometric_autocorrelation,
 )
 from pulseprop.measures.spectrogram import spectrogram
+from pulseprop.propagation.numerals import percent, scaled, span
 from pulseprop.propagation.result import AutocorrelationFit, Run
 from pulseprop.reports.curves import PulseCurve, bounds_of, pulse_curve, thin_pairs
 from pulseprop.reports.drawing import Drawing, source_line
 from pulseprop.reports.figure_style import COLOURS, canvas, night_map, styled
-from pulseprop.reports.numbers import percent, scaled, span
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes

@@ -5,8 +5,8 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from typing import Protocol
 
+from pulseprop.propagation.numerals import significant
 from pulseprop.reports.blocks import Column, Paragraph, Table
-from pulseprop.reports.numbers import significant
 from pulseprop.reports.section_sources import medium_facts, range_text
 from pulseprop.reports.text import blocks_text, printable, table_text
 

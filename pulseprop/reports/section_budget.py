@@ -2,19 +2,28 @@
 
 from __future__ import annotations
 
-from pulseprop.propagation.result import ElementMeasures, Run
+from pulseprop.propagation.numerals import NOTHING, fixed, last_place, percent, scaled, significant, span
+from pulseprop.propagation.result import ElementMeasures, PathMeasures, Run
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
-from pulseprop.reports.numbers import NOTHING, fixed, last_place, percent, scaled, significant, span
 
-__all__ = ["budget_section", "digits_of"]
+__all__ = ["budget_section", "digits_of", "on_a_line"]
 
 MOST_DIGITS = 4
 """Digits of a width or a share, however many the data behind it carry."""
 
 
+SAME = 1e-9
+"""Loads that differ by a smaller share are one."""
+
+
 def digits_of(run: Run) -> int:
     """Significant digits that an answer about the whole path may have: those of its coarsest element."""
     return min([MOST_DIGITS, *(max(element.digits, 1) for element in run.elements)])
+
+
+def on_a_line(path: PathMeasures) -> bool:
+    """Whether a line stands in the pulse's spectrum, so that no estimate could be made from a known GDD."""
+    return path.gdd_only_fwhm_fs is None and path.gdd_fs2 is not None
 
 
 def budget_section(run: Run) -> Section:
@@ -91,10 +100,13 @@ def _estimate(run: Run) -> str:
     width = run.path.gdd_only_fwhm_fs
     full = span(run.pulse_out.fwhm_fs, digits_of(run))
     if width is None:
-        return (
-            "Textbook estimate from GDD alone: none. A line stands in the pulse's spectrum, or an order is "
-            "not known: the GDD at one frequency would mislead."
+        why = (
+            "A line stands in the pulse's spectrum, and orders at a line centre say little: look at the "
+            "delays and curves."
+            if on_a_line(run.path)
+            else "An order of an element is not known."
         )
+        return f"Textbook estimate from GDD alone: none. {why}"
     return (
         f"Textbook estimate from GDD alone, Gaussian: FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2) = "
         f"{span(width, digits_of(run))}; with everything counted: {full}."
@@ -102,17 +114,25 @@ def _estimate(run: Run) -> str:
 
 
 def _loads(run: Run) -> str:
-    """Where fluence and B-integral are highest, one sentence."""
-    loaded = [element for element in run.elements if element.peak_fluence_J_per_cm2 is not None]
-    if not loaded:
-        return ""
-    worst = max(loaded, key=lambda element: element.peak_fluence_J_per_cm2 or 0.0)
-    text = f"Highest peak fluence: {significant(worst.peak_fluence_J_per_cm2, 2)} J/cm^2 in {worst.name}"
-    if worst.peak_intensity_W_per_cm2 is not None:
-        text += f" ({significant(worst.peak_intensity_W_per_cm2, 2)} W/cm^2)"
+    """Where fluence and intensity are highest, and the B-integral of all."""
+    names = [element.name for element in run.elements]
+    told = [
+        _highest("fluence", "J/cm^2", names, [row.peak_fluence_J_per_cm2 for row in run.elements]),
+        _highest("intensity", "W/cm^2", names, [row.peak_intensity_W_per_cm2 for row in run.elements]),
+    ]
     if run.path.b_integral_rad is not None:
-        text += f". B-integral of the path: {significant(run.path.b_integral_rad, 2)} rad"
-    return text + "."
+        told.append(f"B-integral of the path: {significant(run.path.b_integral_rad, 2)} rad.")
+    return " ".join(text for text in told if text)
+
+
+def _highest(what: str, unit: str, names: list[str], values: list[float | None]) -> str:
+    """The largest, and the first element where it stands; rounding alone makes no difference of elements."""
+    top = max((value for value in values if value is not None), default=None)
+    if top is None:
+        return ""
+    there = [value is not None and value >= (1 - SAME) * top for value in values]
+    place = "everywhere" if all(there) and len(there) > 1 else f"in {names[there.index(True)]}"
+    return f"Highest peak {what}: {significant(top, 2)} {unit}, {place}."
 
 
 def _echoes(run: Run) -> list[str]:

@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
+from pulseprop.propagation.numerals import significant
 from pulseprop.propagation.result import Causality, NaiveFilter, Run
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
-from pulseprop.reports.numbers import significant
 
 __all__ = ["causality_section"]
 
@@ -22,21 +22,28 @@ def causality_section(run: Run) -> Section:
     """Verdict, front test against its noise floor, the naive filter beside it, and what was left out."""
     found = run.causality
     texts = [
-        " ".join([VERDICTS.get(found.verdict, found.verdict), *_front(found)]),
+        " ".join([_verdict(found), *_front(found)]),
         *_naive(found.naive_filter),
         _pair(found),
     ]
     if found.left_out:
         texts.append(
-            f"Left out of the front test, because a phase alone or orders describe them: "
+            "Left out of the front test, because a phase, orders or a table as printed describe them: "
             f"{', '.join(found.left_out)}."
         )
-    if found.remark:
+    if found.remark and found.verdict != "unresolved":
         texts.append(found.remark[0].upper() + found.remark[1:].rstrip(".") + ".")
     blocks: list[Table | Paragraph] = [Paragraph(text) for text in texts]
     if found.sum_rules:
         blocks.append(_sum_rules(found))
     return Section("causality", "Causality", tuple(blocks))
+
+
+def _verdict(found: Causality) -> str:
+    """What was found; why nothing was is said by the test itself."""
+    if found.verdict == "unresolved" and found.remark:
+        return f"Unresolved: {found.remark.rstrip('.')}."
+    return VERDICTS.get(found.verdict, found.verdict)
 
 
 def _front(found: Causality) -> list[str]:

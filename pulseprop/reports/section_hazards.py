@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
+from pulseprop.propagation.numerals import LONG_NM, NOTHING, quantity, significant, span, terahertz
 from pulseprop.propagation.result import HazardFacts, Run
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
-from pulseprop.reports.numbers import NOTHING, quantity, significant, span
 from pulseprop.reports.section_sources import range_text
 
 __all__ = ["hazard_section"]
@@ -33,9 +33,9 @@ def _facts(facts: HazardFacts) -> list[tuple[str, str]]:
     return [
         (
             "wavelengths down to 1 % of the peak of the spectrum",
-            range_text(facts.wavelengths_at_1_percent_nm),
+            _wavelengths(facts.wavelengths_at_1_percent_nm, 5),
         ),
-        ("wavelengths down to 1e-4 of the peak", range_text(facts.wavelengths_at_1e_4_nm, 4)),
+        ("wavelengths down to 1e-4 of the peak", _wavelengths(facts.wavelengths_at_1e_4_nm, 4)),
         ("pulse energy", _or_unstated(quantity(facts.pulse_energy_J, "J"))),
         ("repetition rate", _or_unstated(quantity(facts.repetition_rate_Hz, "Hz"))),
         ("average power", _or_unstated(quantity(facts.average_power_W, "W"))),
@@ -45,6 +45,15 @@ def _facts(facts: HazardFacts) -> list[tuple[str, str]]:
         ("highest peak fluence in the path", _with_unit(fluence, "J/cm^2")),
         ("highest peak intensity in the path", _with_unit(intensity, "W/cm^2")),
     ]
+
+
+def _wavelengths(ends_nm: tuple[float, float], digits: int) -> str:
+    """Long waves with their frequencies."""
+    text = range_text(ends_nm, digits)
+    if ends_nm[1] < LONG_NM:
+        return text
+    low, high = (significant(terahertz(end), 3) for end in reversed(ends_nm))
+    return f"{text} ({low} THz to {high} THz)"
 
 
 def _or_unstated(text: str) -> str:

@@ -2,10 +2,10 @@
 
 from __future__ import annotations
 
+from pulseprop.propagation.numerals import LONG_NM, percent, prefix_for, scaled, significant, span, terahertz
 from pulseprop.propagation.result import AutocorrelationFit, PulseMeasures, Run, SignCase
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
-from pulseprop.reports.numbers import percent, prefix_for, scaled, significant, span
-from pulseprop.reports.section_budget import digits_of
+from pulseprop.reports.section_budget import digits_of, on_a_line
 
 __all__ = ["autocorrelation_section", "delay_section", "pulse_section", "sign_section"]
 
@@ -20,7 +20,7 @@ def pulse_section(run: Run) -> Section:
     before, after, digits = run.pulse_in, run.pulse_out, digits_of(run)
     columns = (Column("pulse", words=True), Column("enters"), Column("leaves"), Column("unit", words=True))
     rows = (
-        ("centre (mean frequency)", significant(before.centre_nm, 5), significant(after.centre_nm, 5), "nm"),
+        *_centre(before.centre_nm, after.centre_nm),
         _width("FWHM, outermost points", before.fwhm_fs, after.fwhm_fs, digits),
         _width("RMS width", before.rms_fs, after.rms_fs, digits),
         _width("equivalent width", before.equivalent_width_fs, after.equivalent_width_fs, digits),
@@ -39,6 +39,16 @@ def pulse_section(run: Run) -> Section:
     notes = [*_limits(after, digits), *_shape(after), *run.pulse_notes]
     return Section(
         "pulse", "Pulse before and after", (Table(columns, rows), *(Paragraph(note) for note in notes))
+    )
+
+
+def _centre(before: float, after: float) -> tuple[Row, ...]:
+    name = "centre (mean frequency)"
+    if max(before, after) < LONG_NM:
+        return ((name, significant(before, 5), significant(after, 5), "nm"),)
+    return (
+        (name, significant(terahertz(before), 4), significant(terahertz(after), 4), "THz"),
+        ("its vacuum wavelength", significant(before * 1e-3, 4), significant(after * 1e-3, 4), "um"),
     )
 
 
@@ -97,7 +107,8 @@ def delay_section(run: Run) -> Section:
         )
     text = "".join(lines) + "."
     if path.group_delay_fs is not None:
-        text += f" Group delay at the pulse's centre: {span(path.group_delay_fs, digits)}."
+        place = ", where a line stands" if on_a_line(path) else ""
+        text += f" Group delay at the pulse's centre{place}: {span(path.group_delay_fs, digits)}."
     return Section("delays", "Delays", (Paragraph(text),))
 
 

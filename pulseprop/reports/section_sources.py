@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
+from pulseprop.propagation.numerals import LONG_NM, significant, span
 from pulseprop.propagation.result import MediumUsed, Run
 from pulseprop.reports.blocks import Paragraph, Section
-from pulseprop.reports.numbers import significant, span
 
 __all__ = [
     "caution_section",
@@ -51,7 +51,7 @@ def range_text(valid_nm: tuple[float, float] | None, digits: int = 5) -> str:
     if valid_nm is None:
         return "wherever it was defined"
     low, high = valid_nm
-    if high >= 1e5:
+    if high >= LONG_NM:
         return f"{low / 1e3:.{digits}g} um to {high / 1e3:.{digits}g} um"
     return f"{low:.{digits}g} nm to {high:.{digits}g} nm"
 

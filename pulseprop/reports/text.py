@@ -33,7 +33,9 @@ def printable(text: str) -> str:
 
 def _about(run: Run) -> list[str]:
     title = run.scenario if not run.file or run.file == run.scenario else f"{run.scenario} ({run.file})"
-    return [text for text in (title, run.question and f"Asked: {run.question}", run.note) if text]
+    asked = run.question and f"Asked: {run.question}"
+    expected = run.answer and f"Expected: {run.answer}"
+    return [text for text in (title, asked, expected, run.note) if text]
 
 
 def section_text(section: Section) -> str:

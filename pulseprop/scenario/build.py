@@ -71,6 +71,7 @@ def build(scenario: Scenario) -> Experiment:
     return Experiment(
         title=content.title or scenario.file,
         question=content.question,
+        answer=content.answer,
         note=" ".join(part for part in (content.laboratory, content.note) if part),
         pulse=pulse,
         path=path,

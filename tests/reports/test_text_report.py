@@ -6,8 +6,9 @@ from dataclasses import replace
 
 import pytest
 
+from pulseprop.propagation.numerals import fixed, percent, quantity, scaled, significant, span
 from pulseprop.propagation.result import Run
-from pulseprop.reports.numbers import fixed, percent, quantity, significant, span
+from pulseprop.propagation.words import headline
 from pulseprop.reports.text import text_report
 
 
@@ -86,6 +87,73 @@ def test_what_has_no_answer_is_a_dash(run: Run) -> None:
     assert "–" in row_of(text_report(replace(run, elements=(unknown,))), "cryostat window")
 
 
+@pytest.mark.parametrize("share", [0.0661, 0.9924, 0.99949, 0.9999985, 1.0])
+def test_opening_and_tables_tell_a_share_alike(run: Run, share: float) -> None:
+    after = replace(run.pulse_out, peak_ratio=share)
+    told = replace(run, headline=headline(run.pulse_in, after, run.path), pulse_out=after)
+    lines = [line for line in " ".join(text_report(told).split()).split(". ") if "peak power " in line]
+    assert f"{percent(share, 2)} of the peak power" in told.headline
+    assert any(f"peak power {percent(share, 2)}," in line for line in lines)
+
+
+def test_durations_of_a_size_share_their_unit(run: Run) -> None:
+    def opening(before: float, after: float) -> str:
+        widths = replace(run.pulse_in, fwhm_fs=before), replace(run.pulse_out, fwhm_fs=after)
+        return headline(*widths, run.path)
+
+    assert opening(1013.2, 988.2).startswith("0.988 ps at the end of the path against 1.01 ps at its start;")
+    assert opening(12.0, 2500.0).startswith("2.5 ps at the end of the path against 12 fs at its start;")
+
+
+def test_what_the_scenario_expects_stands_below_its_question(run: Run) -> None:
+    lines = text_report(replace(run, answer="About 59 fs.")).splitlines()
+    assert lines.index("Expected: About 59 fs.") == lines.index("Asked: How long is it?") + 1
+    assert "Expected" not in text_report(run)
+    assert replace(run, answer="About 59 fs.").as_json()["answer"] == "About 59 fs."
+
+
+def test_loads_that_differ_by_rounding_are_everywhere(run: Run) -> None:
+    first, second = run.elements
+    report = " ".join(text_report(run).split())
+    assert "Highest peak fluence: 5.1e-8 J/cm^2, everywhere." in report
+    close = replace(second, peak_fluence_J_per_cm2=5.1e-8 * (1 + 1e-13), peak_intensity_W_per_cm2=3e6)
+    report = " ".join(text_report(replace(run, elements=(first, close))).split())
+    assert "J/cm^2, everywhere. Highest peak intensity: 4.0e6 W/cm^2, in cryostat window." in report
+    focused = replace(second, peak_fluence_J_per_cm2=5.2e-8)
+    assert "5.2e-8 J/cm^2, in objective." in " ".join(
+        text_report(replace(run, elements=(first, focused))).split()
+    )
+
+
+def test_at_a_line_centre_orders_say_little(run: Run) -> None:
+    on_line = replace(run, path=replace(run.path, gdd_only_fwhm_fs=None))
+    report = " ".join(text_report(on_line).split())
+    assert "orders at a line centre say little: look at the delays and curves" in report
+    assert "Group delay at the pulse's centre, where a line stands" in report
+    unknown = replace(run, path=replace(run.path, gdd_only_fwhm_fs=None, gdd_fs2=None))
+    assert "line centre" not in text_report(unknown)
+
+
+def test_nothing_to_test_is_no_fault_of_the_window(run: Run) -> None:
+    remark = "no matter in the path to which the front test applies"
+    idle = replace(
+        run.causality, verdict="unresolved", remark=remark, front_points=0, energy_ahead_of_front=None
+    )
+    report = " ".join(text_report(replace(run, causality=idle)).split())
+    assert f"Unresolved: {remark}." in report
+    assert report.count("no matter in the path") == 1
+    assert "window" not in report[report.index("CAUSALITY") : report.index("MEDIA")]
+
+
+def test_long_waves_have_a_frequency(run: Run) -> None:
+    # 1 THz is 299.792458 um: SI, definition of the metre.
+    long = replace(run.pulse_out, centre_nm=299792.458)
+    report = text_report(replace(run, pulse_in=long, pulse_out=long))
+    assert row_of(report, "centre (mean")[-3:] == ["1.000", "1.000", "THz"]
+    assert row_of(report, "its vacuum")[-3:] == ["299.8", "299.8", "um"]
+    assert row_of(text_report(run), "centre (mean")[-1] == "nm"
+
+
 def test_empty_path(run: Run) -> None:
     assert "The path is empty" in text_report(replace(run, elements=(), media=()))
 
@@ -124,7 +192,10 @@ def test_long_sums_have_an_exponent() -> None:
     [
         (1.0, "100 %"),
         (0.93261, "93.3 %"),
-        (0.999987, "99.9987 %"),
+        (0.9924, "99.24 %"),
+        (0.99993, "99.99 %"),
+        (0.999951, "100 %"),
+        (0.9999985, "100 %"),
         (1 - 1e-13, "100 %"),
         (1.25, "125 %"),
         (0.0661, "6.61 %"),
@@ -141,6 +212,8 @@ def test_units_of_readable_size() -> None:
     assert quantity(999.9e3, "W") == "1.00 MW"
     assert span(12345.6, 4) == "12.35 ps"
     assert span(4.9e6, 2) == "4.9 ns"
+    assert scaled([12.0, 181.6])[0] == scaled([5.0, 1500.0])[0] == "fs"
+    assert scaled([1013.0, 988.0])[0] == scaled([425.7, 5098.0])[0] == "ps"
 
 
 def test_a_scenario_cannot_steer_the_terminal(run: Run) -> None:

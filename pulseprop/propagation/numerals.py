@@ -5,7 +5,19 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable
 
-__all__ = ["fixed", "last_place", "percent", "prefix_for", "quantity", "scaled", "significant", "span"]
+__all__ = [
+    "LONG_NM",
+    "NOTHING",
+    "fixed",
+    "last_place",
+    "percent",
+    "prefix_for",
+    "quantity",
+    "scaled",
+    "significant",
+    "span",
+    "terahertz",
+]
 
 NOTHING = "–"
 """Stands where there is no answer."""
@@ -29,11 +41,14 @@ LONGEST = 1e6
 TIMES = ((1e9, "us", 1e-9), (1e6, "ns", 1e-6), (1e3, "ps", 1e-3), (0.0, "fs", 1.0))
 """From how many femtoseconds on a unit is used, its symbol, and its value of one femtosecond."""
 
-FINEST = -6
-"""Power of ten of the last decimal of a percentage near the whole; beyond it lies rounding."""
+FINEST = -2
+"""Power of ten of the last decimal of a percentage near the whole: 5e-5 less than all is all."""
 
-ROOM = 10.0
-"""A column keeps its unit ten times longer than a single value, for the sake of its small entries."""
+LONG_NM = 2e4
+"""Wavelength from which on people speak of the frequency, and of micrometres."""
+
+NEARLY = 0.9
+"""Of a unit: from here on it is used for what lies about that size."""
 
 
 def significant(value: float | None, digits: int) -> str:
@@ -68,7 +83,9 @@ def fixed(value: float | None, place: int) -> str:
 
 
 def percent(share: float | None, digits: int = 3) -> str:
-    """A share as per cent. Near the whole the digits count from what is missing: 99.9987 %, not 100.0 %."""
+    """A share as per cent. Near the whole the digits count from what is missing, to two decimals at most:
+    99.24 %, not 99.2 %, and 100 %, not 100.0 %.
+    """
     if share is None or not math.isfinite(share):
         return NOTHING
     missing = 100 * (1.0 - share)
@@ -81,8 +98,9 @@ def percent(share: float | None, digits: int = 3) -> str:
 
 
 def scaled(femtoseconds: Iterable[float | None]) -> tuple[str, float]:
-    """Unit for a column of durations, and the factor that takes femtoseconds to it."""
-    return _time_unit(max((abs(value) for value in femtoseconds if value is not None), default=0.0) / ROOM)
+    """Unit for durations that stand together, by their geometric mean, and what takes femtoseconds to it."""
+    sizes = [math.log(abs(value)) for value in femtoseconds if value]
+    return _time_unit(math.exp(sum(sizes) / len(sizes)) / NEARLY if sizes else 0.0)
 
 
 def _time_unit(femtoseconds: float) -> tuple[str, float]:
@@ -103,6 +121,11 @@ def quantity(value: float | None, unit: str, digits: int = 3) -> str:
         return NOTHING
     size, prefix = prefix_for(value)
     return f"{significant(value / size, digits)} {prefix}{unit}"
+
+
+def terahertz(wavelength_nm: float) -> float:
+    """Frequency in THz of a vacuum wavelength in nm."""
+    return 299792.458 / wavelength_nm
 
 
 def prefix_for(value: float) -> tuple[float, str]:
