@@ -123,7 +123,7 @@ def _analytic(density: AbsorptionDensity, omega: Real, room: Real, count: int) -
     """Contour integral about each omega; below the axis N(z) = conj N(conj z) + 2 i k(z), k the tail."""
     turn = np.exp(2j * np.pi * (np.arange(CONTOUR_POINTS) + 0.5) / CONTOUR_POINTS)
     radius = CONTOUR_RADIUS * room[..., None]
-    z = omega[..., None] + radius * turn
+    z = np.asarray(omega[..., None] + radius * turn, dtype=np.complex128)
     upper = z.imag > 0
     values = density.transform(np.where(upper, z, np.conj(z)))
     values = np.where(upper, values, np.conj(values) + 2j * _tail(density, z))

@@ -20,7 +20,7 @@ def thinned(axis_start: float, axis_step: float, height: Real, points: int) -> t
     best = height[:whole].reshape(-1, group).argmax(axis=1) + np.arange(0, whole, group)
     if whole < height.size:
         best = np.append(best, whole + int(height[whole:].argmax()))
-    return axis_start + axis_step * best, height[best]
+    return np.asarray(axis_start + axis_step * best, dtype=np.float64), height[best]
 
 
 def contrast_curve(
