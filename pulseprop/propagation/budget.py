@@ -13,7 +13,7 @@ from pulseprop.elements.path import Path
 from pulseprop.elements.slab import Slab
 from pulseprop.grid import Grid
 from pulseprop.measures.widths import fwhm
-from pulseprop.propagation.intensity import b_integral, on_axis, peak_power
+from pulseprop.propagation.intensity import b_integral, coarser, on_axis, peak_power
 from pulseprop.propagation.linear import blocks
 from pulseprop.propagation.result import ElementMeasures
 from pulseprop.propagation.sizing import Windows
@@ -77,7 +77,7 @@ def _row(state: Walk, index: int, element: Element, advance: Advance) -> Element
     radius = element.beam_radius or state.pulse_radius
     exponent = _exponent(state, element, before)
     b = _b_of(state, element, before, radius, exponent)
-    peak_in = peak_power(before, state.spectrum) if radius else None
+    peak_in = _peak_in(state, before) if radius else None
     advance(element, exponent, state.spectrum)
     _through_faces(state, element, exponent, grid)
     orders = _orders(element, state.omega)
@@ -142,7 +142,14 @@ def _b_of(state: Walk, element: Element, grid: Grid, radius: float | None, expon
     known = element.medium.nonlinear_index(state.omega)
     if known is None:
         return None
-    return b_integral(grid, state.spectrum, exponent, state.omega, known.value, radius, element.length)
+    coarse, every = coarser(grid, state.windows.needed)
+    spectrum = state.spectrum[::every].copy()
+    return b_integral(coarse, spectrum, exponent[::every], state.omega, known.value, radius, element.length)
+
+
+def _peak_in(state: Walk, grid: Grid) -> float:
+    coarse, every = coarser(grid, state.windows.needed)
+    return peak_power(coarse, state.spectrum[::every])
 
 
 def _digits(element: Element) -> int:

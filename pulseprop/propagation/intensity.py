@@ -6,12 +6,14 @@ B = (2 pi / lambda) int n2 I_peak dz.
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.grid import Grid
 
-__all__ = ["b_integral", "on_axis", "peak_power"]
+__all__ = ["b_integral", "coarser", "on_axis", "peak_power"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -38,6 +40,17 @@ def peak_power(grid: Grid, spectrum: Complex) -> float:
     below, here, above = np.log(np.maximum(power[[top - 1, top, (top + 1) % power.size]], 1e-300))
     bend = below - 2 * here + above
     return float(np.exp(here - (above - below) ** 2 / (8 * bend))) if bend < 0 else float(np.exp(here))
+
+
+def coarser(grid: Grid, needed: float) -> tuple[Grid, int]:
+    """The shortest window that holds `needed` s twice over, and of how many frequencies it takes one.
+
+    Peak powers need no more: a spectrum is smooth on the scale of the inverse of the pulse's length.
+    """
+    every = 1
+    while grid.points % (4 * every) == 0 and grid.span / (2 * every) > 2 * needed:
+        every *= 2
+    return replace(grid, points=grid.points // every), every
 
 
 def b_integral(

@@ -16,7 +16,6 @@ from pulseprop.propagation.experiment import Experiment, MeasuredAutocorrelation
 from pulseprop.propagation.linear import multiply_by
 from pulseprop.propagation.result import AutocorrelationFit, SignCase
 from pulseprop.propagation.sizing import first_windows
-from pulseprop.pulse.chirp import gdd_from_autocorrelation, glass_that_tells_the_sign
 from pulseprop.pulse.measured import MeasuredPulse
 from pulseprop.pulse.pulse import Pulse
 from pulseprop.pulse.source import launch
@@ -56,6 +55,8 @@ def autocorrelation_fit(experiment: Experiment) -> AutocorrelationFit | None:
     trace = experiment.autocorrelation
     if trace is None:
         return None
+    from pulseprop.pulse.chirp import gdd_from_autocorrelation
+
     pulse = experiment.pulse
     fit = gdd_from_autocorrelation(pulse, trace.delay, trace.signal)
     glass = _glass(pulse, fit.gdd)
@@ -76,6 +77,8 @@ def autocorrelation_fit(experiment: Experiment) -> AutocorrelationFit | None:
 
 def _glass(pulse: Pulse | MeasuredPulse, gdd: float) -> tuple[float | None, float | None, float | None]:
     """Thickness in mm of the glass that tells the sign, and both autocorrelation widths in fs after it."""
+    from pulseprop.pulse.chirp import glass_that_tells_the_sign
+
     medium = catalogue_medium(GLASS)
     if abs(gdd) < SMALLEST_GDD or not medium.band.contains(np.array(pulse.centre)):
         return None, None, None

@@ -44,10 +44,14 @@ class GridWish:
 
 @dataclass(frozen=True, kw_only=True)
 class Windows:
-    """The grid at the entrance, and the start of the window (s) after each element; the last is the exit."""
+    """The grid at the entrance, and the start of the window (s) after each element; the last is the exit.
+
+    needed: what pulse and delays fill of the window anywhere on the path, s, without ringing.
+    """
 
     grid: Grid
     starts: tuple[float, ...]
+    needed: float
 
     def after(self, index: int) -> Grid:
         """The grid after element `index` (from 0); the entrance for -1."""
@@ -174,12 +178,13 @@ def _start(first: float, last: float, span: float) -> float:
 
 
 def _placed(grid: Grid, first: float, last: float, delays: list[Real]) -> Windows:
-    starts = []
+    starts, needed = [], last - first
     for delay in delays:
         begin, end = first + float(delay.min()), last + float(delay.max())
+        needed = max(needed, end - begin)
         spare = max(grid.span - (end - begin), 0.0)
         starts.append(begin - min(0.25 * spare, 0.05 * grid.span))
-    return Windows(grid=grid, starts=tuple(starts))
+    return Windows(grid=grid, starts=tuple(starts), needed=needed)
 
 
 def larger(windows: Windows, pulse: PulseSource, path: Path, wish: GridWish) -> Windows:

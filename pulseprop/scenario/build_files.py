@@ -5,13 +5,12 @@ from __future__ import annotations
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from pathlib import Path
-from typing import TypeVar
+from typing import TYPE_CHECKING, TypeVar
 
 import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
-from pulseprop.material.absorption_table import AbsorptionTable
 from pulseprop.material.composition import WithAbsorption
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import Constant
@@ -30,6 +29,9 @@ from pulseprop.scenario.schema_lines import LineTable
 from pulseprop.scenario.schema_medium import MediumTable
 from pulseprop.scenario.tables import NumberTable
 from pulseprop.units import to_si
+
+if TYPE_CHECKING:
+    from pulseprop.material.absorption_table import AbsorptionTable
 
 __all__ = [
     "SpectrumColumns",

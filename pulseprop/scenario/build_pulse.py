@@ -7,7 +7,6 @@ from typing import Any
 
 from pulseprop.propagation.experiment import MeasuredAutocorrelation
 from pulseprop.pulse.bandwidth import duration_from_bandwidth
-from pulseprop.pulse.chirp import chirp_from_duration
 from pulseprop.pulse.measured import MeasuredPulse
 from pulseprop.pulse.pulse import Pulse
 from pulseprop.pulse.shapes import shape_named
@@ -30,6 +29,8 @@ def built_pulse(scenario: Scenario) -> tuple[Pulse | MeasuredPulse, bool]:
     pulse = _measured(scenario) if table.shape == "measured" else _named(table)
     both_signs = table.measured_duration is not None
     if table.measured_duration is not None:
+        from pulseprop.pulse.chirp import chirp_from_duration
+
         positive, _ = chirp_from_duration(pulse, table.measured_duration)
         pulse = replace(pulse, gdd=positive)
     if table.peak_power is not None:
