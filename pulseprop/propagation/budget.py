@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 from pulseprop.elements.element import Element, orders_of_element
 from pulseprop.elements.path import Path
 from pulseprop.elements.slab import Slab
+from pulseprop.errors import InputError
 from pulseprop.grid import Grid
 from pulseprop.measures.widths import fwhm
 from pulseprop.propagation.intensity import b_integral, coarser, on_axis, peak_power
@@ -83,6 +84,15 @@ def _row(state: Walk, index: int, element: Element, advance: Advance) -> Element
     orders = _orders(element, state.omega)
     state.gdd = None if orders[1] is None or state.gdd is None else state.gdd + orders[1]
     state.tod = None if orders[2] is None or state.tod is None else state.tod + orders[2]
+    energy_out = grid.energy(state.spectrum)
+    if not energy_out > 0:
+        raise InputError(
+            "nothing leaves this element: it absorbs all light of the pulse",
+            value=f"{element.name}, {element.detail}",
+            allowed="a transmission that double precision holds (about 1e-300)",
+            remedy="Check thickness and absorption, and their units",
+            place=element.name,
+        )
     return ElementMeasures(
         name=element.name,
         kind=element.kind,
@@ -91,7 +101,7 @@ def _row(state: Walk, index: int, element: Element, advance: Advance) -> Element
         gdd_fs2=_scaled(orders[1], 2),
         tod_fs3=_scaled(orders[2], 3),
         fod_fs4=_scaled(orders[3], 4),
-        transmission=grid.energy(state.spectrum) / energy_in,
+        transmission=energy_out / energy_in,
         gdd_sum_fs2=_scaled(state.gdd, 2),
         tod_sum_fs3=_scaled(state.tod, 3),
         fwhm_after_fs=fwhm(grid.to_field(state.spectrum), grid.step) * FEMTO,

@@ -137,6 +137,7 @@ class Solver:
     estimated_error: float | None
     enlargements: int = 0
     wrapped_energy: float = 0.0
+    aliased_energy: float = 0.0
 
 
 @dataclass(frozen=True, kw_only=True)

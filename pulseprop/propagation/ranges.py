@@ -1,0 +1,67 @@
+"""Whether a pulse stays where the records of the path's media hold."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.errors import RangeError
+from pulseprop.grid import Grid
+from pulseprop.propagation.experiment import Experiment
+from pulseprop.propagation.numerals import percent
+
+__all__ = ["RANGE_SHARE", "check_range", "range_warnings"]
+
+Complex = NDArray[np.complex128]
+
+RANGE_SHARE = 1e-6
+"""Share of the pulse's energy that may lie outside the range of a record."""
+
+
+def _energy_outside(grid: Grid, spectrum: Complex, low: float, high: float) -> float:
+    """Share of the energy outside low to high, rad/s."""
+    power = spectrum.real**2 + spectrum.imag**2
+    inside = slice(*np.searchsorted(grid.frequency, np.array([low, high]) / (2 * np.pi)))
+    total = float(power.sum())
+    return max(total - float(power[inside].sum()), 0.0) / total if total else 0.0
+
+
+def check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
+    for medium in experiment.path.media:
+        low, high = medium.band.low, medium.band.high
+        outside = _energy_outside(grid, spectrum, low, high)
+        if outside <= RANGE_SHARE or (experiment.beyond_range == "causal" and medium.extendable):
+            continue
+        covered = f"{_nanometres(high)} to {_nanometres(low)}"
+        raise RangeError(
+            f"the pulse leaves the range of medium {medium.name!r}",
+            value=f"{percent(outside, 2)} of the pulse's energy lies outside {covered}",
+            allowed=f"at most {RANGE_SHARE:g} of the energy outside the range of a record",
+            remedy=(
+                'Take a record that covers the spectrum, a narrower pulse, or [grid] beyond_range = "causal"'
+                if medium.extendable
+                else "Relaxation terms may not be used above their range: add what absorbs there"
+            ),
+            file=experiment.file,
+            place=f"medium {medium.name}",
+        )
+
+
+def _nanometres(omega: float) -> str:
+    if omega == 0:
+        return "any longer wavelength"
+    if not np.isfinite(omega):
+        return "any shorter wavelength"
+    return f"{2 * np.pi * 299792458.0 / omega * 1e9:.6g} nm"
+
+
+def range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tuple[str, ...]:
+    said = []
+    for medium in experiment.path.media:
+        outside = _energy_outside(grid, spectrum, medium.band.low, medium.band.high)
+        if outside > RANGE_SHARE:
+            said.append(
+                f"{percent(outside, 2)} of the pulse's energy lies outside the range of {medium.name}, "
+                "which was continued causally"
+            )
+    return tuple(said)
