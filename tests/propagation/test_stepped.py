@@ -1,0 +1,28 @@
+"""The split-step loop on a linear path against the exact transfer: 1e-12 of the peak, thick glass included."""
+
+from __future__ import annotations
+
+from pathlib import Path
+
+import numpy as np
+import pytest
+
+import pulseprop as pp
+
+SCENARIO = Path(__file__).parents[2] / "scenarios" / "cryostat.toml"
+
+
+@pytest.mark.parametrize("window", ["3 mm", "30 mm"])
+def test_split_steps_without_terms_give_the_exact_field(window):
+    sets = (f"path.cryostat window.thickness={window}",)
+    exact = pp.send(SCENARIO, (*sets, "propagation.method=exact")).fields
+    stepped = pp.send(SCENARIO, (*sets, "propagation.method=split-step")).fields
+    peak = np.abs(exact.envelope_out).max()
+    assert np.abs(stepped.envelope_out - exact.envelope_out).max() <= 1e-12 * peak
+
+
+def test_the_report_says_how_many_steps_were_taken():
+    run = pp.send(SCENARIO, ("propagation.method=split-step",))
+    assert run.solver.method == "symmetric split step"
+    assert run.solver.steps > len(run.elements)
+    assert run.solver.transforms > run.solver.steps
