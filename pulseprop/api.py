@@ -21,9 +21,9 @@ if TYPE_CHECKING:
     from pulseprop.propagation.send import Progress
     from pulseprop.scenario.read import Scenario
 
-__all__ = ["MediumReport", "OrdersRow", "catalogue", "dataset", "media", "medium", "read", "send", "version"]
+from pulseprop.constants import TWO_PI_C
 
-SPEED_OF_LIGHT = 299792458.0
+__all__ = ["MediumReport", "OrdersRow", "catalogue", "dataset", "media", "medium", "read", "send", "version"]
 
 
 def version() -> str:
@@ -171,26 +171,23 @@ def _omega(place: str | float) -> float:
 
     if isinstance(place, str):
         return quantity(place, "spectral")
-    return 2 * np.pi * SPEED_OF_LIGHT / place
+    return TWO_PI_C / place
 
 
 def _row(found: Medium, omega: float) -> OrdersRow:
     from pulseprop.errors import RangeError
 
     if not found.band.contains(np.array(omega)):
-        low, high = (
-            2 * np.pi * SPEED_OF_LIGHT / edge * 1e9 if edge else np.inf
-            for edge in (found.band.high, found.band.low)
-        )
+        low, high = (TWO_PI_C / edge * 1e9 if edge else np.inf for edge in (found.band.high, found.band.low))
         raise RangeError(
             f"a wavelength outside the range of {found.name!r}",
-            value=f"{2 * np.pi * SPEED_OF_LIGHT / omega * 1e9:.6g} nm",
+            value=f"{TWO_PI_C / omega * 1e9:.6g} nm",
             allowed=f"{low:.6g} nm to {high:.6g} nm",
             remedy="Take a record that covers it: `pulseprop media` lists ranges",
         )
     orders = found.orders(omega)
     return OrdersRow(
-        wavelength_nm=2 * np.pi * SPEED_OF_LIGHT / omega * 1e9,
+        wavelength_nm=TWO_PI_C / omega * 1e9,
         index=_finite(orders.index),
         k=_finite(orders.k),
         absorption_per_mm=_finite(orders.absorption * 1e-3),

@@ -13,6 +13,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.elements.faces import Polarisation, reflection_squared
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
@@ -24,7 +25,6 @@ __all__ = ["Slab"]
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
-SPEED_OF_LIGHT = 299792458.0
 DEPTH_OF_DECAY = 21.0
 """Fields are followed down to exp(-21), 7.6e-10 of their first value."""
 

@@ -17,6 +17,7 @@ from typing import Literal, get_args
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.errors import InputError
 
 __all__ = ["Quantity", "absorption_index", "beyond_ceiling", "face_reflectance", "internal_transmittance"]
@@ -24,7 +25,6 @@ __all__ = ["Quantity", "absorption_index", "beyond_ceiling", "face_reflectance",
 Real = NDArray[np.float64]
 Complex = NDArray[np.complex128]
 
-SPEED_OF_LIGHT = 299792458.0
 
 Quantity = Literal[
     "absorbance", "napierian", "alpha", "k", "molar", "internal_transmittance", "transmittance"

@@ -16,6 +16,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.material.absorption_density import AbsorptionDensity, Tails, density_through
 from pulseprop.material.absorption_quantities import (
@@ -254,7 +255,7 @@ def _ceiling_notes(
 ) -> tuple[str, ...]:
     if not np.any(hidden):
         return ()
-    low, high = (2 * np.pi * 299792458.0 / omega[hidden][[-1, 0]]) * 1e9
+    low, high = (TWO_PI_C / omega[hidden][[-1, 0]]) * 1e9
     return (
         f"{row_list(rows[hidden])} ({low:.6g} to {high:.6g} nm) above the ceiling {ceiling:g} "
         "are lower limits: left out; absorption is interpolated over them and may be higher",
@@ -264,7 +265,7 @@ def _ceiling_notes(
 def _tail_notes(omega: Real, density: AbsorptionDensity, tails: Tails) -> tuple[str, ...]:
     middle = len(omega) // 2
     below, above = tail_shares(density, tails, float(omega[middle - 1] + omega[middle]) / 2)
-    nm = 2 * np.pi * 299792458.0 * 1e9
+    nm = TWO_PI_C * 1e9
     low = f"above {nm / omega[0]:.6g} nm absorption index"
     high = f"below {nm / omega[-1]:.6g} nm absorption index"
     return (

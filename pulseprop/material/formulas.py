@@ -22,6 +22,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.material.completion import Completion, complete
 from pulseprop.material.response import Band, View
@@ -32,7 +33,7 @@ __all__ = ["MICROMETRE_OMEGA", "Formula", "Pole", "Power", "gas_term", "pole_ter
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
-MICROMETRE_OMEGA = 2 * np.pi * 299792458.0 / 1e-6
+MICROMETRE_OMEGA = TWO_PI_C / 1e-6
 """Angular frequency of the vacuum wavelength 1 um, rad/s."""
 
 

@@ -12,9 +12,9 @@ from __future__ import annotations
 
 import math
 
+from pulseprop.constants import GAS_CONSTANT
 from pulseprop.errors import InputError
 from pulseprop.material.formulas import MICROMETRE_OMEGA, Formula, Power, gas_term
-from pulseprop.material.molar_density import GAS_CONSTANT
 from pulseprop.material.response import Band
 
 __all__ = ["humid_air_response", "vapour_fraction"]

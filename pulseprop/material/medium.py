@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.material.orders import Orders, orders_of
 from pulseprop.material.refraction import refraction_series
 from pulseprop.material.response import Band, Response, View
@@ -85,11 +86,11 @@ class Medium:
 
     def absorption(self, omega: Real) -> Real:
         """Napierian absorption coefficient of the intensity, 1/m: 2 k omega / c."""
-        return np.asarray(2 * np.imag(self.refraction(omega)[0]) * omega / 299792458.0)
+        return np.asarray(2 * np.imag(self.refraction(omega)[0]) * omega / SPEED_OF_LIGHT)
 
     def nonlinear_index(self, omega: float) -> NonlinearIndex | None:
         """The published n2 measured nearest to omega (rad/s), None where there is none."""
-        wavelength = 2 * np.pi * 299792458.0 / omega
+        wavelength = TWO_PI_C / omega
         known = sorted(self.n2, key=lambda entry: abs((entry.wavelength or wavelength) - wavelength))
         return known[0] if known else None
 

@@ -4,10 +4,9 @@ from __future__ import annotations
 
 import numpy as np
 
-__all__ = ["GAS_CONSTANT", "molar_density"]
+from pulseprop.constants import GAS_CONSTANT
 
-GAS_CONSTANT = 8.31446261815324
-"""J/(mol K), exact in the SI since 2019."""
+__all__ = ["molar_density"]
 
 
 def molar_density(pressure: float, temperature: float, virial: float = 0.0) -> float:

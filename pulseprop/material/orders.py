@@ -11,11 +11,10 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.numerics.series import Series, product, variable
 
-__all__ = ["SPEED_OF_LIGHT", "Orders", "orders_of"]
-
-SPEED_OF_LIGHT = 299792458.0
+__all__ = ["Orders", "orders_of"]
 
 
 @dataclass(frozen=True, kw_only=True)

@@ -11,6 +11,7 @@ from math import factorial
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.material.refraction import susceptibility_of
 from pulseprop.material.response import EVERYWHERE, Band, View
 from pulseprop.numerics.series import Numbers, Series, power, quotient, variable
@@ -19,8 +20,6 @@ __all__ = ["OrdersOnly"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
-
-SPEED_OF_LIGHT = 299792458.0
 
 
 @dataclass(frozen=True, kw_only=True)

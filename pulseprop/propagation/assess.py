@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.grid import Grid
 from pulseprop.measures.autocorrelation import autocorrelation_fwhm
 from pulseprop.measures.limits import TransformLimit, square_integral, transform_limit
@@ -14,8 +15,6 @@ from pulseprop.propagation.result import PulseMeasures
 __all__ = ["centre_of", "measured"]
 
 Complex = NDArray[np.complex128]
-
-SPEED_OF_LIGHT = 299792458.0
 
 
 def centre_of(grid: Grid, spectrum: Complex) -> float:

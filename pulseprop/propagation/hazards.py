@@ -7,6 +7,7 @@ from collections.abc import Iterable, Sequence
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.elements.slab import Slab
 from pulseprop.grid import Grid
 from pulseprop.measures.limits import TransformLimit
@@ -18,7 +19,6 @@ __all__ = ["hazard_facts"]
 
 Complex = NDArray[np.complex128]
 
-SPEED_OF_LIGHT = 299792458.0
 FAINT = 1e-6
 """Faces of gases reflect less than this: no beam."""
 

@@ -11,6 +11,7 @@ from dataclasses import replace
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.grid import Grid
 
 __all__ = ["b_integral", "coarser", "on_axis", "peak_power"]
@@ -18,7 +19,6 @@ __all__ = ["b_integral", "coarser", "on_axis", "peak_power"]
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
-SPEED_OF_LIGHT = 299792458.0
 RELATIVE_ERROR = 1e-3
 MOST_PANELS = 64
 BLOCK = 1 << 16

@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import RangeError
 from pulseprop.grid import Grid
 from pulseprop.propagation.experiment import Experiment
@@ -52,7 +53,7 @@ def _nanometres(omega: float) -> str:
         return "any longer wavelength"
     if not np.isfinite(omega):
         return "any shorter wavelength"
-    return f"{2 * np.pi * 299792458.0 / omega * 1e9:.6g} nm"
+    return f"{TWO_PI_C / omega * 1e9:.6g} nm"
 
 
 def range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tuple[str, ...]:

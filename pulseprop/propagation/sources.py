@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.elements.path import Path
 from pulseprop.errors import PulsepropError
 from pulseprop.material.library import catalogue_medium
@@ -40,7 +41,7 @@ def valid_nm(medium: Medium) -> tuple[float, float] | None:
     low, high = medium.band.low, medium.band.high
     if low <= 0 or not np.isfinite(high):
         return None
-    metre = 2 * np.pi * 299792458.0
+    metre = TWO_PI_C
     return float(f"{metre / high * 1e9:.9g}"), float(f"{metre / low * 1e9:.9g}")
 
 

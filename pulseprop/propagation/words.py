@@ -5,7 +5,7 @@ from __future__ import annotations
 from pulseprop.propagation.numerals import percent, scaled, significant
 from pulseprop.propagation.result import PathMeasures, PulseMeasures
 
-__all__ = ["headline"]
+__all__ = ["durations", "headline"]
 
 RINGING_WORTH_A_WORD = 1e-3
 
@@ -15,7 +15,7 @@ APART = 10.0
 
 def headline(before: PulseMeasures, after: PulseMeasures, path: PathMeasures) -> str:
     """One sentence that answers what arrives."""
-    leaves, enters = _durations(after.fwhm_fs, before.fwhm_fs)
+    leaves, enters = durations(after.fwhm_fs, before.fwhm_fs)
     parts = [f"{leaves} at the end of the path against {enters} at its start"]
     parts.append(f"{percent(after.peak_ratio or 0.0, 2)} of the peak power of the limit")
     if path.transmission < 0.9995:
@@ -29,7 +29,7 @@ def headline(before: PulseMeasures, after: PulseMeasures, path: PathMeasures) ->
     return "; ".join(parts) + "."
 
 
-def _durations(*femtoseconds: float) -> list[str]:
+def durations(*femtoseconds: float) -> list[str]:
     """Three digits each without idle zeros, in one unit where they are of a size."""
     near = max(femtoseconds) <= APART * min(femtoseconds)
     units = [scaled(femtoseconds if near else [duration]) for duration in femtoseconds]

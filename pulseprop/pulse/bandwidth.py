@@ -4,15 +4,12 @@ from __future__ import annotations
 
 import math
 
+from pulseprop.constants import PLANCK, SPEED_OF_LIGHT
 from pulseprop.errors import InputError
 from pulseprop.pulse.shapes import Shape
 
-__all__ = ["BANDWIDTH_KINDS", "PLANCK", "SPEED_OF_LIGHT", "duration_from_bandwidth", "frequency_width"]
+__all__ = ["BANDWIDTH_KINDS", "duration_from_bandwidth", "frequency_width"]
 
-PLANCK = 6.62607015e-34
-"""J s, exact by the definition of the SI units (2019)."""
-
-SPEED_OF_LIGHT = 299792458.0
 
 BANDWIDTH_KINDS = ("frequency", "wavelength", "wavenumber", "photon_energy")
 """What a bandwidth may be a width of; in Hz, m, 1/m and J."""

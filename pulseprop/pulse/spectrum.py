@@ -14,9 +14,9 @@ from dataclasses import replace
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import PLANCK, SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.measures.widths import fwhm
-from pulseprop.pulse.bandwidth import PLANCK, SPEED_OF_LIGHT
 from pulseprop.pulse.measured import CutLimit, MeasuredPulse
 from pulseprop.pulse.source import launch
 
@@ -159,7 +159,7 @@ def _checked_phase(phase: Real, count: int) -> Real:
 
 def _angular_frequency(x: Real, axis: str) -> Real:
     if axis == "wavelength":
-        return 2 * np.pi * SPEED_OF_LIGHT / x
+        return TWO_PI_C / x
     per_unit = {"frequency": 1.0, "wavenumber": SPEED_OF_LIGHT, "photon_energy": 1 / PLANCK}
     return 2 * np.pi * per_unit[axis] * x
 

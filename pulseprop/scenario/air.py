@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.material.library import catalogue_medium
 
@@ -29,7 +30,7 @@ def omegas_of_air_wavelengths(omega: NDArray[np.float64]) -> NDArray[np.float64]
     if outside.any():
         raise InputError(
             "a wavelength in air outside the range of the air formula",
-            value=f"{2 * np.pi * 299792458.0 / omega[outside][0] * 1e9:.6g} nm",
+            value=f"{TWO_PI_C / omega[outside][0] * 1e9:.6g} nm",
             allowed="230 nm to 1690 nm",
             remedy='State vacuum wavelengths (wavelength_in = "vacuum")',
         )

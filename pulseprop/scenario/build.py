@@ -6,6 +6,7 @@ from collections.abc import Iterator
 from dataclasses import replace
 from math import pi
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.errors import InputError, PulsepropError
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.sizing import GridWish
@@ -14,7 +15,6 @@ from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_path import built_path
 from pulseprop.scenario.build_pulse import autocorrelation_of, built_pulse
 from pulseprop.scenario.read import Scenario
-from pulseprop.units import LIGHT_SPEED
 
 __all__ = ["build", "media_of"]
 
@@ -46,7 +46,7 @@ def _beyond_rows(pulse: PulseSource, media: MediaOfScenario) -> Iterator[str]:
 
 
 def _nanometres(omega: float) -> str:
-    return f"{2e9 * pi * LIGHT_SPEED / omega:.6g}"
+    return f"{2e9 * pi * SPEED_OF_LIGHT / omega:.6g}"
 
 
 def build(scenario: Scenario) -> Experiment:

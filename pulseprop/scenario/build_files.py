@@ -10,6 +10,7 @@ from typing import TYPE_CHECKING, TypeVar
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import PLANCK, SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.material.composition import WithAbsorption
 from pulseprop.material.medium import Medium
@@ -45,8 +46,6 @@ __all__ = [
 Real = NDArray[np.float64]
 T = TypeVar("T")
 
-TWO_PI_C = 2 * np.pi * 299792458.0
-PLANCK = 6.62607015e-34
 DIGITS_OF_TABLES = 3
 SMALLEST_K = 1e-12
 """Below this, a share of k is no uncertainty: it keeps the linear programme scaled."""
@@ -192,7 +191,7 @@ def _si_axis(omega: Real, axis: str) -> Real:
     """Vacuum wavelength in m, Hz, 1/m or J of angular frequencies."""
     if axis == "wavelength":
         return np.asarray(TWO_PI_C / omega)
-    scale = {"frequency": 1.0, "wavenumber": 1 / 299792458.0, "photon_energy": PLANCK}[axis]
+    scale = {"frequency": 1.0, "wavenumber": 1 / SPEED_OF_LIGHT, "photon_energy": PLANCK}[axis]
     return omega / (2 * np.pi) * scale
 
 

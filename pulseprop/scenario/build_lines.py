@@ -14,18 +14,13 @@ from collections.abc import Callable
 
 import numpy as np
 
+from pulseprop.constants import ELECTRON_CHARGE, ELECTRON_MASS, SPEED_OF_LIGHT, VACUUM_PERMITTIVITY
 from pulseprop.material.lines import Carriers, LorentzLine, Relaxation, VoigtLine, line
 from pulseprop.material.medium import Resonance
 from pulseprop.material.response import EVERYWHERE, Band
 from pulseprop.scenario.schema_lines import CarriersTable, LineTable, RelaxationTable
 
 __all__ = ["built_carriers", "built_line", "built_relaxation", "resonance_of"]
-
-SPEED_OF_LIGHT = 299792458.0
-ELECTRON_CHARGE = 1.602176634e-19
-ELECTRON_MASS = 9.1093837139e-31
-VACUUM_PERMITTIVITY = 8.8541878188e-12
-"""CODATA 2022: C (exact), kg, F/m."""
 
 
 def built_line(

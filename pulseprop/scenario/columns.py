@@ -13,10 +13,11 @@ from pathlib import Path
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.errors import InputError
 from pulseprop.scenario.schema_files import AutocorrelationFile, SpectralFile, TraceFile
 from pulseprop.scenario.tables import NumberTable, read_numbers
-from pulseprop.units import LIGHT_SPEED, to_si
+from pulseprop.units import to_si
 
 __all__ = ["Columns", "spectral_columns", "time_columns"]
 
@@ -137,7 +138,7 @@ def _believable(values: Real, unit: str) -> NDArray[np.bool_]:
     """Where the numbers, in that unit, lie between the shortest and the longest wavelength."""
     positive = values > 0
     omega = np.asarray(to_si(np.where(positive, values, 1.0), unit, "spectral"))
-    wavelength = 2 * np.pi * LIGHT_SPEED / omega
+    wavelength = 2 * np.pi * SPEED_OF_LIGHT / omega
     return np.asarray(positive & (wavelength >= SHORTEST) & (wavelength <= LONGEST))
 
 

@@ -7,6 +7,7 @@ from typing import Annotated, Any, Literal
 
 from pydantic import Field, PlainValidator, model_validator
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.scenario.fields import (
     Fraction,
     Name,
@@ -21,7 +22,6 @@ from pulseprop.scenario.fields import (
 from pulseprop.scenario.schema_files import AbsorptionFile, Anchor, IndexFile
 from pulseprop.scenario.schema_formula import Formula
 from pulseprop.scenario.schema_lines import CarriersTable, LinesFile, LineTable, RelaxationTable
-from pulseprop.units import LIGHT_SPEED
 
 __all__ = ["ComponentTable", "GasTable", "KerrTable", "MediumTable", "OrdersOnlyTable"]
 
@@ -73,7 +73,7 @@ class OrdersOnlyTable(Table):
 
     @property
     def _scale(self) -> float:
-        return self.at.wavelength**2 / (2 * math.pi * LIGHT_SPEED)
+        return self.at.wavelength**2 / (TWO_PI_C)
 
     @model_validator(mode="after")
     def _consistent(self) -> OrdersOnlyTable:

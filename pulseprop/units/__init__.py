@@ -6,7 +6,7 @@ factor and a dimension, `text` reads and shows values.
 
 from __future__ import annotations
 
-from pulseprop.units.kinds import KINDS, LIGHT_SPEED, Kind, kind_named
+from pulseprop.units.kinds import KINDS, Kind, kind_named
 from pulseprop.units.symbols import Unit, unit_from
 from pulseprop.units.text import (
     Position,
@@ -21,7 +21,6 @@ from pulseprop.units.text import (
 
 __all__ = [
     "KINDS",
-    "LIGHT_SPEED",
     "Kind",
     "Position",
     "Unit",

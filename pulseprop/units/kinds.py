@@ -12,6 +12,7 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
 from typing import TYPE_CHECKING
 
+from pulseprop.constants import PLANCK, SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import InputError
 
 if TYPE_CHECKING:
@@ -21,11 +22,8 @@ if TYPE_CHECKING:
     Values = float | NDArray[np.float64]
     Conversion = Callable[[Values], Values]
 
-__all__ = ["KINDS", "LIGHT_SPEED", "PLANCK", "Form", "Kind", "kind_named"]
+__all__ = ["KINDS", "Form", "Kind", "kind_named"]
 
-LIGHT_SPEED = 299792458.0
-PLANCK = 6.62607015e-34
-"""m/s and J s, exact by definition of the SI (2019)."""
 
 ENERGY, POWER = "kg m^2 s^-2", "kg m^2 s^-3"
 
@@ -77,16 +75,16 @@ def plain(words: str, dimension: str, si: str, *examples: str) -> Kind:
 
 
 SPECTRAL = {
-    "m": inverse(2 * math.pi * LIGHT_SPEED),
+    "m": inverse(TWO_PI_C),
     "Hz": scaled(2 * math.pi),
-    "m^-1": scaled(2 * math.pi * LIGHT_SPEED),
+    "m^-1": scaled(TWO_PI_C),
     ENERGY: scaled(2 * math.pi / PLANCK),
     "rad s^-1": SAME,
 }
 
 WIDTHS = {
     "Hz": SAME,
-    "m^-1": scaled(LIGHT_SPEED),
+    "m^-1": scaled(SPEED_OF_LIGHT),
     ENERGY: scaled(1 / PLANCK),
     "rad s^-1": scaled(1 / (2 * math.pi)),
 }
@@ -143,7 +141,7 @@ KINDS: dict[str, Kind] = {
         "an absorption integrated over frequency or wavenumber",
         "Hz/m",
         ("25 GHz/cm", "0.8 cm^-2"),
-        {"Hz m^-1": SAME, "m^-2": scaled(LIGHT_SPEED)},
+        {"Hz m^-1": SAME, "m^-2": scaled(SPEED_OF_LIGHT)},
         {"m^-1 s^-1": FREQUENCY_HINT},
     ),
     "concentration": plain("a concentration", "m^-3 mol", "mol/m^3", "200 umol/L", "1 mmol/L"),

@@ -12,8 +12,9 @@ from dataclasses import dataclass
 from decimal import Decimal
 from typing import TYPE_CHECKING, Any, Literal
 
+from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import InputError
-from pulseprop.units.kinds import KINDS, LIGHT_SPEED, Kind, form_of, kind_named
+from pulseprop.units.kinds import KINDS, Kind, form_of, kind_named
 from pulseprop.units.symbols import Unit, unit_from
 
 if TYPE_CHECKING:
@@ -39,7 +40,7 @@ class Position:
     @property
     def wavelength(self) -> float:
         """Vacuum wavelength, m (of a value that was given in air: as given)."""
-        return 2 * math.pi * LIGHT_SPEED / self.omega
+        return TWO_PI_C / self.omega
 
 
 @dataclass(frozen=True)
@@ -58,7 +59,7 @@ class Width:
             return self.value
         f = omega / (2 * math.pi)
         reach = self.value * f
-        return 2 * reach * f / (LIGHT_SPEED + math.hypot(LIGHT_SPEED, reach))
+        return 2 * reach * f / (SPEED_OF_LIGHT + math.hypot(SPEED_OF_LIGHT, reach))
 
 
 def quantity(value: object, kind: str) -> float:
