@@ -15,8 +15,8 @@ import rich_click as click
 
 if TYPE_CHECKING:
     from pulseprop.api import MediumReport
+    from pulseprop.material.medium import Medium
     from pulseprop.propagation.result import Run
-    from pulseprop.reports.curves import IndexCurve
     from pulseprop.scenario.read import Scenario
 
 __all__ = ["main"]
@@ -183,7 +183,7 @@ def _save(run: Run, path: str) -> None:
 def _draw(run: Run, scenario: Scenario, page: str | None, figures: str | None) -> None:
     from pulseprop.reports.figures import drawings, write_figures
 
-    drawn = list(drawings(run, _curves(run, scenario)))
+    drawn = list(drawings(run, _media(run, scenario)))
     if page:
         from pulseprop.reports.page import write_page
 
@@ -192,13 +192,16 @@ def _draw(run: Run, scenario: Scenario, page: str | None, figures: str | None) -
         write_figures(drawn, figures)
 
 
-def _curves(run: Run, scenario: Scenario) -> list[IndexCurve]:
-    """Index curves of the media of a path over the wavelengths of the pulse."""
-    from pulseprop.reports.curves import index_curves
-    from pulseprop.scenario.build import build
+def _media(run: Run, scenario: Scenario) -> tuple[Medium, ...]:
+    """The media of the path; what else the scenario holds is not built again."""
+    from math import pi
 
-    low, high = run.hazards.wavelengths_at_1e_4_nm
-    return index_curves(build(scenario).path.media, low, high)
+    from pulseprop.propagation.numerals import terahertz
+    from pulseprop.scenario.build import media_of
+    from pulseprop.scenario.build_path import built_path
+
+    centre = 2e12 * pi * terahertz(run.pulse_in.centre_nm)
+    return built_path(scenario, media_of(scenario), centre).media
 
 
 def _answer(run: Run, json_path: str | None) -> None:
@@ -271,7 +274,7 @@ def _draw_media(names: tuple[str, ...], found: Sequence[MediumReport], path: str
     from pulseprop.errors import InputError
     from pulseprop.reports.curves import index_curves
     from pulseprop.reports.document import check_target
-    from pulseprop.reports.draw_band import draw_media
+    from pulseprop.reports.draw_media import draw_media
     from pulseprop.reports.figures import write_figure
 
     check_target(path)

@@ -88,7 +88,9 @@ def test_all_outputs_at_once(scenario: str, tmp_path: Path, capsys: pytest.Captu
     assert (tmp_path / "a.nc").read_bytes()[:4] == b"\x89HDF"
     assert (tmp_path / "a.html").read_text().startswith("<!DOCTYPE html>")
     assert "Index and group-velocity dispersion" in (tmp_path / "a.html").read_text()
-    assert {"pulse.png", "media.svg", "budget.csv"} <= {path.name for path in (tmp_path / "slides").iterdir()}
+    assert {"pulse.png", "media.svg", "susceptibility.svg", "budget.csv"} <= {
+        path.name for path in (tmp_path / "slides").iterdir()
+    }
     assert {path.name for path in tmp_path.iterdir()} == {"a.json", "a.nc", "a.html", "slides"}
 
 

@@ -9,20 +9,28 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.grid import Grid
-from pulseprop.material.medium import Medium
+from pulseprop.material.medium import Medium, Resonance
+from pulseprop.material.response import View
 from pulseprop.measures.contrast import thinned
 from pulseprop.measures.profile import find_peak
 from pulseprop.numerics.interpolation import band_limited, mean_turn
+from pulseprop.numerics.series import product, variable
 
 __all__ = [
     "POINTS",
+    "ChiCurve",
+    "FieldFacts",
     "IndexCurve",
     "PulseCurve",
     "bounds_of",
+    "chi_curves",
     "extremes",
+    "field_facts",
     "index_curves",
     "pulse_curve",
+    "strongest_line",
     "thin_pairs",
+    "volts_per_metre",
 ]
 
 Complex = NDArray[np.complex128]
@@ -30,12 +38,11 @@ Real = NDArray[np.float64]
 
 SPEED_OF_LIGHT = 299792458.0
 
-POINTS = 2000
+VACUUM_IMPEDANCE = 376.730313412
+"""1 / (epsilon0 c) in ohm: CODATA 2022."""
+
+POINTS = 1600
 """Points of a curve: more than a screen has columns."""
-
-VISIBLE = 2e-3
-"""Power over the peak below which nothing is seen on a linear axis."""
-
 
 LINE_PLACES = np.sinh(np.linspace(-4.0, 4.0, 81)) / 4
 """Where a line is looked at, in its widths: out to seven of them, closest in the middle."""
@@ -44,18 +51,22 @@ MOST_LINES = 20
 """Lines of one medium that are resolved; of a long list the others are seen at the even places."""
 
 
+MOST_LOOKED_AT = 200
+"""Lines of one medium among which the strongest is sought."""
+
+
 class IndexCurve(NamedTuple):
-    """Refractive index n + ik of a medium over vacuum wavelength in nm, and its GVD in fs^2/mm; all (K,)."""
+    """n - 1 and k of a medium over vacuum wavelength in nm, and its GVD in fs^2/mm; all (K,)."""
 
     name: str
     wavelength_nm: Real
-    n: Real
+    excess: Real
     k: Real
     gvd: Real
 
 
 def index_curves(
-    media: Iterable[Medium], low_nm: float, high_nm: float, points: int = 201
+    media: Iterable[Medium], low_nm: float, high_nm: float, points: int = 161
 ) -> list[IndexCurve]:
     """Curves of media between two vacuum wavelengths, cut to the range where the data behind each hold."""
     curves = [_index_curve(medium, low_nm, high_nm, points) for medium in media]
@@ -63,12 +74,60 @@ def index_curves(
 
 
 def _index_curve(medium: Medium, low_nm: float, high_nm: float, points: int) -> IndexCurve:
+    omega = _places(medium, *_reach(medium, low_nm, high_nm), points)
+    excess = medium.refraction(omega)[0] if omega.size else np.empty(0, dtype=complex)
+    return IndexCurve(
+        medium.name, 2 * np.pi * SPEED_OF_LIGHT / omega * 1e9, excess.real, excess.imag, _gvd(medium, omega)
+    )
+
+
+def _gvd(medium: Medium, omega: Real) -> Real:
+    """The second derivative of omega n / c in fs^2/mm, all places at once."""
+    if not omega.size:
+        return omega
+    series = product(variable(omega, 3), medium.refraction(omega, 3, View.PRINTED))
+    return np.asarray(2e27 * series[2].real / SPEED_OF_LIGHT)
+
+
+class ChiCurve(NamedTuple):
+    """Susceptibility of a medium, complex, over frequency in THz, ascending; both (K,)."""
+
+    name: str
+    frequency: Real
+    chi: Complex
+
+
+def chi_curves(media: Iterable[Medium], low_nm: float, high_nm: float, points: int = 161) -> list[ChiCurve]:
+    """chi of media between two vacuum wavelengths, cut to the range where the data behind each hold."""
+    curves = [_chi_curve(medium, *_reach(medium, low_nm, high_nm), points) for medium in media]
+    return [curve for curve in curves if curve.frequency.size]
+
+
+def strongest_line(media: Iterable[Medium], low_nm: float, high_nm: float) -> ChiCurve | None:
+    """chi about the line that absorbs most between two wavelengths, out to seven of its widths, or None."""
+    found: list[tuple[float, Medium, Resonance]] = []
+    for medium in media:
+        low, high = _reach(medium, low_nm, high_nm)
+        for line in medium.resonances[:MOST_LOOKED_AT]:
+            if low < line.centre < high:
+                found.append((float(medium.susceptibility(np.array(line.centre)).imag), medium, line))
+    if not found:
+        return None
+    _, medium, line = max(found, key=lambda entry: entry[0])
+    omega = np.unique(line.centre + line.width * LINE_PLACES)
+    return ChiCurve(medium.name, omega * 1e-12 / (2 * np.pi), medium.susceptibility(omega))
+
+
+def _chi_curve(medium: Medium, low: float, high: float, points: int) -> ChiCurve:
+    omega = _places(medium, low, high, points)[::-1]
+    chi = medium.susceptibility(omega) if omega.size else np.empty(0, dtype=complex)
+    return ChiCurve(medium.name, omega * 1e-12 / (2 * np.pi), chi)
+
+
+def _reach(medium: Medium, low_nm: float, high_nm: float) -> tuple[float, float]:
+    """Angular frequencies between two wavelengths where the data behind a medium hold."""
     high, low = (2 * np.pi * SPEED_OF_LIGHT / (edge * 1e-9) for edge in (low_nm, high_nm))
-    omega = _places(medium, max(low, medium.band.low), min(high, medium.band.high), points)
-    index = medium.index(omega)
-    wavelength = 2 * np.pi * SPEED_OF_LIGHT / omega * 1e9
-    gvd = np.array([medium.orders(float(place)).gvd for place in omega]) * 1e27
-    return IndexCurve(medium.name, wavelength, index.real, index.imag, gvd)
+    return max(low, medium.band.low), min(high, medium.band.high)
 
 
 def _places(medium: Medium, low: float, high: float, points: int) -> Real:
@@ -90,7 +149,7 @@ class PulseCurve(NamedTuple):
     field: Real
 
 
-def bounds_of(envelope: Complex, step: float, least: float = VISIBLE) -> tuple[float, float, float]:
+def bounds_of(envelope: Complex, step: float, least: float) -> tuple[float, float, float]:
     """Instant of the highest sample from the window's start, and how far on each side the power reaches above
     `least` of the peak; all in s."""
     height = envelope.real**2 + envelope.imag**2
@@ -118,6 +177,29 @@ def pulse_curve(grid: Grid, envelope: Complex, before: float, after: float) -> P
     time = grid.step * offset
     carrier = np.exp(-2j * np.pi * grid.carrier * (time + grid.start + grid.step * position))
     return PulseCurve(time, np.abs(field) ** 2, (field * carrier).real)
+
+
+class FieldFacts(NamedTuple):
+    """Of the real field: peak-to-peak value in W^(1/2); instant (s) of its main peak, front's clock."""
+
+    peak_to_peak: float
+    arrival: float
+
+
+def field_facts(grid: Grid, envelope: Complex, centre: float) -> FieldFacts:
+    """Of the field three cycles of the centre frequency (Hz) about the envelope's peak."""
+    near = pulse_curve(grid, envelope, 3 / centre, 3 / centre)
+    main = int(np.argmax(np.abs(near.field)))
+    origin = grid.start + grid.step * find_peak(envelope).position
+    return FieldFacts(float(np.ptp(near.field)), origin + float(near.time[main]))
+
+
+def volts_per_metre(field: float, radius: float) -> float:
+    """Electric field on the axis of a Gaussian beam of this 1/e^2 radius (m), of a field in W^(1/2).
+
+    |field|^2 is the power averaged over the carrier, so E^2 = 2 I / (epsilon0 c) and I = 2 P / (pi w^2).
+    """
+    return field * float(np.sqrt(4 * VACUUM_IMPEDANCE / np.pi)) / radius
 
 
 def extremes(values: Real, group: int) -> NDArray[np.intp]:

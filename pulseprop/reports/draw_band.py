@@ -1,24 +1,24 @@
-"""Figures over the spectrum and along the path: spectra with group delay, media, the budget as bars."""
+"""Figures over the spectrum and along the path: spectra with group delay, the budget as bars."""
 
 from __future__ import annotations
 
 import textwrap
-from collections.abc import Sequence
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING
 
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.propagation.numerals import scaled, span
+from pulseprop.propagation.numerals import LONG_NM, scaled, span, terahertz
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import POINTS, SPEED_OF_LIGHT, IndexCurve, extremes
+from pulseprop.reports.curves import POINTS, extremes
 from pulseprop.reports.drawing import Drawing, source_line
-from pulseprop.reports.figure_style import COLOURS, canvas, styled, words
+from pulseprop.reports.figure_style import COLOURS, Frame, canvas, label_x, label_y, styled, words
+from pulseprop.reports.section_budget import on_a_line
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
-__all__ = ["draw_budget", "draw_media", "draw_spectrum"]
+__all__ = ["draw_budget", "draw_spectrum"]
 
 Real = NDArray[np.float64]
 
@@ -28,20 +28,17 @@ SHOWN = 1e-3
 TRUSTED = 1e-6
 """Spectral energy over its peak below which no group delay is drawn."""
 
-MOST_NM = 1e4
-"""Wavelength from which on an axis is in micrometres."""
-
 LEAST_DELAY = 0.1
 """Height of the axis of group delay in widths of the pulse: less than that cannot be seen in its shape."""
 
 CLOSEST = 0.07
 """Distance of two marks on the axis of wavelength over the length of the axis."""
 
+LARGE_FS2 = 1e5
+"""GDD from which on ps^2 are easier to read."""
+
 WIDEST_LABELS = 8
 """Elements whose names fit below their bars in the ordinary size of type."""
-
-LINES = ("after", "warm", "green", "before", "ink")
-STYLES = ("-", "--", "-.", ":", "-")
 
 
 @styled
@@ -51,23 +48,23 @@ def draw_spectrum(run: Run) -> Drawing:
     top = float(before.max())
     mean = run.path.net_group_delay_fs or 0.0
     unit, factor = scaled([float(np.nanmax(np.abs(delay - mean)))])
-    figure, panels = canvas((3.0, 2.0), source=source_line(run))
+    figure, panels = canvas((3.0, 2.0), source=source_line(run), frame=Frame(right=0.885, top=0.86))
     panels[0].fill_between(frequency, before / top, color=COLOURS["before"], alpha=0.25, linewidth=0)
     panels[0].plot(frequency, before / top, color=COLOURS["before"], linestyle="--", label="enters")
     panels[0].plot(frequency, after / top, color=COLOURS["after"], label="leaves")
-    panels[0].set_ylabel("energy per THz / peak")
+    label_y(panels[0], "spectrum / peak")
     panels[0].set_ylim(0, None)
     panels[0].tick_params(labelbottom=False)
     panels[0].legend(loc="upper right")
     _wavelength_axis(panels[0], float(frequency[0]), float(frequency[-1]))
     panels[1].plot(frequency, (delay - mean) * factor, color=COLOURS["warm"])
     _room(panels[1], LEAST_DELAY * run.pulse_in.fwhm_fs * factor)
-    panels[1].set_ylabel(f"group delay, {unit}", color=COLOURS["warm"])
-    panels[1].set_xlabel("frequency, THz")
+    label_y(panels[1], f"group delay, {unit}", "warm")
+    label_x(panels[1], "frequency, THz")
     right = panels[1].twinx()
     right.spines.right.set_visible(True)
     right.plot(frequency, transmission, color=COLOURS["green"], linewidth=1.4)
-    right.set_ylabel("transmission", color=COLOURS["green"])
+    label_y(right, "transmission", "green", right=True)
     right.set_ylim(0, 1.05)
     for panel in panels:
         panel.set_xlim(frequency[0], frequency[-1])
@@ -115,23 +112,21 @@ def _thin(rows: list[Real]) -> tuple[Real, Real, Real, Real, Real]:
 
 
 def _wavelength_axis(panel: Axes, low: float, high: float) -> None:
-    """Vacuum wavelength along the top of an axis from low to high THz: nm, or um from ten micrometres on."""
+    """Vacuum wavelength along the top of an axis from low to high THz, in nm or um; wide enough apart."""
     from matplotlib.ticker import MaxNLocator
 
-    unit, scale = ("nm", 1e-3) if SPEED_OF_LIGHT * 1e-3 / high < MOST_NM else ("um", 1e-6)
-
-    def turned(value: Any) -> Any:
-        return SPEED_OF_LIGHT * scale / np.maximum(np.asarray(value, dtype=float), 1e-9)
-
-    top = panel.secondary_xaxis("top", functions=(turned, turned))
-    top.set_xlabel(f"vacuum wavelength, {unit}")
-    shortest, longest = SPEED_OF_LIGHT * scale / high, SPEED_OF_LIGHT * scale / max(low, 0.1 * high)
-    ticks: list[float] = []
-    for tick in MaxNLocator(6).tick_values(shortest, longest):
-        apart = not ticks or turned(ticks[-1]) - turned(tick) > CLOSEST * (high - low)
-        if shortest <= tick <= longest and apart:
-            ticks.append(tick)
-    top.set_xticks(ticks)
+    shortest, longest = terahertz(high), terahertz(max(low, 0.1 * high))
+    unit, scale = ("nm", 1.0) if shortest < LONG_NM else ("um", 1e-3)
+    places: dict[float, str] = {}
+    for tick in MaxNLocator(6).tick_values(shortest * scale, longest * scale):
+        if not shortest * scale <= tick <= longest * scale:
+            continue
+        place = terahertz(tick / scale)
+        if not places or min(places) - place > CLOSEST * (high - low):
+            places[place] = f"{tick:g}"
+    top = panel.secondary_xaxis("top")
+    top.set_xticks(list(places), list(places.values()))
+    top.set_xlabel(f"vacuum wavelength, {unit}", labelpad=8)
 
 
 def _room(panel: Axes, least: float) -> None:
@@ -142,71 +137,21 @@ def _room(panel: Axes, least: float) -> None:
 
 
 @styled
-def draw_media(curves: Sequence[IndexCurve], source: str) -> Drawing:
-    """Index, absorption and GVD of media over wavelength."""
-    absorbs = any(float(np.max(curve.k, initial=0.0)) > 1e-12 for curve in curves)
-    figure, panels = canvas((1.0,) * (3 if absorbs else 2), source=source)
-    longest = max(float(curve.wavelength_nm.max()) for curve in curves)
-    unit, scale = ("nm", 1.0) if longest < MOST_NM else ("um", 1e-3)
-    for number, curve in enumerate(curves):
-        wavelength, k = curve.wavelength_nm * scale, np.where(curve.k > 0, curve.k, np.nan)
-        for panel, values in zip(panels, (curve.n, curve.gvd, k), strict=False):
-            panel.plot(
-                wavelength,
-                values,
-                label=words(curve.name),
-                color=COLOURS[LINES[number % 5]],
-                linestyle=STYLES[number % 5],
-            )
-    panels[0].set_ylabel("index n")
-    panels[1].set_ylabel("GVD, fs²/mm")
-    if absorbs:
-        panels[2].set_ylabel("k")
-        panels[2].set_yscale("log")
-    for panel in panels:
-        panel.margins(x=0)
-    for panel in panels[:-1]:
-        panel.tick_params(labelbottom=False)
-    panels[-1].set_xlabel(f"vacuum wavelength, {unit}")
-    figure.align_ylabels(panels)
-    panels[0].legend(loc="lower left", bbox_to_anchor=(0, 1), ncols=min(len(curves), 4))
-    columns = {}
-    for curve in curves:
-        columns[f"wavelength_nm ({curve.name})"] = curve.wavelength_nm
-        columns[f"n ({curve.name})"] = curve.n
-        columns[f"k ({curve.name})"] = curve.k
-        columns[f"gvd_fs2_per_mm ({curve.name})"] = curve.gvd
-    caption = "Index and group-velocity dispersion of the media" + (", and their k." if absorbs else ".")
-    return Drawing(name="media", caption=caption, figure=figure, columns=columns)
-
-
-@styled
 def draw_budget(run: Run) -> Drawing:
     """GDD of each element as a bar, and the width of the pulse after it."""
     names = tuple(element.name for element in run.elements)
     gdd = np.array([np.nan if row.gdd_fs2 is None else row.gdd_fs2 for row in run.elements], dtype=float)
     width = np.array([run.pulse_in.fwhm_fs, *(row.fwhm_after_fs for row in run.elements)], dtype=float)
-    unit, factor = scaled(width)
-    figure, (panel,) = canvas(source=source_line(run))
-    place = np.arange(1, len(names) + 1)
-    panel.bar(place, gdd, width=0.55, color=COLOURS["after"], alpha=0.85)
-    panel.axhline(0, color=COLOURS["ink"], linewidth=1.2)
-    panel.set_ylabel("GDD, fs²", color=COLOURS["after"])
-    panel.set_xticks([0, *place], ["start", *(_short(name, len(names)) for name in names)])
-    right = panel.twinx()
-    right.spines.right.set_visible(True)
-    right.plot(
-        np.arange(len(names) + 1),
-        width * factor,
-        color=COLOURS["warm"],
-        marker="o",
-        markersize=9,
-        linestyle="--",
-    )
-    right.set_ylabel(f"FWHM after it, {unit}", color=COLOURS["warm"])
-    right.set_ylim(0, 1.08 * float(width.max()) * factor)
+    figure, (panel,) = canvas(source=source_line(run), frame=Frame(right=0.885, bottom=0.2))
+    _bars(panel, gdd)
+    panel.set_xticks(range(len(names) + 1), ["start", *(_short(name, len(names)) for name in names)])
     panel.tick_params(axis="x", labelsize=17 * min(1.0, WIDEST_LABELS / len(names)))
-    panel.set_title("What each element adds, and the pulse after it")
+    _widths(panel, width)
+    panel.set_title(
+        "What each element adds (orders at a line centre say little)"
+        if on_a_line(run.path)
+        else "What each element adds, and the pulse after it"
+    )
     columns: dict[str, Real | tuple[str, ...]] = {
         "element": ("start", *names),
         "gdd_fs2": np.concatenate(([np.nan], gdd)),
@@ -216,6 +161,28 @@ def draw_budget(run: Run) -> Drawing:
     return Drawing(name="budget", caption=caption, figure=figure, columns=columns)
 
 
+def _bars(panel: Axes, gdd: Real) -> None:
+    """Bars in fs^2, or in ps^2 where they are large; of few elements they stay slender."""
+    largest = float(np.max(np.abs(np.nan_to_num(gdd)), initial=0.0))
+    factor, unit = (1.0, "fs²") if largest < LARGE_FS2 else (1e-6, "ps²")
+    place = np.arange(1, gdd.size + 1)
+    panel.bar(place, gdd * factor, width=min(0.55, 0.13 * (gdd.size + 1)), color=COLOURS["after"], alpha=0.85)
+    panel.axhline(0, color=COLOURS["ink"], linewidth=1.2)
+    panel.set_xlim(-0.5, gdd.size + 0.5)
+    label_y(panel, f"GDD, {unit}", "after")
+
+
+def _widths(panel: Axes, width: Real) -> None:
+    unit, factor = scaled(width)
+    right = panel.twinx()
+    right.spines.right.set_visible(True)
+    right.plot(
+        range(width.size), width * factor, color=COLOURS["warm"], marker="o", markersize=9, linestyle="--"
+    )
+    label_y(right, f"FWHM after it, {unit}", "warm", right=True)
+    right.set_ylim(0, 1.08 * float(width.max()) * factor)
+
+
 def _short(name: str, count: int) -> str:
     """A name on lines short enough to stand beside its neighbours."""
-    return "\n".join(textwrap.wrap(words(name), max(90 // (min(count, WIDEST_LABELS) + 1), 8))[:3])
+    return "\n".join(textwrap.wrap(words(name), max(80 // (min(count, WIDEST_LABELS) + 1), 9))[:3])

@@ -14,11 +14,21 @@ from pulseprop.measures.autocorrelation import (
     interferometric_autocorrelation,
 )
 from pulseprop.measures.spectrogram import spectrogram
-from pulseprop.propagation.numerals import percent, scaled, span
+from pulseprop.propagation.numerals import percent, scaled, span, terahertz
 from pulseprop.propagation.result import AutocorrelationFit, Run
+from pulseprop.propagation.words import durations
 from pulseprop.reports.curves import PulseCurve, bounds_of, pulse_curve, thin_pairs
 from pulseprop.reports.drawing import Drawing, source_line
-from pulseprop.reports.figure_style import COLOURS, canvas, night_map, styled
+from pulseprop.reports.figure_style import (
+    COLOURS,
+    Frame,
+    canvas,
+    decades,
+    label_x,
+    label_y,
+    night_map,
+    styled,
+)
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -35,10 +45,16 @@ Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
 MOST_CYCLES = 45
-"""Cycles of the carrier in the window up to which the field itself is drawn."""
+"""Cycles of the centre frequency that a panel of the field can show."""
+
+FEW_CYCLES = 12
+"""Of a pulse that enters no longer than this, some cycles of the field are always shown."""
 
 FAINT_PEAK = 0.03
 """Below this share of the entering peak, each pulse is drawn over its own peak."""
+
+FAINT_POWER, FAINT_FIELD = 1e-2, 2e-3
+"""Power over the peak below which nothing is seen of a power, and of a field, on a linear axis."""
 
 FLOOR = 1e-10
 """Ten decades below the peak."""
@@ -46,36 +62,47 @@ FLOOR = 1e-10
 RINGS = 1e-4
 """Share of the energy after three widths from which on the logarithmic panel stands below the linear one."""
 
+FAINT_ENERGY = 3e-5
+"""Share of the energy that may lie outside a spectrogram."""
+
+SHOWN_DECADES = 5
+"""Of a spectrogram."""
+
+UNITS = 1e15
+"""Femtoseconds in a second."""
+
 
 @styled
 def draw_pulse(run: Run) -> Drawing:
-    """Power before and after, from their peaks; below it the field, or ten decades of a pulse that rings."""
+    """Power before and after, from their peaks; below it the field, and ten decades of a pulse that rings."""
     before, after = _curves(run)
-    unit, factor = scaled([1e15 * float(np.ptp(after.time))])
-    cycles = float(np.ptp(after.time)) * run.fields.grid_out.carrier
+    unit, factor = scaled([UNITS * float(np.ptp(after.time))])
+    reach = _reach_of_field(run, before, after)
     rings = bool(run.pulse_out.split) or (run.pulse_out.energy_after or 0.0) > RINGS
-    heights = (3.0, *((2.0,) if cycles <= MOST_CYCLES else ()), *((2.0,) if rings else ()))
-    figure, panels = canvas(heights, source=source_line(run))
-    _linear(panels[0], before, after, 1e15 * factor)
-    panels[0].set_title(f"{span(run.pulse_in.fwhm_fs, 3)} enters, {span(run.pulse_out.fwhm_fs, 3)} leaves")
-    if cycles <= MOST_CYCLES:
-        panels[0].tick_params(labelbottom=False)
-        _fields(panels[1], before, after, 1e15 * factor)
-        panels[1].set_xlim(panels[0].get_xlim())
-    panels[-2 if rings else -1].set_xlabel(f"time from the peak of each pulse, {unit}")
+    heights = (2.6, *((2.0,) if reach else ()), *((1.8,) if rings else ()))
+    gap = {1: 0.0, 2: 0.36, 3: 0.5}[len(heights)]
+    figure, panels = canvas(heights, source=source_line(run), frame=Frame(gap=gap))
+    _linear(panels[0], before, after, UNITS * factor)
+    enters, leaves = durations(run.pulse_in.fwhm_fs, run.pulse_out.fwhm_fs)
+    panels[0].set_title(f"{enters} enters, {leaves} leaves")
+    label_x(panels[0], f"time from the peak of each pulse, {unit}")
+    if reach:
+        near = _fields(panels[1], run, reach)
+        label_x(panels[1], f"the same, {near}")
     if rings:
-        panels[-1].set_xlabel(f"the same, {_decades(panels[-1], run)[0]}")
-    figure.align_ylabels(panels)
+        label_x(panels[-1], f"the same, {_decades(panels[-1], run, 4)[0]}")
     delay = span(run.path.centroid_delay_fs, 4)
     caption = (
-        f"Power before and after the path, each from its peak; the centroid leaves {delay} after that of the "
+        "Power "
+        + ("and field " if reach else "")
+        + f"before and after the path, each from its peak; the centroid leaves {delay} after that of the "
         "same pulse through vacuum."
     )
     columns = {
-        "time_in_fs": before.time * 1e15,
+        "time_in_fs": before.time * UNITS,
         "power_in_W": before.power,
         "field_in_sqrtW": before.field,
-        "time_out_fs": after.time * 1e15,
+        "time_out_fs": after.time * UNITS,
         "power_out_W": after.power,
         "field_out_sqrtW": after.field,
     }
@@ -83,18 +110,41 @@ def draw_pulse(run: Run) -> Drawing:
 
 
 def _curves(run: Run) -> tuple[PulseCurve, PulseCurve]:
-    """Both pulses over one stretch of time, a tenth wider than what is visible of either."""
+    """Both pulses over one stretch of time."""
+    return _both(run, *_visible(run, FAINT_POWER))
+
+
+def _visible(run: Run, least: float) -> tuple[float, float]:
+    """Seconds before and after the peaks, a tenth more than either pulse stands above a share of its peak."""
     fields = run.fields
     reach = [
-        bounds_of(envelope, fields.grid_out.step)[1:]
+        bounds_of(envelope, fields.grid_out.step, least)[1:]
         for envelope in (fields.envelope_in, fields.envelope_out)
     ]
     half = 0.45 * fields.grid_out.span
     early, late = (min(1.1 * max(side), half) for side in zip(*reach, strict=True))
+    return early, late
+
+
+def _both(run: Run, early: float, late: float) -> tuple[PulseCurve, PulseCurve]:
+    fields = run.fields
     return (
         pulse_curve(fields.grid_in, fields.envelope_in, early, late),
         pulse_curve(fields.grid_out, fields.envelope_out, early, late),
     )
+
+
+def _reach_of_field(run: Run, before: PulseCurve, after: PulseCurve) -> tuple[float, float] | None:
+    """How far before and after the peaks, in s, the field is shown; None where it would be a mere band."""
+    frequency = 1e12 * terahertz(run.pulse_in.centre_nm)
+    early, late = -float(after.time[0]), float(after.time[-1])
+    if run.fields.form == "field":
+        early, late = _visible(run, FAINT_FIELD)
+    if (early + late) * frequency <= MOST_CYCLES:
+        return early, late
+    if run.fields.form != "field" and run.pulse_in.fwhm_fs * frequency > FEW_CYCLES * UNITS:
+        return None
+    return min(early, 0.3 * MOST_CYCLES / frequency), min(late, 0.7 * MOST_CYCLES / frequency)
 
 
 def _linear(panel: Axes, before: PulseCurve, after: PulseCurve, scale: float) -> None:
@@ -112,38 +162,44 @@ def _linear(panel: Axes, before: PulseCurve, after: PulseCurve, scale: float) ->
         color=COLOURS["after"],
         label=f"leaves (peak {percent(leaving / top, 2)} of the entering)" if own else "leaves",
     )
-    panel.set_ylabel("relative power")
-    panel.set_ylim(0, None)
+    label_y(panel, "power")
+    panel.set_ylim(0, 1.05)
     panel.margins(x=0)
     panel.legend(loc="upper right")
 
 
-def _fields(panel: Axes, before: PulseCurve, after: PulseCurve, scale: float) -> None:
-    top = float(np.sqrt(before.power.max()))
-    panel.plot(before.time * scale, before.field / top, color=COLOURS["before"], linewidth=1.6)
-    panel.plot(after.time * scale, after.field / top, color=COLOURS["after"], linewidth=2.0)
+def _fields(panel: Axes, run: Run, reach: tuple[float, float]) -> str:
+    """Field and envelope over the peak of the field that enters; returns the unit of time."""
+    before, after = _both(run, *reach)
+    unit, factor = scaled([UNITS * sum(reach)])
+    scale, top = UNITS * factor, float(np.sqrt(before.power.max()))
+    panel.plot(before.time * scale, before.field / top, color=COLOURS["before"], linewidth=1.5)
+    panel.plot(after.time * scale, after.field / top, color=COLOURS["after"], linewidth=2.2)
     for sign in (1, -1):
         envelope = sign * np.sqrt(after.power) / top
         panel.plot(after.time * scale, envelope, color=COLOURS["after"], linewidth=1.0, alpha=0.6)
-    panel.set_ylabel("field")
+    panel.margins(x=0)
+    label_y(panel, "field")
+    return unit
 
 
-def _decades(panel: Axes, run: Run) -> tuple[str, PulseCurve, PulseCurve]:
+def _decades(panel: Axes, run: Run, marks: int = 7) -> tuple[str, PulseCurve, PulseCurve]:
     """Both pulses over ten decades, each from its own peak; returns the unit of time and what is drawn."""
     fields = run.fields
     curves = [
         _deep_curve(fields.grid_in, fields.envelope_in),
         _deep_curve(fields.grid_out, fields.envelope_out),
     ]
-    unit, factor = scaled([1e15 * max(float(np.ptp(curve.time)) for curve in curves)])
+    unit, factor = scaled([UNITS * max(float(np.ptp(curve.time)) for curve in curves)])
     for curve, name, label, style in zip(
         curves, ("before", "after"), ("enters", "leaves"), ("--", "-"), strict=True
     ):
-        time, ratio = curve.time * 1e15 * factor, _above_floor(curve)
-        panel.semilogy(time, ratio, color=COLOURS[name], linestyle=style, label=label, linewidth=2.0)
+        time, ratio = curve.time * UNITS * factor, _above_floor(curve)
+        panel.plot(time, ratio, color=COLOURS[name], linestyle=style, label=label, linewidth=2.0)
+    decades(panel, marks)
     panel.set_ylim(FLOOR, 3)
     panel.margins(x=0.02)
-    panel.set_ylabel("log power")
+    label_y(panel, "power / peak")
     panel.grid(axis="y", color=COLOURS["faint"], linewidth=0.8)
     return unit, curves[0], curves[1]
 
@@ -165,7 +221,7 @@ def draw_contrast(run: Run) -> Drawing:
     """Power over ten decades, as long as it lasts."""
     figure, (panel,) = canvas(source=source_line(run))
     unit, before, after = _decades(panel, run)
-    panel.set_xlabel(f"time from the peak of each pulse, {unit}")
+    label_x(panel, f"time from the peak of each pulse, {unit}")
     panel.set_title("Ten decades of power")
     panel.legend(loc="upper right")
     share = percent(run.pulse_out.energy_after, 2)
@@ -174,9 +230,9 @@ def draw_contrast(run: Run) -> Drawing:
         "the peak."
     )
     columns = {
-        "time_in_fs": before.time * 1e15,
+        "time_in_fs": before.time * UNITS,
         "power_in_over_peak": _above_floor(before),
-        "time_out_fs": after.time * 1e15,
+        "time_out_fs": after.time * UNITS,
         "power_out_over_peak": _above_floor(after),
     }
     return Drawing(name="contrast", caption=caption, figure=figure, columns=columns)
@@ -185,37 +241,52 @@ def draw_contrast(run: Run) -> Drawing:
 @styled
 def draw_spectrogram(run: Run) -> Drawing:
     """Which frequencies arrive when."""
-    seen = spectrogram(run.fields.grid_out, run.fields.spectrum_out)
-    unit, factor = scaled([1e15 * float(np.ptp(seen.time))])
-    figure, (panel,) = canvas(source=source_line(run))
-    origin = run.fields.grid_out.start + bounds_of(run.fields.envelope_out, run.fields.grid_out.step)[0]
-    level = np.log10(np.maximum(seen.density / seen.density.max(), 1e-6))
-    image = panel.imshow(
-        level,
-        extent=(
-            *((seen.time[[0, -1]] - origin) * 1e15 * factor),
-            *(seen.frequency[[0, -1]] * 1e-12),
-        ),
-        origin="lower",
-        aspect="auto",
-        cmap=night_map(),
-        vmin=-5,
-        vmax=0,
-        interpolation="bilinear",
+    seen = spectrogram(run.fields.grid_out, run.fields.spectrum_out, share=FAINT_ENERGY)
+    origin = run.fields.grid_out.start + bounds_of(run.fields.envelope_out, run.fields.grid_out.step, 0.5)[0]
+    bright = seen.density > 10.0**-SHOWN_DECADES * seen.density.max()
+    rows, columns_of_time = (_stretch(bright.any(axis=axis)) for axis in (1, 0))
+    density = seen.density[rows, columns_of_time] / seen.density.max()
+    time, frequency = (seen.time[columns_of_time] - origin) * UNITS, seen.frequency[rows] * 1e-12
+    unit, factor = scaled([float(np.ptp(time))])
+    figure, panels = canvas(
+        source=source_line(run), frame=Frame(right=0.89, beside=0.05), widths=(1.0, 0.025)
     )
-    bar = figure.colorbar(image, ax=panel, label="decades below the peak", pad=0.02)
-    bar.outline.set_visible(False)
-    panel.set_xlabel(f"time from the peak, {unit}")
-    panel.set_ylabel("frequency, THz")
-    gate = span(seen.gate * 1e15, 2)
-    panel.set_title(f"Which frequencies arrive when (gate {gate})")
+    _map(panels[0], density, (time[0] * factor, time[-1] * factor, frequency[0], frequency[-1]))
+    _scale_of_map(panels[1])
+    label_x(panels[0], f"time from the peak, {unit}")
+    label_y(panels[0], "frequency, THz")
+    gate = span(seen.gate * UNITS, 2)
+    panels[0].set_title(f"Which frequencies arrive when (gate {gate})")
     caption = f"Spectrogram of the pulse that leaves, Gaussian gate of {gate} FWHM, five decades."
     columns = {
-        "time_fs": np.repeat((seen.time - origin)[::4] * 1e15, seen.frequency[::4].size),
-        "frequency_THz": np.tile(seen.frequency[::4] * 1e-12, seen.time[::4].size),
-        "density_over_peak": (seen.density / seen.density.max())[::4, ::4].T.ravel(),
+        "time_fs": np.repeat(time[::4], frequency[::4].size),
+        "frequency_THz": np.tile(frequency[::4], time[::4].size),
+        "density_over_peak": density[::4, ::4].T.ravel(),
     }
     return Drawing(name="spectrogram", caption=caption, figure=figure, columns=columns)
+
+
+def _stretch(bright: NDArray[np.bool_]) -> slice:
+    """From the first to the last place where there is light, and one more on each side."""
+    lit = np.flatnonzero(bright)
+    return slice(max(int(lit[0]) - 1, 0), int(lit[-1]) + 2)
+
+
+def _map(panel: Axes, density: Real, extent: tuple[float, float, float, float]) -> None:
+    level = np.log10(np.maximum(density, 10.0 ** (-SHOWN_DECADES - 1)))
+    colours = night_map()(level / SHOWN_DECADES + 1, bytes=True)
+    panel.imshow(colours, extent=extent, origin="lower", aspect="auto", interpolation="bilinear")
+
+
+def _scale_of_map(panel: Axes) -> None:
+    ramp = np.linspace(-SHOWN_DECADES, 0, 64)[:, None]
+    _map(panel, 10.0**ramp, (0.0, 1.0, -SHOWN_DECADES, 0.0))
+    panel.set_xticks([])
+    panel.yaxis.tick_right()
+    panel.yaxis.set_label_position("right")
+    label_y(panel, "decades below the peak", right=True)
+    for spine in panel.spines.values():
+        spine.set_visible(False)
 
 
 @styled
@@ -227,29 +298,29 @@ def draw_autocorrelation(run: Run) -> Drawing:
     near = np.abs(trace.delay) <= fringes.delay[-1]
     delay, signal = thin_pairs(trace.delay[near], trace.signal[near], 2000)
     fringe_delay, fringe = thin_pairs(fringes.delay, fringes.signal, 4000)
-    width = autocorrelation_fwhm(envelope, grid.step) * 1e15
+    width = autocorrelation_fwhm(envelope, grid.step) * UNITS
     unit, factor = scaled([width])
     figure, panels = canvas((1.0, 1.0), source=source_line(run))
-    panels[0].plot(delay * 1e15 * factor, signal, color=COLOURS["after"])
-    panels[0].set_ylabel("intensity trace")
+    panels[0].plot(delay * UNITS * factor, signal, color=COLOURS["after"])
+    label_y(panels[0], "intensity trace")
     panels[0].set_ylim(0, 1.05)
     panels[0].tick_params(labelbottom=False)
     panels[0].set_title(
         f"Predicted autocorrelation: {span(width, 4)} wide, "
-        f"{run.pulse_out.autocorrelation_factor:.3g} times the pulse"
+        f"{run.pulse_out.autocorrelation_factor:.2f} times the pulse"
     )
-    panels[1].plot(fringe_delay * 1e15 * factor, fringe, color=COLOURS["warm"], linewidth=0.7)
-    panels[1].set_ylabel("interferometric")
+    panels[1].plot(fringe_delay * UNITS * factor, fringe, color=COLOURS["warm"], linewidth=0.7)
+    label_y(panels[1], "with fringes")
     panels[1].set_ylim(0, 8.2)
     panels[1].set_yticks([0, 1, 8])
-    panels[1].set_xlabel(f"delay, {unit}")
+    label_x(panels[1], f"delay, {unit}")
     for panel in panels:
-        panel.set_xlim(fringe_delay[0] * 1e15 * factor, fringe_delay[-1] * 1e15 * factor)
+        panel.set_xlim(fringe_delay[0] * UNITS * factor, fringe_delay[-1] * UNITS * factor)
     caption = "Autocorrelations of the pulse behind the path: of the intensity, and fringe-resolved (8 to 1)."
     columns = {
-        "delay_fs": delay * 1e15,
+        "delay_fs": delay * UNITS,
         "intensity": signal,
-        "fringe_delay_fs": fringe_delay * 1e15,
+        "fringe_delay_fs": fringe_delay * UNITS,
         "interferometric": fringe,
     }
     return Drawing(name="autocorrelation", caption=caption, figure=figure, columns=columns)
@@ -274,8 +345,8 @@ def draw_measured_autocorrelation(run: Run, fit: AutocorrelationFit) -> Drawing:
     panel.plot(
         delay, fit.predicted, color=COLOURS["warm"], linestyle="--", label="predicted from the scenario"
     )
-    panel.set_xlabel(f"delay, {unit}")
-    panel.set_ylabel("autocorrelation")
+    label_x(panel, f"delay, {unit}")
+    label_y(panel, "autocorrelation")
     panel.set_title("Measured against predicted, before the path")
     panel.margins(x=0)
     panel.legend(loc="upper right")

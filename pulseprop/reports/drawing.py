@@ -6,13 +6,16 @@ import csv
 import io
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import cached_property
 from itertools import zip_longest
+from math import isfinite
 from typing import TYPE_CHECKING
 
 import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.propagation.result import Run
+from pulseprop.reports.figure_style import svg_of
 
 if TYPE_CHECKING:
     from matplotlib.figure import Figure
@@ -32,20 +35,25 @@ class Drawing:
     figure: Figure
     columns: Mapping[str, NDArray[np.float64] | tuple[str, ...]]
 
+    @cached_property
+    def svg(self) -> str:
+        """The figure as markup, drawn once for page and directory."""
+        return svg_of(self.figure, self.name)
+
 
 def csv_text(drawing: Drawing) -> str:
     """The numbers as comma-separated values; cells where a column has ended or has no answer are empty."""
     buffer = io.StringIO()
     writer = csv.writer(buffer, lineterminator="\n")
     writer.writerow(drawing.columns)
-    writer.writerows(zip_longest(*(map(_cell, column) for column in drawing.columns.values()), fillvalue=""))
+    writer.writerows(zip_longest(*(_cells(column) for column in drawing.columns.values()), fillvalue=""))
     return buffer.getvalue()
 
 
-def _cell(value: object) -> str:
-    if isinstance(value, str):
-        return value
-    return f"{value:.9g}" if np.isfinite(value) else ""  # type: ignore[call-overload]
+def _cells(column: NDArray[np.float64] | tuple[str, ...]) -> list[str]:
+    if isinstance(column, tuple):
+        return list(column)
+    return [f"{value:.9g}" if isfinite(value) else "" for value in column.tolist()]
 
 
 def source_line(run: Run) -> str:

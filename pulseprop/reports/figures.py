@@ -6,10 +6,12 @@ from collections.abc import Callable, Iterable, Iterator, Sequence
 from pathlib import Path
 
 from pulseprop.errors import InputError
+from pulseprop.material.medium import Medium
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import IndexCurve
+from pulseprop.reports.curves import chi_curves, index_curves, strongest_line
 from pulseprop.reports.document import check_directory, write_text
-from pulseprop.reports.draw_band import draw_budget, draw_media, draw_spectrum
+from pulseprop.reports.draw_band import draw_budget, draw_spectrum
+from pulseprop.reports.draw_media import draw_media, draw_susceptibility
 from pulseprop.reports.draw_time import (
     draw_autocorrelation,
     draw_contrast,
@@ -18,7 +20,7 @@ from pulseprop.reports.draw_time import (
     draw_spectrogram,
 )
 from pulseprop.reports.drawing import Drawing, csv_text, source_line
-from pulseprop.reports.figure_style import save_png, save_svg
+from pulseprop.reports.figure_style import save_png, svg_document
 
 __all__ = ["drawings", "write_figure", "write_figures"]
 
@@ -31,16 +33,19 @@ ALWAYS: tuple[Callable[[Run], Drawing], ...] = (
 )
 
 
-def drawings(run: Run, curves: Sequence[IndexCurve] = ()) -> Iterator[Drawing]:
-    """Every figure that has something to show, one at a time. curves: the media, for a figure of them."""
+def drawings(run: Run, media: Sequence[Medium] = ()) -> Iterator[Drawing]:
+    """Every figure that has something to show, one at a time; media: those of the path."""
     for draw in ALWAYS:
         yield draw(run)
     if run.autocorrelation is not None:
         yield draw_measured_autocorrelation(run, run.autocorrelation)
     if run.elements:
         yield draw_budget(run)
-    if curves:
+    ends = run.hazards.wavelengths_at_1e_4_nm
+    if curves := index_curves(media, *ends):
         yield draw_media(curves, source_line(run))
+    if chi := chi_curves(media, *ends):
+        yield draw_susceptibility(run, chi, strongest_line(media, *ends))
 
 
 def write_figures(drawn: Iterable[Drawing], directory: str | Path) -> list[Path]:
@@ -54,21 +59,23 @@ def write_figures(drawn: Iterable[Drawing], directory: str | Path) -> list[Path]
     written: list[Path] = []
     for drawing in drawn:
         written.append(save_png(drawing.figure, directory / f"{drawing.name}.png"))
-        written.append(save_svg(drawing.figure, directory / f"{drawing.name}.svg"))
-        write_text(directory / f"{drawing.name}.csv", csv_text(drawing))
-        written.append(directory / f"{drawing.name}.csv")
+        for ending, text in ((".svg", svg_document(drawing.svg)), (".csv", csv_text(drawing))):
+            written.append(directory / f"{drawing.name}{ending}")
+            write_text(written[-1], text)
     return written
 
 
 def write_figure(drawing: Drawing, path: str | Path) -> Path:
     """One figure, as PNG or SVG by the ending of the name. Raises InputError for others."""
     path = Path(path)
-    savers = {".png": save_png, ".svg": save_svg}
-    if path.suffix.lower() not in savers:
-        raise InputError(
-            "a figure's file name must say its format",
-            value=path.name,
-            allowed="names that end in .png or .svg",
-            remedy="Change the ending",
-        )
-    return savers[path.suffix.lower()](drawing.figure, path)
+    if path.suffix.lower() == ".png":
+        return save_png(drawing.figure, path)
+    if path.suffix.lower() == ".svg":
+        write_text(path, svg_document(drawing.svg))
+        return path
+    raise InputError(
+        "a figure's file name must say its format",
+        value=path.name,
+        allowed="names that end in .png or .svg",
+        remedy="Change the ending",
+    )

@@ -25,7 +25,7 @@ FIGURES_IN = {
     "pulse": ("contrast", "spectrogram", "autocorrelation"),
     "autocorrelation": ("autocorrelation-measured",),
     "delays": ("spectrum",),
-    "media": ("media",),
+    "media": ("media", "susceptibility"),
 }
 """Which figures stand below which section."""
 
@@ -50,8 +50,7 @@ def page_html(run: Run, drawn: Iterable[Drawing]) -> str:
     environment.filters["powers"] = _powers
     environment.globals["lined_up"] = _lined_up
     figures = {
-        drawing.name: (drawing.caption, _trusted(inline_svg(drawing.figure, drawing.name)))
-        for drawing in drawn
+        drawing.name: (drawing.caption, _trusted(inline_svg(drawing.svg, drawing.name))) for drawing in drawn
     }
     shown = [section for section in sections(run) if section.key not in ELSEWHERE]
     return environment.get_template("page.html").render(

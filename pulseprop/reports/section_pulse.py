@@ -2,9 +2,19 @@
 
 from __future__ import annotations
 
-from pulseprop.propagation.numerals import LONG_NM, percent, prefix_for, scaled, significant, span, terahertz
+from pulseprop.propagation.numerals import (
+    LONG_NM,
+    percent,
+    prefix_for,
+    quantity,
+    scaled,
+    significant,
+    span,
+    terahertz,
+)
 from pulseprop.propagation.result import AutocorrelationFit, PulseMeasures, Run, SignCase
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
+from pulseprop.reports.curves import field_facts, volts_per_metre
 from pulseprop.reports.section_budget import digits_of, on_a_line
 
 __all__ = ["autocorrelation_section", "delay_section", "pulse_section", "sign_section"]
@@ -109,7 +119,26 @@ def delay_section(run: Run) -> Section:
     if path.group_delay_fs is not None:
         place = ", where a line stands" if on_a_line(path) else ""
         text += f" Group delay at the pulse's centre{place}: {span(path.group_delay_fs, digits)}."
-    return Section("delays", "Delays", (Paragraph(text),))
+    blocks = [Paragraph(text), *([Paragraph(_field(run, digits))] if run.fields.form == "field" else [])]
+    return Section("delays", "Delays", tuple(blocks))
+
+
+def _field(run: Run, digits: int) -> str:
+    """What a detector of the field sees of the main cycle."""
+    fields, centre = run.fields, 1e12 * terahertz(run.pulse_in.centre_nm)
+    before = field_facts(fields.grid_in, fields.envelope_in, centre)
+    after = field_facts(fields.grid_out, fields.envelope_out, centre)
+    delay = (after.arrival - before.arrival) * 1e15
+    sense = "later" if delay >= 0 else "earlier"
+    text = (
+        f"Field: its main peak arrives {span(abs(delay), digits)} {sense} than "
+        f"through vacuum; peak to peak it is {percent(after.peak_to_peak / before.peak_to_peak, 3)} of the "
+        "field that enters"
+    )
+    radius = run.hazards.beam_radius_m
+    if run.hazards.pulse_energy_J is not None and radius is not None:
+        text += f", {quantity(volts_per_metre(after.peak_to_peak, radius) * 1e-2, 'V/cm')} on the axis"
+    return text + "."
 
 
 def _signed(value: float, beside: float, digits: int) -> str:

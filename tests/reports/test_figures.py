@@ -11,10 +11,23 @@ from pathlib import Path
 import numpy as np
 import pytest
 
+from pulseprop import api
 from pulseprop.errors import InputError
+from pulseprop.material.lines import LorentzLine
+from pulseprop.material.medium import Medium, Resonance
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import IndexCurve, pulse_curve, thin_pairs
-from pulseprop.reports.draw_band import draw_budget, draw_media
+from pulseprop.reports.curves import (
+    IndexCurve,
+    chi_curves,
+    field_facts,
+    index_curves,
+    pulse_curve,
+    strongest_line,
+    thin_pairs,
+    volts_per_metre,
+)
+from pulseprop.reports.draw_band import draw_budget
+from pulseprop.reports.draw_media import draw_media, draw_susceptibility
 from pulseprop.reports.draw_time import draw_pulse
 from pulseprop.reports.figure_style import COLOURS
 from pulseprop.reports.figures import drawings, write_figure, write_figures
@@ -106,13 +119,67 @@ def test_few_cycles_are_drawn_with_their_carrier(run: Run) -> None:
     np.testing.assert_allclose(curve.field, expected, atol=1e-6 * np.sqrt(391432.2))
     short = replace(run, fields=replace(fields, spectrum_out=fields.spectrum_in, grid_out=fields.grid_in))
     assert len(draw_pulse(short).figure.axes) == 2
-    assert len(draw_pulse(run).figure.axes) == 1
+    # 12 fs are four and a half cycles: some of the field is shown although what leaves has hundreds.
+    reach = draw_pulse(run).figure.axes[1].get_xlim()
+    assert 40 < (reach[1] - reach[0]) * 0.374740572 <= 45
+    long = replace(run, pulse_in=replace(run.pulse_in, fwhm_fs=50.0))
+    assert len(draw_pulse(long).figure.axes) == 1
+    assert len(draw_pulse(replace(long, fields=replace(fields, form="field"))).figure.axes) == 2
 
 
 def test_a_pulse_that_rings_gets_ten_decades(run: Run) -> None:
     rings = replace(run, pulse_out=replace(run.pulse_out, energy_after=0.0078))
     axes = draw_pulse(rings).figure.axes
-    assert axes[1].get_yscale() == "log"
+    assert [panel.get_yscale() for panel in axes] == ["linear", "linear", "log"]
+
+
+def test_the_field_of_the_main_cycle(run: Run) -> None:
+    fields = run.fields
+    before = field_facts(fields.grid_in, fields.envelope_in, 374.740572e12)
+    assert before.arrival == pytest.approx(0.0, abs=2e-17)
+    # A cosine under a Gaussian of 12 fs: the crest is the peak, the troughs half a period off are
+    # exp(-2 ln2 (T / 2 / FWHM)^2) as deep.
+    trough = np.exp(-2 * np.log(2) * (0.5 / 0.374740572 / 12.0) ** 2)
+    assert before.peak_to_peak == pytest.approx(np.sqrt(391432.2) * (1 + trough), rel=1e-3)
+
+
+def test_volts_per_metre() -> None:
+    # 1e13 W/cm^2 is 8.68e9 V/m: E = 27.4 V/cm times the root of I in W/cm^2 (common practice, no source).
+    radius, intensity = 1e-3, 1e17
+    assert volts_per_metre(np.sqrt(intensity * np.pi * radius**2 / 2), radius) == pytest.approx(
+        8.68e9, rel=1e-3
+    )
+
+
+def test_chi_of_glass_and_of_a_line(run: Run) -> None:
+    # fused silica at 800 nm: n = 1.45332 (I. H. Malitson 1965), so chi = n^2 - 1 = 1.11214.
+    glass, line = api.medium("fused silica"), resonance()
+    curves = chi_curves([glass, line], 750.0, 850.0)
+    place = 299792.458 / 800.0
+    assert np.interp(place, curves[0].frequency, curves[0].chi.real) == pytest.approx(1.11214, abs=2e-5)
+    assert np.all(curves[0].chi.imag == 0)
+    # Lorentz line: Im chi at the centre is twice the largest Re chi, half a width below it (closed form).
+    peak = curves[1].chi.imag.max()
+    assert curves[1].chi.real.max() == pytest.approx(peak / 2, rel=0.02)
+    near = strongest_line([glass, line], 750.0, 850.0)
+    assert near is not None
+    assert near.frequency[np.argmax(near.chi.imag)] == pytest.approx(place, rel=1e-6)
+    assert strongest_line([glass], 750.0, 850.0) is None
+    assert len(draw_susceptibility(run, curves, near).figure.axes) == 4
+    assert len(draw_susceptibility(run, curves[:1], None).figure.axes) == 1
+
+
+def resonance() -> Medium:
+    centre = 2 * np.pi * 299792458.0 / 800e-9
+    response = LorentzLine(centre=centre, width=1e-4 * centre, strength=1e-9 * centre**2)
+    return Medium(name="line", response=response, resonances=(Resonance(centre, 1e-4 * centre, 1e-11),))
+
+
+def test_gvd_of_a_curve_is_that_of_the_orders() -> None:
+    # 36.16 fs^2/mm at 800 nm: Malitson's formula, differentiated.
+    (curve,) = index_curves([api.medium("fused silica")], 700.0, 900.0)
+    assert np.interp(800.0, curve.wavelength_nm, curve.gvd) == pytest.approx(36.16, abs=0.01)
+    assert np.interp(800.0, curve.wavelength_nm, curve.excess) == pytest.approx(0.45332, abs=1e-5)
 
 
 def test_no_figure_of_what_is_not_there(run: Run) -> None:
@@ -146,7 +213,7 @@ def test_any_name_can_stand_in_a_figure(run: Run, tmp_path: Path, name: str) -> 
     elements = (replace(run.elements[0], name=name), run.elements[1])
     named = replace(run, scenario=name, elements=elements, media=(replace(run.media[0], name=name),))
     nm = np.linspace(700.0, 900.0, 5)
-    curve = IndexCurve(name, nm, 1.45 + 0 * nm, 0 * nm, 36 + 0 * nm)
+    curve = IndexCurve(name, nm, 0.45 + 0 * nm, 0 * nm, 36 + 0 * nm)
     for drawing in (draw_budget(named), draw_media([curve], name)):
         path = write_figure(drawing, tmp_path / "drawing.svg")
         assert tree.fromstring(path.read_text()).tag.endswith("svg")

@@ -6,11 +6,10 @@ import re
 from dataclasses import replace
 from html.parser import HTMLParser
 
-import numpy as np
 import pytest
 
+from pulseprop import api
 from pulseprop.propagation.result import Caution, Run
-from pulseprop.reports.curves import IndexCurve
 from pulseprop.reports.figures import drawings
 from pulseprop.reports.page import page_html
 
@@ -57,9 +56,7 @@ def outline_of(page: str) -> Outline:
 
 @pytest.fixture(scope="module")
 def page(run: Run) -> str:
-    nm = np.linspace(700.0, 900.0, 11)
-    curve = IndexCurve("fused silica", nm, 1.45 + 0 * nm, 0 * nm, 36 + 0 * nm)
-    return page_html(run, drawings(run, [curve]))
+    return page_html(run, drawings(run, [api.medium("fused silica")]))
 
 
 def test_nothing_is_fetched(page: str) -> None:
@@ -94,7 +91,7 @@ def test_every_picture_has_words(page: str) -> None:
     # WCAG 2.2, success criterion 1.1.1.
     outline = outline_of(page)
     assert outline.unlabelled == 0
-    assert page.count('role="img"') == page.count("<figcaption>") == 8
+    assert page.count('role="img"') == page.count("<figcaption>") == 9
 
 
 @pytest.mark.parametrize(
