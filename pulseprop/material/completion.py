@@ -39,6 +39,16 @@ ALLOWED_SHIFT = 1e-8
 
 CHECK_POINTS = 101
 
+LOWEST = 30.0
+"""The low end of a range over the lowest candidate band. One still lower acts alike in range, but makes light
+of long wavelengths so slow that no window holds the answer.
+"""
+
+WIDEST = 0.48
+"""Knot distance of a candidate band over its distance from the range, which it just does not touch. In a
+narrow band of the same strength n would fall below zero, and chi amplify.
+"""
+
 WINGS = (8.0, 64.0)
 """Widths of the wings over that of the core: they absorb the light that a narrow band alone would slow down
 for ages.
@@ -157,7 +167,7 @@ def _candidate_bands(low: float, high: float) -> tuple[Real, Real]:
     """Bands whose supports (two knot distances to each side) lie outside [low, high] and above zero."""
     gaps = np.geomspace(0.01, 1000.0, 160)
     above = high * (1 + gaps)
-    below = low / (1 + np.geomspace(0.01, 1e6, 120))
+    below = low / (1 + np.geomspace(0.01, LOWEST, 120))
     centre = np.concatenate((below, above))
     distance = np.where(centre < low, np.minimum(low - centre, centre), centre - high)
-    return centre, 0.4 * distance * 0.5
+    return centre, WIDEST * distance
