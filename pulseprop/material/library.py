@@ -24,7 +24,15 @@ from pulseprop.material.medium import Medium, NonlinearIndex
 from pulseprop.material.molar_density import molar_density
 from pulseprop.material.response import Band, Constant, Response, Sum
 
-__all__ = ["catalogue_medium", "response_of_record"]
+__all__ = ["VACUUM", "catalogue_medium", "response_of_record"]
+
+VACUUM = Medium(
+    name="vacuum",
+    response=Constant(0.0),
+    source="by definition",
+    temperature="any",
+    n2=(NonlinearIndex(value=0.0, source="by definition"),),
+)
 
 ROOM = 295.0
 """What "room temperature" is taken for, K, when an element states another temperature."""
@@ -32,9 +40,12 @@ ROOM = 295.0
 
 @cache
 def catalogue_medium(name: str) -> Medium:
-    """The medium of this exact catalogue name. Raises InputError, with the nearest names, where there is
-    none.
+    """The medium of this exact catalogue name, or vacuum.
+
+    Raises InputError, with the nearest names, where there is none.
     """
+    if name == VACUUM.name:
+        return VACUUM
     entry = record(name)
     if entry.kind == "humid air":
         raise InputError(

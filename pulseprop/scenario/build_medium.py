@@ -17,7 +17,7 @@ from pulseprop.material.composition import (
 )
 from pulseprop.material.formulas import Formula, Pole, Power, gas_term, pole_term, sellmeier_term
 from pulseprop.material.gases import gas_at
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.library import VACUUM, catalogue_medium
 from pulseprop.material.medium import Medium, NonlinearIndex
 from pulseprop.material.orders_only import OrdersOnly
 from pulseprop.material.refraction import refraction_series
@@ -31,8 +31,6 @@ from pulseprop.scenario.schema_formula import GasFormula, PoleFormula, PowerForm
 from pulseprop.scenario.schema_medium import MediumTable, OrdersOnlyTable
 
 __all__ = ["MediaOfScenario", "formula_of"]
-
-VACUUM = Constant(0.0)
 
 
 class MediaOfScenario:
@@ -132,7 +130,7 @@ class MediaOfScenario:
 
     def _base(self, name: str, table: MediumTable) -> Medium:
         """What stands at the bottom of the medium, vacuum where nothing does."""
-        if isinstance(table.background, str) and table.background != "vacuum":
+        if isinstance(table.background, str) and table.background != VACUUM.name:
             return self.medium(table.background)
         if isinstance(table.background, float):
             return Medium(name=name, response=Constant(table.background**2 - 1))
@@ -150,8 +148,13 @@ class MediaOfScenario:
         if table.mixture is not None:
             return self._mixture(name, table)
         if table.orders is not None:
-            return Medium(name=name, response=_orders_only(table.orders), causal=False)
-        return Medium(name=name, response=VACUUM)
+            return Medium(
+                name=name,
+                response=_orders_only(table.orders),
+                causal=False,
+                notes=("orders only: not a causal model",),
+            )
+        return Medium(name=name, response=VACUUM.response)
 
     def _mixture(self, name: str, table: MediumTable) -> Medium:
         parts = [(self.medium(part.medium), part.fraction) for part in table.mixture or []]
