@@ -51,8 +51,9 @@ def absorption_index(
         raise InputError("unknown kind of absorption", value=quantity, allowed=", ".join(get_args(Quantity)))
     if quantity == "k":
         return values
-    alpha = _alpha(values, quantity, path_length, concentration)
-    return np.asarray(alpha * SPEED_OF_LIGHT / (2 * omega))
+    with np.errstate(over="ignore"):
+        alpha = _alpha(values, quantity, path_length, concentration)
+        return np.asarray(alpha * SPEED_OF_LIGHT / (2 * omega))
 
 
 def _alpha(values: Real, quantity: Quantity, path_length: float | None, concentration: float | None) -> Real:

@@ -44,6 +44,8 @@ NOISE_DIPS = 5.0
 """Absorption below zero by up to this many standard deviations of the noise is noise."""
 BASELINE = 2e-3
 """…and so is a dip up to this share of the largest value, as baselines go (common practice, no source)."""
+MOST_K = 1e4
+"""Largest k taken for real: metals reach some 1e3 in the far infrared (common practice, no source)."""
 DEFAULT_UNCERTAINTY = 1e-5
 """Of an anchor whose uncertainty is not stated: as for published coefficients."""
 ROUNDS = 60
@@ -108,13 +110,14 @@ def absorption_table(
     """
     omega, values, rows = ordered_rows(omega, values, numbers=numbers)
     hidden = beyond_ceiling(values, quantity, ceiling)
-    notes = _ceiling_notes(omega, rows, hidden, ceiling)
+    notes = _ceiling_notes(omega, rows, hidden)
     omega, values, rows = omega[~hidden], values[~hidden], rows[~hidden]
     own = _vacuum if background is None else background
     _refuse_no_light(values, quantity, rows)
 
     def finished(inside: Real, kind: Quantity) -> AbsorptionTable:
         k = absorption_index(omega, inside, kind, path_length=path_length, concentration=concentration)
+        _refuse_beyond_matter(k, rows)
         k, dips = _without_dips(k, rows)
         return _assembled(omega, k, tails, anchors, own, (*notes, *dips))
 
@@ -238,6 +241,19 @@ def _without_dips(k: Real, rows: Real) -> tuple[Real, tuple[str, ...]]:
     return np.maximum(k, 0.0), (note,)
 
 
+def _refuse_beyond_matter(k: Real, rows: Real) -> None:
+    """A slip of units or of a digit, told before anything overflows."""
+    absurd = ~(k <= MOST_K)
+    if np.any(absurd):
+        raise InputError(
+            "no matter absorbs like this",
+            value=f"k = {np.max(k):.3g}",
+            allowed=f"k up to {MOST_K:g}",
+            place=row_list(rows[absurd]),
+            remedy="Check the unit, the path length and the digits.",
+        )
+
+
 def _refuse_no_light(values: Real, quantity: Quantity, rows: Real) -> None:
     dark = values <= 0
     if quantity in ("internal_transmittance", "transmittance") and np.any(dark):
@@ -250,14 +266,12 @@ def _refuse_no_light(values: Real, quantity: Quantity, rows: Real) -> None:
         )
 
 
-def _ceiling_notes(
-    omega: Real, rows: Real, hidden: NDArray[np.bool_], ceiling: float | None
-) -> tuple[str, ...]:
+def _ceiling_notes(omega: Real, rows: Real, hidden: NDArray[np.bool_]) -> tuple[str, ...]:
     if not np.any(hidden):
         return ()
     low, high = (TWO_PI_C / omega[hidden][[-1, 0]]) * 1e9
     return (
-        f"{row_list(rows[hidden])} ({low:.6g} to {high:.6g} nm) above the ceiling {ceiling:g} "
+        f"{row_list(rows[hidden])} ({low:.6g} to {high:.6g} nm) above the stated ceiling "
         "are lower limits: left out; absorption is interpolated over them and may be higher",
     )
 

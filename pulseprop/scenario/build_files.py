@@ -98,7 +98,7 @@ def absorption_of(
             quantity=spec.y,
             path_length=spec.path_length,
             concentration=spec.concentration,
-            ceiling=spec.ceiling,
+            ceiling=_ceiling(spec),
             tails=Tails(below=spec.tails.below, above=spec.tails.above),
             anchors=anchors,
             background=background,
@@ -113,6 +113,13 @@ def _measured_values(columns: Columns, spec: AbsorptionFile) -> Real:
     if spec.y_unit == "%":
         return columns.y / 100
     return np.asarray(to_si(columns.y, spec.y_unit, Y_KINDS[spec.y]), dtype=float)
+
+
+def _ceiling(spec: AbsorptionFile) -> float | None:
+    """The ceiling in SI where y has a unit; that of transmittances is an absorbance."""
+    if spec.ceiling is None or spec.y_unit is None or spec.y_unit == "%":
+        return spec.ceiling
+    return float(to_si(spec.ceiling, spec.y_unit, Y_KINDS[spec.y]))
 
 
 def index_table_of(scenario: Scenario, name: str, table: MediumTable) -> Medium:

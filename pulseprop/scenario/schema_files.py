@@ -139,7 +139,7 @@ class AbsorptionFile(SpectralFile):
 
     y: absorbance = log10(1/T), napierian = ln(1/T), alpha per length (Napierian), k, molar (decadic),
     internal_transmittance, or transmittance through both faces. path_length: m. concentration: mol/m^3.
-    ceiling: value of y at and above which (for transmittances: at and below which) rows are only limits.
+    ceiling: value of y above which rows are only limits; for transmittances, the absorbance above which.
     """
 
     x: SpectralAxis
@@ -147,7 +147,7 @@ class AbsorptionFile(SpectralFile):
     y_unit: Name | None = None
     path_length: Length | None = None
     concentration: Annotated[float, measured("concentration", above=0)] | None = None
-    ceiling: float | None = None
+    ceiling: Annotated[float, Field(gt=0)] | None = None
     tails: Tails = Field(default_factory=Tails)
 
     @model_validator(mode="after")
