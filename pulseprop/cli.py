@@ -233,7 +233,8 @@ def media(
 ) -> int:
     """Show media: source, range, and orders at wavelengths. Without a name, list the catalogue.
 
-    The JSON document is an object for one name, and a list of such objects for several or none.
+    With --json one name gives an object, several names a list of such objects in their order, no name the
+    list of the catalogue; humid air, which is nothing without its state, is left out of that list.
     """
     from pulseprop import api
     from pulseprop.reports.document import check_target, write_json
@@ -243,29 +244,30 @@ def media(
         check_target(json_path)
     if not names and (places or figure_path):
         raise click.UsageError("--at and --figure need the name of a medium")
-    found = api.media(names, places) if names else _catalogue()
+    found, stateless = (api.media(names, places), ()) if names else _catalogue()
     if figure_path:
         _draw_media(names, found, figure_path)
     if json_path is not None:
         documents = [medium.as_json() for medium in found]
         write_json(json_path, documents[0] if len(names) == 1 else documents)
     else:
-        click.echo(media_text(found) if names else catalogue_text(found), nl=False)
+        click.echo(media_text(found) if names else catalogue_text(found, stateless), nl=False)
     return DONE
 
 
-def _catalogue() -> tuple[MediumReport, ...]:
-    """Every record that stands by itself; those that need a state (humid air) are named by their message."""
+def _catalogue() -> tuple[tuple[MediumReport, ...], tuple[str, ...]]:
+    """Every record that stands by itself, and the names of those that need a state (humid air)."""
     from pulseprop import api
     from pulseprop.errors import InputError
 
     found: list[MediumReport] = []
+    stateless: list[str] = []
     for name in api.catalogue():
         try:
             found += api.media([name])
-        except InputError as error:
-            click.echo(f"not listed: {error}", err=True)
-    return tuple(found)
+        except InputError:
+            stateless.append(name)
+    return tuple(found), tuple(stateless)
 
 
 def _draw_media(names: tuple[str, ...], found: Sequence[MediumReport], path: str) -> None:

@@ -244,12 +244,20 @@ def test_a_medium_of_a_scenario(tmp_path: Path, capsys: pytest.CaptureFixture[st
 
 def test_the_catalogue_is_listed(capsys: pytest.CaptureFixture[str]) -> None:
     assert called("media") == 0
-    told = capsys.readouterr().out
+    told, aside = capsys.readouterr()
+    assert aside == ""
     assert len(told.splitlines()) > 50
     assert max(map(len, told.splitlines())) <= 110
+    assert any(line.startswith("humid air") and "needs its state" in line for line in told.splitlines())
     assert called("media", "--json", "-") == 0
     names = {document["name"] for document in json.loads(capsys.readouterr().out)}
     assert {"fused silica", "SF10", "water"} <= names
+
+
+def test_long_waves_are_listed_by_frequency(tmp_path: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    assert called("media", "silicon THz", "--at", "0.8 THz") == 0
+    # 299.792458 / 0.8 um: SI, definition of the metre.
+    assert "0.800000     374.741" in capsys.readouterr().out
 
 
 def test_a_figure_of_a_medium(tmp_path: Path) -> None:

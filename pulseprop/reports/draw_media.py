@@ -201,6 +201,7 @@ def _line(panels: Sequence[Axes], line: ChiCurve, number: int) -> None:
     _axes(panels, [line], f"{unit} from {centre:.6g} THz")
     for panel in panels:
         panel.set_ylabel("")
+        panel.locator_params(axis="x", nbins=4)
 
 
 def _chi_columns(curves: Sequence[ChiCurve], line: ChiCurve | None) -> Iterator[tuple[str, Real]]:

@@ -13,7 +13,7 @@ from pulseprop.measures.autocorrelation import (
     intensity_autocorrelation,
     interferometric_autocorrelation,
 )
-from pulseprop.measures.spectrogram import spectrogram
+from pulseprop.measures.spectrogram import Spectrogram, spectrogram
 from pulseprop.propagation.numerals import percent, scaled, span, terahertz
 from pulseprop.propagation.result import AutocorrelationFit, Run
 from pulseprop.propagation.words import durations
@@ -62,8 +62,11 @@ FLOOR = 1e-10
 RINGS = 1e-4
 """Share of the energy after three widths from which on the logarithmic panel stands below the linear one."""
 
-FAINT_ENERGY = 3e-5
-"""Share of the energy that may lie outside a spectrogram."""
+FAINT_ENERGY, ENOUGH_MOMENTS = (1e-6, 1e-4), 64
+"""Shares of the energy that may lie outside a spectrogram, and the columns with light that suffice."""
+
+FEW_MARKS = 4
+"""Powers of ten beside a low panel."""
 
 SHOWN_DECADES = 5
 """Of a spectrogram."""
@@ -80,17 +83,20 @@ def draw_pulse(run: Run) -> Drawing:
     reach = _reach_of_field(run, before, after)
     rings = bool(run.pulse_out.split) or (run.pulse_out.energy_after or 0.0) > RINGS
     heights = (2.6, *((2.0,) if reach else ()), *((1.8,) if rings else ()))
-    gap = {1: 0.0, 2: 0.36, 3: 0.5}[len(heights)]
+    gap = {1: 0.0, 2: 0.36, 3: 0.55}[len(heights)]
     figure, panels = canvas(heights, source=source_line(run), frame=Frame(gap=gap))
     _linear(panels[0], before, after, UNITS * factor)
     enters, leaves = durations(run.pulse_in.fwhm_fs, run.pulse_out.fwhm_fs)
     panels[0].set_title(f"{enters} enters, {leaves} leaves")
     label_x(panels[0], f"time from the peak of each pulse, {unit}")
     if reach:
-        near = _fields(panels[1], run, reach)
-        label_x(panels[1], f"the same, {near}")
+        label_x(panels[1], f"the same, {_fields(panels[1], run, reach)}")
+        if panels[1].get_xlim() == panels[0].get_xlim():
+            panels[0].tick_params(labelbottom=False)
+            panels[1].set_xlabel(panels[0].get_xlabel())
+            panels[0].set_xlabel("")
     if rings:
-        label_x(panels[-1], f"the same, {_decades(panels[-1], run, 4)[0]}")
+        label_x(panels[-1], f"the same, {_decades(panels[-1], run, FEW_MARKS)[0]}")
     delay = span(run.path.centroid_delay_fs, 4)
     caption = (
         "Power "
@@ -164,6 +170,7 @@ def _linear(panel: Axes, before: PulseCurve, after: PulseCurve, scale: float) ->
     )
     label_y(panel, "power")
     panel.set_ylim(0, 1.05)
+    panel.set_yticks([0, 0.5, 1])
     panel.margins(x=0)
     panel.legend(loc="upper right")
 
@@ -180,6 +187,7 @@ def _fields(panel: Axes, run: Run, reach: tuple[float, float]) -> str:
         panel.plot(after.time * scale, envelope, color=COLOURS["after"], linewidth=1.0, alpha=0.6)
     panel.margins(x=0)
     label_y(panel, "field")
+    panel.set_yticks([-1, 0, 1])
     return unit
 
 
@@ -199,7 +207,7 @@ def _decades(panel: Axes, run: Run, marks: int = 7) -> tuple[str, PulseCurve, Pu
     decades(panel, marks)
     panel.set_ylim(FLOOR, 3)
     panel.margins(x=0.02)
-    label_y(panel, "power / peak")
+    label_y(panel, "power / peak" if marks > FEW_MARKS else "power")
     panel.grid(axis="y", color=COLOURS["faint"], linewidth=0.8)
     return unit, curves[0], curves[1]
 
@@ -241,10 +249,8 @@ def draw_contrast(run: Run) -> Drawing:
 @styled
 def draw_spectrogram(run: Run) -> Drawing:
     """Which frequencies arrive when."""
-    seen = spectrogram(run.fields.grid_out, run.fields.spectrum_out, share=FAINT_ENERGY)
+    seen, rows, columns_of_time = _lit_spectrogram(run)
     origin = run.fields.grid_out.start + bounds_of(run.fields.envelope_out, run.fields.grid_out.step, 0.5)[0]
-    bright = seen.density > 10.0**-SHOWN_DECADES * seen.density.max()
-    rows, columns_of_time = (_stretch(bright.any(axis=axis)) for axis in (1, 0))
     density = seen.density[rows, columns_of_time] / seen.density.max()
     time, frequency = (seen.time[columns_of_time] - origin) * UNITS, seen.frequency[rows] * 1e-12
     unit, factor = scaled([float(np.ptp(time))])
@@ -266,6 +272,18 @@ def draw_spectrogram(run: Run) -> Drawing:
     return Drawing(name="spectrogram", caption=caption, figure=figure, columns=columns)
 
 
+def _lit_spectrogram(run: Run) -> tuple[Spectrogram, slice, slice]:
+    """The spectrogram, and where in it there is light: looked at more closely where a faint pedestal takes
+    most of the time."""
+    for share in FAINT_ENERGY:
+        seen = spectrogram(run.fields.grid_out, run.fields.spectrum_out, share=share)
+        bright = seen.density > 10.0**-SHOWN_DECADES * seen.density.max()
+        rows, moments = (_stretch(bright.any(axis=axis)) for axis in (1, 0))
+        if moments.stop - moments.start >= ENOUGH_MOMENTS:
+            break
+    return seen, rows, moments
+
+
 def _stretch(bright: NDArray[np.bool_]) -> slice:
     """From the first to the last place where there is light, and one more on each side."""
     lit = np.flatnonzero(bright)
@@ -284,7 +302,7 @@ def _scale_of_map(panel: Axes) -> None:
     panel.set_xticks([])
     panel.yaxis.tick_right()
     panel.yaxis.set_label_position("right")
-    label_y(panel, "decades below the peak", right=True)
+    label_y(panel, "decades from the peak", right=True)
     for spine in panel.spines.values():
         spine.set_visible(False)
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from typing import Protocol
 
-from pulseprop.propagation.numerals import significant
+from pulseprop.propagation.numerals import LONG_NM, significant, terahertz
 from pulseprop.reports.blocks import Column, Paragraph, Table
 from pulseprop.reports.section_sources import medium_facts, range_text
 from pulseprop.reports.text import blocks_text, printable, table_text
@@ -13,7 +13,6 @@ from pulseprop.reports.text import blocks_text, printable, table_text
 __all__ = ["MediumFacts", "OrdersFacts", "catalogue_text", "media_text"]
 
 COLUMNS = (
-    Column("wavelength", "nm"),
     Column("index"),
     Column("absorption", "/mm"),
     Column("group index"),
@@ -81,13 +80,27 @@ def _medium(medium: MediumFacts) -> str:
         lines.append(f"Nonlinear index n2: {significant(medium.n2_m2_per_W, 3)} m^2/W.")
     blocks: tuple[Table | Paragraph, ...] = tuple(Paragraph(line) for line in lines)
     if medium.at:
-        blocks += (Table(COLUMNS, tuple(_row(row) for row in medium.at)),)
+        blocks += (_orders(medium.at),)
     return f"{medium.name}\n{blocks_text(blocks)}"
+
+
+def _orders(rows: Sequence[OrdersFacts]) -> Table:
+    """Long waves are told by their frequency as well."""
+    columns: tuple[Column, ...] = (Column("wavelength", "nm"),)
+    places: list[tuple[str, ...]] = [(significant(row.wavelength_nm, 6),) for row in rows]
+    if max(row.wavelength_nm for row in rows) >= LONG_NM:
+        columns = (Column("frequency", "THz"), Column("wavelength", "um"))
+        places = [_long(row.wavelength_nm) for row in rows]
+    lines = tuple((*place, *_row(row)) for place, row in zip(places, rows, strict=True))
+    return Table((*columns, *COLUMNS), lines)
+
+
+def _long(wavelength_nm: float) -> tuple[str, ...]:
+    return significant(terahertz(wavelength_nm), 6), significant(wavelength_nm * 1e-3, 6)
 
 
 def _row(row: OrdersFacts) -> tuple[str, ...]:
     return (
-        significant(row.wavelength_nm, 6),
         significant(row.index, 6),
         significant(row.absorption_per_mm, 3),
         significant(row.group_index, 6),
@@ -97,8 +110,11 @@ def _row(row: OrdersFacts) -> tuple[str, ...]:
     )
 
 
-def catalogue_text(media: Iterable[MediumFacts]) -> str:
-    """The catalogue, a row a record: name, range, temperature, what the index is against."""
+def catalogue_text(media: Iterable[MediumFacts], stateless: Iterable[str] = ()) -> str:
+    """The catalogue, a row a record: name, range, temperature, what the index is against.
+
+    stateless: names of records that are nothing without a state (pressure, temperature, humidity).
+    """
     columns = (
         Column("medium", words=True),
         Column("valid", words=True),
@@ -108,4 +124,5 @@ def catalogue_text(media: Iterable[MediumFacts]) -> str:
     rows = tuple(
         (medium.name, range_text(medium.valid_nm), medium.temperature, medium.relative_to) for medium in media
     )
-    return table_text(Table(columns, rows)) + "\n"
+    rows += tuple((name, "needs its state: `pulseprop media NAME` says how", "", "") for name in stateless)
+    return table_text(Table(columns, tuple(sorted(rows, key=lambda row: row[0].lower())))) + "\n"

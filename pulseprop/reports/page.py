@@ -83,7 +83,8 @@ def _trusted(markup: str) -> Markup:
 
 
 def _powers(text: str) -> Markup:
-    """Escaped text with fs^2 set as a power."""
+    """Escaped text with fs^2 set as a power, and no line broken between a number and its per cent."""
     from markupsafe import Markup, escape
 
-    return Markup(re.sub(r"\^(-?[0-9]+|\(-?[0-9/]+\))", r"<sup>\1</sup>", str(escape(text))))
+    text = str(escape(text)).replace(" %", "\u00a0%")
+    return Markup(re.sub(r"\^(-?[0-9]+|\(-?[0-9/]+\))", r"<sup>\1</sup>", text))
