@@ -274,10 +274,10 @@ def _draw_media(names: tuple[str, ...], found: Sequence[MediumReport], path: str
     """Curves over the wavelengths asked for, or over the range that all the media share in part."""
     from pulseprop import api
     from pulseprop.errors import InputError
-    from pulseprop.reports.curves import index_curves
     from pulseprop.reports.document import check_target
     from pulseprop.reports.draw_media import draw_media
     from pulseprop.reports.figures import write_figure
+    from pulseprop.reports.media_curves import index_curves
 
     check_target(path)
     places = [row.wavelength_nm for row in found[0].at]

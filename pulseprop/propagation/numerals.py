@@ -5,6 +5,8 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable
 
+from pulseprop.constants import SPEED_OF_LIGHT
+
 __all__ = [
     "LONG_NM",
     "NOTHING",
@@ -125,7 +127,7 @@ def quantity(value: float | None, unit: str, digits: int = 3) -> str:
 
 def terahertz(wavelength_nm: float) -> float:
     """Frequency in THz of a vacuum wavelength in nm."""
-    return 299792.458 / wavelength_nm
+    return SPEED_OF_LIGHT * 1e-3 / wavelength_nm
 
 
 def prefix_for(value: float) -> tuple[float, str]:

@@ -8,9 +8,9 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.propagation.numerals import LONG_NM
+from pulseprop.propagation.numerals import LONG_NM, terahertz
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import SPEED_OF_LIGHT, ChiCurve, IndexCurve, thin_pairs
+from pulseprop.reports.curves import thin_pairs
 from pulseprop.reports.drawing import Drawing, source_line
 from pulseprop.reports.figure_style import (
     COLOURS,
@@ -23,6 +23,7 @@ from pulseprop.reports.figure_style import (
     styled,
     words,
 )
+from pulseprop.reports.media_curves import ChiCurve, IndexCurve
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -81,7 +82,7 @@ def draw_media(curves: Sequence[IndexCurve], source: str) -> Drawing:
         k = np.where(curve.k > 0, curve.k, np.nan)
         columns = ((curve.excess + shift) * factor, curve.gvd * slope, k)
         for panel, values in zip(panels, columns, strict=False):
-            place = SPEED_OF_LIGHT * 1e-3 / curve.wavelength_nm if long_waves else curve.wavelength_nm
+            place = terahertz(1.0) / curve.wavelength_nm if long_waves else curve.wavelength_nm
             panel.plot(place, values, label=words(curve.name), **_look(number))
     label_y(panels[0], label)
     label_y(panels[1], steep)

@@ -1,4 +1,4 @@
-"""Figures over time: the pulse before and after, ten decades of it, its spectrogram, its autocorrelations."""
+"""Figures over time: the pulse before and after, its field, and ten decades of it."""
 
 from __future__ import annotations
 
@@ -8,16 +8,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.grid import Grid
-from pulseprop.measures.autocorrelation import (
-    autocorrelation_fwhm,
-    intensity_autocorrelation,
-    interferometric_autocorrelation,
-)
-from pulseprop.measures.spectrogram import Spectrogram, spectrogram
 from pulseprop.propagation.numerals import percent, scaled, span, terahertz
-from pulseprop.propagation.result import AutocorrelationFit, Run
+from pulseprop.propagation.result import Run
 from pulseprop.propagation.words import durations
-from pulseprop.reports.curves import PulseCurve, bounds_of, pulse_curve, thin_pairs
+from pulseprop.reports.curves import UNITS, PulseCurve, bounds_of, pulse_curve
 from pulseprop.reports.drawing import Drawing, source_line
 from pulseprop.reports.figure_style import (
     COLOURS,
@@ -26,20 +20,13 @@ from pulseprop.reports.figure_style import (
     decades,
     label_x,
     label_y,
-    night_map,
     styled,
 )
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
 
-__all__ = [
-    "draw_autocorrelation",
-    "draw_contrast",
-    "draw_measured_autocorrelation",
-    "draw_pulse",
-    "draw_spectrogram",
-]
+__all__ = ["draw_contrast", "draw_pulse"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -62,17 +49,8 @@ FLOOR = 1e-10
 RINGS = 1e-4
 """Share of the energy after three widths from which on the logarithmic panel stands below the linear one."""
 
-FAINT_ENERGY, ENOUGH_MOMENTS = (1e-6, 1e-4), 64
-"""Shares of the energy that may lie outside a spectrogram, and the columns with light that suffice."""
-
 FEW_MARKS = 4
 """Powers of ten beside a low panel."""
-
-SHOWN_DECADES = 5
-"""Of a spectrogram."""
-
-UNITS = 1e15
-"""Femtoseconds in a second."""
 
 
 @styled
@@ -244,135 +222,3 @@ def draw_contrast(run: Run) -> Drawing:
         "power_out_over_peak": _above_floor(after),
     }
     return Drawing(name="contrast", caption=caption, figure=figure, columns=columns)
-
-
-@styled
-def draw_spectrogram(run: Run) -> Drawing:
-    """Which frequencies arrive when."""
-    seen, rows, columns_of_time = _lit_spectrogram(run)
-    origin = run.fields.grid_out.start + bounds_of(run.fields.envelope_out, run.fields.grid_out.step, 0.5)[0]
-    density = seen.density[rows, columns_of_time] / seen.density.max()
-    time, frequency = (seen.time[columns_of_time] - origin) * UNITS, seen.frequency[rows] * 1e-12
-    unit, factor = scaled([float(np.ptp(time))])
-    figure, panels = canvas(
-        source=source_line(run), frame=Frame(right=0.89, beside=0.05), widths=(1.0, 0.025)
-    )
-    _map(panels[0], density, (time[0] * factor, time[-1] * factor, frequency[0], frequency[-1]))
-    _scale_of_map(panels[1])
-    label_x(panels[0], f"time from the peak, {unit}")
-    label_y(panels[0], "frequency, THz")
-    gate = span(seen.gate * UNITS, 2)
-    panels[0].set_title(f"Which frequencies arrive when (gate {gate})")
-    caption = f"Spectrogram of the pulse that leaves, Gaussian gate of {gate} FWHM, five decades."
-    columns = {
-        "time_fs": np.repeat(time[::4], frequency[::4].size),
-        "frequency_THz": np.tile(frequency[::4], time[::4].size),
-        "density_over_peak": density[::4, ::4].T.ravel(),
-    }
-    return Drawing(name="spectrogram", caption=caption, figure=figure, columns=columns)
-
-
-def _lit_spectrogram(run: Run) -> tuple[Spectrogram, slice, slice]:
-    """The spectrogram, and where in it there is light: looked at more closely where a faint pedestal takes
-    most of the time."""
-    for share in FAINT_ENERGY:
-        seen = spectrogram(run.fields.grid_out, run.fields.spectrum_out, share=share)
-        bright = seen.density > 10.0**-SHOWN_DECADES * seen.density.max()
-        rows, moments = (_stretch(bright.any(axis=axis)) for axis in (1, 0))
-        if moments.stop - moments.start >= ENOUGH_MOMENTS:
-            break
-    return seen, rows, moments
-
-
-def _stretch(bright: NDArray[np.bool_]) -> slice:
-    """From the first to the last place where there is light, and one more on each side."""
-    lit = np.flatnonzero(bright)
-    return slice(max(int(lit[0]) - 1, 0), int(lit[-1]) + 2)
-
-
-def _map(panel: Axes, density: Real, extent: tuple[float, float, float, float]) -> None:
-    level = np.log10(np.maximum(density, 10.0 ** (-SHOWN_DECADES - 1)))
-    colours = night_map()(level / SHOWN_DECADES + 1, bytes=True)
-    panel.imshow(colours, extent=extent, origin="lower", aspect="auto", interpolation="bilinear")
-
-
-def _scale_of_map(panel: Axes) -> None:
-    ramp = np.linspace(-SHOWN_DECADES, 0, 64)[:, None]
-    _map(panel, 10.0**ramp, (0.0, 1.0, -SHOWN_DECADES, 0.0))
-    panel.set_xticks([])
-    panel.yaxis.tick_right()
-    panel.yaxis.set_label_position("right")
-    label_y(panel, "decades from the peak", right=True)
-    for spine in panel.spines.values():
-        spine.set_visible(False)
-
-
-@styled
-def draw_autocorrelation(run: Run) -> Drawing:
-    """What an autocorrelator behind the path would show, intensity and fringe-resolved."""
-    grid, envelope = run.fields.grid_out, run.fields.envelope_out
-    fringes = interferometric_autocorrelation(envelope, grid.step, grid.carrier)
-    trace = intensity_autocorrelation(envelope, grid.step)
-    near = np.abs(trace.delay) <= fringes.delay[-1]
-    delay, signal = thin_pairs(trace.delay[near], trace.signal[near], 2000)
-    fringe_delay, fringe = thin_pairs(fringes.delay, fringes.signal, 4000)
-    width = autocorrelation_fwhm(envelope, grid.step) * UNITS
-    unit, factor = scaled([width])
-    figure, panels = canvas((1.0, 1.0), source=source_line(run))
-    panels[0].plot(delay * UNITS * factor, signal, color=COLOURS["after"])
-    label_y(panels[0], "intensity trace")
-    panels[0].set_ylim(0, 1.05)
-    panels[0].tick_params(labelbottom=False)
-    panels[0].set_title(
-        f"Predicted autocorrelation: {span(width, 4)} wide, "
-        f"{run.pulse_out.autocorrelation_factor:.2f} times the pulse"
-    )
-    panels[1].plot(fringe_delay * UNITS * factor, fringe, color=COLOURS["warm"], linewidth=0.7)
-    label_y(panels[1], "with fringes")
-    panels[1].set_ylim(0, 8.2)
-    panels[1].set_yticks([0, 1, 8])
-    label_x(panels[1], f"delay, {unit}")
-    for panel in panels:
-        panel.set_xlim(fringe_delay[0] * UNITS * factor, fringe_delay[-1] * UNITS * factor)
-    caption = "Autocorrelations of the pulse behind the path: of the intensity, and fringe-resolved (8 to 1)."
-    columns = {
-        "delay_fs": delay * UNITS,
-        "intensity": signal,
-        "fringe_delay_fs": fringe_delay * UNITS,
-        "interferometric": fringe,
-    }
-    return Drawing(name="autocorrelation", caption=caption, figure=figure, columns=columns)
-
-
-@styled
-def draw_measured_autocorrelation(run: Run, fit: AutocorrelationFit) -> Drawing:
-    """A measured trace with the prediction and the fit over it."""
-    unit, factor = scaled([float(np.ptp(fit.delay_fs))])
-    figure, (panel,) = canvas(source=source_line(run))
-    delay = fit.delay_fs * factor
-    panel.plot(
-        delay,
-        fit.measured,
-        color=COLOURS["before"],
-        linestyle="none",
-        marker="o",
-        markersize=5,
-        label="measured",
-    )
-    panel.plot(delay, fit.fitted, color=COLOURS["after"], label=f"fit, |GDD| = {abs(fit.gdd_fs2):.3g} fs²")
-    panel.plot(
-        delay, fit.predicted, color=COLOURS["warm"], linestyle="--", label="predicted from the scenario"
-    )
-    label_x(panel, f"delay, {unit}")
-    label_y(panel, "autocorrelation")
-    panel.set_title("Measured against predicted, before the path")
-    panel.margins(x=0)
-    panel.legend(loc="upper right")
-    columns = {
-        "delay_fs": fit.delay_fs,
-        "measured": fit.measured,
-        "fitted": fit.fitted,
-        "predicted": fit.predicted,
-    }
-    caption = "The measured intensity autocorrelation, the chirp that fits it, and the pulse as stated."
-    return Drawing(name="autocorrelation-measured", caption=caption, figure=figure, columns=columns)

@@ -8,19 +8,15 @@ from pathlib import Path
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import chi_curves, index_curves, strongest_line
 from pulseprop.reports.document import check_directory, write_text
+from pulseprop.reports.draw_autocorrelation import draw_autocorrelation, draw_measured_autocorrelation
 from pulseprop.reports.draw_band import draw_budget, draw_spectrum
 from pulseprop.reports.draw_media import draw_media, draw_susceptibility
-from pulseprop.reports.draw_time import (
-    draw_autocorrelation,
-    draw_contrast,
-    draw_measured_autocorrelation,
-    draw_pulse,
-    draw_spectrogram,
-)
+from pulseprop.reports.draw_spectrogram import draw_spectrogram
+from pulseprop.reports.draw_time import draw_contrast, draw_pulse
 from pulseprop.reports.drawing import Drawing, csv_text, source_line
 from pulseprop.reports.figure_style import save_png, svg_document
+from pulseprop.reports.media_curves import chi_curves, index_curves, strongest_line
 
 __all__ = ["drawings", "write_figure", "write_figures"]
 

@@ -16,21 +16,13 @@ from pulseprop.errors import InputError
 from pulseprop.material.lines import LorentzLine
 from pulseprop.material.medium import Medium, Resonance
 from pulseprop.propagation.result import Run
-from pulseprop.reports.curves import (
-    IndexCurve,
-    chi_curves,
-    field_facts,
-    index_curves,
-    pulse_curve,
-    strongest_line,
-    thin_pairs,
-    volts_per_metre,
-)
+from pulseprop.reports.curves import field_facts, pulse_curve, thin_pairs, volts_per_metre
 from pulseprop.reports.draw_band import draw_budget
 from pulseprop.reports.draw_media import draw_media, draw_susceptibility
 from pulseprop.reports.draw_time import draw_pulse
 from pulseprop.reports.figure_style import COLOURS
 from pulseprop.reports.figures import drawings, write_figure, write_figures
+from pulseprop.reports.media_curves import IndexCurve, chi_curves, index_curves, strongest_line
 
 
 @pytest.fixture(scope="module")
