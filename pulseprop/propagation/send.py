@@ -7,6 +7,7 @@ from collections.abc import Iterable
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.errors import PulsepropError
 from pulseprop.measures.delays import delay_split
 from pulseprop.propagation.assess import measured
 from pulseprop.propagation.cautions import cautions_for
@@ -45,7 +46,10 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
     Raises RangeError where the pulse leaves the range of a medium, NumericalLimit where the grid cannot hold
     the answer.
     """
-    done = propagated(experiment, progress)
+    try:
+        done = propagated(experiment, progress)
+    except PulsepropError as error:
+        raise error.located(file=experiment.file) from None
     grid_in, grid_out, spectrum_out = done.windows.grid, done.exit, done.walked.spectrum
     progress("measuring", 0.5)
     before, limit_in = measured(grid_in, done.spectrum_in, after_path=False)

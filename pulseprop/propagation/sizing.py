@@ -73,6 +73,7 @@ def first_windows(pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
     needed = (last - first) + float(np.ptp(delays[-1])) if len(delays) else last - first
     needed *= MARGIN
     _refuse_gigantic(wish, step)
+    _refuse_short(wish, needed)
     points = _points(needed, MARGIN * _ringing(pulse, path), step, wish)
     if wish.span is not None and wish.points is None:
         step = wish.span / points
@@ -97,6 +98,16 @@ def _refuse_gigantic(wish: GridWish, step: float) -> None:
                 remedy="Leave it out, so that the grid sizes itself, or raise grid.memory",
                 place=f"grid.{key}",
             )
+
+
+def _refuse_short(wish: GridWish, needed: float) -> None:
+    if wish.points is None and wish.span is not None and wish.span < needed / MARGIN:
+        raise NumericalLimit(
+            "the stated grid cannot hold the pulse",
+            value=f"{wish.span * 1e12:.4g} ps",
+            allowed=f"{needed * 1e12:.4g} ps or more (grid.span)",
+            remedy="Leave grid.span out, so that the grid sizes itself",
+        )
 
 
 def _step_of(points: int, span: float | None, needed: float, coarsest: float) -> float:
