@@ -24,14 +24,13 @@ __all__ = [
     "send",
 ]
 
+__version__ = "0.1.0"
+"""What pyproject.toml takes as the version of the package."""
+
 _ERRORS = {"InputError", "NumericalLimit", "PulsepropError", "RangeError"}
 
 
 def __getattr__(name: str) -> Any:
-    if name == "__version__":
-        from pulseprop.api import version
-
-        return version()
     if name not in __all__:
         raise AttributeError(f"module 'pulseprop' has no attribute {name!r}")
     from importlib import import_module

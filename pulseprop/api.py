@@ -6,8 +6,6 @@ import hashlib
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from functools import cache
-from importlib.metadata import PackageNotFoundError
-from importlib.metadata import version as installed_version
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
@@ -21,17 +19,10 @@ if TYPE_CHECKING:
     from pulseprop.propagation.send import Progress
     from pulseprop.scenario.read import Scenario
 
+from pulseprop import __version__
 from pulseprop.constants import TWO_PI_C
 
-__all__ = ["MediumReport", "OrdersRow", "catalogue", "dataset", "media", "medium", "read", "send", "version"]
-
-
-def version() -> str:
-    """The version of the installed package."""
-    try:
-        return installed_version("pulseprop")
-    except PackageNotFoundError:
-        return "not installed"
+__all__ = ["MediumReport", "OrdersRow", "catalogue", "dataset", "media", "medium", "read", "send"]
 
 
 def read(path: str | Path, overrides: Iterable[str] = ()) -> Scenario:
@@ -57,8 +48,8 @@ def send(
         raise ValueError("overrides go with a file: give them to read()")
     experiment = build(scenario)
     if progress is None:
-        return run(experiment, version(), catalogue_checksum())
-    return run(experiment, version(), catalogue_checksum(), progress)
+        return run(experiment, __version__, catalogue_checksum())
+    return run(experiment, __version__, catalogue_checksum(), progress)
 
 
 def dataset(run: Run) -> xarray.Dataset:

@@ -11,6 +11,7 @@ from pathlib import Path
 
 import pytest
 
+import pulseprop
 from pulseprop import api, cli
 from pulseprop.errors import NumericalLimit
 from pulseprop.propagation.result import Run
@@ -267,7 +268,7 @@ def test_a_figure_of_a_medium(tmp_path: Path) -> None:
 
 def test_version_and_help(capsys: pytest.CaptureFixture[str]) -> None:
     assert called("--version") == 0
-    assert capsys.readouterr().out == f"pulseprop {api.version()}\n"
+    assert capsys.readouterr().out == f"pulseprop {pulseprop.__version__}\n"
     assert called("send", "--help") == 0
     assert "--figures" in capsys.readouterr().out
 

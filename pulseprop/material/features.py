@@ -16,15 +16,17 @@ from pulseprop.material.formulas import MICROMETRE_OMEGA, Formula
 from pulseprop.material.lines import Carriers, LorentzLine, Relaxation, VoigtLine
 from pulseprop.material.response import Response, Sum
 
-__all__ = ["features_of", "relaxes"]
+__all__ = ["features_of", "knots_of", "relaxes"]
 
 Place = tuple[float, float]
-KNOTS_TO_SHOW = (-2.0, -1.0, 1.0, 2.0)
+KNOTS = (-2.0, -1.0, 0.0, 1.0, 2.0)
 
 
 def features_of(response: Response) -> tuple[Place, ...]:
-    """(centre, width) in rad/s of everything that absorbs; measured tables are left out (their sums are their
-    own).
+    """(centre, width) in rad/s of everything that absorbs and is smooth about its centre.
+
+    Bands of a formula that stands by itself are told by `knots_of`; measured tables are left out (their sums
+    are their own).
     """
     if isinstance(response, LorentzLine):
         return ((response.centre, response.width),)
@@ -35,8 +37,31 @@ def features_of(response: Response) -> tuple[Place, ...]:
     if isinstance(response, Carriers):
         return ((0.0, response.rate),)
     if isinstance(response, Formula):
+        return ()
+    inner = tuple(place for part in _parts(response) for place in features_of(part))
+    if isinstance(response, Sum):
+        return inner
+    # Where dielectric functions are mixed, bands move and their flanks are no longer polynomials.
+    return inner + tuple(place for part in _parts(response) for place in _knots(part))
+
+
+def knots_of(response: Response) -> tuple[float, ...]:
+    """Knots in rad/s of the absorption bands of formulas: chi is smooth between them."""
+    if isinstance(response, Formula):
+        return tuple(centre for centre, _ in _bands(response))
+    return (
+        tuple(knot for part in response.parts for knot in knots_of(part)) if isinstance(response, Sum) else ()
+    )
+
+
+def _knots(response: Response) -> tuple[Place, ...]:
+    if isinstance(response, Formula):
         return _bands(response)
-    return tuple(place for part in _parts(response) for place in features_of(part))
+    return (
+        tuple(place for part in _parts(response) for place in _knots(part))
+        if isinstance(response, Sum)
+        else ()
+    )
 
 
 def relaxes(response: Response) -> bool:
@@ -68,6 +93,6 @@ def _bands(formula: Formula) -> tuple[Place, ...]:
     completion = formula.completion
     for centre, knot in zip(completion.centre, completion.knot, strict=True):
         width = float(np.sqrt(centre + knot) - np.sqrt(centre)) * MICROMETRE_OMEGA
-        for shift in KNOTS_TO_SHOW:
+        for shift in KNOTS:
             found.append((float(np.sqrt(centre + shift * knot)) * MICROMETRE_OMEGA, width))
     return tuple(found)

@@ -13,7 +13,7 @@ from pulseprop.causality.front import TestPulse, front_test
 from pulseprop.causality.sum_rules import Feature, sum_rules
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
-from pulseprop.material.features import features_of, relaxes
+from pulseprop.material.features import features_of, knots_of, relaxes
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
 from pulseprop.propagation.result import Causality, NaiveFilter
@@ -137,6 +137,7 @@ def _test_pulse(centre: float, duration: float) -> TestPulse:
 
 def _sum_rules(medium: Medium) -> tuple[tuple[str, str, float | None, str], ...]:
     features = [Feature(centre, width) for centre, width in features_of(medium.response)]
+    features += [Feature(knot, 0.0, edge=True) for knot in knots_of(medium.response)]
     rules = sum_rules(
         lambda omega: medium.susceptibility(omega, View.COMPLETED), features, relaxes=relaxes(medium.response)
     )

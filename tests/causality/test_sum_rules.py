@@ -10,7 +10,7 @@ import numpy as np
 import pytest
 
 from pulseprop.causality.sum_rules import Feature, sum_rules
-from pulseprop.material.features import features_of, relaxes
+from pulseprop.material.features import features_of, knots_of, relaxes
 from pulseprop.material.library import catalogue_medium
 from pulseprop.material.lines import Carriers, LorentzLine, Relaxation, VoigtLine
 from pulseprop.material.response import Sum, View
@@ -18,6 +18,7 @@ from pulseprop.material.response import Sum, View
 
 def rules_of(response):
     features = [Feature(centre, width) for centre, width in features_of(response)]
+    features += [Feature(knot, 0.0, edge=True) for knot in knots_of(response)]
     found = sum_rules(
         lambda omega: response.series(omega, 1, View.COMPLETED)[0].astype(complex),
         features,

@@ -1,4 +1,4 @@
-"""The split-step loop on a linear path against the exact transfer: 1e-12 of the peak, thick glass included."""
+"""The split-step loop on a linear path against the exact transfer: 1e-12 of the peak, also in thick glass."""
 
 from __future__ import annotations
 
