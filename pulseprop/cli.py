@@ -94,9 +94,9 @@ def _replace_unprintable() -> None:
 
 def _print_version(context: click.Context, parameter: click.Parameter, wanted: bool) -> None:
     if wanted and not context.resilient_parsing:
-        from pulseprop.api import version
+        from pulseprop import __version__
 
-        click.echo(f"pulseprop {version()}")
+        click.echo(f"pulseprop {__version__}")
         context.exit()
 
 

@@ -47,11 +47,7 @@ def features_of(response: Response) -> tuple[Place, ...]:
 
 def knots_of(response: Response) -> tuple[float, ...]:
     """Knots in rad/s of the absorption bands of formulas: chi is smooth between them."""
-    if isinstance(response, Formula):
-        return tuple(centre for centre, _ in _bands(response))
-    return (
-        tuple(knot for part in response.parts for knot in knots_of(part)) if isinstance(response, Sum) else ()
-    )
+    return tuple(centre for centre, _ in _knots(response))
 
 
 def _knots(response: Response) -> tuple[Place, ...]:
