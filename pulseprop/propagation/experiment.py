@@ -46,6 +46,7 @@ class Experiment:
     file: str = ""
     text: str = ""
     sha256: str = ""
+    overrides: tuple[str, ...] = ()
     both_signs: bool = False
     energy_stated: bool = True
     grid: GridWish = field(default_factory=GridWish)

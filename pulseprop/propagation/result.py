@@ -244,6 +244,8 @@ class Run:
     file: str
     scenario_text: str
     scenario_sha256: str
+    overrides: tuple[str, ...] = ()
+    """KEY=VALUE that stood in place of what the text says."""
     catalogue_sha256: str
     version: str
     headline: str
@@ -273,6 +275,7 @@ class Run:
         """The document of the JSON report: plain numbers, None where there is no answer."""
         document = {
             "scenario": self.scenario,
+            "overrides": list(self.overrides),
             "question": self.question,
             "answer": self.answer,
             "version": self.version,

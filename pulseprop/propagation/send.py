@@ -75,6 +75,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
         file=experiment.file,
         scenario_text=experiment.text,
         scenario_sha256=experiment.sha256,
+        overrides=experiment.overrides,
         catalogue_sha256=catalogue_sha256,
         version=version,
         headline=headline(before, after, path),

@@ -29,9 +29,14 @@ def media_of(scenario: Scenario) -> MediaOfScenario:
 
 def _warnings(scenario: Scenario) -> tuple[str, ...]:
     pulse = scenario.content.pulse
-    if pulse.given("energy", "peak_power"):
-        return ()
-    return ("neither energy nor peak_power is stated: 1 nJ was taken, and what scales with it is a guess",)
+    said = []
+    if not pulse.given("energy", "peak_power"):
+        said.append(
+            "neither energy nor peak_power is stated: 1 nJ was taken, and what scales with it is a guess"
+        )
+    if pulse.shape == "measured" and pulse.given("centre"):
+        said.append("pulse.centre is not used: the centre of a measured pulse is that of its file")
+    return tuple(said)
 
 
 def _beyond_rows(pulse: PulseSource, media: MediaOfScenario) -> Iterator[str]:
@@ -79,6 +84,7 @@ def build(scenario: Scenario) -> Experiment:
         file=scenario.file,
         text=scenario.text,
         sha256=scenario.sha256,
+        overrides=scenario.overrides,
         both_signs=both_signs,
         energy_stated=bool(content.pulse.given("energy", "peak_power")),
         warnings=(*_warnings(scenario), *_beyond_rows(pulse, media)),

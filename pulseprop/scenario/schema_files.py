@@ -75,7 +75,8 @@ def _background(value: Any) -> float | str:
 class SpectrumFile(SpectralFile):
     """A measured spectrum of the pulse.
 
-    y: counts and power are power per x, amplitude the root of the power per x. phase: column of the spectral
+    y: counts and power are power per x; amplitude is |A| of the field's spectrum over frequency, whatever x
+    is, and takes no Jacobian. phase: column of the spectral
     phase, in phase_unit; the field goes as exp(+i phase_sign phase). background: a number of the unit of y,
     or a file of the same kind. noise_cut: share of the peak below which rows count as noise.
     """

@@ -119,6 +119,21 @@ def test_the_centre_in_every_unit(sent, centre, nm):
     assert answer["pulse_in"]["centre_nm"] == pytest.approx(nm, rel=1e-10)
 
 
+def test_a_measured_spectrum_takes_the_jacobian_and_its_own_centre(sent, tmp_path):
+    # Power per wavelength exp(-((L - 800)/25)^2): per frequency it is L^2 / c times as much.
+    nm = np.linspace(680, 920, 481)
+    counts = np.exp(-(((nm - 800) / 25) ** 2))
+    np.savetxt(
+        tmp_path / "s.csv", np.column_stack([nm, counts]), delimiter=",", header="nm,counts", comments=""
+    )
+    file = 'spectrum = { file = "s.csv", x = "wavelength", x_unit = "nm", y = "counts", noise_cut = 1e-9 }\n'
+    answer = sent(NOTHING, shape="measured", centre="760 nm", pulse=file + 'energy = "1 nJ"')
+    frequency = C / nm
+    mean = np.trapezoid(counts * nm**2 * frequency, frequency) / np.trapezoid(counts * nm**2, frequency)
+    assert answer["pulse_in"]["centre_nm"] == pytest.approx(C / mean, rel=1e-6)
+    assert any("pulse.centre is not used" in warning for warning in answer["warnings"])
+
+
 def test_peak_power_is_as_launched_and_a_measured_duration_carries_both_signs(sent):
     # FWHM sqrt(1 + (4 ln2 GDD / FWHM^2)^2); energy of a Gaussian = peak FWHM / sqrt(4 ln2 / pi).
     long = 30 * math.hypot(1, 4 * math.log(2) * 1000 / 900)
@@ -271,6 +286,7 @@ def test_python_and_the_command_give_equal_numbers(command, scenario):
     run = pulseprop.send(file, ["path.cold window.thickness=2 mm"])
     told = command("send", file, "--json", "-", "--set", "path.cold window.thickness=2 mm")
     assert json.loads(json.dumps(run.as_json())) == told.json
+    assert told.json["overrides"] == ["path.cold window.thickness=2 mm"]
     assert run.path.gdd_fs2 == pytest.approx(2 * 36.1619983, rel=1e-8)
     assert pulseprop.dataset(run).field_out.dtype == np.complex128
 
