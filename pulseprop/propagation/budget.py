@@ -28,6 +28,8 @@ Advance = Callable[[Element, Complex, Complex], None]
 
 FEMTO = 1e15
 PER_CM2 = 1e-4
+FAINTEST_ENERGY = 1e-140
+"""J: below, the square of the power, which autocorrelations need, leaves the range of double precision."""
 FAINTEST_ECHO = 1e-12
 MOST_ECHOES = 12
 
@@ -85,11 +87,11 @@ def _row(state: Walk, index: int, element: Element, advance: Advance) -> Element
     state.gdd = None if orders[1] is None or state.gdd is None else state.gdd + orders[1]
     state.tod = None if orders[2] is None or state.tod is None else state.tod + orders[2]
     energy_out = grid.energy(state.spectrum)
-    if not energy_out > 0:
+    if not energy_out > FAINTEST_ENERGY:
         raise InputError(
             "nothing leaves this element: it absorbs all light of the pulse",
             value=f"{element.name}, {element.detail}",
-            allowed="a transmission that double precision holds (about 1e-300)",
+            allowed=f"energies above {FAINTEST_ENERGY:g} J",
             remedy="Check thickness and absorption, and their units",
             place=element.name,
         )

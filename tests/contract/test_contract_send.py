@@ -376,6 +376,12 @@ def test_a_stated_grid_that_cannot_hold_the_pulse_stops_with_three(refused, key)
     assert key.partition("=")[0] in message
 
 
+@pytest.mark.parametrize("thickness", ["10 um", "100 um"])
+def test_light_that_does_not_get_through_is_told(refused, thickness):
+    metal = '[medium.m]\ncarriers = [ { plasma_frequency = "9 rad/fs", scattering_time = "10 fs" } ]\n'
+    assert "nothing leaves this element" in refused(slab("m", thickness) + metal)
+
+
 def test_a_gigantic_grid_is_refused_with_file_and_place(refused):
     message = refused(SILICA_10_FS, "--set", "grid.points=4294967296")
     assert "scenario.toml, grid.points" in message
