@@ -12,6 +12,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.propagation.result import Fields, Run
+from pulseprop.reports.common_clock import on_one_clock
 from pulseprop.reports.document import written_whole
 
 if TYPE_CHECKING:
@@ -24,8 +25,7 @@ Real = NDArray[np.float64]
 
 FEMTO, TERA = 1e15, 1e-12
 
-INSIDE = 1e-9
-"""Share of the entering energy outside the leaving window up to which both are shown in that window."""
+APART = {"instants": "time_in: the pulse enters too long before it leaves for one time axis"}
 
 FORMS = {
     "envelope": "analytic signal divided by exp(-i omega_c t), omega_c = 2 pi carrier_THz",
@@ -36,19 +36,24 @@ FORMS = {
 def to_dataset(run: Run) -> xarray.Dataset:
     """Fields, spectra, group delay and transmission of a run, units in the attributes.
 
-    time: fs on the clock of a front that travels at c, the window of the pulse that leaves. time_in: the
-    instants of field_in, the same as time wherever that window holds the pulse that enters. frequency: THz,
-    absolute and ascending; spectra are zero at and below zero. The integral of a spectrum over frequency is
-    the energy.
+    time: fs on the clock of a front that travels at c, over the windows of both pulses; a field is zero
+    outside its own. Where they lie too far apart (over two million samples) it is the window of the pulse
+    that leaves, and time_in holds the instants of field_in; else time_in is time. frequency: THz, absolute
+    and ascending; spectra are zero at and below zero. The integral of a spectrum over frequency is the
+    energy.
     """
     import xarray
 
     fields = run.fields
-    entering = _entering_window(fields)
-    time, frequency = fields.grid_out.time * FEMTO, fields.grid_out.frequency * TERA
+    clock = on_one_clock(fields)
+    apart = clock.time_in is not clock.time
     variables: dict[str, Any] = {
-        "field_in": ("time", _shown(entering), _field_attributes(fields, "entering")),
-        "field_out": ("time", _shown(fields), _field_attributes(fields, "leaving")),
+        "field_in": (
+            "time",
+            clock.entering,
+            _field_attributes(fields, "entering") | (APART if apart else {}),
+        ),
+        "field_out": ("time", clock.leaving, _field_attributes(fields, "leaving")),
         "spectrum_in": _spectrum(fields.spectrum_in, "entering"),
         "spectrum_out": _spectrum(fields.spectrum_out, "leaving"),
         "group_delay": (
@@ -65,15 +70,19 @@ def to_dataset(run: Run) -> xarray.Dataset:
     coordinates: dict[str, Any] = {
         "time": (
             "time",
-            time,
+            clock.time * FEMTO,
             {"units": "fs", "long_name": "time on the clock of a front that travels at c"},
         ),
         "time_in": (
             "time",
-            entering.grid_out.time * FEMTO,
+            clock.time_in * FEMTO,
             {"units": "fs", "long_name": "instants of field_in, on the same clock as time"},
         ),
-        "frequency": ("frequency", frequency, {"units": "THz", "long_name": "ordinary frequency"}),
+        "frequency": (
+            "frequency",
+            fields.grid_out.frequency * TERA,
+            {"units": "THz", "long_name": "ordinary frequency"},
+        ),
     }
     return xarray.Dataset(variables, coordinates, _attributes(run))
 
@@ -96,32 +105,6 @@ def save_dataset(run: Run, path: str | Path) -> Path:
         dataset.to_netcdf(target, engine="h5netcdf")
 
     return written_whole(path, write)
-
-
-def _entering_window(fields: Fields) -> Fields:
-    """The pulse that enters as one that leaves: in the leaving window where it lies there, else in its own.
-
-    Seen through a window that does not hold it, a field would come back as an alias from the other side.
-    """
-    own, common = fields.grid_in, fields.grid_out
-    height = np.abs(fields.envelope_in) ** 2
-    outside = (own.time < common.start) | (own.time > common.start + common.span)
-    held = float(height[outside].sum()) <= INSIDE * float(height.sum())
-    return Fields(
-        grid_in=own,
-        grid_out=common if held else own,
-        spectrum_in=fields.spectrum_in,
-        spectrum_out=fields.spectrum_in,
-        transmission=fields.transmission,
-        group_delay=fields.group_delay,
-        form=fields.form,
-    )
-
-
-def _shown(fields: Fields) -> Complex:
-    """The field that leaves, in the form that was asked for."""
-    envelope = fields.envelope_out
-    return fields.grid_out.carrier_resolved(envelope) if fields.form == "field" else envelope
 
 
 def _field_attributes(fields: Fields, which: str) -> dict[str, Any]:
@@ -152,6 +135,7 @@ def _attributes(run: Run) -> dict[str, Any]:
         "sign_convention": "exp(-i omega t); positive GDD means red first",
         "scenario": run.scenario_text,
         "scenario_file": run.file,
+        "overrides": list(run.overrides) or "",
         "scenario_sha256": run.scenario_sha256,
         "catalogue_sha256": run.catalogue_sha256,
         "pulseprop_version": run.version,

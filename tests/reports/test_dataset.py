@@ -44,11 +44,14 @@ def test_the_clock_is_that_of_the_front(run: Run) -> None:
     assert float((data.time * power).sum() / power.sum()) == pytest.approx(10_000.0, abs=1e-6)
 
 
-def test_a_pulse_outside_the_leaving_window_keeps_its_own_instants(run: Run) -> None:
+def test_both_pulses_stand_on_one_clock(run: Run) -> None:
+    """10 ps apart: the pulse that enters is at 0, the one that leaves at its group delay."""
     data = to_dataset(run)
-    power = np.abs(data.field_in) ** 2
-    assert float((data.time_in * power).sum() / power.sum()) == pytest.approx(0.0, abs=1e-6)
-    assert float(data.time.min()) > float(data.time_in.max())
+    np.testing.assert_array_equal(data.time, data.time_in)
+    for name, centre in (("field_in", 0.0), ("field_out", 10_000.0)):
+        power = np.abs(data[name]) ** 2
+        assert float((data.time * power).sum() / power.sum()) == pytest.approx(centre, abs=1e-6)
+        assert energy_of(data[name]) == pytest.approx(5e-9, rel=1e-12)
 
 
 def test_windows_that_overlap_become_one_clock(run: Run) -> None:
@@ -58,6 +61,16 @@ def test_windows_that_overlap_become_one_clock(run: Run) -> None:
     power = np.abs(data.field_in) ** 2
     assert float((data.time * power).sum() / power.sum()) == pytest.approx(0.0, abs=1e-6)
     assert energy_of(data.field_in) == pytest.approx(5e-9, rel=1e-12)
+
+
+def test_a_pulse_that_enters_much_earlier_keeps_its_own_instants(run: Run) -> None:
+    """Five nanoseconds, a metre of fibre: three million samples of 1.5 fs would hold both."""
+    grid = run.fields.grid_in.moved(4.9e-9)
+    data = to_dataset(with_fields(run, grid_out=grid, spectrum_out=run.fields.spectrum_in))
+    power = np.abs(data.field_in) ** 2
+    assert float((data.time_in * power).sum() / power.sum()) == pytest.approx(0.0, abs=1e-6)
+    assert float(data.time.min()) > float(data.time_in.max())
+    assert "time_in" in data.field_in.attrs["instants"]
 
 
 def test_envelope_times_carrier_is_the_field(run: Run) -> None:
@@ -74,7 +87,7 @@ def test_file_as_another_library_sees_it(run: Run, tmp_path: Path) -> None:
             file
         )
         assert {"group_delay", "transmission"} <= set(file)
-        assert file["field_out"].shape == (2048, 2)
+        assert file["field_out"].shape == (2048 + 6667, 2)
         assert file["field_out"].dtype == np.float64
         assert file["field_out"].attrs["units"] == "W^(1/2)"
         assert file["spectrum_out"].attrs["units"] == "J/THz"
