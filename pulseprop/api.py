@@ -131,12 +131,16 @@ class MediumReport:
         return document
 
 
-def media(names: Sequence[str], at: Sequence[str | float] = ()) -> tuple[MediumReport, ...]:
-    """Reports on media by name, with their orders at vacuum wavelengths ("800 nm", or metres).
+def media(
+    names: str | Sequence[str], at: str | float | Sequence[str | float] = ()
+) -> tuple[MediumReport, ...]:
+    """Reports on media by name, one or several, with orders at vacuum wavelengths ("800 nm", or metres).
 
     Raises InputError for unknown names, and RangeError for wavelengths outside a record's range.
     """
-    return tuple(_report(medium(name), at) for name in names)
+    names = [names] if isinstance(names, str) else names
+    places = [at] if isinstance(at, str | float | int) else at
+    return tuple(_report(medium(name), places) for name in names)
 
 
 def _report(found: Medium, at: Sequence[str | float]) -> MediumReport:

@@ -58,7 +58,9 @@ def _guarded(arguments: Sequence[str] | None) -> int:
     except BrokenPipeError:
         raise
     except SystemExit as left:
-        raise BrokenPipeError from left  # so the parser leaves when the reader of a pipe has gone
+        if left.code == 1:  # so the parser leaves when the reader of a pipe has gone
+            raise BrokenPipeError from left
+        return left.code if isinstance(left.code, int) else DONE
     except MemoryError:
         return _failed(
             "the memory of this machine does not suffice. Lower grid.memory in the scenario.", UNTRUSTWORTHY
@@ -147,7 +149,7 @@ def send(
     from pulseprop import api
     from pulseprop.reports.progress import Progress
 
-    _check_outputs(json_path, (save_path, page_path), figures_path)
+    _check_outputs(scenario, json_path, (save_path, page_path), figures_path)
     read = api.read(scenario, overrides)
     with Progress(sys.stderr) as progress:
         run = api.send(read, progress=progress)
@@ -161,15 +163,25 @@ def send(
     return run.exit_code
 
 
-def _check_outputs(json_path: str | None, files: Sequence[str | None], directory: str | None) -> None:
+def _check_outputs(
+    scenario: str, json_path: str | None, files: Sequence[str | None], directory: str | None
+) -> None:
     """Whatever cannot be written is told before the work begins."""
     from pulseprop.reports.document import STDOUT, check_directory, check_target
 
     if STDOUT in files:
         raise click.UsageError("only --json can go to standard output; give the others a file name")
-    for target in (json_path, *files):
-        if target is not None:
-            check_target(target)
+    targets = [target for target in (json_path, *files) if target is not None]
+    taken = [os.path.realpath(scenario)]
+    for target in targets:
+        if not target:
+            raise click.UsageError("an output has no name")
+        check_target(target)
+        place = os.path.realpath(target)
+        if target != STDOUT and place in taken:
+            what = "the scenario itself" if place == taken[0] else "another output"
+            raise click.UsageError(f"{target} is {what}; give each file a name of its own")
+        taken.append(place)
     if directory is not None:
         check_directory(directory)
 

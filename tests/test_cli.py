@@ -297,3 +297,27 @@ def test_a_reader_who_leaves_is_no_failure() -> None:
     assert done.returncode == 0
     assert "Traceback" not in done.stderr
     assert "BrokenPipe" not in done.stderr
+
+
+def test_outputs_never_overwrite_the_scenario_or_one_another(
+    scenario: str, capsys: pytest.CaptureFixture[str]
+) -> None:
+    """Nothing is read and then lost: each file has a name of its own."""
+    before = Path(scenario).read_text()
+    assert called("send", scenario, "--json", scenario) == 2
+    assert "the scenario itself" in capsys.readouterr().err
+    assert Path(scenario).read_text() == before
+    one = str(Path(scenario).with_name("one.out"))
+    assert called("send", scenario, "--json", one, "--page", one) == 2
+    assert "another output" in capsys.readouterr().err
+    assert not Path(one).exists()
+
+
+def test_a_device_is_written_through_and_stays_a_device(scenario: str) -> None:
+    assert called("send", scenario, "--json", "/dev/null") == 0
+    assert Path("/dev/null").is_char_device()
+
+
+def test_without_a_command_the_help_is_shown(capsys: pytest.CaptureFixture[str]) -> None:
+    assert called() == 0
+    assert "send" in capsys.readouterr().out

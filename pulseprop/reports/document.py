@@ -17,6 +17,7 @@ __all__ = [
     "check_directory",
     "check_target",
     "json_text",
+    "make_directory",
     "write_bytes",
     "write_json",
     "write_text",
@@ -35,6 +36,8 @@ def written_whole(target: str | Path, writer: Callable[[Path], None]) -> Path:
     """
     target = Path(target)
     check_target(target)
+    if _is_device(target):
+        return _through(target, writer)
     try:
         handle, name = tempfile.mkstemp(dir=target.parent, prefix=f".{target.name}.", suffix=target.suffix)
     except OSError as error:
@@ -52,6 +55,24 @@ def written_whole(target: str | Path, writer: Callable[[Path], None]) -> Path:
     return target
 
 
+def _through(target: Path, writer: Callable[[Path], None]) -> Path:
+    """Into a pipe or a device, which no file may replace: all at once, when it is complete elsewhere."""
+    with tempfile.TemporaryDirectory() as folder:
+        whole = Path(folder) / target.name
+        writer(whole)
+        try:
+            with target.open("wb") as stream:
+                stream.write(whole.read_bytes())
+        except OSError as error:
+            raise _unwritable(target, error) from error
+    return target
+
+
+def _is_device(target: Path) -> bool:
+    """Whether something that is no plain file stands under this name."""
+    return target.exists() and not target.is_file()
+
+
 def check_target(target: str | Path) -> None:
     """Raise InputError where a file of this name cannot be made: for use before the work begins."""
     target = Path(target)
@@ -64,6 +85,8 @@ def check_target(target: str | Path) -> None:
             allowed="the name of a file",
             remedy="Add a file name",
         )
+    if _is_device(target):
+        return
     if not target.parent.is_dir():
         raise InputError(
             "the output cannot be written",
@@ -90,6 +113,17 @@ def check_directory(directory: str | Path) -> None:
             )
     elif not os.access(directory, os.W_OK):
         raise _unwritable(directory, PermissionError(13, "Permission denied"))
+
+
+def make_directory(directory: str | Path) -> Path:
+    """The directory, made where it is not there yet. Raises InputError where it cannot be."""
+    directory = Path(directory)
+    check_directory(directory)
+    try:
+        directory.mkdir(exist_ok=True)
+    except OSError as error:
+        raise _unwritable(directory, error) from error
+    return directory
 
 
 def write_bytes(target: str | Path, data: bytes) -> None:

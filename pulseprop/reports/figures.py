@@ -8,7 +8,7 @@ from pathlib import Path
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.propagation.result import Run
-from pulseprop.reports.document import check_directory, write_text
+from pulseprop.reports.document import make_directory, write_text
 from pulseprop.reports.draw_autocorrelation import draw_autocorrelation, draw_measured_autocorrelation
 from pulseprop.reports.draw_band import draw_budget, draw_spectrum
 from pulseprop.reports.draw_media import draw_media, draw_susceptibility
@@ -49,9 +49,7 @@ def write_figures(drawn: Iterable[Drawing], directory: str | Path) -> list[Path]
 
     Raises InputError where it cannot be written.
     """
-    check_directory(directory)
-    directory = Path(directory)
-    directory.mkdir(exist_ok=True)
+    directory = make_directory(directory)
     written: list[Path] = []
     for drawing in drawn:
         written.append(save_png(drawing.figure, directory / f"{drawing.name}.png"))
