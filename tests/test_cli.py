@@ -319,5 +319,7 @@ def test_a_device_is_written_through_and_stays_a_device(scenario: str) -> None:
 
 
 def test_without_a_command_the_help_is_shown(capsys: pytest.CaptureFixture[str]) -> None:
-    assert called() == 0
-    assert "send" in capsys.readouterr().out
+    """Nothing was asked: exit code 2, and what can be asked."""
+    assert called() == 2
+    told = capsys.readouterr()
+    assert "send" in told.out + told.err
