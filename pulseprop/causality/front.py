@@ -43,6 +43,7 @@ SHORTER = 0.93
 SAME_PLACE = 0.01
 BLOCK = 1 << 15
 STATIC = 1e-6
+SAME = 0.01
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -120,28 +121,25 @@ def front_test(
         _even_power(span / (1 - AHEAD_SHARE) / step) for span in (first_span, first_span + ringing)
     )
     points = min(max(least, min(whole, CHEAP_POINTS), 1 << 12), most_points)
+    before = 0.0
     while True:
         spectrum = _input_spectrum(pulse, points, step)
-        naive_input = spectrum.copy() if absorbs else None
         _apply(spectrum, transfer, points, step, magnitude_only=False)
         ahead, last, energy_out, energy_in = _out(spectrum, points, pulse, step)
         floor = max(1e-28, 1e-32 / max(energy_out / energy_in, 1e-300), last)
         wanted = BEST_FLOOR if points < CHEAP_POINTS else GOOD_FLOOR
         # A pulse later than the window would come round as if it were early: only a larger window can tell.
-        settled = floor <= wanted and ahead <= CAUSAL_FLOORS * floor
-        if settled or 2 * points > most_points:
+        quiet = floor <= wanted and ahead <= CAUSAL_FLOORS * floor
+        if quiet or _stays(ahead, before, floor) or 2 * points > most_points:
             break
+        before = ahead
         points *= 2
         if progress:
             progress(points / most_points)
     verdict = judged(ahead, floor)
     if verdict == "acausal" and _came_round(pulse, transfer, points, step):
         verdict = "unresolved"
-    naive, naive_verdict = None, None
-    if naive_input is not None:
-        _apply(naive_input, transfer, points, step, magnitude_only=True)
-        naive, *_ = _out(naive_input, points, pulse, step)
-        naive_verdict = judged(naive, floor)
+    naive = _naive_energy_ahead(pulse, transfer, points, step) if absorbs else None
     return FrontResult(
         energy_ahead=ahead,
         noise_floor=floor,
@@ -149,8 +147,22 @@ def front_test(
         points=points,
         span=points * step,
         naive_energy_ahead=naive,
-        naive_verdict=naive_verdict,
+        naive_verdict=None if naive is None else judged(naive, floor),
     )
+
+
+def _naive_energy_ahead(
+    pulse: TestPulse, transfer: Callable[[Real], Complex], points: int, step: float
+) -> float:
+    """What the filter |transfer|, which absorbs and delays nothing, lets out ahead of the front."""
+    spectrum = _input_spectrum(pulse, points, step)
+    _apply(spectrum, transfer, points, step, magnitude_only=True)
+    return _out(spectrum, points, pulse, step)[0]
+
+
+def _stays(ahead: float, before: float, floor: float) -> bool:
+    """Whether what comes early is far above the noise and the same in a window twice as long."""
+    return floor <= WORST_FLOOR and ahead > ACAUSAL_FLOORS * floor and abs(ahead - before) <= SAME * ahead
 
 
 def _came_round(pulse: TestPulse, transfer: Callable[[Real], Complex], points: int, step: float) -> bool:

@@ -44,11 +44,12 @@ class Resonance:
 class Medium:
     """What a beam can pass through.
 
-    response: the susceptibility. causal: False where only orders or a spline as printed are known, so that
-    causality cannot be tested. temperature: as the source prints it. relative_to: what the printed index is
-    against. resonances: what rings in it. spread: names of other records of the same substance. extendable:
-    False where the band may not be left even on request (relaxation terms). index_is_relative: known up to
-    absorption outside a table, for want of an anchor. health: a hazard of the substance, common practice.
+    response: the susceptibility. causal: False where only orders or a spline as printed are known;
+    orders_only: where there is not even a table to test. temperature: as the source prints it.
+    relative_to: what the printed index is against. resonances: what rings in it. spread: names of other
+    records of the same substance. extendable: False where the band may not be left even on request
+    (relaxation terms). index_is_relative: known up to absorption outside a table, for want of an anchor.
+    health: a hazard of the substance, common practice.
     """
 
     name: str
@@ -58,6 +59,7 @@ class Medium:
     temperature_K: float | None = None
     relative_to: str = "vacuum"
     causal: bool = True
+    orders_only: bool = False
     resonances: tuple[Resonance, ...] = ()
     n2: tuple[NonlinearIndex, ...] = ()
     spread: tuple[str, ...] = ()

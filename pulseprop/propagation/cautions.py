@@ -120,10 +120,11 @@ def _of_medium(medium: Medium) -> Iterator[Caution]:
     if not medium.causal:
         yield Caution(
             code="not-a-causal-model",
-            line=f"{medium.name}: not a causal model, left out of the causality diagnostics",
+            line=f"{medium.name}: not a causal model",
             text=(
                 f"{medium.name} is given by numbers that are no causal model (orders, a table as printed). "
-                "It is left out of the front test, and its absorption says nothing about its dispersion."
+                "Its absorption says nothing about its dispersion; where only orders are known it is left "
+                "out of the front test."
             ),
         )
     if medium.index_is_relative:

@@ -10,6 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.causality.front import TestPulse, front_test
+from pulseprop.causality.residual import acausal_share
 from pulseprop.causality.sum_rules import Feature, sum_rules
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
@@ -45,8 +46,8 @@ def causality_of(
     progress: Callable[[float], None] | None = None,
 ) -> Causality:
     """Diagnostics of a path for a finite pulse of this centre (rad/s) and FWHM (s); memory: bytes allowed."""
-    tested = Path(tuple(element for element in path if _is_causal_matter(element)))
-    left_out = tuple(element.name for element in path if not _is_causal_matter(element))
+    tested = Path(tuple(element for element in path if _is_testable(element)))
+    left_out = tuple(element.name for element in path if not _is_testable(element))
     passive = all(_is_passive(medium, centre) for medium in path.media)
     rules = tuple(rule for medium in tested.media for rule in _sum_rules(medium))
     if not any(element.medium for element in tested):
@@ -57,7 +58,8 @@ def causality_of(
     first_span = 2 * pulse.support + _latest(tested, low, high)
     most_points = _allowed(memory, resonant=ringing > 0)
     if first_span > most_points * pulse.step():
-        return _too_long(first_span, most_points * pulse.step(), passive, rules, left_out)
+        return _too_long(tested, first_span, most_points * pulse.step(), passive, rules, left_out)
+    residual, basis = _residual(tested)
     result = front_test(
         pulse,
         lambda omega: tested.transfer(omega, View.COMPLETED),
@@ -74,8 +76,8 @@ def causality_of(
         verdict=result.verdict,
         energy_ahead_of_front=result.energy_ahead,
         noise_floor=result.noise_floor,
-        kk_residual=0.0,
-        kk_basis=CLOSED_FORM,
+        kk_residual=residual,
+        kk_basis=basis,
         passive=passive,
         naive_filter=naive,
         sum_rules=rules,
@@ -85,8 +87,18 @@ def causality_of(
     )
 
 
-def _is_causal_matter(element: Element) -> bool:
-    return not element.phase_only and (element.medium is None or element.medium.causal)
+def _is_testable(element: Element) -> bool:
+    return not element.phase_only and (element.medium is None or not element.medium.orders_only)
+
+
+def _residual(path: Path) -> tuple[float, str]:
+    """Largest share of a susceptibility that answers early, and how it is known."""
+    printed = [medium for medium in path.media if not medium.causal]
+    if not printed:
+        return 0.0, CLOSED_FORM
+    shares = [acausal_share(medium.susceptibility, medium.band.high) for medium in printed]
+    names = ", ".join(medium.name for medium in printed)
+    return max(shares), f"measured on {names}, used as printed and held at its ends; else closed form"
 
 
 def _nothing_to_test(left_out: tuple[str, ...], passive: bool) -> Causality:
@@ -104,18 +116,20 @@ def _nothing_to_test(left_out: tuple[str, ...], passive: bool) -> Causality:
 
 
 def _too_long(
+    path: Path,
     needed: float,
     fitting: float,
     passive: bool,
     rules: tuple[tuple[str, str, float | None, str], ...],
     left_out: tuple[str, ...],
 ) -> Causality:
+    residual, basis = _residual(path)
     return Causality(
         verdict="unresolved",
         energy_ahead_of_front=None,
         noise_floor=None,
-        kk_residual=0.0,
-        kk_basis=CLOSED_FORM,
+        kk_residual=residual,
+        kk_basis=basis,
         passive=passive,
         naive_filter=None,
         sum_rules=rules,

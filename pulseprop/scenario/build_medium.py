@@ -116,6 +116,7 @@ class MediaOfScenario:
             temperature_K=table.temperature or base.temperature_K,
             relative_to="vacuum" if table.absolute else base.relative_to,
             causal=causal,
+            orders_only=base.orders_only,
             resonances=(*base.resonances, *(resonance_of(line) for line in built)),
             n2=(NonlinearIndex(value=table.kerr.n2, source="stated in the scenario"),)
             if table.kerr
@@ -152,6 +153,7 @@ class MediaOfScenario:
                 name=name,
                 response=_orders_only(table.orders),
                 causal=False,
+                orders_only=True,
                 notes=("orders only: not a causal model",),
             )
         return Medium(name=name, response=VACUUM.response)
@@ -176,6 +178,7 @@ class MediaOfScenario:
             temperature_K=first.temperature_K,
             relative_to=first.relative_to,
             causal=all(medium.causal for medium, _ in parts),
+            orders_only=any(medium.orders_only for medium, _ in parts),
             resonances=tuple(line for medium, _ in parts for line in medium.resonances),
             notes=(f"{table.rule} mixture, fractions of volume before mixing",),
             extendable=all(medium.extendable for medium, _ in parts),
