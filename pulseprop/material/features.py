@@ -16,7 +16,7 @@ from pulseprop.material.formulas import MICROMETRE_OMEGA, Formula
 from pulseprop.material.lines import Carriers, LorentzLine, Relaxation, VoigtLine
 from pulseprop.material.response import Response, Sum
 
-__all__ = ["features_of", "knots_of", "relaxes"]
+__all__ = ["completion_shift", "features_of", "knots_of", "relaxes"]
 
 Place = tuple[float, float]
 KNOTS = (-2.0, -1.0, 0.0, 1.0, 2.0)
@@ -58,6 +58,13 @@ def _knots(response: Response) -> tuple[Place, ...]:
         if isinstance(response, Sum)
         else ()
     )
+
+
+def completion_shift(response: Response) -> float:
+    """Largest change of n in range by which the causal completion of a formula departs from the print."""
+    if isinstance(response, Formula):
+        return response.completion.shift
+    return max((completion_shift(part) for part in _parts(response)), default=0.0)
 
 
 def relaxes(response: Response) -> bool:

@@ -22,17 +22,18 @@ __all__ = ["gas_at"]
 
 
 def gas_at(name: str, pressure: float, temperature: float, humidity: float | None = None) -> Medium:
-    """The catalogue gas `name` at pressure (Pa, >= 0) and temperature (K, > 0); humidity 0..1 for "humid air"
-    only.
+    """The catalogue gas `name` at pressure (Pa, >= 0) and temperature (K, > 0); humidity 0..1 for air.
+
+    Air with a humidity stated is humid air (P. E. Ciddor, 1996, moist), whatever record of dry air was named.
 
     Raises InputError for a record that is no gas, and for a state that makes no sense.
     """
     _check_state(pressure, temperature)
     entry = record(name)
-    if entry.kind == "humid air":
-        return _humid_air(entry, pressure, temperature, humidity)
+    if entry.kind == "humid air" or (humidity is not None and entry.name.startswith("air")):
+        return _humid_air(record("humid air"), pressure, temperature, humidity)
     if humidity is not None:
-        raise InputError("humidity goes with humid air only", value=name, allowed='medium = "humid air"')
+        raise InputError("humidity goes with air only", value=name, allowed='medium = "humid air" or "air"')
     if entry.pressure_Pa is None or entry.temperature_K is None:
         raise InputError(
             "this record is not a gas of known density",

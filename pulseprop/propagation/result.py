@@ -151,7 +151,10 @@ class Caution:
 
 @dataclass(frozen=True, kw_only=True)
 class MediumUsed:
-    """Source line of one medium; `spread` holds (other record, its GVD in fs^2/mm or None)."""
+    """Source line of one medium; `spread` holds (other record, its GVD in fs^2/mm or None).
+
+    completion_shift: largest change of n in range in the causal completion that the diagnostics use.
+    """
 
     name: str
     source: str
@@ -162,6 +165,7 @@ class MediumUsed:
     gvd_fs2_per_mm: float | None
     spread: tuple[tuple[str, float | None], ...] = ()
     notes: tuple[str, ...] = ()
+    completion_shift: float = 0.0
 
 
 @dataclass(frozen=True, kw_only=True)

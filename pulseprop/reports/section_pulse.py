@@ -105,6 +105,8 @@ def _shape(after: PulseMeasures) -> list[str]:
 
 def delay_section(run: Run) -> Section:
     """When the energy arrives, against the same path in vacuum."""
+    if not run.elements:
+        return Section("delays", "Delays", (Paragraph("The path is empty: nothing is delayed."),))
     path, digits = run.path, digits_of(run)
     sense = "later" if path.centroid_delay_fs >= 0 else "earlier"
     delay = span(abs(path.centroid_delay_fs), digits)

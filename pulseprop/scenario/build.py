@@ -7,7 +7,7 @@ from dataclasses import replace
 from math import pi
 
 from pulseprop.constants import SPEED_OF_LIGHT
-from pulseprop.errors import InputError, PulsepropError
+from pulseprop.errors import PulsepropError
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.sizing import GridWish
 from pulseprop.pulse.source import PulseSource
@@ -57,11 +57,6 @@ def _nanometres(omega: float) -> str:
 def build(scenario: Scenario) -> Experiment:
     """Build pulse, media and path. Raises InputError with file and place for what cannot be built."""
     content = scenario.content
-    if not content.path:
-        raise scenario.blamed(
-            InputError("the path is empty", allowed="one [[path]] table or more", remedy="Add an element"),
-            "path",
-        )
     media = media_of(scenario)
     try:
         pulse, both_signs = built_pulse(scenario)

@@ -95,3 +95,13 @@ def test_n2_goes_with_density():
     assert dense.n2[0].value / base.n2[0].value == pytest.approx(2, rel=2e-3)
     assert "density" in dense.notes[-1]
     assert dense.temperature_K == entry.temperature_K
+
+
+def test_air_with_a_humidity_is_humid_air():
+    """Water vapour lowers the index of air: by 3.7e-8 per hPa near 633 nm (Birch and Downs 1993; memory)."""
+    wet, dry = (gas_at(name, 101325.0, 293.15, share) for name, share in (("air", 0.5), ("humid air", 0.0)))
+    omega = 2 * np.pi * 299792458.0 / 633e-9
+    vapour_hPa = 0.5 * 23.39
+    fall = dry.orders(omega).index - wet.orders(omega).index
+    assert fall == pytest.approx(3.7e-8 * vapour_hPa, rel=0.05)
+    assert wet.name.startswith("humid air")
