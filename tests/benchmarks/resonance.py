@@ -140,7 +140,11 @@ def split_step_against_exact(points: int = 1 << 14) -> None:
     print(f"Split step without terms against the exact transfer: {error:.1e}")
 
 
-if __name__ == "__main__":
+def main() -> None:
     lorentz_response()
     front_energies()
     split_step_against_exact()
+
+
+if __name__ == "__main__":
+    main()
