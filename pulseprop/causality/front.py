@@ -41,7 +41,8 @@ CHEAP_POINTS = 1 << 17
 SHORTER = 0.93
 """A second window over the first, in length: what came round its end stands elsewhere, what is early not."""
 SAME_PLACE = 0.01
-BLOCK = 1 << 15
+BLOCK = 1 << 13
+"""Frequencies evaluated at a time: few, so that what is temporary stays small beside the window."""
 STATIC = 1e-6
 SAME = 0.01
 
@@ -121,12 +122,10 @@ def front_test(
         _even_power(span / (1 - AHEAD_SHARE) / step) for span in (first_span, first_span + ringing)
     )
     points = min(max(least, min(whole, CHEAP_POINTS), 1 << 12), most_points)
-    before = 0.0
+    before, enters = 0.0, _launched(pulse, step)
     while True:
-        spectrum = _input_spectrum(pulse, points, step)
-        _apply(spectrum, transfer, points, step, magnitude_only=False)
-        ahead, last, energy_out, energy_in = _out(spectrum, points, pulse, step)
-        floor = max(1e-28, 1e-32 / max(energy_out / energy_in, 1e-300), last)
+        ahead, last, leaves = _shares(_received(pulse, transfer, points, step))
+        floor = max(1e-28, 1e-32 / max(leaves / enters, 1e-300), last)
         wanted = BEST_FLOOR if points < CHEAP_POINTS else GOOD_FLOOR
         # A pulse later than the window would come round as if it were early: only a larger window can tell.
         quiet = floor <= wanted and ahead <= CAUSAL_FLOORS * floor
@@ -155,9 +154,7 @@ def _naive_energy_ahead(
     pulse: TestPulse, transfer: Callable[[Real], Complex], points: int, step: float
 ) -> float:
     """What the filter |transfer|, which absorbs and delays nothing, lets out ahead of the front."""
-    spectrum = _input_spectrum(pulse, points, step)
-    _apply(spectrum, transfer, points, step, magnitude_only=True)
-    return _out(spectrum, points, pulse, step)[0]
+    return _shares(_received(pulse, lambda omega: np.abs(transfer(omega)) + 0j, points, step))[0]
 
 
 def _stays(ahead: float, before: float, floor: float) -> bool:
@@ -173,9 +170,7 @@ def _came_round(pulse: TestPulse, transfer: Callable[[Real], Complex], points: i
 
 def _place_ahead(pulse: TestPulse, transfer: Callable[[Real], Complex], points: int, step: float) -> float:
     """Centroid in s, against the front, of the energy that stands before it."""
-    spectrum = _input_spectrum(pulse, points, step)
-    _apply(spectrum, transfer, points, step, magnitude_only=False)
-    early = np.fft.irfft(spectrum, points)[: _front_index(points)] ** 2
+    early = _received(pulse, transfer, points, step)[: _front_index(points)] ** 2
     return float(np.dot(early, np.arange(early.size) - early.size) * step / early.sum())
 
 
@@ -195,12 +190,12 @@ def _front_index(points: int) -> int:
     return int(AHEAD_SHARE * points)
 
 
-def _apply(
-    spectrum: Complex, transfer: Callable[[Real], Complex], points: int, step: float, *, magnitude_only: bool
-) -> None:
-    """Multiply in place; numpy's forward transform carries exp(-i omega t), so the conjugate transfer
-    applies.
+def _received(pulse: TestPulse, transfer: Callable[[Real], Complex], points: int, step: float) -> Real:
+    """The real field that leaves.
+
+    numpy's forward transform carries exp(-i omega t), so the conjugate transfer applies.
     """
+    spectrum = _input_spectrum(pulse, points, step)
     spacing = 2 * np.pi / (points * step)
     for start in range(0, spectrum.size, BLOCK):
         part = slice(start, min(start + BLOCK, spectrum.size))
@@ -208,18 +203,20 @@ def _apply(
         # Carriers have a pole at zero frequency; the limit of the transfer is real there, and as good a hair
         # above.
         omega[omega == 0] = STATIC * spacing
-        values = transfer(omega)
-        spectrum[part] *= np.abs(values) if magnitude_only else np.conj(values)
+        spectrum[part] *= np.conj(transfer(omega))
+    return np.fft.irfft(spectrum, points)
 
 
-def _out(spectrum: Complex, points: int, pulse: TestPulse, step: float) -> tuple[float, float, float, float]:
-    field = np.fft.irfft(spectrum, points)
-    field *= field
-    total = float(np.sum(field))
-    samples = int(np.ceil(pulse.support / step)) + 1
-    energy_in = float(np.sum(pulse.field(step * np.arange(samples, dtype=float)) ** 2))
+def _shares(field: Real) -> tuple[float, float, float]:
+    """Shares of the energy before the front and in the last part of the window, and the sum of squares."""
+    total = float(np.dot(field, field))
     if total == 0.0:
-        return 0.0, 0.0, 0.0, energy_in
-    ahead = float(np.sum(field[: _front_index(points)])) / total
-    last = float(np.sum(field[-int(LAST_SHARE * points) :])) / total
-    return ahead, last, total, energy_in
+        return 0.0, 0.0, 0.0
+    early, late = field[: _front_index(field.size)], field[-int(LAST_SHARE * field.size) :]
+    return float(np.dot(early, early)) / total, float(np.dot(late, late)) / total, total
+
+
+def _launched(pulse: TestPulse, step: float) -> float:
+    """Sum of squares of the field that enters."""
+    samples = int(np.ceil(pulse.support / step)) + 1
+    return float(np.sum(pulse.field(step * np.arange(samples, dtype=float)) ** 2))
