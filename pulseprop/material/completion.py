@@ -5,13 +5,13 @@ is replaced by the widest cubic B-spline band of absorption, in x proportional t
 outside the range and has the pole's strength and first moment; its width is what keeps the refraction in
 range within `ALLOWED_SHIFT`:
 
-    weight x_j / (x_j - x)  ->  weight x_j int B_j(x') / (x' - x) dx',   shift = weight x_j variance / |x_j -
-    x|^3.
+    weight x_j / (x_j - x)  ->  weight x_j int B_j(x') / (x' - x) dx',
+    shift = weight x_j variance / |x_j - x|^3.
 
 Lorentz damping would not do: its absorption in range grows in proportion to the damping while the index
 changes with its square. A positive offset stays: an instantaneous response is causal. A term -D L^2 is that
 of a pole at zero frequency and becomes a band just above it. Other powers of the wavelength, and terms of
-negative strength, have no band of their own: they are fitted, together with the rest, by non- negative bands
+negative strength, have no band of their own: they are fitted, together with the rest, by non-negative bands
 outside the range; how well that succeeds is reported.
 """
 
@@ -57,9 +57,9 @@ for ages.
 
 @dataclass(frozen=True, kw_only=True)
 class Completion:
-    """offset + sum_j strength_j int B((x' - centre_j)/knot_j)/knot_j / (x' - x) dx'; x, centre, knot in
-    um^-2.
+    """offset + sum_j strength_j int B((x' - centre_j)/knot_j)/knot_j / (x' - x) dx'.
 
+    strength, centre, knot: (bands,), all in um^-2 as x is, strengths not negative.
     `shift` is the largest change of g in range, as measured.
     """
 
@@ -87,6 +87,8 @@ def _of_one_centre(distance: Numbers, strength: Real, knot: Real, count: int) ->
     """Value (and slope for count 2) of concentric bands at distances from their centre, shape (count, N)."""
     total = np.empty((count, distance.size), dtype=complex)
     far = np.abs(distance) > FAR * knot.max()
+    if far.all():
+        return np.stack(far_from(distance, moments_of(strength, knot), count)).astype(complex)
     total[:, far] = far_from(distance[far], moments_of(strength, knot), count)
     near = distance[~far]
     close = np.zeros((count, near.size), dtype=complex)

@@ -9,13 +9,13 @@ even. Kinds have names of their own:
     index powers    n - 1   = offset + sum strength L^power                   (even powers)
     poles           n^2 - 1 = offset + sum strength / (L^2 - resonance^2)     (strength in um^2)
 
-All are one function, g(x) = offset + sum_j weight_j x_j / (x_j - x) + sum_q coefficient_q x^q, of chi or of n
-- 1.
+All are one function, g(x) = offset + sum_j weight_j x_j / (x_j - x) + sum_q coefficient_q x^q, which gives
+chi or n - 1.
 """
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from functools import cached_property
 from typing import Literal
 
@@ -80,7 +80,7 @@ class Formula:
     of: Literal["chi", "refraction"] = "chi"
     offset: float = 0.0
     poles: tuple[Pole, ...] = ()
-    powers: tuple[Power, ...] = field(default=())
+    powers: tuple[Power, ...] = ()
 
     def __post_init__(self) -> None:
         low, high = self.x_range

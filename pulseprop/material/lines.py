@@ -9,6 +9,10 @@ Every line has its partner at negative frequency. Angular frequencies in rad/s, 
               int N(x; W, s) / (x - z) dx = i sqrt(pi/2)/s w((z - W)/(s sqrt 2)))
     Debye     chi = D / (1 - i w tau)
     Drude     chi = -S / (w^2 + i g w)
+
+Lorentz, Debye and Drude after C. F. Bohren, D. R. Huffman, Absorption and Scattering of Light by Small
+Particles (Wiley, 1983), chapter 9, from memory; Voigt derived here from the integral. What each `series`
+takes and returns is told at `Response.series`.
 """
 
 from __future__ import annotations
@@ -38,10 +42,10 @@ class LorentzLine:
     strength: float
     centre: float
     width: float
-
     band: Band = EVERYWHERE
 
     def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """chi by the Lorentz formula."""
         w = variable(np.asarray(omega), count)
         below = -product(w, w) - 1j * self.width * w
         below[0] += self.centre**2
@@ -53,21 +57,25 @@ class LorentzLine:
         return 2 / self.width
 
     def with_strength(self, strength: float) -> LorentzLine:
+        """The same line with another strength, (rad/s)^2."""
         return LorentzLine(strength=strength, centre=self.centre, width=self.width)
 
 
 @dataclass(frozen=True, kw_only=True)
 class VoigtLine:
-    """A Lorentz line (width may be 0) spread by a Gaussian of FWHM doppler_width; all in rad/s."""
+    """A Lorentz line (width may be 0) spread by a Gaussian of FWHM doppler_width; all in rad/s.
+
+    width below twice the centre: `line` refuses the rest.
+    """
 
     strength: float
     centre: float
     width: float
     doppler_width: float
-
     band: Band = EVERYWHERE
 
     def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """chi by the Voigt formula."""
         pole = np.sqrt(self.centre**2 - self.width**2 / 4)
         scale = self.doppler_width * SIGMA_PER_FWHM * np.sqrt(2)
         z = np.asarray(omega) + 0.5j * self.width
@@ -78,12 +86,11 @@ class VoigtLine:
 
     @property
     def memory(self) -> float:
-        """A time in s after which the ringing has fallen by one neper at least, and goes on falling
-        faster.
-        """
+        """A time in s after which the ringing has fallen by one neper at least, and then falls faster."""
         return float(1 / (self.width / 2 + self.doppler_width * SIGMA_PER_FWHM / 6))
 
     def with_strength(self, strength: float) -> VoigtLine:
+        """The same line with another strength, (rad/s)^2."""
         return VoigtLine(
             strength=strength, centre=self.centre, width=self.width, doppler_width=self.doppler_width
         )
@@ -120,6 +127,7 @@ class Relaxation:
     band: Band = EVERYWHERE
 
     def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """chi by the Debye formula."""
         below = -1j * self.time * variable(np.asarray(omega), count)
         below[0] += 1.0
         return self.static * reciprocal(below)
@@ -139,6 +147,7 @@ class Carriers:
     band: Band = EVERYWHERE
 
     def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """chi by the Drude formula; infinite at omega = 0."""
         w = variable(np.asarray(omega), count)
         return -(self.plasma_frequency**2) * reciprocal(product(w, w) + 1j * self.rate * w)
 

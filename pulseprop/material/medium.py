@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
@@ -31,9 +31,7 @@ class NonlinearIndex:
 
 @dataclass(frozen=True)
 class Resonance:
-    """A line that rings: centre in rad/s, full width in rad/s (all broadening), memory (T2 or shorter) in
-    s.
-    """
+    """A line that rings: centre and full width (all broadening) in rad/s, memory (T2 or shorter) in s."""
 
     centre: float
     width: float
@@ -49,6 +47,7 @@ class Medium:
     relative_to: what the printed index is against. resonances: what rings in it. spread: names of other
     records of the same substance. extendable: False where the band may not be left even on request
     (relaxation terms). index_is_relative: known up to absorption outside a table, for want of an anchor.
+    printed_digits: significant digits of the data, None for those of a published formula.
     health: a hazard of the substance, common practice.
     """
 
@@ -64,7 +63,7 @@ class Medium:
     n2: tuple[NonlinearIndex, ...] = ()
     spread: tuple[str, ...] = ()
     notes: tuple[str, ...] = ()
-    printed_digits: int | None = field(default=None)
+    printed_digits: int | None = None
     extendable: bool = True
     index_is_relative: bool = False
     health: str = ""
@@ -75,7 +74,7 @@ class Medium:
         return self.response.band
 
     def susceptibility(self, omega: Numbers, view: View = View.AXIS) -> Complex:
-        """chi(omega), omega in rad/s."""
+        """chi(omega), omega in rad/s, shape kept."""
         return np.asarray(self.response.series(np.asarray(omega), 1, view)[0], dtype=complex)
 
     def refraction(self, omega: Numbers, count: int = 1, view: View = View.AXIS) -> Series:
@@ -83,11 +82,11 @@ class Medium:
         return refraction_series(self.response, np.asarray(omega), count, view)
 
     def index(self, omega: Numbers, view: View = View.AXIS) -> Complex:
-        """n + ik."""
+        """n + ik at omega in rad/s, shape kept."""
         return np.asarray(self.refraction(omega, 1, view)[0] + 1.0, dtype=complex)
 
     def absorption(self, omega: Real) -> Real:
-        """Napierian absorption coefficient of the intensity, 1/m: 2 k omega / c."""
+        """Napierian absorption coefficient of the intensity, 1/m, shape of omega (rad/s): 2 k omega / c."""
         return np.asarray(2 * np.imag(self.refraction(omega)[0]) * omega / SPEED_OF_LIGHT)
 
     def nonlinear_index(self, omega: float) -> NonlinearIndex | None:
@@ -97,12 +96,13 @@ class Medium:
         return known[0] if known else None
 
     def ringing(self, low: float, high: float) -> float:
-        """The longest memory in s of the resonances that light between low and high (rad/s) excites; 0 for
-        none.
-        """
+        """The longest memory in s of the resonances that light of low to high (rad/s) excites; else 0."""
         hit = [line.memory for line in self.resonances if low - line.width < line.centre < high + line.width]
         return max(hit, default=0.0)
 
     def orders(self, omega: float) -> Orders:
-        """Index, group index, GVD, TOD, FOD at one angular frequency, from the analytic chi."""
+        """Index, group index, GVD, TOD, FOD at one angular frequency (rad/s), from the analytic chi.
+
+        Of the formula as printed: callers see to it that omega lies in `band`.
+        """
         return orders_of(self.refraction(np.array(omega), 5, View.PRINTED), omega)

@@ -10,7 +10,7 @@ __all__ = ["molar_density"]
 
 
 def molar_density(pressure: float, temperature: float, virial: float = 0.0) -> float:
-    """mol/m^3 from p = rho R T (1 + B rho); pressure in Pa, temperature in K, virial B in m^3/mol.
+    """mol/m^3 from p = rho R T (1 + B rho); pressure in Pa (>= 0), temperature in K (> 0), B in m^3/mol.
 
     The root that goes to the ideal gas at low pressure; where B is so negative that there is none (the gas
     would have condensed) the result is not finite.

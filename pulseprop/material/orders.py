@@ -31,10 +31,12 @@ class Orders:
 
     @property
     def index(self) -> float:
+        """n."""
         return 1 + self.index_minus_one
 
     @property
     def group_index(self) -> float:
+        """n_g = n + omega dn/domega."""
         return 1 + self.group_index_minus_one
 
 

@@ -16,7 +16,7 @@ __all__ = ["refraction_of", "refraction_series", "susceptibility_of"]
 
 
 def refraction_of(chi: Series) -> Series:
-    """N = sqrt(1 + chi) - 1 of a Taylor series chi."""
+    """N = sqrt(1 + chi) - 1 of a Taylor series chi, shape kept; real where chi is real and above -1."""
     squared = chi.copy()
     squared[0] += 1.0
     if np.isrealobj(chi) and squared[0].min(initial=1.0) <= 0:
@@ -28,7 +28,10 @@ def refraction_of(chi: Series) -> Series:
 
 
 def refraction_series(response: Response, omega: Numbers, count: int, view: View) -> Series:
-    """Taylor coefficients of n + ik - 1 of a response about each omega, without a root if not needed."""
+    """Taylor coefficients of n + ik - 1 of a response about each omega (rad/s): shape (count, *omega.shape).
+
+    No root is taken of what is given as an index. Raises what the response's own series raises.
+    """
     if isinstance(response, IndexResponse):
         return response.refraction(omega, count, view)
     return refraction_of(response.series(omega, count, view))
@@ -42,7 +45,7 @@ def _principal(squared: Series) -> Series:
 
 
 def susceptibility_of(refraction: Series) -> Series:
-    """chi = N (2 + N)."""
+    """chi = N (2 + N) of a Taylor series N, shape kept."""
     doubled = refraction.copy()
     doubled[0] += 2.0
     return product(refraction, doubled)

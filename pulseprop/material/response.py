@@ -108,6 +108,7 @@ class Constant:
     band: Band = EVERYWHERE
 
     def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """The value, and no slope; see `Response.series`."""
         series = np.zeros((count, *np.shape(omega)))
         series[0] = self.value
         return series
@@ -121,11 +122,12 @@ class Sum:
 
     @property
     def band(self) -> Band:
+        """Where all parts hold, rad/s."""
         return common_band(self.parts)
 
     def series(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
+        """The sum of the parts' series; see `Response.series`."""
         total: Series = np.zeros((count, *np.shape(omega)))
         for part in self.parts:
-            share = part.series(omega, count, view)
-            total = total + share
+            total = total + part.series(omega, count, view)
         return total

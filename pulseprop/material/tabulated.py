@@ -48,8 +48,8 @@ class TabulatedRefraction:
     def refraction_series(self, omega: Numbers, count: int) -> Series:
         """Taylor coefficients of n - 1 + i k about each omega: (count, *omega.shape), count at most 5.
 
-        omega: rad/s, real (limit from above), or above the axis for count <= 2. Raises InputError below the
-        axis and where the tabulated absorption has a step.
+        omega: rad/s, real (limit from above), or above the axis for count <= 2. Raises InputError for more
+        orders, below the axis, and where the tabulated absorption has a step.
         """
         total = np.zeros((count, *np.shape(omega)), dtype=complex)
         total[0] = self.constant
@@ -63,7 +63,7 @@ class TabulatedRefraction:
 
 
 def density_series(density: AbsorptionDensity, omega: Numbers, count: int) -> Series:
-    """Taylor coefficients of the transform of one density, shapes as in `refraction_series`."""
+    """Taylor coefficients of the transform of one density, shapes and errors as in `refraction_series`."""
     if not 1 <= count <= MOST_TERMS or (count > 2 and np.iscomplexobj(omega)):
         raise InputError(
             "more orders than a table can tell", value=count, allowed="up to 5, real omega; else 2"
