@@ -24,6 +24,9 @@ from pulseprop.constants import TWO_PI_C
 
 __all__ = ["MediumReport", "OrdersRow", "catalogue", "dataset", "media", "medium", "read", "send"]
 
+UNASKED_OMEGA = 2.4e15
+"""rad/s: n2 is that measured nearest to it where no wavelength is asked for."""
+
 
 def read(path: str | Path, overrides: Iterable[str] = ()) -> Scenario:
     """Read and check a scenario file, with overrides "KEY=VALUE". Raises InputError."""
@@ -147,7 +150,7 @@ def _report(found: Medium, at: Sequence[str | float]) -> MediumReport:
     from pulseprop.propagation.sources import valid_nm
 
     omegas = [_omega(place) for place in at]
-    known = found.nonlinear_index(omegas[0] if omegas else 2.4e15)
+    known = found.nonlinear_index(omegas[0] if omegas else UNASKED_OMEGA)
     return MediumReport(
         name=found.name,
         source=found.source,

@@ -36,7 +36,8 @@ class Grid:
 
     points: even number of samples. step: seconds between instants. start: first instant, s, on the clock
     of a front that travels at c. carrier: reference frequency in Hz; the frequencies run from
-    carrier - 1/(2 step) upwards in steps of 1/span.
+    carrier - 1/(2 step) upwards in steps of 1/span. Raises InputError for an odd number of points, or a step
+    that is not positive.
     """
 
     points: int
@@ -81,7 +82,8 @@ class Grid:
     def to_spectrum(self, envelope: Complex) -> Complex:
         """Spectrum A(omega) in W^(1/2) s, ascending frequency, of an envelope about `carrier`.
 
-        The start of the window is taken into account: the phase refers to t = 0 of the front's clock.
+        Both of shape (points,). The start of the window is taken into account: the phase refers to t = 0 of
+        the front's clock.
         """
         samples, rest = self._offset
         spectrum = forward(np.roll(envelope, samples))
@@ -89,7 +91,7 @@ class Grid:
         return spectrum
 
     def to_field(self, spectrum: Complex) -> Complex:
-        """Envelope about `carrier` in W^(1/2) of a spectrum A(omega); the inverse of `to_spectrum`."""
+        """Envelope about `carrier` in W^(1/2) of a spectrum A(omega), (points,): undoes `to_spectrum`."""
         samples, rest = self._offset
         turned = np.array(spectrum, dtype=complex)
         self._turn(turned, -rest, 1 / self.step)
@@ -118,13 +120,13 @@ class Grid:
             rows *= np.exp(turn * np.arange(fine))
 
     def carrier_resolved(self, envelope: Complex) -> Complex:
-        """The undivided analytic signal E(t) of an envelope about `carrier`."""
+        """The undivided analytic signal E(t) in W^(1/2) of an envelope about `carrier`, (points,)."""
         return np.asarray(envelope * np.exp(-2j * np.pi * self.carrier * self.time))
 
     def energy(self, spectrum: Complex) -> float:
-        """Energy in J of a spectrum A(omega) on this grid (Parseval)."""
+        """Energy in J of a spectrum A(omega) in W^(1/2) s, (points,), on this grid (Parseval)."""
         return float(np.vdot(spectrum, spectrum).real / self.span)
 
     def moved(self, start: float) -> Grid:
-        """The same frequencies seen through a window that begins at another instant."""
+        """The same frequencies seen through a window that begins at another instant, s."""
         return replace(self, start=start)

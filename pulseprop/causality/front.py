@@ -31,9 +31,12 @@ NYQUIST_LEVEL = 1.5e-16
 pulse.
 """
 LOBE = 32
+"""Samples of the oversampled spectrum over which its zeros are bridged."""
 CAUSAL_FLOORS = 100.0
 ACAUSAL_FLOORS = 1e4
+"""Energy ahead over the noise floor up to which an answer is causal, and above which it is acausal."""
 WORST_FLOOR = 1e-10
+"""Above this noise floor nothing is called causal."""
 BEST_FLOOR = 1e-27
 GOOD_FLOOR = 2e-11
 CHEAP_POINTS = 1 << 17
@@ -41,10 +44,13 @@ CHEAP_POINTS = 1 << 17
 SHORTER = 0.93
 """A second window over the first, in length: what came round its end stands elsewhere, what is early not."""
 SAME_PLACE = 0.01
+"""Of the window: how far the centroid of what is early may move and still count as standing."""
 BLOCK = 1 << 13
 """Frequencies evaluated at a time: few, so that what is temporary stays small beside the window."""
 STATIC = 1e-6
+"""Of the frequency spacing: where the transfer at zero frequency is taken."""
 SAME = 0.01
+"""Relative change of the energy ahead, from one window to the next, that counts as none."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -93,7 +99,7 @@ class FrontResult:
 
 
 def judged(energy_ahead: float, noise_floor: float) -> str:
-    """causal, acausal or unresolved."""
+    """causal, acausal or unresolved, from two shares of the energy that leaves."""
     if energy_ahead > ACAUSAL_FLOORS * noise_floor:
         return "acausal"
     if energy_ahead <= CAUSAL_FLOORS * noise_floor and noise_floor <= WORST_FLOOR:
@@ -115,7 +121,8 @@ def front_test(
 
     first_span: s, an estimate of when the answer is there; ringing: s, how long it may go on after, which the
     first window holds where that is cheap. The window is doubled until what wraps around is small enough or
-    `most_points` are reached. absorbs: whether the naive filter |transfer| is worth a run.
+    `most_points` are reached; what a window that large cannot tell is "unresolved". absorbs: whether the
+    naive filter |transfer| is worth a run. progress(fraction) is called at each doubling.
     """
     step = pulse.step()
     least, whole = (

@@ -40,9 +40,7 @@ class Feature:
 
 @dataclass(frozen=True)
 class SumRule:
-    """name of the rule; ratio of the integral over its expected value, None where the rule has no finite
-    value.
-    """
+    """name of the rule; ratio of the integral over its expected value, None where that is not finite."""
 
     name: str
     ratio: float | None
@@ -52,7 +50,7 @@ class SumRule:
 def sum_rules(
     chi: Callable[[Real], Complex], features: Sequence[Feature], *, relaxes: bool
 ) -> tuple[SumRule, ...]:
-    """Both rules by quadrature refined around the features.
+    """Both rules by quadrature refined around the features; none where there are no features.
 
     chi: the completed susceptibility at omega > 0 (rad/s). relaxes: True where a Debye term makes the f-sum
     diverge or carriers make chi(0) infinite.

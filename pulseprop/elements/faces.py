@@ -5,8 +5,8 @@ E. Wolf, Principles of Optics, section 1.5; from memory):
 
     s:  r = (cos theta - q) / (cos theta + q)          p:  r = (n^2 cos theta - q) / (n^2 cos theta + q)
 
-Both faces of one slab together transmit 1 - r^2; coherent echoes add the geometric sum 1 / (1 - r^2 exp(2 i
-omega d q / c)).
+Both faces of one slab together transmit 1 - r^2; coherent echoes add the geometric sum
+1 / (1 - r^2 exp(2 i omega d q / c)).
 """
 
 from __future__ import annotations
@@ -23,6 +23,9 @@ Polarisation = Literal["p", "s"]
 
 
 def reflection_squared(chi: Complex, q: Complex, cosine: float, polarisation: Polarisation) -> Complex:
-    """r^2 of one face. chi: susceptibility; q: sqrt(n^2 - sin^2 theta); cosine: of the angle outside."""
+    """r^2 of one face, shape kept.
+
+    chi: susceptibility; q: sqrt(n^2 - sin^2 theta), same shape; cosine: of the angle outside, 0 to 1.
+    """
     outside = cosine if polarisation == "s" else (1 + chi) * cosine
     return np.asarray(((outside - q) / (outside + q)) ** 2)

@@ -22,7 +22,7 @@ Real = NDArray[np.float64]
 
 @dataclass(frozen=True)
 class Path:
-    """Elements with unique names."""
+    """Elements with unique names. Raises InputError where two share one."""
 
     elements: tuple[Element, ...]
 
@@ -50,14 +50,17 @@ class Path:
         return tuple(found.values())
 
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
-        """Taylor coefficients of ln(transfer) of the direct passage, summed over the elements."""
+        """Taylor coefficients of ln(transfer) of the direct passage, summed over the elements.
+
+        omega: rad/s. Shape (count, *omega.shape).
+        """
         total = np.zeros((count, *np.shape(omega)), dtype=complex)
         for element in self.elements:
             total += element.exponent(omega, count, view)
         return total
 
     def transfer(self, omega: Numbers, view: View = View.AXIS) -> Complex:
-        """The product of all transfers."""
+        """The product of all transfers at omega (rad/s), shape kept."""
         total = np.ones(np.shape(omega), dtype=complex)
         for element in self.elements:
             total *= transfer_of(element, omega, view)

@@ -32,8 +32,9 @@ def _checked(transmittance: float) -> None:
 
 @dataclass(frozen=True, kw_only=True)
 class PhaseOrders:
-    """A device given by its orders at `centre` (rad/s): group_delay s, gdd s^2, tod s^3, fod s^4, and a flat
-    transmittance.
+    """A device given by its orders at `centre` (rad/s): group_delay s, gdd s^2, tod s^3, fod s^4.
+
+    transmittance: of energy, the same at all frequencies, above 0 and at most 1. Raises InputError beyond.
     """
 
     name: str
@@ -75,7 +76,7 @@ class PhaseOrders:
 
 @dataclass(frozen=True, kw_only=True)
 class Loss:
-    """The same transmittance (of energy) at all frequencies."""
+    """The same transmittance (of energy) at all frequencies: above 0 and at most 1, else InputError."""
 
     name: str
     transmittance: float

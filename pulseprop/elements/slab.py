@@ -1,8 +1,11 @@
 """A slab of matter, upright or tilted.
 
-Against the same path in vacuum the direct passage has the phase (omega/c) d [sqrt(n^2 - sin^2 theta) - cos
-theta]; the bracket is computed as chi / (sqrt(n^2 - sin^2 theta) + cos theta), which keeps all digits of a
-dilute gas.
+Against the same path in vacuum the direct passage has the phase
+
+    (omega/c) d [sqrt(n^2 - sin^2 theta) - cos theta],
+
+that of a plane-parallel plate (M. Born, E. Wolf, Principles of Optics, section 7.6; from memory). The bracket
+is computed as chi / (sqrt(n^2 - sin^2 theta) + cos theta), which keeps all digits of a dilute gas.
 """
 
 from __future__ import annotations
@@ -20,7 +23,7 @@ from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
 from pulseprop.numerics.series import Numbers, Series, product, quotient, root, variable
 
-__all__ = ["Slab"]
+__all__ = ["DEPTH_OF_DECAY", "Slab"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -34,7 +37,8 @@ class Slab:
     """thickness in m (>= 0), angle in rad outside, [0, pi/2).
 
     faces: "ideal" (no loss), "fresnel" (loss at both faces), "echoes" (coherent multiple reflection), or
-    "reflectance" with the power reflectance of each face in `reflectance`.
+    "reflectance" with the power reflectance of each face in `reflectance`, [0, 1). polarisation: needed where
+    a tilted slab's faces reflect. Raises InputError for what lies outside.
     """
 
     name: str
@@ -77,7 +81,7 @@ class Slab:
         return self.thickness
 
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
-        """i (omega/c) d [sqrt(n^2 - sin^2) - cos], as a Taylor series."""
+        """i (omega/c) d [sqrt(n^2 - sin^2) - cos], as a Taylor series: see `Element.exponent`."""
         if self.angle == 0:
             excess = self.medium.refraction(omega, count, view)
         else:
@@ -89,13 +93,13 @@ class Slab:
         squared = chi.astype(complex)
         squared[0] += np.cos(self.angle) ** 2
         # The principal root with the signed zero of passive matter, as in material.refraction.
-        safe = squared[0].real + 1j * np.where(squared[0].imag == 0, 0.0, squared[0].imag)
-        series = root(squared, np.sqrt(safe))
+        passive = squared[0].real + 1j * np.where(squared[0].imag == 0, 0.0, squared[0].imag)
+        series = root(squared, np.sqrt(passive))
         series[0] += np.cos(self.angle)
         return series
 
     def factor(self, omega: Numbers, view: View = View.AXIS) -> Complex | None:
-        """Loss and echoes of the two faces."""
+        """Loss and echoes of the two faces at omega (rad/s), shape kept; None where faces are ideal."""
         if self.faces == "ideal":
             return None
         if self.faces == "reflectance":

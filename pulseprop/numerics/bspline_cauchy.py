@@ -42,16 +42,18 @@ FAR_TERMS = 5
 
 
 def moments_of(strength: Real, knot: Real) -> Real:
-    """Even moments, shape (5,), of bands of one centre: sum of strength times those of B with each knot
-    distance.
+    """Even moments, shape (5,), of bands of one centre: strength times those of B, summed.
+
+    strength, knot: (bands,), knot distances above 0.
     """
     orders = 2 * np.arange(FAR_TERMS)
     return np.asarray((strength[:, None] * knot[:, None] ** orders * MOMENTS[:FAR_TERMS]).sum(axis=0))
 
 
 def far_from(distance: Numbers, moments: Real, count: int) -> list[Numbers]:
-    """sum of strength c(distance/knot)/knot, and for count 2 its slope, FAR widest knots and more from the
-    centre.
+    """sum of strength c(distance/knot)/knot, and for count 2 its slope, shapes of distance.
+
+    distance: at least FAR times the widest knot. moments: as of `moments_of`.
     """
     inverse = 1 / distance
     square = inverse * inverse
@@ -70,7 +72,7 @@ def _series_in(square: Numbers, coefficients: Real) -> Numbers:
 
 
 def density(u: Real) -> Real:
-    """B(u)."""
+    """B(u) at real u, shape kept."""
     size = np.abs(u)
     inner = 2 / 3 - size**2 + size**3 / 2
     outer = np.maximum(2 - size, 0) ** 3 / 6
@@ -88,7 +90,7 @@ def cauchy(u: Numbers) -> Complex:
 
 
 def cauchy_slope(u: Numbers) -> Complex:
-    """dc/du, likewise."""
+    """dc/du for u above the axis or on it (limit from above); shape kept."""
     return _tiered(np.asarray(u), _near_slope, _far_slope)
 
 
@@ -107,8 +109,8 @@ def _tiered(u: Numbers, near: Callable[..., Complex], far: Callable[..., Complex
 
 def _logarithm(y: Numbers) -> Numbers:
     """log of v - u, 0 for 0 (it is times y^2); of real y that of the size: the rest has a closed form."""
-    safe = np.where(y == 0, 1.0, y)
-    return np.asarray(np.log(np.abs(safe) if np.isrealobj(y) else safe))
+    filled = np.where(y == 0, 1.0, y)
+    return np.asarray(np.log(np.abs(filled) if np.isrealobj(y) else filled))
 
 
 def _near(u: Numbers) -> Complex:

@@ -26,7 +26,7 @@ TIERS = ((7.0, 24), (40.0, 10), (1000.0, 4))
 def faddeeva(z: Complex, count: int) -> Complex:
     """w and its Taylor coefficients about z, shape (count, *z.shape).
 
-    z: complex, any; far from the origin (|z| > 7) it must lie on or above the real axis.
+    z: complex, any shape; count: 1 to 5. Far from the origin (|z| > 7) it must lie on or above the real axis.
     """
     flat = np.atleast_1d(z).ravel().astype(complex)
     series = np.empty((count, flat.size), dtype=complex)

@@ -42,9 +42,11 @@ def polynomial(t: Numbers, coefficients: Real) -> Numbers:
 def cubic_cauchy(z: Numbers, left: Real, right: Real, coefficients: Real) -> Numbers:
     """int_left^right p(w)/(w - z) dw, p = sum_m coefficients[..., m] t^m, t = (w - left)/(right - left).
 
-    Shapes broadcast, coefficients (..., 4). With u = (z - left)/(right - left) it is p(u) log((right -
-    z)/(left - z)) + c1 + c2 (u + 1/2) + c3 (u^2 + u/2 + 1/3): exact, to be used near the stretch only, as the
-    two parts cancel far from it.
+    Shapes broadcast, coefficients (..., 4). With u = (z - left)/(right - left) it is
+
+        p(u) log((right - z)/(left - z)) + c1 + c2 (u + 1/2) + c3 (u^2 + u/2 + 1/3),
+
+    exact, to be used near the stretch only, as the two parts cancel far from it.
     """
     u = (z - left) / (right - left)
     ratio = (
@@ -58,7 +60,7 @@ def cubic_cauchy(z: Numbers, left: Real, right: Real, coefficients: Real) -> Num
 
 
 def inverse_power_cauchy(u: Numbers, power: int) -> Numbers:
-    """int_1^inf v^-power / (v - u) dv = sum_m u^m / (m + power), power >= 1.
+    """int_1^inf v^-power / (v - u) dv = sum_m u^m / (m + power), power >= 1, shape of u kept.
 
     Closed form (-log(1 - u) - sum_{m<power} u^m/m) / u^power outside |u| = 0.5, the series inside.
     """

@@ -30,7 +30,7 @@ def variable(centre: Series, count: int) -> Series:
 
 
 def product(left: Series, right: Series) -> Series:
-    """Cauchy product, truncated."""
+    """Cauchy product, truncated to the number of terms of both, (count, ...); shapes broadcast."""
     if left.shape[0] == 1:
         return np.asarray(left * right)
     shape = np.broadcast_shapes(left.shape, right.shape)
@@ -42,7 +42,7 @@ def product(left: Series, right: Series) -> Series:
 
 
 def reciprocal(series: Series) -> Series:
-    """1 / series; the leading coefficient must not vanish."""
+    """1 / series, shape kept; the leading coefficient must not vanish."""
     inverse = np.empty_like(series)
     inverse[0] = 1.0 / series[0]
     for m in range(1, series.shape[0]):
@@ -54,12 +54,12 @@ def reciprocal(series: Series) -> Series:
 
 
 def quotient(left: Series, right: Series) -> Series:
-    """left / right."""
+    """left / right; the leading coefficient of `right` must not vanish."""
     return product(left, reciprocal(right))
 
 
 def root(series: Series, leading: Series) -> Series:
-    """The square root whose leading coefficient is given (it chooses the branch)."""
+    """The square root whose leading coefficient is given (it chooses the branch); that must not vanish."""
     result = np.empty(series.shape, dtype=np.result_type(series, leading))
     result[0] = leading
     for m in range(1, series.shape[0]):
@@ -82,7 +82,7 @@ def power(series: Series, exponent: int) -> Series:
 
 
 def compose(outer: Series, inner: Series) -> Series:
-    """outer(inner), where outer[m] are Taylor coefficients about inner[0] (Horner)."""
+    """outer(inner), where outer[m] are Taylor coefficients about inner[0] (Horner); both (count, ...)."""
     shift = inner.copy()
     shift[0] = 0.0
     total = np.zeros(np.broadcast_shapes(outer.shape, inner.shape), dtype=np.result_type(outer, inner))

@@ -11,7 +11,7 @@ Real = NDArray[np.float64]
 
 
 def linear_pieces(x: Real, y: Real) -> Real:
-    """Straight lines between rows: coefficients of shape (rows - 1, 4)."""
+    """Straight lines between rows x (ascending), y, both (rows,): coefficients of shape (rows - 1, 4)."""
     pieces = np.zeros((len(x) - 1, 4))
     pieces[:, 0] = y[:-1]
     pieces[:, 1] = np.diff(y)
@@ -21,8 +21,8 @@ def linear_pieces(x: Real, y: Real) -> Real:
 def cubic_pieces(x: Real, y: Real, first_slope: float | None, last_slope: float | None) -> Real:
     """The C2 interpolating cubic spline with knots at the rows: coefficients of shape (rows - 1, 4).
 
-    At each end either the slope is given, or None: then the two pieces next to that end are one cubic. At
-    least four rows.
+    x: ascending, y: both (rows,), at least four rows. At each end either the slope dy/dx is given, or None:
+    then the two pieces next to that end are one cubic.
     """
     length, rise = np.diff(x), np.diff(y)
     slope = _slopes(length, rise / length, first_slope, last_slope)
@@ -31,7 +31,7 @@ def cubic_pieces(x: Real, y: Real, first_slope: float | None, last_slope: float 
 
 
 def derivative_pieces(x: Real, pieces: Real) -> Real:
-    """Coefficients of d/dx of a piecewise cubic."""
+    """Coefficients (pieces, 4) of d/dx of a piecewise cubic; x: edges, (pieces + 1,)."""
     result = np.zeros_like(pieces)
     result[:, :3] = pieces[:, 1:] * np.array([1.0, 2.0, 3.0]) / np.diff(x)[:, None]
     return result

@@ -17,6 +17,8 @@ Real = NDArray[np.float64]
 def basis_pieces(knots: Real) -> Real:
     """Coefficients (knots - 1, 4, knots - 4) of each B-spline on each piece, t = (x - left)/(right - left).
 
+    knots: ascending, five or more.
+
     Each of the splines is non-negative, spans four pieces, and together they sum to 1 away from the ends.
     """
     from scipy.interpolate import BSpline

@@ -16,25 +16,21 @@ Complex = NDArray[np.complex128]
 
 
 def forward(envelope: Complex) -> Complex:
-    """Sum over instants j of envelope[j] exp(+2 pi i (m - N/2) j / N), for ascending m; shape (N,) to
-    (N,).
-    """
+    """Sum over instants j of envelope[j] exp(+2 pi i (m - N/2) j / N), for ascending m; (N,), N even."""
     n = envelope.shape[-1]
     spectrum = np.fft.ifft(envelope, norm="forward")
     return np.concatenate((spectrum[n // 2 :], spectrum[: n // 2]))
 
 
 def backward(spectrum: Complex) -> Complex:
-    """The inverse of `forward`."""
+    """The inverse of `forward`; (N,), N even."""
     n = spectrum.shape[-1]
     turned = np.concatenate((spectrum[n // 2 :], spectrum[: n // 2]))
     return np.asarray(np.fft.fft(turned, norm="forward", out=turned))
 
 
 def fast_length(least: int) -> int:
-    """The smallest product of twos, threes and fives that is not below `least`: a length of fast
-    transforms.
-    """
+    """The smallest product of twos, threes and fives that is not below `least`, for fast transforms."""
     best = 1 << max(least - 1, 0).bit_length()
     fives = 1
     while fives < best:

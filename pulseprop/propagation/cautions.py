@@ -17,9 +17,12 @@ from pulseprop.propagation.result import Caution, ElementMeasures
 __all__ = ["cautions_for"]
 
 IONISING_W_PER_CM2 = 1e13
-"""Peak intensity from which X-rays are expected in material processing; a legal figure of Germany."""
+"""Peak intensity from which X-rays are expected in material processing; a legal figure of Germany
+(Strahlenschutzgesetz, section 17; from memory).
+"""
 
 KELVINS_THAT_MATTER = 5.0
+"""From here on a stated temperature is set against that of the record (common practice, no source)."""
 
 DISPLACING = (
     "argon", "helium", "neon", "krypton", "xenon", "nitrogen", "carbon dioxide", "sulfur hexafluoride",

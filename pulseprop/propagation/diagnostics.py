@@ -14,6 +14,7 @@ from pulseprop.causality.residual import acausal_share
 from pulseprop.causality.sum_rules import Feature, sum_rules
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
+from pulseprop.elements.slab import DEPTH_OF_DECAY
 from pulseprop.material.features import features_of, knots_of, relaxes
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
@@ -25,12 +26,15 @@ __all__ = ["causality_of"]
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
-RINGING_PER_DEPTH = 32.0 / 21.0
-"""The front test follows ringing to exp(-32) in amplitude, the grid of a run to exp(-21)."""
+RINGING_PER_DEPTH = 32.0 / DEPTH_OF_DECAY
+"""The front test follows ringing to exp(-32) in amplitude, farther than the grid of a run."""
 MOST_POINTS = 1 << 22
 RESONANT_POINTS = 1 << 24
+"""Points of the front test at most, without resonances and with them."""
 LOSSLESS = 1e-12
+"""ln(amplitude) that varies by less over the band: nothing absorbs."""
 ROUNDING = 1e-12
+"""Of n - 1: how far rounding may take k below zero."""
 DIP = 1e-6
 """Of the largest absorption: how far the curve through a rounded table may dip below zero."""
 CLOSED_FORM = "closed form: every response tested is a Kramers-Kronig pair by construction"

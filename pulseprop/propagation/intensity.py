@@ -1,7 +1,8 @@
 """Peak fluence, peak intensity and the B-integral of a linearly propagated pulse.
 
 The on-axis values of a Gaussian beam of 1/e^2 radius w: fluence 2 E / (pi w^2), intensity 2 P / (pi w^2).
-B = (2 pi / lambda) int n2 I_peak dz.
+B = (2 pi / lambda) int n2 I_peak dz. Both after A. E. Siegman, Lasers (University Science Books, 1986), from
+memory.
 """
 
 from __future__ import annotations

@@ -28,6 +28,10 @@ def _energy_outside(grid: Grid, spectrum: Complex, low: float, high: float) -> f
 
 
 def check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
+    """Refuse a pulse, A(omega) on the grid, that leaves the range of a medium: RangeError names the medium.
+
+    Let through where the scenario asks for the causal continuation and the medium has one.
+    """
     for medium in experiment.path.media:
         low, high = medium.band.low, medium.band.high
         outside = _energy_outside(grid, spectrum, low, high)
@@ -57,6 +61,7 @@ def _nanometres(omega: float) -> str:
 
 
 def range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tuple[str, ...]:
+    """A sentence for each medium whose range a pulse that was let through leaves."""
     said = []
     for medium in experiment.path.media:
         outside = _energy_outside(grid, spectrum, medium.band.low, medium.band.high)

@@ -55,8 +55,7 @@ def valid_nm(medium: Medium) -> tuple[float, float] | None:
     low, high = medium.band.low, medium.band.high
     if low <= 0 or not np.isfinite(high):
         return None
-    metre = TWO_PI_C
-    return float(f"{metre / high * 1e9:.9g}"), float(f"{metre / low * 1e9:.9g}")
+    return float(f"{TWO_PI_C / high * 1e9:.9g}"), float(f"{TWO_PI_C / low * 1e9:.9g}")
 
 
 def _gvd(name: str, omega: float) -> float | None:

@@ -37,10 +37,9 @@ class Stepper(Protocol):
     """Advances the spectrum in a plan's buffer by one step."""
 
     def step(self, plan: Plan, exponent: Complex, terms: Sequence[Term], length: float) -> float | None:
-        """Advance plan.buffer (natural order spectrum) in place; returns a local error estimate where the
-        method has one.
+        """Advance plan.buffer (natural order spectrum) in place by `length` m.
 
-        exponent: L in 1/m in natural order.
+        exponent: L in 1/m, (points,), in natural order. Returns a local error estimate where there is one.
         """
         ...
 
@@ -60,12 +59,14 @@ class FixedSteps:
     count: int
 
     def next(self, done: float, total: float, error: float | None) -> float:
+        """total/count, or what is left; see `StepControl`."""
         return min(total / self.count, total - done)
 
 
 class SymmetricSplit:
-    """Half a linear step, the terms, half a linear step; neighbouring halves are not merged, so every step
-    ends whole.
+    """Half a linear step, the terms, half a linear step.
+
+    Neighbouring halves are not merged, so every step ends whole.
     """
 
     def __init__(self) -> None:
@@ -73,6 +74,7 @@ class SymmetricSplit:
         self._half: Complex = np.zeros(0, dtype=complex)
 
     def step(self, plan: Plan, exponent: Complex, terms: Sequence[Term], length: float) -> float | None:
+        """One step of `length` m in place; no error estimate. See `Stepper`."""
         if length != self._length or self._half.size != exponent.size:
             self._half = np.exp(exponent * (0.5 * length))
             self._length = length
@@ -91,9 +93,7 @@ STEPPERS: dict[str, Callable[[], Stepper]] = {"split-step": SymmetricSplit}
 
 @dataclass(frozen=True)
 class Travelled:
-    """What a march took: steps, transforms, and the largest local error estimate where the method gives
-    one.
-    """
+    """What a march took: steps, transforms, the largest local error estimate where there are estimates."""
 
     steps: int
     transforms: int

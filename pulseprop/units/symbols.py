@@ -14,6 +14,7 @@ from dataclasses import dataclass
 from functools import cache, lru_cache
 from typing import Any
 
+from pulseprop.constants import ELECTRON_CHARGE
 from pulseprop.errors import InputError
 
 __all__ = ["PLAIN", "Unit", "resolved", "unit_from"]
@@ -86,8 +87,8 @@ COMPOUND = {
     "J/cm^2": (1e4, "kg s^-2"),
     "mJ/cm^2": (10.0, "kg s^-2"),
     "W/cm^2": (1e4, "kg s^-3"),
-    "eV": (1.602176634e-19, JOULE),
-    "meV": (1.602176634e-22, JOULE),
+    "eV": (ELECTRON_CHARGE, JOULE),
+    "meV": (1e-3 * ELECTRON_CHARGE, JOULE),
     "bar": (1e5, PASCAL),
     "mbar": (1e2, PASCAL),
     "atm": (101325.0, PASCAL),
