@@ -23,6 +23,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.errors import NumericalLimit
 from pulseprop.numerics.bspline_cauchy import FAR, VARIANCE, cauchy, cauchy_slope, far_from, moments_of
 from pulseprop.numerics.series import Numbers, Series
 
@@ -43,6 +44,9 @@ LOWEST = 30.0
 """The low end of a range over the lowest candidate band. One still lower acts alike in range, but makes light
 of long wavelengths so slow that no window holds the answer.
 """
+
+PATIENCE = 50
+"""Steps of the fit at most, over the number of its unknowns."""
 
 WIDEST = 0.48
 """Knot distance of a candidate band over its distance from the range, which it just does not touch. In a
@@ -101,7 +105,10 @@ def _of_one_centre(distance: Numbers, strength: Real, knot: Real, count: int) ->
 
 
 def complete(formula: Formula) -> Completion:
-    """The completion of a formula; `shift` reports how far it moved the formula in range."""
+    """The completion of a formula; `shift` reports how far it moved the formula in range.
+
+    Raises NumericalLimit where the fit of non-negative bands does not settle.
+    """
     low, high = formula.x_range
     static = [-term.coefficient for term in formula.powers if term.exponent == -1 and term.coefficient < 0]
     plain = (
@@ -157,7 +164,14 @@ def _fitted(formula: Formula, low: float, high: float) -> Completion:
         columns.append((cauchy((x - place) / width) / width).real)
     matrix = np.stack(columns, axis=1)
     scale = np.max(np.abs(matrix), axis=0)
-    solution, _ = nnls(matrix / scale, formula.printed(x[None])[0].real, maxiter=50 * len(scale))
+    try:
+        solution, _ = nnls(matrix / scale, formula.printed(x[None])[0].real, maxiter=PATIENCE * len(scale))
+    except RuntimeError as error:
+        raise NumericalLimit(
+            "the causal completion of a formula was not found",
+            value=str(error),
+            remedy="Check coefficients and range of the formula, or take another record of the substance",
+        ) from None
     weights = solution / scale
     used = weights[1:] > 0
     return Completion(

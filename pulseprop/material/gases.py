@@ -57,7 +57,11 @@ def gas_at(name: str, pressure: float, temperature: float, humidity: float | Non
         temperature=f"{temperature:.2f} K (record: {entry.temperature})",
         temperature_K=temperature,
         n2=tuple(replace(known, value=known.value * ratio) for known in base.n2),
-        notes=(*base.notes, f"density {ratio:.6g} times that of the record"),
+        notes=(
+            *base.notes,
+            *_virial_notes(entry, temperature),
+            f"density {ratio:.6g} times that of the record",
+        ),
     )
 
 
@@ -69,13 +73,21 @@ def _check_state(pressure: float, temperature: float) -> None:
 
 
 def _virial(entry: Record, temperature: float) -> float:
-    """Second virial coefficient in m^3/mol at the temperature, between the published ones; 0 where none is
-    published.
-    """
+    """Second virial coefficient, m^3/mol: between the published ones, held beyond; 0 where there is none."""
     if not entry.second_virial:
         return 0.0
     known = np.array(sorted(entry.second_virial))
     return float(np.interp(temperature, known[:, 0], known[:, 1]))
+
+
+def _virial_notes(entry: Record, temperature: float) -> tuple[str, ...]:
+    """Where the second virial coefficient comes from, and that it is held where none is published."""
+    if not entry.second_virial:
+        return ()
+    known = [place for place, _ in entry.second_virial]
+    first, last = min(known), max(known)
+    held = "" if first <= temperature <= last else f", held beyond its {first:.2f} to {last:.2f} K"
+    return (f"second virial coefficient: {entry.second_virial_source}{held}",)
 
 
 def _humid_air(entry: Record, pressure: float, temperature: float, humidity: float | None) -> Medium:

@@ -25,6 +25,8 @@ SMOOTHER = 1e-3
 solver's absolute tolerance stays below what counts."""
 PATIENCE = 60.0
 """Seconds for one linear programme."""
+SOLVED = 0
+"""The solver's status for an optimum; at its limits it may hand out a point that is none."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -81,7 +83,7 @@ def _solve(cost: Real, rows: Real, limit: Real) -> Real:
     result = linprog(
         cost, A_ub=rows, b_ub=limit, bounds=(0, None), method="highs-ds", options={"time_limit": PATIENCE}
     )
-    if result.x is None:
+    if result.status != SOLVED:
         raise NumericalLimit(
             "the linear programme for a passive causal model was not solved",
             value=result.message,

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 
 import numpy as np
 from numpy.typing import NDArray
@@ -17,6 +17,7 @@ from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.hazards import hazard_facts
 from pulseprop.propagation.ranges import RANGE_SHARE, range_warnings
 from pulseprop.propagation.result import (
+    ElementMeasures,
     Fields,
     GridMeasures,
     PathMeasures,
@@ -48,6 +49,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
     """
     try:
         done = propagated(experiment, progress)
+        signs = sign_cases(experiment) if experiment.both_signs else ()
     except PulsepropError as error:
         raise error.located(file=experiment.file) from None
     grid_in, grid_out, spectrum_out = done.windows.grid, done.exit, done.walked.spectrum
@@ -91,11 +93,11 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
         warnings=(
             *experiment.warnings,
             *range_warnings(experiment, grid_in, done.spectrum_in),
-            *_b_warnings(experiment),
+            *_b_warnings(experiment, rows),
         ),
         cautions=(*cautions_for(experiment.path, rows, experiment.substances), *experiment.cautions),
         pulse_notes=experiment.pulse.notes,
-        signs=sign_cases(experiment) if experiment.both_signs else (),
+        signs=signs,
         autocorrelation=autocorrelation_fit(experiment),
         fields=fields,
     )
@@ -107,17 +109,26 @@ def _test_duration(experiment: Experiment, before: PulseMeasures) -> float:
     return pulse.duration if isinstance(pulse, Pulse) else before.transform_limit_fwhm_fs / FEMTO
 
 
-def _b_warnings(experiment: Experiment) -> tuple[str, ...]:
+def _b_warnings(experiment: Experiment, rows: Sequence[ElementMeasures]) -> tuple[str, ...]:
+    """Why the B-integral of the path leaves elements out."""
     if experiment.pulse.beam_radius is None or not experiment.energy_stated:
         return ()
-    missing = [
-        medium.name
-        for medium in experiment.path.media
-        if medium.nonlinear_index(experiment.pulse.centre) is None
+    centre = experiment.pulse.centre
+    unknown = [medium.name for medium in experiment.path.media if medium.nonlinear_index(centre) is None]
+    unsettled = [
+        row.name
+        for element, row in zip(experiment.path, rows, strict=True)
+        if row.b_integral_rad is None and element.medium and element.medium.name not in unknown
     ]
-    if not missing:
-        return ()
-    return (f"no n2 is known for {', '.join(missing)}: the B-integral of the path leaves it out",)
+    said = []
+    if unknown:
+        said.append(f"no n2 is known for {', '.join(unknown)}: the B-integral of the path leaves it out")
+    if unsettled:
+        said.append(
+            f"the pulse is short in a small part of {', '.join(unsettled)} only, and the integral over it "
+            "does not settle: the B-integral of the path leaves it out; divide the element to find it"
+        )
+    return tuple(said)
 
 
 def _path_measures(

@@ -8,14 +8,12 @@ from dataclasses import replace
 
 import numpy as np
 
-from pulseprop.elements.path import Path
 from pulseprop.material.library import catalogue_medium
 from pulseprop.measures.autocorrelation import intensity_autocorrelation
 from pulseprop.propagation.assess import measured
+from pulseprop.propagation.converge import propagated
 from pulseprop.propagation.experiment import Experiment, MeasuredAutocorrelation
-from pulseprop.propagation.linear import multiply_by
 from pulseprop.propagation.result import AutocorrelationFit, SignCase
-from pulseprop.propagation.sizing import first_windows
 from pulseprop.pulse.measured import MeasuredPulse
 from pulseprop.pulse.pulse import Pulse
 from pulseprop.pulse.source import launch
@@ -29,19 +27,16 @@ SMALLEST_GDD = 1e-33
 
 
 def sign_cases(experiment: Experiment) -> tuple[SignCase, ...]:
-    """The pulse at the end of the path for both signs of the entrance's GDD."""
+    """The pulse at the end of the path for both signs of the entrance's GDD. Raises as `propagated` does."""
     size = abs(experiment.pulse.gdd)
     return tuple(_case(experiment, sign * size) for sign in (1, -1))
 
 
 def _case(experiment: Experiment, gdd: float) -> SignCase:
     pulse = replace(experiment.pulse, gdd=gdd)
-    path: Path = experiment.path
-    windows = first_windows(pulse, path, experiment.grid)
-    spectrum = pulse.amplitude(windows.grid.omega)
-    for element in path:
-        multiply_by(element, windows.grid, spectrum)
-    after, _ = measured(windows.after(len(path) - 1), spectrum, after_path=True)
+    linear = replace(experiment, pulse=pulse, energy_stated=False, method="exact")
+    done = propagated(linear, lambda stage, fraction: None)
+    after, _ = measured(done.exit, done.walked.spectrum, after_path=True)
     return SignCase(
         gdd_in_fs2=gdd * FEMTO**2,
         fwhm_fs=after.fwhm_fs,

@@ -8,7 +8,6 @@ import os
 import signal
 import subprocess
 import sys
-import time
 from pathlib import Path
 
 import numpy as np
@@ -316,7 +315,8 @@ def test_an_interrupted_run_leaves_nothing(scenario, tmp_path):
         [sys.executable, "-m", "pulseprop", "send", str(file), *map(str, outputs)],
         stderr=subprocess.PIPE, text=True, env=os.environ | {"PYTHONPATH": str(ROOT)},
     )  # fmt: skip
-    time.sleep(1.5)
+    assert running.stderr is not None
+    running.stderr.read(1)  # the first word of progress: the run is under way
     running.send_signal(signal.SIGINT)
     _, told = running.communicate(timeout=60)
     assert running.returncode == 130

@@ -10,6 +10,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from pulseprop.errors import NumericalLimit
 from pulseprop.material.completion import ALLOWED_SHIFT
 from pulseprop.material.formulas import (
     MICROMETRE_OMEGA,
@@ -171,3 +172,16 @@ def test_a_negative_strength_is_fitted_and_its_shift_reported():
     moved = np.abs(formula.completion.series(x)[0] - formula.printed(x)[0]).max()
     assert moved <= 1.05 * formula.completion.shift
     assert np.all(formula.completion.strength > 0)
+
+
+def test_a_fit_that_does_not_settle_is_told(monkeypatch):
+    """The bands of a printed power of the wavelength are fitted; the solver gives up by RuntimeError."""
+
+    def tired(*given, **more):
+        raise RuntimeError("Maximum number of iterations reached.")
+
+    monkeypatch.setattr("scipy.optimize.nnls", tired)
+    formula = Formula(band=Band(1e15, 4e15), offset=1.2, powers=(Power(-0.01, 1),))
+    with pytest.raises(NumericalLimit, match="causal completion") as caught:
+        formula.completion  # noqa: B018
+    assert "iterations" in str(caught.value)

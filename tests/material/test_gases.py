@@ -79,6 +79,12 @@ def test_a_state_beyond_the_virial_gas_is_refused_with_the_state():
     assert "Pa" in str(caught.value)
 
 
+def test_a_second_virial_coefficient_is_told_with_its_source_and_where_it_is_held():
+    inside, beyond = (gas_at("argon", 1e5, kelvin).notes for kelvin in (285.0, 400.0))
+    assert any("Dymond" in note and "held" not in note for note in inside)
+    assert any("Dymond" in note and "held beyond its 273.15 to 298.15 K" in note for note in beyond)
+
+
 def _virial_of(name):
     try:
         return record(name).second_virial

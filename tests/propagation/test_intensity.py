@@ -47,6 +47,31 @@ def test_b_integral_of_a_pulse_that_broadens(grid):
     assert found == pytest.approx(whole * np.arcsinh(ratio) / ratio, rel=1e-3)
 
 
+def compressed(duration: float, gdd: float, at: float) -> tuple[float | None, float]:
+    """B as found of a Gaussian that GDD compresses to `duration` inside an element, and in closed form.
+
+    The peak power is P0/sqrt(1 + (r (share - at))^2), r = 4 ln2 GDD/duration^2: the mean is
+    (asinh(r at) + asinh(r (1 - at)))/r.
+    """
+    wide = Grid(points=1 << 15, step=4e-15, start=-(1 << 14) * 4e-15, carrier=OMEGA / (2 * np.pi))
+    turn = 0.5j * gdd * (2 * np.pi * (wide.frequency - wide.carrier)) ** 2
+    spectrum = gaussian(wide, duration, 1e8) * np.exp(-at * turn)
+    ratio = 4 * np.log(2) * gdd / duration**2
+    mean = (np.arcsinh(ratio * at) + np.arcsinh(ratio * (1 - at))) / ratio
+    whole = OMEGA / 299792458.0 * 3e-20 * on_axis(1e8, 1e-3) * 5e-3
+    return b_integral(wide, spectrum, turn, OMEGA, 3e-20, 1e-3, 5e-3), whole * mean
+
+
+def test_b_integral_of_a_pulse_that_is_short_inside_only():
+    found, expected = compressed(20e-15, 1e-26, 0.37)
+    assert found == pytest.approx(expected, rel=1e-3)
+
+
+def test_a_b_integral_that_does_not_settle_is_none():
+    """Short in a thousandth of the length: no figure rather than one that is 20 % off."""
+    assert compressed(20e-15, 2e-25, 0.37)[0] is None
+
+
 def test_a_coarser_window_keeps_the_peak(grid):
     spectrum = gaussian(grid, 60e-15, 2e6)
     coarse, every = coarser(grid, 300e-15)
