@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from pathlib import PurePath
 
 import numpy as np
 
@@ -106,10 +107,7 @@ class MediaOfScenario:
         return Medium(
             name=name,
             response=Sum((response, *added)) if added else response,
-            source=table.source
-            or (table.formula.source if table.formula else "")
-            or base.source
-            or "stated in the scenario",
+            source=table.source or _source(table, base),
             temperature=f"{table.temperature:.5g} K"
             if table.temperature
             else base.temperature or "not stated",
@@ -121,7 +119,7 @@ class MediaOfScenario:
             n2=(NonlinearIndex(value=table.kerr.n2, source="stated in the scenario"),)
             if table.kerr
             else base.n2,
-            spread=base.spread if not added else (),
+            spread=base.spread if not added and table.absorption is None else (),
             notes=(*notes, table.note) if table.note else notes,
             printed_digits=base.printed_digits,
             extendable=base.extendable and not terms,
@@ -222,6 +220,17 @@ def _orders_only(table: OrdersOnlyTable) -> OrdersOnly:
         tod=table.third_order,
         fod=table.fod or 0.0,
     )
+
+
+def _source(table: MediumTable, base: Medium) -> str:
+    """Where each part of a medium comes from; what has no print is stated in the scenario."""
+    parts = [(table.formula.source if table.formula else "") or base.source]
+    for what, file in (("absorption", table.absorption), ("lines", table.lines_file)):
+        if file is not None:
+            parts.append(f"{what}: table {PurePath(file.file).name}")
+    if table.lines or table.relaxations or table.carriers:
+        parts.append("lines and terms stated in the scenario")
+    return "; ".join(part for part in parts if part) or "stated in the scenario"
 
 
 def _printed_against_air(table: MediumTable) -> bool:
