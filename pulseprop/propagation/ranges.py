@@ -18,6 +18,9 @@ Complex = NDArray[np.complex128]
 RANGE_SHARE = 1e-6
 """Share of the pulse's energy that may lie outside the range of a record."""
 
+MOSTLY = 0.5
+"""From this share outside on, going on beyond the range is no advice to give."""
+
 
 def _energy_outside(grid: Grid, spectrum: Complex, low: float, high: float) -> float:
     """Share of the energy outside low to high, rad/s."""
@@ -42,14 +45,18 @@ def check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
             f"the pulse leaves the range of medium {medium.name!r}",
             value=f"{percent(outside, 2)} of the pulse's energy lies outside {covered}",
             allowed=f"at most {RANGE_SHARE:g} of the energy outside the range of a record",
-            remedy=(
-                'Take a record that covers the spectrum, a narrower pulse, or [grid] beyond_range = "causal"'
-                if medium.extendable
-                else "Relaxation terms may not be used above their range: add what absorbs there"
-            ),
+            remedy=_remedy(outside, medium.extendable),
             file=experiment.file,
             place=f"medium {medium.name}",
         )
+
+
+def _remedy(outside: float, extendable: bool) -> str:
+    if not extendable:
+        return "Relaxation terms may not be used above their range: add what absorbs there"
+    if outside > MOSTLY:
+        return "This record knows nothing of this pulse: take one that covers it, or state what absorbs there"
+    return 'Take a record that covers the spectrum, a narrower pulse, or [grid] beyond_range = "causal"'
 
 
 def _nanometres(omega: float) -> str:

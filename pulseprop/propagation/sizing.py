@@ -177,10 +177,15 @@ def too_large(points: int, memory: float) -> NumericalLimit:
     """The complaint that a grid would not fit."""
     return NumericalLimit(
         "the grid would not fit into the memory limit",
-        value=f"{points} points, about {points * ARRAYS_AT_A_TIME * BYTES_PER_POINT / 2**30:.3g} GiB",
-        allowed=f"{memory / 2**30:.3g} GiB (grid.memory)",
+        value=f"{points} points, about {_short(points * ARRAYS_AT_A_TIME * BYTES_PER_POINT / 2**30)} GiB",
+        allowed=f"{_short(memory / 2**30)} GiB (grid.memory)",
         remedy="Raise grid.memory, or shorten what makes the answer long: narrow lines, echoes, dispersion",
     )
+
+
+def _short(value: float) -> str:
+    """Three digits, never an exponent where a person would write none."""
+    return f"{value:.0f}" if value >= 100 else f"{value:.3g}"
 
 
 def _start(first: float, last: float, span: float) -> float:
@@ -198,6 +203,15 @@ def _placed(grid: Grid, first: float, last: float, delays: list[Real]) -> Window
     return Windows(grid=grid, starts=tuple(starts), needed=needed)
 
 
+def _own(pulse: PulseSource, path: Path, wish: GridWish) -> str:
+    """The window that the grid would begin with by itself, where memory allows one."""
+    try:
+        span = first_windows(pulse, path, replace(wish, span=None, points=None)).grid.span
+    except NumericalLimit:
+        return ""
+    return f", to {span * 1e12:.4g} ps or more"
+
+
 def larger(windows: Windows, pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
     """Twice the window. Raises NumericalLimit where the memory does not allow it or the span was stated."""
     points = 2 * windows.grid.points
@@ -205,7 +219,7 @@ def larger(windows: Windows, pulse: PulseSource, path: Path, wish: GridWish) -> 
         raise NumericalLimit(
             "part of the pulse wraps around the stated window",
             value=f"{windows.grid.span * 1e12:.4g} ps",
-            remedy="Leave grid.span and grid.points out: the grid sizes itself; or state a longer span",
+            remedy=f"Leave out grid.span and grid.points: the grid sizes itself{_own(pulse, path, wish)}",
         )
     if points > most_points(wish.memory):
         raise too_large(points, wish.memory)
