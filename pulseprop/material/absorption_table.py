@@ -233,7 +233,8 @@ def _without_dips(k: Real, rows: Real) -> tuple[Real, tuple[str, ...]]:
             value=f"k = {np.min(k):.3g}",
             allowed=f"k of {-allowed:.2g} or more",
             place=row_list(rows[deep]),
-            remedy="Check the kind of the quantity, the reference and the baseline.",
+            remedy="Check the kind of the quantity (a transmittance is a share of 1, not per cent), the "
+            "reference and the baseline.",
         )
     note = (
         f"absorption slightly below zero (k down to {np.min(k):.2g}) taken as zero in {row_list(rows[below])}"

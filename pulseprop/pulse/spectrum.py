@@ -209,7 +209,8 @@ def _closed(omega: Real, amplitude: Real) -> tuple[Real, Real, tuple[str, ...]]:
 def _open_end(side: str, height: float) -> str:
     return (
         f"The table ends at its {side}-frequency side at {100 * height**2:.2g} % of the peak per frequency; "
-        "the spectrum was closed within one more row. A wider table would tell more."
+        "the spectrum was closed within one more row. Light there needs a wider table; a baseline of the "
+        "detector is no light, and widens the spectrum: state it as background."
     )
 
 

@@ -76,7 +76,7 @@ def pulse_from_waveform(
         said=(
             *resampled,
             f"The mean of the record, {100 * mean / height:.2g} % of its peak, was taken off.",
-            f"Time zero was moved to the largest field, at {1e15 * time[top]:.5g} fs of the record.",
+            f"Time zero was moved to the largest field, at {1e12 * time[top]:.5g} ps of the record.",
             *_end_notes(field, height),
             *_band_note(high),
         ),

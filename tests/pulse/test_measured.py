@@ -128,6 +128,17 @@ def test_a_table_that_ends_above_the_noise_says_so():
     assert any("ends at its high-frequency side" in note for note in pulse.notes)
 
 
+def test_a_baseline_that_was_not_taken_off_is_named_as_what_the_open_ends_may_be():
+    pulse = pulse_from_spectrum(
+        WAVELENGTH,
+        counts(WAVELENGTH) / counts(WAVELENGTH).max() + 0.02,
+        axis="wavelength",
+        reading="counts",
+        energy=1e-9,
+    )
+    assert sum("state it as background" in note for note in pulse.notes) == 2
+
+
 def test_rows_may_fall_as_well_as_rise():
     pulse = pulse_from_spectrum(
         WAVELENGTH[::-1],
@@ -193,7 +204,7 @@ def test_a_waveform_is_given_back_sample_by_sample():
         terahertz(TIME) / terahertz(top), abs=2e-5
     )
     assert pulse.energy == 1e-12
-    assert any("Time zero was moved" in note for note in pulse.notes)
+    assert any("Time zero was moved" in note and note.endswith(" ps of the record.") for note in pulse.notes)
 
 
 def test_the_spectrum_of_a_waveform_against_its_closed_form():
