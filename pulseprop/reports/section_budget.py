@@ -15,6 +15,9 @@ MOST_DIGITS = 4
 SAME = 1e-9
 """Loads that differ by a smaller share are one."""
 
+FAINTEST_ECHO = 1e-8
+"""Share of the energy that leaves below which an echo is counted, not listed: 80 dB."""
+
 
 def digits_of(run: Run) -> int:
     """Significant digits that an answer about the whole path may have: those of its coarsest element."""
@@ -137,11 +140,16 @@ def _highest(what: str, unit: str, names: list[str], values: list[float | None])
 
 def _echoes(run: Run) -> list[str]:
     return [
-        f"Echoes of {element.name}, after the direct passage: "
-        + ", ".join(
-            f"{span(delay, 4)} ({percent(share, 2)} of what leaves)" for delay, share in element.echoes
-        )
-        + "."
+        f"Echoes of {element.name}, after the direct passage, with their share of what leaves: "
+        f"{_listed(element.echoes)}."
         for element in run.elements
         if element.echoes
     ]
+
+
+def _listed(echoes: tuple[tuple[float, float], ...]) -> str:
+    """The first echo and those that can be seen, and how many are left out."""
+    told = [echo for number, echo in enumerate(echoes) if number == 0 or echo[1] >= FAINTEST_ECHO]
+    text = ", ".join(f"{span(delay, 4)} ({percent(share, 2)})" for delay, share in told)
+    left = len(echoes) - len(told)
+    return text + (f", and {left} fainter" if left else "")

@@ -85,7 +85,7 @@ def _entry(holder: list[Any], rest: str, key: str) -> tuple[int, str]:
     number, _, after = rest.partition(".")
     if number.isdecimal() and 1 <= int(number) <= len(holder):
         return int(number) - 1, after
-    named = f", or a name: {', '.join(names)}" if names else ""
+    named = f", or a name: {', '.join(map(repr, names))}" if names else ""
     raise InputError(
         "there is no such entry",
         value=number,
