@@ -10,7 +10,6 @@ from pulseprop.elements.phase_orders import Loss, PhaseOrders
 from pulseprop.elements.slab import Slab
 from pulseprop.errors import InputError, NumericalLimit, PulsepropError, RangeError
 from pulseprop.grid import Grid
-from pulseprop.material.composition import checked_fractions
 from pulseprop.material.formulas import MICROMETRE_OMEGA, Formula, sellmeier_term
 from pulseprop.material.gases import gas_at
 from pulseprop.material.library import catalogue_medium
@@ -57,8 +56,6 @@ REFUSALS = {
         lambda: line(centre=1e15, width=3e15, doppler_width=1e12),
         ["overdamped", "below twice the centre"],
     ),
-    "fractions": (lambda: checked_fractions((0.7, 0.7)), ["fractions", "0.7", "sum"]),
-    "negative fraction": (lambda: checked_fractions((1.2, -0.2)), ["fractions", "-0.2", "between 0 and 1"]),
     "negative pressure": (lambda: gas_at("argon", -1.0, 293.0), ["pressure", "-1.0", "0 Pa or more"]),
     "zero kelvin": (lambda: gas_at("argon", 1e5, 0.0), ["temperature", "0.0", "above 0 K"]),
     "glass as gas": (lambda: gas_at("N-BK7", 1e5, 293.0), ["not a gas", "N-BK7", "gas of the catalogue"]),

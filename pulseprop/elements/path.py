@@ -65,7 +65,3 @@ class Path:
         for element in self.elements:
             total *= transfer_of(element, omega, view)
         return total
-
-    def of_matter(self) -> Path:
-        """The path without the devices that are given by a phase alone."""
-        return Path(tuple(element for element in self.elements if not element.phase_only))

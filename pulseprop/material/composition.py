@@ -14,7 +14,6 @@ from typing import Protocol
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.errors import InputError
 from pulseprop.material.refraction import refraction_of, refraction_series, susceptibility_of
 from pulseprop.material.response import Band, Response, View, common_band
 from pulseprop.numerics.series import Numbers, Series, compose, product, quotient, root, variable
@@ -225,13 +224,3 @@ class WithAbsorption:
         """n + ik - 1 of the background and what was measured, side by side."""
         own = refraction_series(self.background, omega, count, view)
         return np.asarray(own + self.measured.refraction_series(omega, count))
-
-
-def checked_fractions(fractions: tuple[float, ...]) -> None:
-    """Raise InputError unless volume fractions lie in 0..1 and sum to 1 within 1e-9."""
-    if any(not 0 <= fraction <= 1 for fraction in fractions) or abs(sum(fractions) - 1) > 1e-9:
-        raise InputError(
-            "fractions of a mixture must lie between 0 and 1 and sum to 1",
-            value=list(fractions),
-            allowed="volumes before mixing, sum 1",
-        )

@@ -16,7 +16,7 @@ from pulseprop.grid import Grid
 from pulseprop.measures.profile import power
 from pulseprop.numerics.transforms import forward
 
-__all__ = ["DelaySplit", "centroid", "delay_split", "group_delay", "mean_over_spectrum"]
+__all__ = ["DelaySplit", "centroid", "delay_split", "group_delay"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -46,16 +46,6 @@ def group_delay(grid: Grid, envelope: Complex, *, least: float = 1e-8) -> Real:
     delay = np.full(strength.shape, np.nan)
     delay[seen] = middle + (weighted[seen] * spectrum[seen].conj()).real / strength[seen]
     return delay
-
-
-def mean_over_spectrum(values: Real, spectrum: Complex) -> float:
-    """Average of values (N,) weighted with |A|^2 (N,).
-
-    Entries that are NaN where nothing is seen are left out.
-    """
-    weight = power(spectrum)
-    seen = np.isfinite(values)
-    return float(np.dot(values[seen], weight[seen]) / weight[seen].sum())
 
 
 @dataclass(frozen=True, kw_only=True)

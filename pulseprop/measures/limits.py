@@ -47,10 +47,10 @@ def square_integral(envelope: Complex, step: float) -> float:
 
 
 def peak_ratio(envelope: Complex, limit: TransformLimit) -> float:
-    """Peak power over that of the same spectrum with flat phase, at most 1."""
+    """Peak power over that of the same spectrum with flat phase, at most 1 but for rounding."""
     return find_peak(envelope).power / limit.peak_power
 
 
 def two_photon_ratio(envelope: Complex, step: float, limit: TransformLimit) -> float:
-    """int P^2 dt over that of the same spectrum with flat phase, at most 1."""
+    """int P^2 dt over that of the same spectrum with flat phase, at most 1 but for rounding."""
     return square_integral(envelope, step) / limit.square_integral

@@ -16,16 +16,13 @@ from pulseprop.measures.profile import find_peak, half_maximum, power
 __all__ = [
     "FieldWidths",
     "PeakPower",
-    "SidePeak",
     "energy_share_after",
     "energy_share_before",
     "field_widths",
     "fwhm",
     "peak",
     "rms_width",
-    "side_peaks",
     "spectral_fwhm",
-    "time_bandwidth_product",
 ]
 
 Complex = NDArray[np.complex128]
@@ -66,14 +63,6 @@ class FieldWidths:
     energy_after: float
 
 
-@dataclass(frozen=True)
-class SidePeak:
-    """A local maximum of the power: delay after the main peak, s, and height over it."""
-
-    delay: float
-    ratio: float
-
-
 def peak(envelope: Complex) -> PeakPower:
     """Peak power between samples, to 1e-9 where the field is oversampled twice."""
     found = find_peak(envelope)
@@ -106,11 +95,6 @@ def _mean(height: Real) -> tuple[float, float]:
     if not total > 0:
         raise InputError("the field holds no energy", value=total, allowed="above 0")
     return total, float(np.dot(np.arange(height.size), height)) / total
-
-
-def time_bandwidth_product(envelope: Complex, spectrum: Complex, step: float) -> float:
-    """Intensity FWHM times FWHM of the spectrum per ordinary frequency, both between outermost points."""
-    return fwhm(envelope, step) * spectral_fwhm(spectrum, 1 / (step * spectrum.size))
 
 
 def energy_share_after(height: Real, position: float) -> float:
@@ -155,23 +139,4 @@ def field_widths(envelope: Complex, step: float, start: float = 0.0) -> FieldWid
         energy=energy,
         energy_before=energy_share_before(height, found.peak.position - reach),
         energy_after=energy_share_after(height, found.peak.position + reach),
-    )
-
-
-def side_peaks(envelope: Complex, step: float, count: int = 5, least: float = 1e-10) -> tuple[SidePeak, ...]:
-    """The highest local maxima of the samples further than one FWHM from the peak, highest first.
-
-    least: height over the peak below which they are left out. Heights are those of samples (within 20 % of
-    the true maxima for a field oversampled twice).
-    """
-    found = half_maximum(envelope)
-    height = power(envelope)
-    inner = height[1:-1]
-    at = (
-        np.flatnonzero((inner >= height[:-2]) & (inner > height[2:]) & (inner > least * found.peak.power)) + 1
-    )
-    at = at[np.abs(at - found.peak.position) > found.width]
-    best = at[np.argsort(height[at], kind="stable")[::-1][:count]]
-    return tuple(
-        SidePeak((int(j) - found.peak.position) * step, float(height[j]) / found.peak.power) for j in best
     )

@@ -10,7 +10,7 @@ from numpy.typing import NDArray
 from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.grid import Grid
 from pulseprop.measures.autocorrelation import autocorrelation_fwhm
-from pulseprop.measures.limits import TransformLimit, square_integral, transform_limit
+from pulseprop.measures.limits import TransformLimit, peak_ratio, transform_limit, two_photon_ratio
 from pulseprop.measures.widths import field_widths, spectral_fwhm
 from pulseprop.propagation.result import PulseMeasures
 
@@ -48,8 +48,8 @@ def measured(grid: Grid, spectrum: Complex, *, after_path: bool) -> tuple[PulseM
     # No phase gives more than the flat one: what exceeds 1 is rounding, or 1e-9 of a peak between samples.
     compared = replace(
         measures,
-        peak_ratio=min(widths.peak_power / limit.peak_power, 1.0),
-        two_photon_ratio=min(square_integral(envelope, grid.step) / limit.square_integral, 1.0),
+        peak_ratio=min(peak_ratio(envelope, limit), 1.0),
+        two_photon_ratio=min(two_photon_ratio(envelope, grid.step, limit), 1.0),
         split=widths.split,
         energy_after=widths.energy_after,
     )

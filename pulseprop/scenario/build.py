@@ -36,6 +36,12 @@ def _warnings(scenario: Scenario) -> tuple[str, ...]:
         )
     if pulse.shape == "measured" and pulse.given("centre"):
         said.append("pulse.centre is not used: the centre of a measured pulse is that of its file")
+    for name, table in scenario.content.medium.items():
+        idle = table.kerr.given("steepening", "raman", "two_photon") if table.kerr else ()
+        if idle:
+            said.append(f"medium.{name}.kerr: {', '.join(idle)} not used: the path is taken as linear")
+    if scenario.content.propagation.given("local_error"):
+        said.append("propagation.local_error is not used: a linear path is taken without local error")
     return tuple(said)
 
 

@@ -47,7 +47,6 @@ def test_the_empty_path_is_vacuum():
     assert len(Path(())) == 0
 
 
-def test_media_are_named_once_in_order_and_devices_left_out_of_matter():
+def test_media_are_named_once_in_order():
     path = Path((*ELEMENTS, a_slab("second window", "fused silica", 1e-3)))
     assert [medium.name for medium in path.media] == ["fused silica", "SF10"]
-    assert [element.name for element in path.of_matter()] == ["window", "flint", "filter", "second window"]

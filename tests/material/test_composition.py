@@ -13,7 +13,6 @@ from pulseprop.material.composition import (
     LorentzLorenz,
     MaxwellGarnett,
     Scaled,
-    checked_fractions,
 )
 from pulseprop.material.library import catalogue_medium
 from pulseprop.material.lines import Carriers, LorentzLine, VoigtLine
@@ -160,8 +159,3 @@ def test_against_vacuum_an_index_stays_what_it_is():
     assert chi_of(Absolute(silica, Constant(0.0)), omega, 5) == pytest.approx(
         chi_of(silica, omega, 5), rel=1e-12
     )
-
-
-def test_fractions_that_make_a_whole_pass():
-    checked_fractions((0.3, 0.7))
-    checked_fractions((1.0, 0.0))

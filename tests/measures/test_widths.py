@@ -16,7 +16,6 @@ from pulseprop.measures.widths import (
     fwhm,
     peak,
     rms_width,
-    side_peaks,
 )
 
 GAUSS = np.sqrt(2 * np.log(2))  # FWHM of exp(-t^2 / (2 s^2))^2 is 2 s sqrt(ln2)
@@ -156,14 +155,6 @@ def test_shares_before_and_after_add_up(position):
     power = np.array([0, 1, 4, 2, 0.5, 3, 1, 0, 0, 2.0])
     total = energy_share_after(power, position) + energy_share_before(power, position)
     assert total == pytest.approx(1.0, abs=1e-12)
-
-
-def test_side_peaks_are_listed_by_height():
-    time = np.arange(4096) - 1000.0
-    field = gaussian(time, 0, 20) + 0.1 * gaussian(time, 500, 20) + 0.03 * gaussian(time, -300, 20)
-    first, second = side_peaks(field, 1.0)
-    assert (first.delay, first.ratio) == pytest.approx((500, 1e-2), rel=1e-6)
-    assert (second.delay, second.ratio) == pytest.approx((-300, 9e-4), rel=1e-6)
 
 
 def test_an_empty_field_is_refused():
