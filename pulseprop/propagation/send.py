@@ -25,7 +25,7 @@ from pulseprop.propagation.result import (
     Run,
     Solver,
 )
-from pulseprop.propagation.signs import autocorrelation_fit, sign_cases
+from pulseprop.propagation.signs import autocorrelation_fit, denial, open_chirp, sign_cases
 from pulseprop.propagation.sources import media_used
 from pulseprop.propagation.words import headline
 from pulseprop.pulse.pulse import Pulse
@@ -49,7 +49,8 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
     """
     try:
         done = propagated(experiment, progress)
-        signs = sign_cases(experiment) if experiment.both_signs else ()
+        fit = autocorrelation_fit(experiment)
+        signs = sign_cases(experiment, open_chirp(experiment, fit))
     except PulsepropError as error:
         raise error.located(file=experiment.file) from None
     grid_in, grid_out, spectrum_out = done.windows.grid, done.exit, done.walked.spectrum
@@ -80,7 +81,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
         overrides=experiment.overrides,
         catalogue_sha256=catalogue_sha256,
         version=version,
-        headline=headline(before, after, path),
+        headline=headline(before, after, path, () if experiment.both_signs else signs),
         pulse_in=before,
         pulse_out=after,
         path=path,
@@ -92,13 +93,14 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
         hazards=hazard_facts(experiment, grid_in, done.spectrum_in, limit_in, rows),
         warnings=(
             *experiment.warnings,
+            *denial(experiment, fit),
             *range_warnings(experiment, grid_in, done.spectrum_in),
             *_b_warnings(experiment, rows),
         ),
         cautions=(*cautions_for(experiment.path, rows, experiment.substances), *experiment.cautions),
         pulse_notes=experiment.pulse.notes,
         signs=signs,
-        autocorrelation=autocorrelation_fit(experiment),
+        autocorrelation=fit,
         fields=fields,
     )
 

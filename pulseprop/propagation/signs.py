@@ -13,22 +13,65 @@ from pulseprop.measures.autocorrelation import intensity_autocorrelation
 from pulseprop.propagation.assess import measured
 from pulseprop.propagation.converge import propagated
 from pulseprop.propagation.experiment import Experiment, MeasuredAutocorrelation
+from pulseprop.propagation.numerals import significant
 from pulseprop.propagation.result import AutocorrelationFit, SignCase
 from pulseprop.pulse.measured import MeasuredPulse
 from pulseprop.pulse.pulse import Pulse
 from pulseprop.pulse.source import launch
 
-__all__ = ["autocorrelation_fit", "sign_cases"]
+__all__ = ["autocorrelation_fit", "denial", "open_chirp", "sign_cases"]
 
 FEMTO = 1e15
 GLASS = "fused silica"
 SMALLEST_GDD = 1e-33
 """s^2: below this there is no chirp whose sign could be told."""
 
+DENIED = 2.0
+"""A trace that lies this many times farther from the pulse as stated than from its fit denies the pulse."""
 
-def sign_cases(experiment: Experiment) -> tuple[SignCase, ...]:
-    """The pulse at the end of the path for both signs of the entrance's GDD. Raises as `propagated` does."""
-    size = abs(experiment.pulse.gdd)
+NEAR = 5e-3
+"""Rms distance, of the trace's peak, which no trace is good enough to deny."""
+
+
+def open_chirp(experiment: Experiment, fit: AutocorrelationFit | None) -> float | None:
+    """Size in s^2 of the chirp at the start whose sign nobody measured; None where no chirp is open.
+
+    That of a measured duration; else that of an autocorrelation which denies a pulse stated without GDD.
+    """
+    if experiment.both_signs:
+        return abs(experiment.pulse.gdd)
+    if fit is None or experiment.pulse.gdd != 0 or not _denied(fit):
+        return None
+    return fit.gdd_fs2 / FEMTO**2
+
+
+def denial(experiment: Experiment, fit: AutocorrelationFit | None) -> tuple[str, ...]:
+    """A warning where the measured autocorrelation is not that of the pulse as stated."""
+    if fit is None or not _denied(fit):
+        return ()
+    remedy = (
+        "both signs stand in the report; to send one, state gdd"
+        if experiment.pulse.gdd == 0
+        else "state the gdd, or the measured_duration, that it asks for"
+    )
+    return (
+        f"the answer is for the pulse as stated, but the measured autocorrelation is not its: it asks for "
+        f"|GDD| = {significant(fit.gdd_fs2, 3)} fs^2; {remedy}",
+    )
+
+
+def _denied(fit: AutocorrelationFit) -> bool:
+    away = float(np.sqrt(np.mean((fit.predicted - fit.measured) ** 2)))
+    return away > max(DENIED * fit.residual, NEAR)
+
+
+def sign_cases(experiment: Experiment, size: float | None) -> tuple[SignCase, ...]:
+    """The pulse at the end of the path for GDD of both signs and that size, s^2, at the start; none for None.
+
+    Raises as `propagated` does.
+    """
+    if size is None:
+        return ()
     return tuple(_case(experiment, sign * size) for sign in (1, -1))
 
 

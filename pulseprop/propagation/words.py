@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from pulseprop.propagation.numerals import percent, scaled, significant
-from pulseprop.propagation.result import PathMeasures, PulseMeasures
+from pulseprop.propagation.result import PathMeasures, PulseMeasures, SignCase
 
 __all__ = ["durations", "headline"]
 
@@ -13,8 +13,13 @@ APART = 10.0
 """Durations whose ratio is larger than this get a unit each."""
 
 
-def headline(before: PulseMeasures, after: PulseMeasures, path: PathMeasures) -> str:
-    """One sentence that answers what arrives."""
+def headline(
+    before: PulseMeasures, after: PulseMeasures, path: PathMeasures, instead: tuple[SignCase, ...] = ()
+) -> str:
+    """One sentence that answers what arrives.
+
+    instead: the pulse at the end for both signs of a chirp that was measured and not stated.
+    """
     leaves, enters = durations(after.fwhm_fs, before.fwhm_fs)
     parts = [f"{leaves} at the end of the path against {enters} at its start"]
     parts.append(f"{percent(after.peak_ratio or 0.0, 2)} of the peak power of the limit")
@@ -26,6 +31,10 @@ def headline(before: PulseMeasures, after: PulseMeasures, path: PathMeasures) ->
         parts.append(
             f"{percent(after.energy_after, 2)} of what leaves comes more than three widths after the peak"
         )
+    if instead:
+        ends = " or ".join(durations(*(case.fwhm_fs for case in instead)))
+        size = significant(abs(instead[0].gdd_in_fs2), 3)
+        parts.append(f"with the |GDD| of {size} fs^2 that the measured autocorrelation asks for, {ends}")
     return "; ".join(parts) + "."
 
 

@@ -166,9 +166,9 @@ def sign_section(run: Run) -> Section | None:
     )
     rows = tuple(_sign_row(case, factor, digits) for case in run.signs)
     text = (
-        "A duration measured beside a spectrum gives the size of the chirp, not its sign. Both are "
-        "carried to "
-        "the end of the path; the numbers above are those of the first."
+        "A duration or an autocorrelation measured beside a spectrum gives the size of the chirp, not its "
+        "sign. Both are carried to the end of the path. The numbers above are those of the pulse as stated; "
+        "where a measured duration is stated, of positive GDD."
     )
     return Section("signs", "Both signs of the chirp", (Paragraph(text), Table(columns, rows)))
 
