@@ -24,6 +24,11 @@ def test_python_blocks_run(code, monkeypatch, capsys):
     capsys.readouterr()
 
 
+def test_a_block_goes_there_and_back():
+    """The check of `back` above has something to check."""
+    assert sum("back = " in code for code in BLOCKS) == 1
+
+
 def test_there_is_one_test_command_and_ci_takes_it_from_here():
     assert len(re.findall(r"^python3 .*-m tests$", README, re.MULTILINE)) == 1
     assert "grep -m 1 -- '-m tests$' README.md" in (ROOT / ".ci" / "run").read_text(encoding="utf-8")

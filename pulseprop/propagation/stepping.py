@@ -125,7 +125,8 @@ def march(
             )
         step = control.next(done, length, error)
         error = stepper.step(plan, exponent, terms, step)
-        worst = error if worst is None else max(worst, error or 0.0)
+        if error is not None:
+            worst = max(worst or 0.0, error)
         done += step
         steps += 1
     return Travelled(steps, plan.transforms - before, worst)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from pathlib import PurePath
+from typing import Literal
 
 import numpy as np
 
@@ -189,8 +190,8 @@ def formula_of(table: FormulaTable) -> Formula:
     band = Band(*table.valid)
     if isinstance(table, PowerFormula):
         powers = tuple(Power(term.strength, -term.power // 2) for term in table.terms)
-        of = "chi" if table.kind == "powers" else "refraction"
-        return Formula(band=band, of=of, offset=table.offset, powers=powers)  # type: ignore[arg-type]
+        of: Literal["chi", "refraction"] = "chi" if table.kind == "powers" else "refraction"
+        return Formula(band=band, of=of, offset=table.offset, powers=powers)
     if isinstance(table, GasFormula):
         poles = tuple(gas_term(term.strength, term.resonance) for term in table.terms)
         return Formula(band=band, of="refraction", offset=table.offset, poles=poles)

@@ -13,13 +13,8 @@ from pulseprop.errors import PulsepropError
 from pulseprop.material.medium import Medium
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.read import Scenario
-from pulseprop.scenario.schema_path import (
-    ElementTable,
-    KnownOrdersTable,
-    LossTable,
-    OrdersTable,
-    SlabTable,
-)
+from pulseprop.scenario.schema_path import Element as ElementTable
+from pulseprop.scenario.schema_path import KnownOrdersTable, LossTable, SlabTable
 
 __all__ = ["built_path"]
 
@@ -56,11 +51,10 @@ def _built(table: ElementTable, number: int, medium: Callable[[str], Medium], ce
             beam_radius=table.beam_radius,
             detail=share,
         )
-    assert isinstance(table, OrdersTable)
     known = table if isinstance(table, KnownOrdersTable) else None
     return PhaseOrders(
-        name=table.name or f"{table.kind} {number}",  # type: ignore[attr-defined]
-        kind=table.kind,  # type: ignore[attr-defined]
+        name=table.name or f"{table.kind} {number}",
+        kind=table.kind,
         centre=centre,
         group_delay=known.group_delay if known else 0.0,
         gdd=table.gdd,

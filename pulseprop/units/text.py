@@ -10,7 +10,7 @@ import math
 import re
 from dataclasses import dataclass
 from decimal import Decimal
-from typing import TYPE_CHECKING, Any, Literal
+from typing import TYPE_CHECKING, Any, Literal, TypeGuard
 
 from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import InputError
@@ -69,7 +69,7 @@ def quantity(value: object, kind: str) -> float:
     """
     wanted = kind_named(kind)
     if kind == "fraction" and _is_number(value):
-        return _finite(float(value), value, wanted)  # type: ignore[arg-type]
+        return _finite(float(value), value, wanted)
     number, unit = _split(value, wanted)
     return _converted(number, unit, wanted, value)
 
@@ -125,7 +125,7 @@ def significant(value: float, digits: int) -> str:
     return f"{rounded:.{max(digits - 1 - size, 0)}f}"
 
 
-def _is_number(value: object) -> bool:
+def _is_number(value: object) -> TypeGuard[float]:
     return isinstance(value, int | float) and not isinstance(value, bool)
 
 

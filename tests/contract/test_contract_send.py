@@ -12,6 +12,7 @@ from pathlib import Path
 
 import numpy as np
 import pytest
+import xarray
 
 import pulseprop
 
@@ -239,7 +240,6 @@ def test_a_pulse_on_a_line_against_averages_over_its_spectrum(sent):
 
 
 def test_saved_fields_on_the_clock_of_the_front(command, scenario, tmp_path):
-    xarray = pytest.importorskip("xarray")
     fibre = (
         slab("m", "1 m")
         + '[medium.m]\norders = { at = "1550 nm", index = 1.45, group_index = 1.468, gvd = "0 fs^2/mm" }\n'
