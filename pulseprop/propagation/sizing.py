@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 from pulseprop.elements.path import Path
 from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.grid import Grid
+from pulseprop.propagation.numerals import span
 from pulseprop.pulse.source import PulseSource
 
 __all__ = ["GridWish", "Windows", "first_windows", "larger", "most_points"]
@@ -206,10 +207,10 @@ def _placed(grid: Grid, first: float, last: float, delays: list[Real]) -> Window
 def _own(pulse: PulseSource, path: Path, wish: GridWish) -> str:
     """The window that the grid would begin with by itself, where memory allows one."""
     try:
-        span = first_windows(pulse, path, replace(wish, span=None, points=None)).grid.span
+        own = first_windows(pulse, path, replace(wish, span=None, points=None)).grid.span
     except NumericalLimit:
         return ""
-    return f", to {span * 1e12:.4g} ps or more"
+    return f", to {span(own * 1e15, 4)} or more"
 
 
 def larger(windows: Windows, pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
