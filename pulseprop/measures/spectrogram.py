@@ -19,14 +19,15 @@ __all__ = ["Spectrogram", "spectrogram"]
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
+FWHM_PER_DEVIATION = float(np.sqrt(8 * np.log(2)))
+"""Of a Gaussian."""
 GATE_REACH = 5.0
 """Half length of the gate in its standard deviations of power; its field is 2e-3 there, its power 4e-6."""
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Spectrogram:
-    """time (T,) in s, frequency (F,) in Hz ascending, density (F, T) in J/(Hz s), gate: FWHM of its power in
-    s.
+    """time (T,) in s, frequency (F,) in Hz ascending, density (F, T) in J/(Hz s), gate: its power's FWHM, s.
 
     The gate is Gaussian with int |gate|^2 dt = 1 s, so the density integrates to the pulse's energy.
     """
@@ -61,7 +62,7 @@ def spectrogram(
     deviation = (
         _deviation(field[span], step, strength[band], 1 / grid.span)
         if gate is None
-        else gate / 2.3548200450309493
+        else gate / FWHM_PER_DEVIATION
     )
     moments = grid.start + step * np.linspace(span.start, span.stop - 1, times)
     low, high = grid.frequency[band.start], grid.frequency[band.stop - 1]
@@ -69,7 +70,7 @@ def spectrogram(
     density = np.empty((frequencies, times))
     for column, moment in enumerate(moments):
         density[:, column] = _slice(field, step, moment - grid.start, deviation, wanted - carrier)
-    return Spectrogram(time=moments, frequency=wanted, density=density, gate=2.3548200450309493 * deviation)
+    return Spectrogram(time=moments, frequency=wanted, density=density, gate=FWHM_PER_DEVIATION * deviation)
 
 
 def _reduced(grid: Grid, spectrum: Complex, band: slice) -> tuple[Complex, float, float]:

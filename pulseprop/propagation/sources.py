@@ -6,7 +6,6 @@ import numpy as np
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.elements.path import Path
-from pulseprop.errors import PulsepropError
 from pulseprop.material.features import completion_shift
 from pulseprop.material.library import catalogue_medium
 from pulseprop.material.medium import Medium
@@ -60,10 +59,7 @@ def valid_nm(medium: Medium) -> tuple[float, float] | None:
 
 def _gvd(name: str, omega: float) -> float | None:
     """GVD in fs^2/mm of another record at omega; None outside its range."""
-    try:
-        other = catalogue_medium(name)
-    except PulsepropError:
-        return None
+    other = catalogue_medium(name)
     if not other.band.contains(np.array(omega)):
         return None
     return _finite(other.orders(omega).gvd * FS2_PER_MM)

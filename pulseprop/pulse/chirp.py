@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.errors import InputError
+from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.measures.autocorrelation import autocorrelation_fwhm, intensity_autocorrelation
 from pulseprop.measures.widths import fwhm
 from pulseprop.numerics.interpolation import band_limited
@@ -130,7 +130,7 @@ def gdd_from_autocorrelation(source: Source, delay: Real, signal: Real) -> Autoc
 
     delay: (K,) s, signal: (K,), any unit; peak position, height and background are fitted along. The pulse's
     own gdd is replaced; with neither tod nor fod both signs give one trace. Raises InputError for fewer than
-    8 rows or numbers that are not finite.
+    8 rows or numbers that are not finite, NumericalLimit where the fit does not settle.
     """
     from scipy.optimize import least_squares
 
@@ -145,6 +145,12 @@ def gdd_from_autocorrelation(source: Source, delay: Real, signal: Real) -> Autoc
     found = least_squares(
         misfit, [start / limit**2, middle / limit], x_scale=[0.1, 0.1], xtol=1e-12, ftol=1e-12
     )
+    if not found.success:
+        raise NumericalLimit(
+            "the fit of a chirp to the measured autocorrelation does not settle",
+            value=found.message,
+            remedy="Check its delays, their unit and its background, or leave the autocorrelation out",
+        )
     gdd, middle = abs(float(found.x[0])) * limit**2, float(found.x[1]) * limit
     fitted, scale, background = _linear(_model(source, gdd, delay - middle), signal)
     best = _chirped(source, gdd)

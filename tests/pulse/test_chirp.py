@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 from dataclasses import replace
+from types import SimpleNamespace
 
 import numpy as np
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from pulseprop.errors import InputError
+from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.pulse.chirp import (
     chirp_from_duration,
     gdd_from_autocorrelation,
@@ -93,6 +94,15 @@ def test_unusable_traces_are_refused():
         gdd_from_autocorrelation(PULSE, delay, np.where(np.arange(20) == 2, np.nan, 1.0))
     with pytest.raises(InputError, match="is constant"):
         gdd_from_autocorrelation(PULSE, delay, np.ones(20))
+
+
+def test_a_fit_that_does_not_settle_is_told(monkeypatch):
+    """The solver reports success by a flag; what it hands out without is no minimum."""
+    stopped = SimpleNamespace(success=False, x=np.zeros(2), message="the limit of evaluations is reached")
+    monkeypatch.setattr("scipy.optimize.least_squares", lambda *given, **more: stopped)
+    delay = np.linspace(-400e-15, 400e-15, 101)
+    with pytest.raises(NumericalLimit, match=r"does not settle.*limit of evaluations.*background"):
+        gdd_from_autocorrelation(PULSE, delay, gaussian_trace(delay, 500e-30))
 
 
 def silica(omega):
