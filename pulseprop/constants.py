@@ -1,6 +1,7 @@
 """Constants of nature, SI.
 
-Exact by the definition of the units (2019) but for the last two, which are CODATA 2022.
+Exact by the definition of the units (2019) but for the mass of the electron and the permittivity of the
+vacuum, which are CODATA 2022.
 """
 
 from __future__ import annotations
@@ -10,6 +11,7 @@ import math
 __all__ = [
     "ELECTRON_CHARGE",
     "ELECTRON_MASS",
+    "FEMTO",
     "GAS_CONSTANT",
     "PLANCK",
     "SPEED_OF_LIGHT",
@@ -29,5 +31,7 @@ GAS_CONSTANT = 8.31446261815324
 """J/(mol K)."""
 ELECTRON_MASS = 9.1093837139e-31
 """kg."""
+FEMTO = 1e15
+"""Femtoseconds in a second."""
 VACUUM_PERMITTIVITY = 8.8541878188e-12
 """F/m."""

@@ -8,6 +8,7 @@ from dataclasses import dataclass, field
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import FEMTO
 from pulseprop.elements.element import Element, orders_of_element
 from pulseprop.elements.path import Path
 from pulseprop.elements.slab import Slab
@@ -26,7 +27,6 @@ Real = NDArray[np.float64]
 Advance = Callable[[Element, Complex, Complex], None]
 """advance(element, exponent, spectrum) takes a spectrum through one element in place, faces left out."""
 
-FEMTO = 1e15
 PER_CM2 = 1e-4
 FAINTEST_ENERGY = 1e-140
 """J: below, the square of the power, which autocorrelations need, leaves the range of double precision."""

@@ -52,7 +52,6 @@ class Experiment:
     grid: GridWish = field(default_factory=GridWish)
     beyond_range: Literal["refuse", "causal"] = "refuse"
     method: Literal["exact", "split-step"] = "exact"
-    local_error: float = 1e-8
     autocorrelation: MeasuredAutocorrelation | None = None
     substances: tuple[str, ...] = ()
     warnings: tuple[str, ...] = ()

@@ -7,6 +7,7 @@ from collections.abc import Iterable, Sequence
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import FEMTO
 from pulseprop.errors import PulsepropError
 from pulseprop.measures.delays import delay_split
 from pulseprop.propagation.assess import measured
@@ -33,8 +34,6 @@ from pulseprop.pulse.pulse import Pulse
 __all__ = ["Progress", "run"]
 
 Complex = NDArray[np.complex128]
-
-FEMTO = 1e15
 
 
 def _silent(stage: str, fraction: float) -> None:
@@ -198,7 +197,7 @@ def _solver(experiment: Experiment, done: Propagated) -> Solver:
         method="exact linear transfer" if exact else "symmetric split step",
         steps=done.steps,
         transforms=done.transforms,
-        local_error=None if exact else experiment.local_error,
+        local_error=None,
         estimated_error=done.wrapped,
         enlargements=done.enlargements,
         wrapped_energy=done.wrapped,

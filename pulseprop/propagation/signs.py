@@ -8,6 +8,7 @@ from dataclasses import replace
 
 import numpy as np
 
+from pulseprop.constants import FEMTO
 from pulseprop.material.library import catalogue_medium
 from pulseprop.measures.autocorrelation import intensity_autocorrelation
 from pulseprop.propagation.assess import measured
@@ -21,7 +22,6 @@ from pulseprop.pulse.source import launch
 
 __all__ = ["autocorrelation_fit", "denial", "open_chirp", "sign_cases"]
 
-FEMTO = 1e15
 GLASS = "fused silica"
 SMALLEST_GDD = 1e-33
 """s^2: below this there is no chirp whose sign could be told."""

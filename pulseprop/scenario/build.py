@@ -92,6 +92,5 @@ def build(scenario: Scenario) -> Experiment:
         grid=wish,
         beyond_range=content.grid.beyond_range,
         method="exact" if method == "auto" else method,
-        local_error=content.propagation.local_error,
         autocorrelation=trace,
     )

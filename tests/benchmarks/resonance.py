@@ -38,8 +38,8 @@ def envelope(x):
     """exp(4 - 1/(x(1-x))) between 0 and 1: peak 1."""
     x = np.asarray(x, float)
     inside = (x > 0) & (x < 1)
-    safe = np.where(inside, x, 0.5)
-    return np.where(inside, np.exp(4 - 1 / (safe * (1 - safe))), 0.0)
+    filled = np.where(inside, x, 0.5)
+    return np.where(inside, np.exp(4 - 1 / (filled * (1 - filled))), 0.0)
 
 
 def line_of_depth(width: float, depth: float = DEPTH, centre: float = CENTRE) -> LorentzLine:

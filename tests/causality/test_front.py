@@ -29,8 +29,8 @@ T2 = 2 / WIDTH
 
 def bump(x):
     inside = (x > 0) & (x < 1)
-    safe = np.where(inside, x, 0.5)
-    return np.where(inside, np.exp(-1 / (safe * (1 - safe))), 0.0)
+    filled = np.where(inside, x, 0.5)
+    return np.where(inside, np.exp(-1 / (filled * (1 - filled))), 0.0)
 
 
 PULSE = TestPulse(envelope=bump, support=80e-15, centre=CENTRE)

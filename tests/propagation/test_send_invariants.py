@@ -169,8 +169,8 @@ THIRTY_DIGITS = json.loads((FilePath(__file__).parent / "lorentz_20_cycles.json"
 def bump(x):
     x = np.asarray(x, float)
     inside = (x > 0) & (x < 1)
-    safe = np.where(inside, x, 0.5)
-    return np.where(inside, np.exp(4 - 1 / (safe * (1 - safe))), 0.0)
+    filled = np.where(inside, x, 0.5)
+    return np.where(inside, np.exp(4 - 1 / (filled * (1 - filled))), 0.0)
 
 
 def response() -> tuple[Grid, np.ndarray]:

@@ -26,3 +26,10 @@ def test_the_report_says_how_many_steps_were_taken():
     assert run.solver.method == "symmetric split step"
     assert run.solver.steps > len(run.elements)
     assert run.solver.transforms > run.solver.steps
+
+
+def test_a_linear_path_states_no_local_error():
+    """What the scenario wishes is not reported as what was kept: the steps are of fixed length."""
+    run = pp.send(SCENARIO, ("propagation.method=split-step", "propagation.local_error=1e-6"))
+    assert run.solver.local_error is None
+    assert any("local_error is not used" in warning for warning in run.warnings)

@@ -215,8 +215,8 @@ def test_nothing_comes_before_the_front_of_brillouins_medium():
 
     def bump(x):
         inside = (x > 0) & (x < 1)
-        safe = np.where(inside, x, 0.5)
-        return np.where(inside, np.exp(-1 / (safe * (1 - safe))), 0.0)
+        filled = np.where(inside, x, 0.5)
+        return np.where(inside, np.exp(-1 / (filled * (1 - filled))), 0.0)
 
     result = front_test(
         TestPulse(envelope=bump, support=10e-15, centre=1e16),
