@@ -30,6 +30,8 @@ Real = NDArray[np.float64]
 
 DEPTH_OF_DECAY = 21.0
 """Fields are followed down to exp(-21), 7.6e-10 of their first value."""
+LEAST_DECAY = 1e-3
+"""Nepers a round trip: weaker decay is followed no longer than this; a run looks for what is left."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -137,5 +139,7 @@ class Slab:
         if self.faces != "echoes":
             return lines
         delay, ratio = self.echo(0.5 * (max(low, 0.0) + high))
-        trips = np.ceil(DEPTH_OF_DECAY / max(-np.log(abs(ratio)), 1e-3))
+        if ratio == 0:
+            return lines
+        trips = np.ceil(DEPTH_OF_DECAY / max(-np.log(abs(ratio)), LEAST_DECAY))
         return lines + float(delay * trips)

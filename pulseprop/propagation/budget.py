@@ -32,6 +32,9 @@ FAINTEST_ENERGY = 1e-140
 """J: below, the square of the power, which autocorrelations need, leaves the range of double precision."""
 FAINTEST_ECHO = 1e-12
 MOST_ECHOES = 12
+"""Echoes are listed down to this share of the energy, and this many at most; the field holds all of them."""
+FORMULA_DIGITS = 4
+"""Significant digits that rows of the budget show where a published formula stands behind them."""
 
 
 @dataclass(kw_only=True)
@@ -166,7 +169,7 @@ def _peak_in(state: Walk, grid: Grid) -> float:
 
 def _digits(element: Element) -> int:
     medium = element.medium
-    return 4 if medium is None or medium.printed_digits is None else medium.printed_digits
+    return FORMULA_DIGITS if medium is None or medium.printed_digits is None else medium.printed_digits
 
 
 def _echoes(element: Element, omega: float) -> tuple[tuple[float, float], ...]:

@@ -12,7 +12,7 @@ from hypothesis import strategies as st
 
 from pulseprop.elements.element import orders_of_element, transfer_of
 from pulseprop.elements.slab import Slab
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.library import VACUUM, catalogue_medium
 from pulseprop.material.lines import LorentzLine
 from pulseprop.material.medium import Medium, Resonance
 from pulseprop.material.response import Constant, View
@@ -151,3 +151,8 @@ def test_ringing_counts_memories_and_round_trips():
 
 def test_no_thickness_is_no_slab():
     assert transfer_of(slab(thickness=0.0), np.array([OMEGA]))[0] == 1
+
+
+def test_faces_that_reflect_nothing_do_not_ring():
+    """Vacuum has no faces: no echo, and no logarithm of nothing."""
+    assert Slab(name="gap", medium=VACUUM, thickness=1e-3, faces="echoes").ringing(2e15, 3e15) == 0.0
