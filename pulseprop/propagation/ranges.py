@@ -11,7 +11,7 @@ from pulseprop.grid import Grid
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.numerals import percent
 
-__all__ = ["RANGE_SHARE", "check_range", "range_warnings"]
+__all__ = ["RANGE_SHARE", "check_range", "energy_without_data", "range_warnings"]
 
 Complex = NDArray[np.complex128]
 
@@ -65,6 +65,14 @@ def _nanometres(omega: float) -> str:
     if not np.isfinite(omega):
         return "any shorter wavelength"
     return f"{TWO_PI_C / omega * 1e9:.6g} nm"
+
+
+def energy_without_data(experiment: Experiment, grid: Grid, spectrum: Complex) -> float:
+    """The largest share of the pulse's energy that lies outside the range of a medium of the path."""
+    shares = [
+        _energy_outside(grid, spectrum, medium.band.low, medium.band.high) for medium in experiment.path.media
+    ]
+    return max(shares, default=0.0)
 
 
 def range_warnings(experiment: Experiment, grid: Grid, spectrum: Complex) -> tuple[str, ...]:

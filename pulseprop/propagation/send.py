@@ -16,7 +16,7 @@ from pulseprop.propagation.converge import Progress, Propagated, propagated
 from pulseprop.propagation.diagnostics import causality_of
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.hazards import hazard_facts
-from pulseprop.propagation.ranges import RANGE_SHARE, range_warnings
+from pulseprop.propagation.ranges import RANGE_SHARE, energy_without_data, range_warnings
 from pulseprop.propagation.result import (
     ElementMeasures,
     Fields,
@@ -80,7 +80,13 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
         overrides=experiment.overrides,
         catalogue_sha256=catalogue_sha256,
         version=version,
-        headline=headline(before, after, path, () if experiment.both_signs else signs),
+        headline=headline(
+            before,
+            after,
+            path,
+            () if experiment.both_signs else signs,
+            energy_without_data(experiment, grid_in, done.spectrum_in),
+        ),
         pulse_in=before,
         pulse_out=after,
         path=path,

@@ -9,16 +9,24 @@ __all__ = ["durations", "headline"]
 
 RINGING_WORTH_A_WORD = 1e-3
 
+GUESSED = 0.01
+"""Share of the energy without data from which the answer itself must say so."""
+
 APART = 10.0
 """Durations whose ratio is larger than this get a unit each."""
 
 
 def headline(
-    before: PulseMeasures, after: PulseMeasures, path: PathMeasures, instead: tuple[SignCase, ...] = ()
+    before: PulseMeasures,
+    after: PulseMeasures,
+    path: PathMeasures,
+    instead: tuple[SignCase, ...] = (),
+    without_data: float = 0.0,
 ) -> str:
     """One sentence that answers what arrives.
 
-    instead: the pulse at the end for both signs of a chirp that was measured and not stated.
+    instead: the pulse at the end for both signs of a chirp that was measured and not stated. without_data:
+    share of the pulse's energy outside the range of a record, which the answer then rests on a guess for.
     """
     leaves, enters = durations(after.fwhm_fs, before.fwhm_fs)
     parts = [f"{leaves} at the end of the path against {enters} at its start"]
@@ -35,6 +43,10 @@ def headline(
         ends = " or ".join(durations(*(case.fwhm_fs for case in instead)))
         size = significant(abs(instead[0].gdd_in_fs2), 3)
         parts.append(f"with the |GDD| of {size} fs^2 that the measured autocorrelation asks for, {ends}")
+    if without_data > GUESSED:
+        parts.append(
+            f"but {percent(without_data, 2)} of the energy lies where a record of the path has no data"
+        )
     return "; ".join(parts) + "."
 
 

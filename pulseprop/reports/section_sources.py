@@ -66,8 +66,6 @@ def numerics_section(run: Run) -> Section:
     )
     if solver.steps:
         text += f", {_counted(solver.steps, 'step')}"
-    if solver.estimated_error is not None:
-        text += f", estimated error {significant(solver.estimated_error, 2)}"
     text += f"; energy that reached the edges of the window: {significant(solver.wrapped_energy, 2)}."
     origin = (
         f"pulseprop {run.version}; scenario {run.file}, SHA-256 {run.scenario_sha256[:16]}…; "
