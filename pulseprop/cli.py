@@ -75,8 +75,7 @@ def _unexpected(error: Exception) -> str:
     told = " ".join(str(error).split())[:200]
     return (
         f"an unexpected failure, {type(error).__name__}: {told}. This is a fault of the program: please "
-        f"report it "
-        f"with the scenario file. {TRACEBACK}=1 in the environment shows where it happened."
+        f"report it with the scenario file. {TRACEBACK}=1 in the environment shows where it happened."
     )
 
 

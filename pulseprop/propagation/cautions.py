@@ -77,10 +77,9 @@ def _strong_light(rows: Sequence[ElementMeasures]) -> Iterator[Caution]:
             ),
             text=(
                 f"The peak intensity reaches {significant(intensity, 2)} W/cm^2. On matter, intensities "
-                "above 1e13 W/cm^2 can make X-rays; German radiation-protection law asks for notice or leave "
-                "there, "
-                "mainly in material processing. The figure is that of one country: ask the local radiation "
-                "protection officer."
+                "above 1e13 W/cm^2 can make X-rays; German radiation-protection law asks for notice or "
+                "permission there, mainly in material processing. The figure is that of one country: ask the "
+                "local radiation protection officer."
             ),
         )
 

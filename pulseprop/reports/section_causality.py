@@ -62,8 +62,8 @@ def _naive(naive: NaiveFilter | None) -> list[str]:
         return []
     return [
         "For comparison, the same path as a filter that absorbs and delays nothing (a common shortcut, "
-        "and wrong): "
-        f"{significant(naive.energy_ahead_of_front, 2)} of the energy ahead of the front, {naive.verdict}."
+        f"and wrong): {significant(naive.energy_ahead_of_front, 2)} of the energy ahead of the front, "
+        f"{naive.verdict}."
     ]
 
 

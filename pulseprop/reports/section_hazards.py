@@ -11,12 +11,9 @@ __all__ = ["hazard_section"]
 
 DEFERENCE = (
     "Assess the hazard under the local laser safety officer, to IEC 60825-1 and, where it applies, ANSI "
-    "Z136.1. "
-    "This page gives no laser class, no exposure limit and no eyewear figure, and is no replacement for "
-    "local "
-    "codes and licensed practice. It states what the scenario says and what follows from it; measure "
-    "before "
-    "relying on it."
+    "Z136.1. This page gives no laser class, no exposure limit and no eyewear figure, and is no "
+    "replacement for local codes and licensed practice. It states what the scenario says and what "
+    "follows from it; measure before relying on it."
 )
 
 

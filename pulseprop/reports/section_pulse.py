@@ -91,14 +91,12 @@ def _shape(after: PulseMeasures) -> list[str]:
     if after.split:
         notes.append(
             "The pulse splits: it is above half maximum in more than one stretch, and its FWHM spans all "
-            "of "
-            "them. Look at the curves before quoting it."
+            "of them. Look at the curves before quoting it."
         )
     if (after.energy_after or 0.0) >= WORTH_A_NOTE:
         notes.append(
             f"The pulse rings or trails: {percent(after.energy_after, 2)} of its energy comes later than "
-            f"three FWHM "
-            "after the peak. FWHM does not see that; the logarithmic figure does."
+            "three FWHM after the peak. FWHM does not see that; the logarithmic figure does."
         )
     return notes
 
@@ -114,8 +112,8 @@ def delay_section(run: Run) -> Section:
     if path.net_group_delay_fs is not None and path.reshaping_delay_fs is not None:
         lines.append(
             f": {span(path.net_group_delay_fs, digits)} (group delay averaged over the transmitted "
-            f"spectrum) "
-            f"{_signed(path.reshaping_delay_fs, path.centroid_delay_fs, digits)} (reshaping by absorption)"
+            f"spectrum) {_signed(path.reshaping_delay_fs, path.centroid_delay_fs, digits)} (reshaping by "
+            "absorption)"
         )
     text = "".join(lines) + "."
     if path.group_delay_fs is not None:
@@ -189,8 +187,7 @@ def autocorrelation_section(run: Run) -> Section | None:
         return None
     text = (
         f"The measured autocorrelation is fitted by |GDD| = {significant(fit.gdd_fs2, 3)} fs^2 at the "
-        f"start of "
-        f"the path, with a residual of {significant(fit.residual, 2)} rms of its peak."
+        f"start of the path, with a residual of {significant(fit.residual, 2)} rms of its peak."
     )
     blocks = [Paragraph(text)]
     if sentence := _glass(fit):
@@ -203,8 +200,6 @@ def _glass(fit: AutocorrelationFit) -> str:
         return ""
     return (
         f"An intensity autocorrelation is blind to the sign. Put {significant(fit.glass_mm, 2)} mm of "
-        f"{fit.glass} "
-        f"in front of the autocorrelator: a trace of {span(fit.fwhm_if_positive_fs, 3)} means positive "
-        f"GDD, one "
-        f"of {span(fit.fwhm_if_negative_fs, 3)} negative."
+        f"{fit.glass} in front of the autocorrelator: a trace of {span(fit.fwhm_if_positive_fs, 3)} means "
+        f"positive GDD, one of {span(fit.fwhm_if_negative_fs, 3)} negative."
     )
