@@ -88,14 +88,14 @@ def arrays_at_peak(points: int = 1 << 18) -> float:
     """Peak memory of a linear run in complex arrays of its length."""
     import pulseprop as pp
 
-    settings = (f"grid.points={points}",)
-    pp.send(SCENARIO, settings)
-    scenario = pp.read(SCENARIO, settings)
-    tracemalloc.start()
-    pp.send(scenario)
-    _, peak = tracemalloc.get_traced_memory()
-    tracemalloc.stop()
-    return peak / (16 * points)
+    scenario = pp.read(SCENARIO, (f"grid.points={points}",))
+    peaks = []
+    for _ in range(3):  # modules that load in the first run are no arrays of it
+        tracemalloc.start()
+        pp.send(scenario)
+        peaks.append(tracemalloc.get_traced_memory()[1])
+        tracemalloc.stop()
+    return min(peaks) / (16 * points)
 
 
 def main() -> None:
