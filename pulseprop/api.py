@@ -85,7 +85,7 @@ def medium(name: str) -> Medium:
     """A medium by name: of the catalogue, or "SCENARIO.toml:NAME" (split at the last colon). Raises
     InputError.
     """
-    from pulseprop.material.library import catalogue_medium
+    from pulseprop.material.catalogue_media import catalogue_medium
 
     file, colon, own = name.rpartition(":")
     if colon and file.lower().endswith(".toml"):

@@ -10,9 +10,9 @@ from pulseprop.elements.phase_orders import Loss, PhaseOrders
 from pulseprop.elements.slab import Slab
 from pulseprop.errors import InputError, NumericalLimit, PulsepropError, RangeError
 from pulseprop.grid import Grid
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.formulas import MICROMETRE_OMEGA, Formula, sellmeier_term
 from pulseprop.material.gases import gas_at
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.lines import line
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import Band, Constant

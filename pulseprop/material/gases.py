@@ -13,8 +13,8 @@ import numpy as np
 
 from pulseprop.errors import InputError
 from pulseprop.material.catalogue import Record, record
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.composition import Scaled
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.medium import Medium
 from pulseprop.material.molar_density import molar_density
 

@@ -9,7 +9,7 @@ from dataclasses import replace
 import numpy as np
 
 from pulseprop.constants import FEMTO
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.measures.autocorrelation import intensity_autocorrelation
 from pulseprop.propagation.assess import measured
 from pulseprop.propagation.converge import propagated

@@ -6,8 +6,8 @@ import numpy as np
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.elements.path import Path
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.features import completion_shift
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.medium import Medium
 from pulseprop.propagation.result import MediumUsed
 

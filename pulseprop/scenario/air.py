@@ -7,7 +7,7 @@ from numpy.typing import NDArray
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 
 __all__ = ["omega_of_air_wavelength", "omegas_of_air_wavelengths"]
 

@@ -10,6 +10,7 @@ import numpy as np
 
 from pulseprop.errors import InputError, PulsepropError
 from pulseprop.material.catalogue import near_names
+from pulseprop.material.catalogue_media import VACUUM, catalogue_medium
 from pulseprop.material.composition import (
     Absolute,
     Bruggeman,
@@ -19,7 +20,6 @@ from pulseprop.material.composition import (
 )
 from pulseprop.material.formulas import Formula, Pole, Power, gas_term, pole_term, sellmeier_term
 from pulseprop.material.gases import gas_at
-from pulseprop.material.library import VACUUM, catalogue_medium
 from pulseprop.material.medium import Medium, NonlinearIndex
 from pulseprop.material.orders_only import OrdersOnly
 from pulseprop.material.refraction import refraction_series

@@ -21,7 +21,7 @@ COLUMNS = {
 
 
 def main() -> None:
-    from pulseprop.material.library import catalogue_medium
+    from pulseprop.material.catalogue_media import catalogue_medium
 
     data = json.loads((SHARED / "published_dispersion.json").read_text(encoding="utf-8"))
     worst = dict.fromkeys(COLUMNS, (0.0, ""))

@@ -14,7 +14,7 @@ from pulseprop.elements.element import transfer_of
 from pulseprop.elements.path import Path
 from pulseprop.elements.phase_orders import PhaseOrders
 from pulseprop.elements.slab import Slab
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.lines import LorentzLine
 from pulseprop.material.medium import Medium, Resonance
 from pulseprop.material.response import View

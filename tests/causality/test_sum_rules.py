@@ -10,8 +10,8 @@ import numpy as np
 import pytest
 
 from pulseprop.causality.sum_rules import Feature, sum_rules
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.features import features_of, knots_of, relaxes
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.lines import Carriers, LorentzLine, Relaxation, VoigtLine
 from pulseprop.material.response import Sum, View
 

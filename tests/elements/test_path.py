@@ -10,7 +10,7 @@ import pytest
 from pulseprop.elements.path import Path
 from pulseprop.elements.phase_orders import Loss, PhaseOrders
 from pulseprop.elements.slab import Slab
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.response import View
 
 OMEGA = np.array([2.2e15, 2.35e15, 2.6e15])

@@ -12,7 +12,7 @@ from hypothesis import strategies as st
 
 from pulseprop.elements.element import orders_of_element, transfer_of
 from pulseprop.elements.slab import Slab
-from pulseprop.material.library import VACUUM, catalogue_medium
+from pulseprop.material.catalogue_media import VACUUM, catalogue_medium
 from pulseprop.material.lines import LorentzLine
 from pulseprop.material.medium import Medium, Resonance
 from pulseprop.material.response import Constant, View

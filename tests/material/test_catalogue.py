@@ -13,7 +13,7 @@ import pytest
 import pulseprop.material.catalogue as catalogue
 from pulseprop.errors import InputError
 from pulseprop.material.catalogue import Record, names, near_names, record
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 
 KINDS = {"sellmeier", "gas", "index powers", "debye", "humid air"}
 RECORDS = [record(name) for name in names()]

@@ -11,6 +11,7 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from pulseprop.errors import NumericalLimit
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.completion import ALLOWED_SHIFT
 from pulseprop.material.formulas import (
     MICROMETRE_OMEGA,
@@ -21,7 +22,6 @@ from pulseprop.material.formulas import (
     pole_term,
     sellmeier_term,
 )
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.response import Band, View
 
 QUIET = settings(max_examples=25, deadline=None, derandomize=True)

@@ -7,6 +7,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.composition import (
     Absolute,
     Bruggeman,
@@ -14,7 +15,6 @@ from pulseprop.material.composition import (
     MaxwellGarnett,
     Scaled,
 )
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.lines import Carriers, LorentzLine, VoigtLine
 from pulseprop.material.response import Constant, View
 

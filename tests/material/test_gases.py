@@ -7,8 +7,8 @@ import pytest
 
 from pulseprop.errors import InputError
 from pulseprop.material.catalogue import record
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.gases import gas_at
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.molar_density import GAS_CONSTANT, molar_density
 
 OMEGA = np.array(2 * np.pi * 299792458.0 / 800e-9)

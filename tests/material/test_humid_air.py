@@ -6,8 +6,8 @@ import numpy as np
 import pytest
 
 from pulseprop.errors import InputError
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.humid_air import humid_air_response, vapour_fraction
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.medium import Medium
 
 

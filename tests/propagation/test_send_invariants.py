@@ -19,7 +19,7 @@ from pulseprop.elements.phase_orders import Loss, PhaseOrders
 from pulseprop.elements.slab import Slab
 from pulseprop.errors import RangeError
 from pulseprop.grid import Grid
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.lines import LorentzLine
 from pulseprop.material.medium import Medium
 from pulseprop.propagation.experiment import Experiment

@@ -9,7 +9,7 @@ from pulseprop.elements.path import Path
 from pulseprop.elements.phase_orders import PhaseOrders
 from pulseprop.elements.slab import Slab
 from pulseprop.errors import NumericalLimit
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.lines import LorentzLine
 from pulseprop.material.medium import Medium, Resonance
 from pulseprop.propagation.experiment import Experiment

@@ -6,7 +6,7 @@ import numpy as np
 
 from pulseprop.elements.path import Path
 from pulseprop.elements.slab import Slab
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.propagation.sources import media_used
 
 OMEGA = 2 * np.pi * 299792458.0 / 800e-9

@@ -11,7 +11,7 @@ from pulseprop.elements.element import transfer_of
 from pulseprop.elements.slab import Slab
 from pulseprop.errors import NumericalLimit
 from pulseprop.grid import Grid
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.numerics.plans import Plan
 from pulseprop.propagation.stepped import SteppedAdvance
 from pulseprop.propagation.stepping import FixedSteps, SymmetricSplit, march

@@ -12,9 +12,9 @@ from scipy.optimize import brentq
 from pulseprop.elements.path import Path
 from pulseprop.elements.phase_orders import PhaseOrders
 from pulseprop.elements.slab import Slab
+from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.composition import Absolute
 from pulseprop.material.formulas import MICROMETRE_OMEGA, Formula, gas_term
-from pulseprop.material.library import catalogue_medium
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import Band, View
 from pulseprop.propagation.experiment import Experiment

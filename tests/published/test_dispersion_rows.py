@@ -14,7 +14,7 @@ import numpy as np
 import pytest
 
 from pulseprop.material.catalogue import record
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 
 MEDIA = json.loads(
     (Path(__file__).parents[2] / "shared/published_dispersion.json").read_text(encoding="utf-8")

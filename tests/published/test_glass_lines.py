@@ -14,7 +14,7 @@ import numpy as np
 import pytest
 from scipy.optimize import brentq
 
-from pulseprop.material.library import catalogue_medium
+from pulseprop.material.catalogue_media import catalogue_medium
 
 CHECKS = json.loads((Path(__file__).parents[2] / "shared/published_checks.json").read_text(encoding="utf-8"))[
     "checks"
