@@ -305,6 +305,11 @@ def test_one_document_on_standard_output_and_the_rest_on_standard_error(scenario
     assert f"warning: {document['warnings'][0]}" in done.stderr
 
 
+def listen_to_interrupts():
+    """A shell starts what runs in the background deaf to SIGINT, and its children inherit that."""
+    signal.signal(signal.SIGINT, signal.SIG_DFL)
+
+
 def test_an_interrupted_run_leaves_nothing(scenario, tmp_path):
     line = '[medium.m]\nlines = [ { centre = "800 nm", width = "1 GHz", peak_absorption = "12 cm^-1" } ]\n'
     file = scenario(slab("m", "1.5 cm") + line)
@@ -314,6 +319,7 @@ def test_an_interrupted_run_leaves_nothing(scenario, tmp_path):
     running = subprocess.Popen(
         [sys.executable, "-m", "pulseprop", "send", str(file), *map(str, outputs)],
         stderr=subprocess.PIPE, text=True, env=os.environ | {"PYTHONPATH": str(ROOT)},
+        preexec_fn=listen_to_interrupts,
     )  # fmt: skip
     assert running.stderr is not None
     running.stderr.read(1)  # the first word of progress: the run is under way
