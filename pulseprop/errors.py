@@ -36,7 +36,7 @@ class Complaint:
         tail = [f"Allowed: {self.allowed}."] if self.allowed else []
         if self.remedy:
             tail.append(self.remedy if self.remedy.endswith((".", "?")) else self.remedy + ".")
-        return " ".join([head + ".", *tail])
+        return " ".join([head if head.endswith("?") else head + ".", *tail])
 
 
 class PulsepropError(Exception):

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from typing import Annotated, Any, Literal
+from typing import Annotated, Any, Literal, Self
 
 from pydantic import Field, PlainValidator, model_validator
 
@@ -95,30 +95,29 @@ class SpectrumFile(SpectralFile):
         return self
 
 
-class TraceFile(DataFile):
-    """A measured waveform E(t), of any scale. x_unit: of the time."""
+class TimeFile(DataFile):
+    """A signal over time or delay, of any scale. x_unit: of the time."""
+
+    x_unit: Name
+
+    @model_validator(mode="after")
+    def _units_fit(self) -> Self:
+        check_unit("time", self.x_unit, "x_unit")
+        return self
+
+
+class TraceFile(TimeFile):
+    """A measured waveform E(t)."""
 
     x: Literal["time"] = "time"
-    x_unit: Name
     y: Literal["field"] = "field"
 
-    @model_validator(mode="after")
-    def _units_fit(self) -> TraceFile:
-        check_unit("time", self.x_unit, "x_unit")
-        return self
 
-
-class AutocorrelationFile(DataFile):
-    """A measured intensity autocorrelation, of any scale. x_unit: of the delay between the two copies."""
+class AutocorrelationFile(TimeFile):
+    """A measured intensity autocorrelation; x is the delay between the two copies."""
 
     x: Literal["delay"] = "delay"
-    x_unit: Name
     y: Literal["intensity"] = "intensity"
-
-    @model_validator(mode="after")
-    def _units_fit(self) -> AutocorrelationFile:
-        check_unit("time", self.x_unit, "x_unit")
-        return self
 
 
 class Tails(Table):
