@@ -274,7 +274,7 @@ def test_version_and_help(capsys: pytest.CaptureFixture[str]) -> None:
 
 
 def run_outside(code: str, **options: object) -> subprocess.CompletedProcess[str]:
-    root = str(Path(cli.__file__).parents[1])
+    root = str(Path(cli.__file__).parents[2])
     environment = {**os.environ, "PYTHONPATH": root}
     return subprocess.run(  # type: ignore[call-overload,no-any-return]
         [sys.executable, "-c", code], capture_output=True, text=True, env=environment, timeout=60, **options
@@ -305,7 +305,7 @@ def test_outputs_never_overwrite_the_scenario_or_one_another(
     """Nothing is read and then lost: each file has a name of its own."""
     before = Path(scenario).read_text()
     assert called("send", scenario, "--json", scenario) == 2
-    assert "the scenario itself" in capsys.readouterr().err
+    assert "an input" in capsys.readouterr().err
     assert Path(scenario).read_text() == before
     one = str(Path(scenario).with_name("one.out"))
     assert called("send", scenario, "--json", one, "--page", one) == 2
