@@ -2,35 +2,55 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Mapping
 from functools import partial
+from typing import Any
 
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
-from pulseprop.elements.phase_orders import Loss, PhaseOrders
-from pulseprop.elements.slab import Slab
 from pulseprop.errors import PulsepropError
 from pulseprop.material.medium import Medium
+from pulseprop.scenario import build_basics
 from pulseprop.scenario.build_medium import MediaOfScenario
+from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.read import Scenario
-from pulseprop.scenario.schema_path import Element as ElementTable
-from pulseprop.scenario.schema_path import KnownOrdersTable, LossTable, SlabTable
+from pulseprop.scenario.schema_path import ElementTable
 
-__all__ = ["built_path"]
+__all__ = ["built_element", "built_path"]
 
-SCALES = ((1.0, 1.0, "m"), (1e-4, 1e-3, "mm"), (1e-6, 1e-6, "um"), (0.0, 1e-9, "nm"))
-"""From which length on, in m, a unit is used, and its size."""
+Builder = Callable[[Any, Site], Element]
+"""Takes the table of its kind."""
+
+BUILDERS: Mapping[str, Builder] = {
+    "slab": build_basics.slab,
+    "loss": build_basics.loss,
+    "known orders": build_basics.known_orders,
+    "pulse shaper": build_basics.shaper,
+}
+"""A builder for each kind of element."""
 
 
 def built_path(scenario: Scenario, media: MediaOfScenario, centre: float) -> Path:
     """Elements in order; centre: of the pulse, rad/s, about which known orders are counted."""
     elements = []
     for number, table in enumerate(scenario.content.path, start=1):
+        site = Site(
+            scenario=scenario,
+            number=number,
+            centre=centre,
+            beam_radius=scenario.content.pulse.beam_radius,
+            medium=partial(_medium, scenario, media, number),
+        )
         try:
-            elements.append(_built(table, number, partial(_medium, scenario, media, number), centre))
+            elements.append(built_element(table, site))
         except PulsepropError as error:
             raise scenario.blamed(error, "path", number - 1) from None
     return Path(tuple(elements))
+
+
+def built_element(table: ElementTable, site: Site) -> Element:
+    """One element of any kind. Raises InputError without place where its settings do not fit."""
+    return BUILDERS[table.kind](table, site)
 
 
 def _medium(scenario: Scenario, media: MediaOfScenario, number: int, name: str) -> Medium:
@@ -38,50 +58,3 @@ def _medium(scenario: Scenario, media: MediaOfScenario, number: int, name: str) 
         return media.medium(name)
     except PulsepropError as error:
         raise scenario.blamed(error, "path", number - 1, "medium") from None
-
-
-def _built(table: ElementTable, number: int, medium: Callable[[str], Medium], centre: float) -> Element:
-    if isinstance(table, SlabTable):
-        return _slab(table, number, medium(table.medium))
-    if isinstance(table, LossTable):
-        share = f"{100 * table.transmittance:.4g} % transmitted"
-        return Loss(
-            name=table.name or f"loss {number}",
-            transmittance=table.transmittance,
-            beam_radius=table.beam_radius,
-            detail=share,
-        )
-    known = table if isinstance(table, KnownOrdersTable) else None
-    return PhaseOrders(
-        name=table.name or f"{table.kind} {number}",
-        kind=table.kind,
-        centre=centre,
-        group_delay=known.group_delay if known else 0.0,
-        gdd=table.gdd,
-        tod=table.tod,
-        fod=table.fod,
-        transmittance=known.transmittance if known else 1.0,
-        beam_radius=table.beam_radius,
-        detail="phase only",
-    )
-
-
-def _slab(table: SlabTable, number: int, medium: Medium) -> Slab:
-    stated = table.reflectance is not None
-    return Slab(
-        name=table.name or f"{table.medium} {number}",
-        medium=medium,
-        thickness=table.thickness,
-        angle=table.angle,
-        polarisation=table.polarisation,
-        faces="reflectance" if stated else table.faces,
-        reflectance=table.reflectance or 0.0,
-        beam_radius=table.beam_radius,
-        temperature_K=table.temperature,
-        detail=f"{_length(table.thickness)} {medium.name}",
-    )
-
-
-def _length(metres: float) -> str:
-    size, unit = next((size, unit) for least, size, unit in SCALES if metres >= least)
-    return f"{metres / size:.4g} {unit}"

@@ -8,15 +8,24 @@ from pydantic import Field, model_validator
 
 from pulseprop.scenario.fields import Fraction, Length, Name, Table, Temperature, complain, measured
 
-__all__ = ["Element", "ElementTable", "KnownOrdersTable", "LossTable", "ShaperTable", "SlabTable"]
+__all__ = [
+    "Element",
+    "ElementTable",
+    "KnownOrdersTable",
+    "LossTable",
+    "OrdersTable",
+    "ShaperTable",
+    "SlabTable",
+]
 
 RIGHT_ANGLE = 1.5707963267948966
 
 
 class ElementTable(Table):
-    """What every element may carry. beam_radius: 1/e^2 of the intensity, m. temperature: K. keep: never to
-    be changed."""
+    """What every element may carry. kind: the word for its sort. beam_radius: 1/e^2 of the intensity, m.
+    temperature: K. keep: never to be changed."""
 
+    kind: str
     name: Name | None = None
     beam_radius: Length | None = None
     temperature: Temperature | None = None
