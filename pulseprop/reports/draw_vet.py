@@ -43,8 +43,8 @@ def draw_vet(vetted: Vetted, number: int) -> Drawing | None:
     label_x(panels[-1], "vacuum wavelength, nm")
     _share_stretch(panels, curves, quantities)
     caption = (
-        "Printed values, the passive causal material that fits them best, and the distance between the two in "
-        "units of the uncertainty"
+        "Printed values, the passive causal material that fits them best, and the distance between the two "
+        "in units of the uncertainty"
     )
     caption += "; rows in conflict are marked by their weight." if vetted.conflict else "."
     return Drawing(name=f"table-{number + 1}", caption=caption, figure=figure, columns=dict(curves))
@@ -66,7 +66,7 @@ def _values(panel: Axes, name: str, curves: Mapping[str, Real]) -> None:
             color=COLOURS["after"],
             label="best passive causal material",
         )
-    if name == "k" and np.all(curves["k"] > 0) and np.ptp(np.log10(curves["k"])) > 2:
+    if name == "k" and np.all(values > 0) and np.ptp(np.log10(values)) > 2:
         decades(panel, 5)
     label_y(panel, "index n" if name == "n" else "k")
     panel.legend(loc="best")
