@@ -12,10 +12,11 @@ from numpy.typing import NDArray
 
 from pulseprop.constants import PLANCK, SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import InputError
+from pulseprop.files.number_table import NumberTable
 from pulseprop.material.composition import WithAbsorption
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import Constant
-from pulseprop.scenario.air import omegas_of_air_wavelengths
+from pulseprop.material.wavelength_in_air import omegas_of_air_wavelengths
 from pulseprop.scenario.columns import Columns, spectral_columns, time_columns
 from pulseprop.scenario.line_files import lines_in
 from pulseprop.scenario.read import Scenario
@@ -28,7 +29,6 @@ from pulseprop.scenario.schema_files import (
 )
 from pulseprop.scenario.schema_lines import LineTable
 from pulseprop.scenario.schema_medium import MediumTable
-from pulseprop.scenario.tables import NumberTable
 from pulseprop.units import to_si
 
 if TYPE_CHECKING:

@@ -24,7 +24,7 @@ from pulseprop.material.medium import Medium, NonlinearIndex
 from pulseprop.material.orders_only import OrdersOnly
 from pulseprop.material.refraction import refraction_series
 from pulseprop.material.response import Band, Constant, Response, Sum, View
-from pulseprop.scenario.air import omega_of_air_wavelength
+from pulseprop.material.wavelength_in_air import omega_of_air_wavelength
 from pulseprop.scenario.build_files import absorption_of, index_table_of, lines_of
 from pulseprop.scenario.build_lines import built_carriers, built_line, built_relaxation, resonance_of
 from pulseprop.scenario.read import Scenario

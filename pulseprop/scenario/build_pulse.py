@@ -5,12 +5,12 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import Any
 
+from pulseprop.material.wavelength_in_air import omega_of_air_wavelength
 from pulseprop.propagation.experiment import MeasuredAutocorrelation
 from pulseprop.pulse.bandwidth import duration_from_bandwidth
 from pulseprop.pulse.measured import MeasuredPulse
 from pulseprop.pulse.pulse import Pulse
 from pulseprop.pulse.shapes import shape_named
-from pulseprop.scenario.air import omega_of_air_wavelength
 from pulseprop.scenario.build_files import spectrum_columns, time_and_signal
 from pulseprop.scenario.read import Scenario
 from pulseprop.scenario.schema_pulse import PulseTable

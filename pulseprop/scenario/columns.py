@@ -15,8 +15,8 @@ from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.errors import InputError
+from pulseprop.files.number_table import NumberTable, read_numbers
 from pulseprop.scenario.schema_files import AutocorrelationFile, SpectralFile, TraceFile
-from pulseprop.scenario.tables import NumberTable, read_numbers
 from pulseprop.units import to_si
 
 __all__ = ["Columns", "spectral_columns", "time_columns"]

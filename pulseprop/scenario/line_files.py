@@ -13,10 +13,10 @@ from pathlib import Path
 from pydantic import ValidationError
 
 from pulseprop.errors import InputError
+from pulseprop.files.number_table import NumberTable, read_numbers
 from pulseprop.scenario.complaints import findings_of
 from pulseprop.scenario.schema_lines import LinesFile, LineTable
 from pulseprop.scenario.suggest import did_you_mean
-from pulseprop.scenario.tables import NumberTable, read_numbers
 
 __all__ = ["lines_in", "quantity_and_unit"]
 

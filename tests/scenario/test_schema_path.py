@@ -9,10 +9,10 @@ from typing import Any
 import pytest
 
 from pulseprop.errors import InputError
+from pulseprop.files.number_table import read_numbers
 from pulseprop.scenario.complaints import findings_of
 from pulseprop.scenario.read import read_scenario, scenario_from
 from pulseprop.scenario.schema_path import ElementTable
-from pulseprop.scenario.tables import read_numbers
 
 PULSE = {"shape": "gaussian", "centre": "800 nm", "duration": "30 fs"}
 

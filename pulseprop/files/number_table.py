@@ -14,14 +14,12 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
-from pulseprop.scenario.table_layout import COMMA_NUMBER, NOT_FINITE, NUMBER, first_row, header_of, is_comment
+from pulseprop.files.layout import COMMA_NUMBER, NOT_FINITE, NUMBER, first_row, header_of, is_comment
+from pulseprop.files.source import contents, decoded
 
 __all__ = ["NumberTable", "numbers_in", "read_numbers"]
 
 Real = NDArray[np.float64]
-
-LARGEST_TABLE = 256 << 20
-"""Bytes; larger files are refused before they are read."""
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
@@ -133,7 +131,7 @@ def read_numbers(path: str | Path, *, columns: int = 2, rows: int = 2) -> Number
     Raises InputError with file, line and value for whatever is no such table.
     """
     path = Path(path)
-    table = numbers_in(_text_of(path), str(path))
+    table = numbers_in(decoded(contents(path), str(path)), str(path))
     if table.columns < columns:
         raise table.refused(
             "the table has too few columns", row=0, value=table.columns, allowed=f"{columns} or more"
@@ -222,34 +220,3 @@ def _not_finite(cell: str, line: int, file: str) -> InputError:
         remedy="Remove the row",
         file=f"{file}:{line}",
     )
-
-
-def _text_of(path: Path) -> str:
-    if not path.is_file():
-        problem = "this is not a file" if path.exists() else "there is no such file"
-        raise InputError(
-            problem, file=str(path), remedy="A path in a scenario is relative to the scenario file"
-        )
-    size = path.stat().st_size
-    if size > LARGEST_TABLE:
-        raise InputError(
-            "the file is too large", value=f"{size / 2**20:.0f} MiB", allowed="256 MiB", file=str(path)
-        )
-    try:
-        data = path.read_bytes()
-    except OSError as error:
-        raise InputError(f"the file cannot be read: {error.strerror}", file=str(path)) from None
-    return _decoded(data, str(path))
-
-
-def _decoded(data: bytes, file: str) -> str:
-    """Text of the usual encodings: numbers are the same in all of them, so that only headers depend on the
-    choice."""
-    if data.startswith((b"\xff\xfe", b"\xfe\xff")):
-        return data.decode("utf-16", errors="replace")
-    if b"\0" in data:
-        raise InputError("this is no text file", file=file, allowed="columns of numbers as text")
-    try:
-        return data.decode("utf-8-sig")
-    except UnicodeDecodeError:
-        return data.decode("latin-1")

@@ -6,7 +6,7 @@ import numpy as np
 import pytest
 
 from pulseprop.errors import InputError
-from pulseprop.scenario.air import omega_of_air_wavelength, omegas_of_air_wavelengths
+from pulseprop.material.wavelength_in_air import omega_of_air_wavelength, omegas_of_air_wavelengths
 
 TWO_PI_C = 2 * np.pi * 299792458.0
 

@@ -10,7 +10,7 @@ from hypothesis import given
 from hypothesis import strategies as st
 
 from pulseprop.errors import InputError
-from pulseprop.scenario.tables import decimal_places, numbers_in, read_numbers
+from pulseprop.files.number_table import decimal_places, numbers_in, read_numbers
 
 ROWS = [[400.5, 0.12], [401.0, 1.3e-4], [402.0, -7.0]]
 
