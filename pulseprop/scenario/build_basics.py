@@ -5,7 +5,8 @@ from __future__ import annotations
 from pulseprop.elements.phase_orders import Loss, PhaseOrders
 from pulseprop.elements.slab import Slab
 from pulseprop.scenario.build_site import Site, length_words
-from pulseprop.scenario.schema_path import KnownOrdersTable, LossTable, OrdersTable, ShaperTable, SlabTable
+from pulseprop.scenario.schema_element import OrdersTable
+from pulseprop.scenario.schema_path import KnownOrdersTable, LossTable, ShaperTable, SlabTable
 
 __all__ = ["known_orders", "loss", "shaper", "slab"]
 

@@ -14,7 +14,7 @@ from pulseprop.scenario import build_basics
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.read import Scenario
-from pulseprop.scenario.schema_path import ElementTable
+from pulseprop.scenario.schema_element import ElementTable
 
 __all__ = ["built_element", "built_path"]
 

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 from pulseprop.material.medium import Medium
 from pulseprop.scenario.read import Scenario
-from pulseprop.scenario.schema_path import ElementTable
+from pulseprop.scenario.schema_element import ElementTable
 
 __all__ = ["Site", "length_words"]
 

@@ -6,30 +6,17 @@ from typing import Annotated, Literal
 
 from pydantic import Field, model_validator
 
-from pulseprop.scenario.fields import Fraction, Length, Name, Table, Temperature, complain, measured
+from pulseprop.scenario.fields import Fraction, Name, complain, measured
+from pulseprop.scenario.schema_element import RIGHT_ANGLE, ElementTable, OrdersTable
 
 __all__ = [
     "Element",
     "ElementTable",
     "KnownOrdersTable",
     "LossTable",
-    "OrdersTable",
     "ShaperTable",
     "SlabTable",
 ]
-
-RIGHT_ANGLE = 1.5707963267948966
-
-
-class ElementTable(Table):
-    """What every element may carry. kind: the word for its sort. beam_radius: 1/e^2 of the intensity, m.
-    temperature: K. keep: never to be changed."""
-
-    kind: str
-    name: Name | None = None
-    beam_radius: Length | None = None
-    temperature: Temperature | None = None
-    keep: bool = False
 
 
 class SlabTable(ElementTable):
@@ -68,15 +55,6 @@ class LossTable(ElementTable):
 
     kind: Literal["loss"]
     transmittance: Annotated[float, measured("fraction", above=0, most=1)]
-
-
-class OrdersTable(ElementTable):
-    """Spectral phase by its orders at the pulse's centre: gdd in s^2, tod in s^3, fod in s^4; positive gdd
-    is red first."""
-
-    gdd: Annotated[float, measured("gdd")] = 0.0
-    tod: Annotated[float, measured("tod")] = 0.0
-    fod: Annotated[float, measured("fod")] = 0.0
 
 
 class KnownOrdersTable(OrdersTable):
