@@ -8,6 +8,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.elements.device import Composite
 from pulseprop.elements.element import Element, transfer_of
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
@@ -45,8 +46,8 @@ class Path:
         """The media of the path, each once, in order of appearance."""
         found: dict[str, Medium] = {}
         for element in self.elements:
-            if element.medium is not None:
-                found.setdefault(element.medium.name, element.medium)
+            for medium in _media_of(element):
+                found.setdefault(medium.name, medium)
         return tuple(found.values())
 
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
@@ -65,3 +66,9 @@ class Path:
         for element in self.elements:
             total *= transfer_of(element, omega, view)
         return total
+
+
+def _media_of(element: Element) -> tuple[Medium, ...]:
+    if isinstance(element, Composite):
+        return element.media
+    return () if element.medium is None else (element.medium,)

@@ -8,6 +8,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
+from pulseprop.elements.device import Straying
+from pulseprop.elements.element import Element
 from pulseprop.elements.slab import Slab
 from pulseprop.grid import Grid
 from pulseprop.measures.limits import TransformLimit
@@ -35,8 +37,7 @@ def hazard_facts(
     """
     pulse, known = experiment.pulse, experiment.energy_stated
     energy, rate = grid.energy(spectrum), pulse.repetition_rate
-    slabs = [element for element in experiment.path if isinstance(element, Slab)]
-    stray = [_stray(slab, pulse.centre) for slab in slabs]
+    stray = [text for element in experiment.path for text in _stray(element, pulse.centre)]
     return HazardFacts(
         wavelengths_at_1_percent_nm=_wavelengths(grid, spectrum, 1e-2),
         wavelengths_at_1e_4_nm=_wavelengths(grid, spectrum, 1e-4),
@@ -48,7 +49,7 @@ def hazard_facts(
         beam_radius_m=pulse.beam_radius,
         peak_fluence_J_per_cm2=_largest(row.peak_fluence_J_per_cm2 for row in rows),
         peak_intensity_W_per_cm2=_largest(row.peak_intensity_W_per_cm2 for row in rows),
-        stray_beams=tuple(text for text in stray if text),
+        stray_beams=tuple(stray),
     )
 
 
@@ -63,7 +64,14 @@ def _wavelengths(grid: Grid, spectrum: Complex, level: float) -> tuple[float, fl
     return SPEED_OF_LIGHT / float(seen[-1]) * 1e9, SPEED_OF_LIGHT / float(seen[0]) * 1e9
 
 
-def _stray(slab: Slab, omega: float) -> str:
+def _stray(element: Element, omega: float) -> tuple[str, ...]:
+    if isinstance(element, Straying):
+        return element.stray_beams
+    reflected = _reflected(element, omega) if isinstance(element, Slab) else ""
+    return (reflected,) if reflected else ()
+
+
+def _reflected(slab: Slab, omega: float) -> str:
     if slab.faces == "reflectance":
         return f"{slab.name}: each face reflects {percent(slab.reflectance, 2)} as stated"
     reflectance = slab.face_reflectance(omega)

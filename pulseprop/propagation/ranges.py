@@ -1,4 +1,4 @@
-"""Whether a pulse stays where the records of the path's media hold."""
+"""Whether a pulse stays where the records of the path's media hold, and where its devices work."""
 
 from __future__ import annotations
 
@@ -6,6 +6,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import TWO_PI_C
+from pulseprop.elements.device import Banded
 from pulseprop.errors import RangeError
 from pulseprop.grid import Grid
 from pulseprop.propagation.experiment import Experiment
@@ -31,10 +32,14 @@ def _energy_outside(grid: Grid, spectrum: Complex, low: float, high: float) -> f
 
 
 def check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
-    """Refuse a pulse, A(omega) on the grid, that leaves the range of a medium: RangeError names the medium.
+    """Refuse a pulse, A(omega) on the grid, that leaves the range of a medium or the band of a device:
+    RangeError names it.
 
-    Let through where the scenario asks for the causal continuation and the medium has one.
+    A medium lets it through where the scenario asks for the causal continuation and it has one.
     """
+    for element in experiment.path:
+        if isinstance(element, Banded):
+            _check_band(experiment, grid, spectrum, element)
     for medium in experiment.path.media:
         low, high = medium.band.low, medium.band.high
         outside = _energy_outside(grid, spectrum, low, high)
@@ -49,6 +54,30 @@ def check_range(experiment: Experiment, grid: Grid, spectrum: Complex) -> None:
             file=experiment.file,
             place=f"medium {medium.name}",
         )
+
+
+def _check_band(experiment: Experiment, grid: Grid, spectrum: Complex, element: Banded) -> None:
+    outside = _energy_outside(grid, spectrum, element.band.low, element.band.high)
+    if outside <= RANGE_SHARE:
+        return
+    raise RangeError(
+        f"the pulse leaves the band of the {element.kind} {element.name!r}",
+        value=f"{percent(outside, 2)} of the pulse's energy lies outside "
+        f"{_nanometres(element.band.high)} to {_nanometres(element.band.low)}",
+        allowed=f"at most {RANGE_SHARE:g} of the energy outside",
+        remedy=element.remedy_beyond(*_filled(grid, spectrum)),
+        file=experiment.file,
+        place=element.name,
+    )
+
+
+def _filled(grid: Grid, spectrum: Complex) -> tuple[float, float]:
+    """Where all but twice RANGE_SHARE of the energy lies, rad/s."""
+    power = spectrum.real**2 + spectrum.imag**2
+    total = np.cumsum(power)
+    ends = np.searchsorted(total, np.array([RANGE_SHARE, 1 - RANGE_SHARE]) * total[-1])
+    low, high = 2 * np.pi * grid.frequency[ends]
+    return float(low), float(high)
 
 
 def _remedy(outside: float, extendable: bool) -> str:

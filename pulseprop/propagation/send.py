@@ -8,6 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import FEMTO
+from pulseprop.elements.device import Remarking
 from pulseprop.errors import PulsepropError
 from pulseprop.measures.delays import delay_split
 from pulseprop.propagation.assess import measured
@@ -101,6 +102,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
             *denial(experiment, fit),
             *range_warnings(experiment, grid_in, done.spectrum_in),
             *_b_warnings(experiment, rows),
+            *_remarks(experiment),
         ),
         cautions=(*cautions_for(experiment.path, rows, experiment.substances), *experiment.cautions),
         pulse_notes=experiment.pulse.notes,
@@ -136,6 +138,13 @@ def _b_warnings(experiment: Experiment, rows: Sequence[ElementMeasures]) -> tupl
             "does not settle: the B-integral of the path leaves it out; divide the element to find it"
         )
     return tuple(said)
+
+
+def _remarks(experiment: Experiment) -> tuple[str, ...]:
+    """What elements have to say of their settings."""
+    return tuple(
+        text for element in experiment.path if isinstance(element, Remarking) for text in element.remarks
+    )
 
 
 def _path_measures(

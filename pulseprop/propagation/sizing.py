@@ -7,6 +7,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
 from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.grid import Grid
@@ -22,6 +23,8 @@ BAND_SHARE = 1e-22
 DELAY_SHARE = 1e-9
 """Frequencies that carry less than this share of the energy do not set the window."""
 FIELD_SHARE = 1e-12
+FAINTEST = 1e-100
+"""Amplitudes below this are as good as none."""
 OVERSAMPLING = 2.2
 """Sampled band over filled band; interpolation between samples needs two."""
 MARGIN = 1.15
@@ -142,11 +145,17 @@ def _delays(pulse: PulseSource, path: Path) -> list[Real]:
     for element in path:
         series = element.exponent(omega, 2)
         total = total + np.imag(series[1])
-        opacity = opacity - 2 * np.real(series[0])
+        opacity = opacity - 2 * np.real(series[0]) - _lost_besides(element, omega)
         strength = _strength(pulse, omega) * np.exp(-opacity)
         seen = strength > DELAY_SHARE * max(float(strength.max()), 1e-300)
         sums.append(total[seen] if seen.any() else np.zeros(1))
     return sums
+
+
+def _lost_besides(element: Element, omega: Real) -> Real | float:
+    """ln of the share of energy that faces and edges let through; 0 without any."""
+    factor = element.factor(omega)
+    return 0.0 if factor is None else 2 * np.log(np.maximum(np.abs(factor), FAINTEST))
 
 
 def _strength(pulse: PulseSource, omega: Real) -> Real:
