@@ -56,9 +56,8 @@ def _source(vetted: Vetted) -> str:
 
 
 def _values(panel: Axes, name: str, curves: Mapping[str, Real]) -> None:
-    panel.plot(
-        curves[f"{name}_nm"], curves[name], ".", color=COLOURS["before"], markersize=8, label="printed"
-    )
+    place, values = curves[f"{name}_nm"], curves[name]
+    panel.plot(place, values, ".", color=COLOURS["before"], markersize=8, label="printed")
     if f"{name}_model" in curves:
         panel.plot(
             curves[f"{name}_model_nm"],
