@@ -2,9 +2,9 @@
 
     int_0^inf omega k d omega = pi wp^2 / 4,   wp^2 = electrons per volume * e^2 / (eps0 m)
 
-(M. Altarelli, D. L. Dexter, H. M. Nussenzveig, D. Y. Smith, Phys. Rev. B 6, 4502 (1972), from memory), so that
-over s = omega^2 the integral of k is pi wp^2 / 2. All electrons are counted, those of the inner shells too:
-what absorbs below the X-rays is less, never more.
+(M. Altarelli, D. L. Dexter, H. M. Nussenzveig, D. Y. Smith, Phys. Rev. B 6, 4502 (1972), from memory), so
+that over s = omega^2 the integral of k is pi wp^2 / 2. All electrons are counted, those of the inner shells
+too: what absorbs below the X-rays is less, never more.
 """
 
 from __future__ import annotations
@@ -31,8 +31,8 @@ WEIGHTS = (
     "W 183.84 Re 186.21 Os 190.23 Ir 192.22 Pt 195.08 Au 196.97 Hg 200.59 Tl 204.38 Pb 207.2 Bi 208.98 "
     "Po 209 At 210 Rn 222 Fr 223 Ra 226 Ac 227 Th 232.04 Pa 231.04 U 238.03"
 )
-"""Symbols in order of their electrons (1 for H), each with its weight in g/mol: IUPAC, abridged standard atomic
-weights 2021, from memory; elements without a stable isotope by the mass number of the longest-lived."""
+"""Symbols in order of their electrons (1 for H), each with its weight in g/mol: IUPAC, abridged standard
+atomic weights 2021, from memory; elements without a stable isotope by the mass number of the longest-lived."""
 
 HEAVY_HYDROGEN = {"D": (1, 2.014)}
 """Electrons and weight: heavy water is sold as D2O."""
