@@ -3,13 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
-from functools import partial
 from typing import Any
 
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
 from pulseprop.errors import PulsepropError
-from pulseprop.material.medium import Medium
 from pulseprop.scenario import build_basics
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_site import Site
@@ -36,25 +34,19 @@ def built_path(scenario: Scenario, media: MediaOfScenario, centre: float) -> Pat
     for number, table in enumerate(scenario.content.path, start=1):
         site = Site(
             scenario=scenario,
-            number=number,
+            keys=("path", number - 1),
+            number=str(number),
             centre=centre,
             beam_radius=scenario.content.pulse.beam_radius,
-            medium=partial(_medium, scenario, media, number),
+            find=media.medium,
         )
         try:
             elements.append(built_element(table, site))
         except PulsepropError as error:
-            raise scenario.blamed(error, "path", number - 1) from None
+            raise site.blamed(error) from None
     return Path(tuple(elements))
 
 
 def built_element(table: ElementTable, site: Site) -> Element:
     """One element of any kind. Raises InputError without place where its settings do not fit."""
     return BUILDERS[table.kind](table, site)
-
-
-def _medium(scenario: Scenario, media: MediaOfScenario, number: int, name: str) -> Medium:
-    try:
-        return media.medium(name)
-    except PulsepropError as error:
-        raise scenario.blamed(error, "path", number - 1, "medium") from None
