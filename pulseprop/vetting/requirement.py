@@ -20,7 +20,8 @@ from pulseprop.vetting.requirement_quantities import REQUIRABLE, Requirable, nam
 __all__ = ["Requirement", "read_requirement"]
 
 EXAMPLES = (
-    '"gvd at 800 nm = 36.2 +- 0.5 fs^2/mm", "V_d = 64.17 +- 0.3", "gdd from 750 nm to 850 nm = -40 +- 5 fs^2", '
+    '"gvd at 800 nm = 36.2 +- 0.5 fs^2/mm", "V_d = 64.17 +- 0.3", '
+    '"gdd from 750 nm to 850 nm = -40 +- 5 fs^2", '
     '"internal transmittance at 1030 nm for 10 mm >= 0.998"'
 )
 

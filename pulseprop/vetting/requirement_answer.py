@@ -16,6 +16,8 @@ from pulseprop.vetting.result import Bounds, RequirementAnswer
 
 __all__ = [
     "DECISION_RULE",
+    "FS2_PER_MM",
+    "FS3_PER_MM",
     "Interval",
     "Transmitted",
     "abbe_interval",
@@ -67,8 +69,9 @@ def material_answer(
 ) -> RequirementAnswer:
     """A requirement on a material.
 
-    at: bounds by frequency (rad/s). transmitted: of the internal transmittance, where the data have absorption. abbe:
-    bounds of V_d from one functional; without it they follow from those of n_d, n_F and n_C one by one.
+    at: bounds by frequency (rad/s). transmitted: of the internal transmittance, where the data have
+    absorption. abbe: bounds of V_d from one functional; without it they follow from those of n_d, n_F and n_C
+    one by one.
     """
     if requirement.quantity.of_mirror:
         return answered(

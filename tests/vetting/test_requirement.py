@@ -129,7 +129,7 @@ def test_requirements_of_a_material():
     assert ask("n_d = 1.51680 +- 0.0005").verdict == "conforming"
     assert ask("V_d = 64.17 +- 0.1").verdict == "conforming"
     assert ask("V_d >= 65").verdict == "not conforming"
-    # 44.65 fs^2/mm: N-BK7 at 800 nm, from its catalogue constants with 60 digits (shared/published_dispersion).
+    # 44.65 fs^2/mm: N-BK7 at 800 nm, from its constants with 60 digits (shared/published_dispersion).
     assert ask("gvd at 800 nm = 44.65 +- 0.5 fs^2/mm").verdict == "conforming"
     assert ask("gvd at 800 nm = 44.65 +- 0.3 fs^2/mm").verdict == "not decided"
     assert ask("tod at 800 nm >= 1 fs^3/mm").reason == "no"
