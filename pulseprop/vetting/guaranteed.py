@@ -1,0 +1,64 @@
+"""Bounds of a case at asked frequencies: at the stated uncertainties, or at those that the numbers imply."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.causality.passive_data import PassiveData
+from pulseprop.constants import TWO_PI_C
+from pulseprop.errors import NumericalLimit
+from pulseprop.vetting.case import Case
+from pulseprop.vetting.result import Bounds
+
+__all__ = ["at_implied_uncertainty", "guaranteed"]
+
+Real = NDArray[np.float64]
+
+ROOM = 1.01
+"""Over the least factor, so that not a single material but a set of them is left."""
+
+
+def guaranteed(case: Case, omega: Real) -> Sequence[Bounds]:
+    """Bounds at each omega (rad/s); null with the reason where the numbers guarantee nothing."""
+    data, reason = at_implied_uncertainty(case)
+    if data is None:
+        return [_nothing(place, reason) for place in omega]
+    inside = (omega >= data.omega[0]) & (omega <= data.omega[-1])
+    reason = "outside the rows of the index"
+    if data.k_omega is not None:
+        inside |= (omega >= data.k_omega[0]) & (omega <= data.k_omega[-1])
+        reason = "outside the rows"
+    try:
+        found = iter(case.causality.bounds(data, omega[inside]) if inside.any() else ())
+    except NumericalLimit as failure:
+        return [_nothing(place, str(failure)) for place in omega]
+    return [
+        next(found) if here else _nothing(place, reason) for place, here in zip(omega, inside, strict=True)
+    ]
+
+
+def at_implied_uncertainty(case: Case) -> tuple[PassiveData | None, str]:
+    """The data, with unstated uncertainties enlarged to where the numbers can be true; or why there are none."""
+    data, factor = case.numbers.data, case.factor
+    if data is None or case.standing is None or factor is None:
+        return None, case.numbers.reason or case.trouble
+    if factor <= 1:
+        return data, ""
+    if case.numbers.stated:
+        return None, "the numbers contradict each other within their uncertainties, so they guarantee nothing"
+    return (
+        replace(
+            data,
+            index_error=data.index_error * factor * ROOM,
+            k_error=None if data.k_error is None else data.k_error * factor * ROOM,
+        ),
+        "",
+    )
+
+
+def _nothing(omega: float, reason: str) -> Bounds:
+    return Bounds(wavelength_nm=float(TWO_PI_C / omega * 1e9), reason=reason)

@@ -1,0 +1,77 @@
+"""Consistent, contradictory or doubtful, and the rule by which it was decided.
+
+With stated uncertainties a certified factor above 1 is contradictory. Without, rounding alone never is: only
+an implied uncertainty larger than any usual measurement has, a physical bound that is broken, or numbers that
+agree to their last digit once one mistake of a whole column is undone, for then no measurement error is at
+work. A line that the rows cannot resolve, or a feature of k with fewer than five rows over its width, leaves
+it at doubtful.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from pulseprop.vetting.case import Case
+from pulseprop.vetting.grade import graded
+from pulseprop.vetting.result import Finding, Verdict
+
+__all__ = ["DECISION_RULE", "PHYSICAL", "verdict_on"]
+
+DECISION_RULE = (
+    "Stated uncertainties: consistent up to an uncertainty factor of 1, contradictory above. Not stated: the printed "
+    "digits stand for them, and the numbers are contradictory only where a physical bound is broken, where the "
+    "error they would need is larger than any usual measurement's, or where undoing one mistake makes them agree "
+    "to the last digit; else doubtful above 1. Doubtful also: an error found by the checks at a factor of at most "
+    "1, a narrow line that the rows cannot resolve, fewer than five rows over the width of a feature. The factor "
+    "is a largest ratio, not a chi-square and not a coverage factor."
+)
+
+PHYSICAL = ("negative-absorption", "transmittance-above-1", "index-not-positive")
+"""Codes of bounds that hold for any passive sample whatever its index."""
+STRUCTURED = 10.0
+"""Factor from which on numbers that a whole-column repair makes agree are no matter of noise."""
+WHOLE_COLUMN = (
+    "reversed-order",
+    "swapped-columns",
+    "wrong-logarithm",
+    "absorption-quantity",
+    "percent-fraction",
+    "fresnel-loss",
+    "axis-unit",
+    "shifted-rows",
+)
+
+
+def verdict_on(case: Case, findings: Sequence[Finding]) -> Verdict:
+    """The verdict; findings: all of them, with their severities."""
+    errors = [finding for finding in findings if finding.severity == "error"]
+    if any(finding.code in PHYSICAL for finding in errors):
+        return "contradictory"
+    if not _above_one(case):
+        return "doubtful" if errors else "consistent"
+    if _unsettled(case) or not (case.numbers.stated or _beyond_measurement(case, errors)):
+        return "doubtful"
+    return "contradictory"
+
+
+def _above_one(case: Case) -> bool:
+    return case.factor is not None and case.factor > 1
+
+
+def _unsettled(case: Case) -> bool:
+    """Whether the factor above 1 may be the rows' coarseness, or lie within the gap of its proof."""
+    standing = case.standing
+    if standing is None or (case.numbers.repeat and case.numbers.repeat.factor > 1):
+        return False
+    proven = standing.factor * (1 - (standing.gap or 0.0)) > 1
+    return standing.unresolved is not None or bool(standing.coarse) or not proven
+
+
+def _beyond_measurement(case: Case, errors: Sequence[Finding]) -> bool:
+    mended = any(
+        error.code in WHOLE_COLUMN
+        and error.factor_after_repair is not None
+        and error.factor_after_repair <= 1
+        for error in errors
+    )
+    return graded(case).gross or (mended and (case.factor or 0.0) >= STRUCTURED)

@@ -1,0 +1,181 @@
+"""The sentences of an answer: what was vetted, the headline, what a supplier can answer, what it rests on."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from pulseprop.constants import TWO_PI_C
+from pulseprop.vetting.absorption_rows import absorption_column
+from pulseprop.vetting.case import Case
+from pulseprop.vetting.few_rows import FewRows
+from pulseprop.vetting.result import ConflictRow, Finding, ImpliedUncertainty, Verdict
+
+__all__ = ["BLIND_SPOTS", "assumptions", "headline", "sentence", "what_was_vetted"]
+
+BLIND_SPOTS = (
+    "a common factor on chi",
+    "a stretched frequency axis",
+    "a constant of 0 or more added to n",
+    "an index against air taken for one against vacuum",
+    "the logarithm of an absorption where no index is given",
+    "an index too high in the bluest row or too low in the reddest",
+)
+
+NAMED_ROWS = 6
+
+
+def what_was_vetted(case: Case) -> str:
+    """ "n and k, 61 rows, 400 to 1600 nm"."""
+    table = case.table
+    names = [column.quantity.replace("_", " ") for column in table.columns]
+    listed = " and ".join([", ".join(names[:-1]), names[-1]] if len(names) > 1 else names)
+    low, high = TWO_PI_C / table.omega.max() * 1e9, TWO_PI_C / table.omega.min() * 1e9
+    return f"A table of {listed}: {len(table.omega)} rows from {low:.6g} to {high:.6g} nm."
+
+
+def headline(
+    case: Case,
+    verdict: Verdict,
+    implied: ImpliedUncertainty,
+    conflict: Sequence[ConflictRow],
+    few: FewRows | None,
+    findings: Sequence[Finding],
+) -> str:
+    """The answer first."""
+    parts = [_answer(case, verdict, implied, findings)]
+    if verdict == "contradictory" and few is not None and conflict:
+        parts.append(f"without {_rows(_few_lines(case, few))} the factor is {few.factor:.2g}")
+    named = next((one for one in findings if one.repair and one.factor_after_repair is not None), None)
+    if named is not None and named.severity == "error":
+        parts.append(f"they agree (factor {named.factor_after_repair:.2g}) with this repair: {named.repair}")
+    if case.standing is not None and case.standing.unresolved is not None:
+        parts.append(_unresolved(case))
+    return "; ".join(parts) + "."
+
+
+def sentence(
+    case: Case,
+    verdict: Verdict,
+    conflict: Sequence[ConflictRow],
+    few: FewRows | None,
+    findings: Sequence[Finding],
+) -> str:
+    """What a supplier can answer; empty where there is nothing to ask."""
+    errors = [finding for finding in findings if finding.severity == "error"]
+    if verdict == "consistent":
+        return ""
+    asked = next((error.repair for error in errors if error.repair), None)
+    please = f"please confirm or correct: {asked}" if asked else "please check them against the measurement"
+    if conflict:
+        rows = _few_lines(case, few) if few else _heaviest(conflict)
+        return f"The printed values contradict each other: {_rows(rows)}; {please}."
+    if errors:
+        rows = errors[0].rows[:NAMED_ROWS]
+        return f"{errors[0].text}{f' See {_rows(rows)}.' if rows else ''} {please[0].upper()}{please[1:]}."
+    return (
+        "The numbers agree only within a larger uncertainty than their digits show; please state the "
+        "uncertainty of the measurement."
+    )
+
+
+def assumptions(case: Case) -> tuple[str, ...]:
+    """What the answer assumes."""
+    said = [
+        "The material is passive and causal, absorbs inside the rows only as tabulated"
+        + (" (nothing, as no absorption is given)" if absorption_column(case.table) is None else "")
+        + ", and has no structure finer than the rows; outside the rows it may absorb anything."
+    ]
+    column = case.table.column("n")
+    if column is not None:
+        against = case.table.relative_to
+        said.append(f"The index is used as printed{f', against {against}' if against else ''}.")
+    if not case.numbers.stated:
+        said.append(
+            "No uncertainty is stated: half a unit of the last printed place stands for it, and bounds hold for "
+            "the implied uncertainty where that is larger."
+        )
+    request = case.request
+    if request.anchors:
+        said.append(f"{len(request.anchors)} anchors of the index were stated and used as rows.")
+    if request.transparent is not None:
+        low, high = (TWO_PI_C / omega * 1e9 for omega in reversed(request.transparent))
+        said.append(f"The material is transparent from {low:.6g} to {high:.6g} nm, as stated.")
+    if request.strength is not None:
+        said.append("The total strength of its absorption is limited by the f-sum rule, as stated.")
+    if case.numbers.reason:
+        said.append(f"Causality was not tested: {case.numbers.reason}.")
+    return tuple(said)
+
+
+def _answer(case: Case, verdict: Verdict, implied: ImpliedUncertainty, findings: Sequence[Finding]) -> str:
+    factor = case.factor
+    if factor is None:
+        return _without_factor(case, verdict, findings)
+    if not case.numbers.stated and implied.n is not None:
+        return _led_by_implied(case, verdict, implied)
+    if verdict == "consistent":
+        return f"a passive causal material can have these numbers within their uncertainties (factor {factor:.2g})"
+    if verdict == "contradictory" and factor > 1:
+        return (
+            "the printed values contradict each other: no passive causal material has them unless the stated "
+            f"uncertainties are {factor:.3g} times as large"
+        )
+    if verdict == "doubtful" and factor > 1:
+        return f"the numbers need {factor:.3g} times their uncertainties, which the rows are too coarse to settle"
+    return f"the uncertainties would allow the numbers (factor {factor:.2g}), but {_first(findings)}"
+
+
+def _led_by_implied(case: Case, verdict: Verdict, implied: ImpliedUncertainty) -> str:
+    factor = case.factor or 0.0
+    known = f"the index is known no better than +-{implied.n:.1g}"
+    if implied.k is not None:
+        known += f" and k no better than +-{implied.k:.1g}"
+    if factor <= 1:
+        start = f"true to all printed digits (implied uncertainty of n {implied.n:.1g})"
+        return start if verdict == "consistent" else f"{start}, but the checks found an error"
+    if verdict == "contradictory":
+        return f"the printed values contradict each other: they could be true only if {known}"
+    return f"true only if {known}, {factor:.2g} times what the printed digits say"
+
+
+def _without_factor(case: Case, verdict: Verdict, findings: Sequence[Finding]) -> str:
+    if verdict != "consistent":
+        return _first(findings)
+    if case.trouble:
+        return "the test for a passive causal material did not come to an end; the other checks found nothing"
+    return f"no physical bound is broken; causality was not tested ({case.numbers.reason})"
+
+
+def _first(findings: Sequence[Finding]) -> str:
+    error = next((finding for finding in findings if finding.severity == "error"), None)
+    return error.text[0].lower() + error.text[1:].rstrip(".") if error else "the checks found an error"
+
+
+def _unresolved(case: Case) -> str:
+    assert case.standing is not None and case.standing.unresolved is not None
+    line = case.standing.unresolved
+    place = TWO_PI_C / line.omega * 1e9
+    spacing = TWO_PI_C * line.spacing / line.omega**2 * 1e9
+    return (
+        f"a narrow line near {place:.5g} nm that falls between the rows would explain them: rows {spacing:.2g} nm "
+        "apart there would settle it"
+    )
+
+
+def _few_lines(case: Case, few: FewRows) -> tuple[int, ...]:
+    rows = [
+        (case.numbers.index_rows if part.quantity == "n" else case.numbers.k_rows)[part.row]
+        for part in few.parts
+    ]
+    return tuple(sorted(int(case.table.lines[row]) for row in rows if row >= 0))
+
+
+def _heaviest(conflict: Sequence[ConflictRow]) -> tuple[int, ...]:
+    ordered = sorted(conflict, key=lambda entry: -abs(entry.weight))[:NAMED_ROWS]
+    return tuple(sorted({entry.row for entry in ordered}))
+
+
+def _rows(lines: Sequence[int]) -> str:
+    shown = [str(line) for line in lines[:NAMED_ROWS]]
+    more = f" and {len(lines) - NAMED_ROWS} more" if len(lines) > NAMED_ROWS else ""
+    return f"{'rows' if len(lines) > 1 else 'row'} {', '.join(shown)}{more}"
