@@ -19,13 +19,15 @@ from numpy.typing import NDArray
 __all__ = ["Polarisation", "reflection_squared"]
 
 Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
 Polarisation = Literal["p", "s"]
 
 
-def reflection_squared(chi: Complex, q: Complex, cosine: float, polarisation: Polarisation) -> Complex:
+def reflection_squared(chi: Complex, q: Complex, cosine: float | Real, polarisation: Polarisation) -> Complex:
     """r^2 of one face, shape kept.
 
-    chi: susceptibility; q: sqrt(n^2 - sin^2 theta), same shape; cosine: of the angle outside, 0 to 1.
+    chi: susceptibility; q: sqrt(n^2 - sin^2 theta), same shape; cosine: of the angle outside, 0 to 1, one or
+    of the same shape.
     """
     outside = cosine if polarisation == "s" else (1 + chi) * cosine
     return np.asarray(((outside - q) / (outside + q)) ** 2)

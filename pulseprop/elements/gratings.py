@@ -63,12 +63,11 @@ class GratingPair(Device):
         if not abs(self.incidence) < RIGHT_ANGLE:
             raise InputError("the beam would not meet the grating", allowed="angles below 90 deg")
         if self.order == 0:
-            raise InputError("order 0 is a mirror", value=0, allowed="-1, 1, -2, ...", place="order")
+            raise InputError("order 0 is a mirror", value=0, allowed="-1, 1, -2, ...")
         if self.width is not None and self.beam_radius is None:
             raise InputError(
                 "what misses a grating of this width depends on the beam",
                 remedy="State beam_radius, of the element or in [pulse]",
-                place="width",
             )
         if not self.centre > self.band.low:
             raise RangeError(

@@ -8,7 +8,7 @@ from typing import Any
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
 from pulseprop.errors import PulsepropError
-from pulseprop.scenario import build_basics
+from pulseprop.scenario import build_basics, build_compressors
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.read import Scenario
@@ -24,6 +24,10 @@ BUILDERS: Mapping[str, Builder] = {
     "loss": build_basics.loss,
     "known orders": build_basics.known_orders,
     "pulse shaper": build_basics.shaper,
+    "grating pair": build_compressors.grating_pair,
+    "stretcher": build_compressors.grating_pair,
+    "prism pair": build_compressors.prism_pair,
+    "grism pair": build_compressors.grism_pair,
 }
 """A builder for each kind of element."""
 

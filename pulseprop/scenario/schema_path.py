@@ -7,6 +7,12 @@ from typing import Annotated, Literal
 from pydantic import Field, model_validator
 
 from pulseprop.scenario.fields import Fraction, Name, complain, measured
+from pulseprop.scenario.schema_compressors import (
+    GratingPairTable,
+    GrismPairTable,
+    PrismPairTable,
+    StretcherTable,
+)
 from pulseprop.scenario.schema_element import RIGHT_ANGLE, ElementTable, OrdersTable
 
 __all__ = [
@@ -85,5 +91,15 @@ class ShaperTable(OrdersTable):
         return self
 
 
-Element = Annotated[SlabTable | LossTable | KnownOrdersTable | ShaperTable, Field(discriminator="kind")]
+Element = Annotated[
+    SlabTable
+    | LossTable
+    | KnownOrdersTable
+    | ShaperTable
+    | GratingPairTable
+    | StretcherTable
+    | PrismPairTable
+    | GrismPairTable,
+    Field(discriminator="kind"),
+]
 """Any element, told apart by `kind`."""

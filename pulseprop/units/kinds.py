@@ -133,6 +133,7 @@ KINDS: dict[str, Kind] = {
     "pressure": plain("a pressure", "kg m^-1 s^-2", "Pa", "0.4 bar", "1013 hPa", "1 atm"),
     "number_density": plain("a number density", "m^-3", "m^-3", "2.5e19 cm^-3"),
     "inverse_length": plain("an inverse length", "m^-1", "1/m", "12 cm^-1", "0.3 mm^-1", "0.2 dB/km"),
+    "groove_density": plain("a number of grooves per length", "m^-1", "1/m", "600 /mm", "1200 mm^-1"),
     "inverse_area": plain("an inverse area", "m^-2", "m^-2", "57.362 um^-2"),
     "fraction": plain("a share", "", "1", "0.5 %", "120 ppm"),
     "nonlinear_index": plain("a nonlinear index", "kg^-1 s^3", "m^2/W", "2.6e-20 m^2/W", "2.6e-16 cm^2/W"),
