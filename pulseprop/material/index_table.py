@@ -20,13 +20,14 @@ from numpy.typing import NDArray
 
 from pulseprop.errors import InputError, RangeError
 from pulseprop.material.absorption_density import AbsorptionDensity
-from pulseprop.material.outside_absorption import outside_absorption, outside_knots
+from pulseprop.material.outside_absorption import outside_absorption
 from pulseprop.material.passive_fit import passive_fit
 from pulseprop.material.printed_digits import half_unit, index_uncertainty
 from pulseprop.material.response import Band
 from pulseprop.material.table_rows import ordered_rows
 from pulseprop.material.tabulated import TabulatedRefraction
 from pulseprop.numerics.cauchy import piecewise_value
+from pulseprop.numerics.knots import between_rows, outside_knots
 from pulseprop.numerics.series import Series
 from pulseprop.numerics.spline import cubic_pieces, derivative_pieces
 from pulseprop.numerics.spline_basis import basis_pieces, basis_transforms, basis_values
@@ -149,7 +150,7 @@ def _with_absorption(omega: Real, index: Real, error: Real, k: Real, k_error: Re
     fit = passive_fit(
         np.concatenate((of_index, of_k)),
         np.concatenate((index - 1, k)),
-        np.concatenate((error, k_error + _between_rows(omega, k))),
+        np.concatenate((error, k_error + between_rows(omega, k))),
         np.zeros(of_index.shape[1]),
         bends / np.max(np.abs(bends)),
         within=1.0,  # as many splines as rows: at the least factor they would follow the noise of k
@@ -171,15 +172,6 @@ def _bends(omega: Real, knots: Real, pieces: Real) -> Real:
     spacing = np.minimum(np.append(np.inf, length), np.append(length, np.inf))
     distance = np.maximum(np.maximum(omega[0] - knots, knots - omega[-1]) / unit, spacing)
     return np.asarray(np.diff(third, axis=0) / distance[:, None])
-
-
-def _between_rows(omega: Real, k: Real) -> Real:
-    """What the row spacing leaves open: |fourth difference| of k / 60, with the largest of the four gaps."""
-    first = np.clip(np.arange(len(k)) - 2, 0, len(k) - 5)
-    x, y = (column[first[:, None] + np.arange(5)] for column in (omega, k))
-    gap = np.max(np.diff(x, axis=1), axis=1)
-    others = (x[:, :, None] - x[:, None, :]) / gap[:, None, None] + np.eye(5)
-    return np.asarray(np.abs(np.sum(y / np.prod(others, axis=2), axis=1)) * 24 / 60)
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)

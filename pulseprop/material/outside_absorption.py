@@ -9,18 +9,12 @@ from numpy.typing import NDArray
 
 from pulseprop.material.absorption_density import AbsorptionDensity
 from pulseprop.material.passive_fit import passive_fit
+from pulseprop.numerics.knots import outside_knots
 from pulseprop.numerics.spline_basis import basis_pieces, basis_transforms
 
-__all__ = ["OutsideAbsorption", "outside_absorption", "outside_knots"]
+__all__ = ["OutsideAbsorption", "outside_absorption"]
 
 Real = NDArray[np.float64]
-
-KNOT_RATIO = 1.3
-NEAREST_GAP = 0.5
-"""First knot outside the rows, in spacings of the end rows; distances then grow by KNOT_RATIO."""
-FARTHEST = 300.0
-"""Last knot over the highest frequency, and half the lowest over the first knot."""
-
 
 EXACT = 1e-3
 """Share of the uncertainties below which a fit counts as exact. More is not left to smoothness: few bands act
@@ -59,19 +53,6 @@ def outside_absorption(rows: Real, places: Real, missing: Real, uncertainty: Rea
         ),
         factor=fit.factor,
     )
-
-
-def outside_knots(rows: Real) -> tuple[Real, Real]:
-    """Knots up to the first and from the last row (rad/s, both ascending), denser towards the rows."""
-    first, last = float(rows[0]), float(rows[-1])
-    near = min(NEAREST_GAP * float(rows[1] - rows[0]), first / 8)
-    steps = 1 + int(np.log(first / 2 / near) / np.log(KNOT_RATIO))
-    down = first - near * KNOT_RATIO ** np.arange(steps)
-    rest = down[-1] * KNOT_RATIO ** -np.arange(1.0, int(np.log(FARTHEST) / np.log(KNOT_RATIO)))
-    gap = NEAREST_GAP * float(rows[-1] - rows[-2])
-    steps = 1 + int(np.log(FARTHEST * last / gap) / np.log(KNOT_RATIO))
-    up = last + gap * KNOT_RATIO ** np.arange(steps)
-    return np.concatenate(([first], down, rest))[::-1], np.concatenate(([last], up))
 
 
 def _roughness(rows: Real, knots: Real) -> Real:
