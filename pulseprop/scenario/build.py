@@ -7,7 +7,7 @@ from dataclasses import replace
 from math import pi
 
 from pulseprop.constants import SPEED_OF_LIGHT
-from pulseprop.errors import PulsepropError
+from pulseprop.errors import InputError, PulsepropError
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.sizing import GridWish
 from pulseprop.pulse.source import PulseSource
@@ -60,9 +60,23 @@ def _nanometres(omega: float) -> str:
     return f"{2e9 * pi * SPEED_OF_LIGHT / omega:.6g}"
 
 
+def _refuse_open_settings(scenario: Scenario) -> None:
+    """A pulse can be sent through elements as they stand today only."""
+    for setting in scenario.settings:
+        if setting.keys[0] == "path" and setting.now is None:
+            raise scenario.blamed(
+                InputError(
+                    "the setting is a range without today's value",
+                    remedy="Add `now` to it, or let `pulseprop compensate` choose",
+                ),
+                *setting.keys,
+            )
+
+
 def build(scenario: Scenario) -> Experiment:
     """Build pulse, media and path. Raises InputError with file and place for what cannot be built."""
     content = scenario.content
+    _refuse_open_settings(scenario)
     media = media_of(scenario)
     try:
         pulse, both_signs = built_pulse(scenario)

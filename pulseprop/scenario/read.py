@@ -13,10 +13,12 @@ from typing import Any
 from pydantic import ValidationError
 
 from pulseprop.errors import Complaint, InputError, PulsepropError
+from pulseprop.scenario.adjustable import NoSetting, Setting, settled
 from pulseprop.scenario.complaints import Finding, findings_of
 from pulseprop.scenario.override import overridden
 from pulseprop.scenario.places import Keys, Places, key_path, places_in
 from pulseprop.scenario.schema import ScenarioTable
+from pulseprop.scenario.settings_of import settings_of
 
 __all__ = ["Scenario", "read_scenario", "scenario_from"]
 
@@ -33,7 +35,8 @@ class Scenario:
 
     content: the tables with SI floats. file: its path as given. directory: paths in the file are relative to
     it. text, sha256: of the file as it stands, without overrides. document: plain tables with overrides, for
-    those who change and check again.
+    those who change and check again. settings: those of its elements that are ranges or lists; in content
+    today's values stand for them.
     """
 
     content: ScenarioTable
@@ -44,6 +47,7 @@ class Scenario:
     overrides: tuple[str, ...] = ()
     document: Mapping[str, Any] = field(repr=False)
     origins: Mapping[Keys, str] = field(default_factory=dict, repr=False)
+    settings: tuple[Setting, ...] = ()
 
     def path_of(self, name: str) -> Path:
         """The path of a file that the scenario names."""
@@ -85,11 +89,15 @@ def scenario_from(
     messages."""
     overrides = tuple(overrides)
     changed, origins = overridden(dict(document), overrides)
+    where = _Where(text, file, origins)
     try:
-        content = ScenarioTable.model_validate(changed)
+        settings = settings_of(changed)
+        today = settled(changed, settings) if settings else changed
+        content = ScenarioTable.model_validate(today)
+    except NoSetting as error:
+        raise _summary([(error.keys, error.complaint)], where) from None
     except ValidationError as error:
-        findings = findings_of(error.errors(include_url=False), changed)
-        raise _summary(findings, _Where(text, file, origins)) from None
+        raise _summary(findings_of(error.errors(include_url=False), today), where) from None
     return Scenario(
         content=content,
         file=file,
@@ -99,6 +107,7 @@ def scenario_from(
         overrides=overrides,
         document=changed,
         origins=origins,
+        settings=settings,
     )
 
 

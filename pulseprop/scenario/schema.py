@@ -1,8 +1,8 @@
 """The scenario file as a whole: typed objects with SI floats.
 
 Each table of the file has its class: `PulseTable`, the elements of `schema_path`, `MediumTable` and what
-belongs to it. [compensate], [[sweep]] and [study] belong to other commands: they are kept as they stand and
-not looked into.
+belongs to it. [[sweep]] and [study] belong to other commands: they are kept as they stand and not looked
+into.
 """
 
 from __future__ import annotations
@@ -13,6 +13,7 @@ from typing import Annotated, Any, Literal
 from pydantic import Field, PlainValidator, model_validator
 
 from pulseprop.scenario.fields import Name, Table, complain, measured
+from pulseprop.scenario.schema_compensate import CompensateTable
 from pulseprop.scenario.schema_medium import MediumTable
 from pulseprop.scenario.schema_path import Element
 from pulseprop.scenario.schema_pulse import PulseTable
@@ -86,7 +87,7 @@ class ScenarioTable(Table):
     propagation: PropagationTable = Field(default_factory=PropagationTable)
     grid: GridTable = Field(default_factory=GridTable)
     expect: dict[Name, Annotated[Expected, PlainValidator(_expected)]] = Field(default_factory=dict)
-    compensate: dict[str, Any] = Field(default_factory=dict)
+    compensate: CompensateTable | None = None
     sweep: list[dict[str, Any]] = Field(default_factory=list)
     study: dict[str, Any] = Field(default_factory=dict)
 
@@ -94,6 +95,8 @@ class ScenarioTable(Table):
     def _names_are_unique(self) -> ScenarioTable:
         seen: set[str] = set()
         for element in self.path:
+            if element.place is not None:
+                raise complain("a place belongs to [[compensate.with]]", at="path", value=element.place)
             if element.name in seen:
                 raise complain(
                     "two elements have the same name", at="path", value=element.name, allowed="unique names"

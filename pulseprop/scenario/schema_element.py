@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import Annotated
 
+from pydantic import Field
+
 from pulseprop.scenario.fields import Length, Name, Table, Temperature, measured
 
 __all__ = ["RIGHT_ANGLE", "ElementTable", "OrdersTable"]
@@ -13,13 +15,15 @@ RIGHT_ANGLE = 1.5707963267948966
 
 class ElementTable(Table):
     """What every element may carry. kind: the word for its sort. beam_radius: 1/e^2 of the intensity, m.
-    temperature: K. keep: never to be changed."""
+    temperature: K. keep: never to be changed. place: of a compensator at hand, "start", "end", "after:NAME".
+    """
 
     kind: str
     name: Name | None = None
     beam_radius: Length | None = None
     temperature: Temperature | None = None
     keep: bool = False
+    place: Annotated[str, Field(pattern=r"^(start|end|after:.+)$")] | None = None
 
 
 class OrdersTable(ElementTable):

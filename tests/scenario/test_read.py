@@ -114,11 +114,11 @@ def test_a_good_file_becomes_typed_si(tmp_path: Path) -> None:
             ],
         ),
         (
-            changed('kind = "loss"', 'kind = "grating pair"'),
+            changed('kind = "loss"', 'kind = "polariser"'),
             [
                 "case.toml:16:8, path.2.kind",
-                "'grating pair'",
-                '"slab", "loss", "known orders", "pulse shaper"',
+                "'polariser'",
+                '"slab", "loss", "known orders"',
             ],
         ),
         (changed('kind = "loss"\n', ""), ["case.toml:15:3, path.2.kind", "missing", 'Add "kind"']),
@@ -283,12 +283,11 @@ def test_an_error_found_later_in_an_override_is_placed_there(tmp_path: Path) -> 
 def test_tables_of_other_commands_are_left_alone(tmp_path: Path) -> None:
     text = GOOD + (
         '\n[[sweep]]\nkey = "path.1.thickness"\nvalues = { from = "1 mm", to = "5 mm", points = 41 }\n'
-        '[study]\nrecord = ["pulse_out.fwhm_fs"]\n[compensate]\ngoal = "peak power"\n'
-        '[[compensate.with]]\nkind = "grating pair"\nseparation = { from = "2 mm", to = "80 mm" }\n'
+        '[study]\nrecord = ["pulse_out.fwhm_fs"]\n'
     )
     content = read(tmp_path, text).content
     assert content.sweep[0]["key"] == "path.1.thickness"
-    assert content.compensate["with"][0]["kind"] == "grating pair"
+    assert content.study["record"] == ["pulse_out.fwhm_fs"]
 
 
 def test_plain_tables_without_a_file_are_checked_in_the_same_way() -> None:
