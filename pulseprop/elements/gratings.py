@@ -16,12 +16,12 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
+from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.elements.device import DARK, Device, require_count, require_share, share_between, without_delay
+from pulseprop.elements.words import in_unit, nanometres, times
 from pulseprop.errors import InputError, RangeError
 from pulseprop.material.response import Band, View
 from pulseprop.numerics.series import Numbers, Series, product, root, variable
-from pulseprop.units import show
 
 __all__ = ["GratingPair"]
 
@@ -72,8 +72,8 @@ class GratingPair(Device):
         if not self.centre > self.band.low:
             raise RangeError(
                 "the gratings do not diffract the centre of the pulse",
-                value=_nanometres(self.centre),
-                allowed=f"wavelengths below {_nanometres(self.band.low)}",
+                value=nanometres(self.centre),
+                allowed=f"wavelengths below {nanometres(self.band.low)}",
                 remedy=self.remedy_beyond(self.centre, self.centre),
             )
 
@@ -86,8 +86,8 @@ class GratingPair(Device):
     def detail(self) -> str:
         """Grooves, incidence, separation, passes."""
         return (
-            f"{show(self.grooves, '/mm')}, {show(self.incidence, 'deg')}, "
-            f"{show(self.separation, 'mm')} apart, {self.passes} passes"
+            f"{in_unit(self.grooves, '/mm')}, {in_unit(self.incidence, 'deg')}, "
+            f"{in_unit(self.separation, 'mm')} apart, {times(self.passes, 'pass', 'passes')}"
         )
 
     @property
@@ -113,7 +113,9 @@ class GratingPair(Device):
             return fewer
         angle = np.sign(self._momentum) * np.arcsin(max(sine, -1.0))
         bound = "above" if self._momentum > 0 else "below"
-        return f"Diffraction of all of it needs an incidence {bound} {show(angle, 'deg')}, or fewer grooves"
+        return (
+            f"Diffraction of all of it needs an incidence {bound} {in_unit(angle, 'deg')}, or fewer grooves"
+        )
 
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i times the phase, and the loss of the diffractions; dark where there is no diffraction."""
@@ -192,9 +194,9 @@ class GratingPair(Device):
         if not blocked or self.separation == 0:
             return ()
         return (
-            f"{self.name}: the incident beam passes the second grating at {show(self.clearance, 'mm', 3)} "
-            f"({show(abs(angle - self.incidence), 'deg', 3)} between incident and diffracted beam): it needs "
-            "an offset in height, or another incidence",
+            f"{self.name}: the incident beam passes the second grating at {in_unit(self.clearance, 'mm', 3)} "
+            f"({in_unit(abs(angle - self.incidence), 'deg', 3)} between incident and diffracted beam): it "
+            "needs an offset in height, or another incidence",
         )
 
     @property
@@ -202,10 +204,6 @@ class GratingPair(Device):
         """The zero orders."""
         loss = "" if self.efficiency == 1 else f", up to {100 * (1 - self.efficiency):.2g} % of the light"
         return (
-            f"{self.name}: the zero order of each grating leaves at {show(abs(self.incidence), 'deg', 3)} on "
-            f"the other side of its normal, {2 * self.passes} times{loss}",
+            f"{self.name}: the zero order of each grating leaves at {in_unit(abs(self.incidence), 'deg', 3)} "
+            f"on the other side of its normal, {2 * self.passes} times{loss}",
         )
-
-
-def _nanometres(omega: float) -> str:
-    return show(TWO_PI_C / omega, "nm", 6)

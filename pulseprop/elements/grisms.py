@@ -16,14 +16,13 @@ from functools import cached_property
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.constants import TWO_PI_C
 from pulseprop.elements.device import DARK, Device, require_count, require_share, share_between, without_delay
 from pulseprop.elements.wedges import Wedge, Wedges
+from pulseprop.elements.words import in_unit, nanometres, times
 from pulseprop.errors import InputError, RangeError
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import Band, View
 from pulseprop.numerics.series import Numbers, Series
-from pulseprop.units import show
 
 __all__ = ["GrismPair"]
 
@@ -78,7 +77,7 @@ class GrismPair(Device):
         if not self._leaves(np.array(self.centre)):
             raise RangeError(
                 "the gratings do not diffract the centre of the pulse out of the glass",
-                value=show(TWO_PI_C / self.centre, "nm", 6),
+                value=nanometres(self.centre),
                 remedy="Change incidence, apex_angle or grooves",
             )
 
@@ -91,8 +90,9 @@ class GrismPair(Device):
     def detail(self) -> str:
         """Medium, grooves, incidence, separation, passes."""
         return (
-            f"{self.medium.name}, {show(self.apex_angle, 'deg')} apex, {show(self.grooves, '/mm')}, "
-            f"{show(self.incidence, 'deg')}, {show(self.separation, 'mm')} apart, {self.passes} passes"
+            f"{self.medium.name}, {in_unit(self.apex_angle, 'deg')} apex, {in_unit(self.grooves, '/mm')}, "
+            f"{in_unit(self.incidence, 'deg')}, {in_unit(self.separation, 'mm')} apart, "
+            f"{times(self.passes, 'pass', 'passes')}"
         )
 
     @cached_property

@@ -16,15 +16,14 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.constants import TWO_PI_C
 from pulseprop.elements.device import DARK, Device, require_count, share_between, without_delay
 from pulseprop.elements.faces import Polarisation, reflection_squared
 from pulseprop.elements.wedges import Wedge, Wedges
+from pulseprop.elements.words import in_unit, nanometres, times
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import Band, View
 from pulseprop.numerics.series import Numbers, Series
-from pulseprop.units import show
 
 __all__ = ["PrismPair"]
 
@@ -62,17 +61,18 @@ class PrismPair(Device):
         if min(self.apex_separation, self.insertion, self.second) < 0:
             raise InputError("a distance below 0", allowed="separation and insertions of 0 or more")
         sine = self.index * np.sin(0.5 * self.apex)
+        widest = 2 * float(np.arcsin(1 / self.index))
         if not (0 < self.apex < np.pi and sine < 1):
             raise InputError(
                 "light does not pass prisms of this apex angle at minimum deviation",
-                value=show(self.apex, "deg"),
-                allowed=f"below {show(2 * float(np.arcsin(1 / self.index)), 'deg')} for {self.medium.name}",
+                value=in_unit(self.apex, "deg"),
+                allowed=f"below {in_unit(widest, 'deg')} for {self.medium.name}",
                 remedy="Leave apex_angle out for that of Brewster's incidence",
             )
         if self._gap < 0:
             raise InputError(
                 "the prisms would overlap",
-                value=f"apex_separation {show(self.apex_separation, 'mm')}",
+                value=f"apex_separation {in_unit(self.apex_separation, 'mm')}",
                 remedy="Set them farther apart, or take less insertion",
             )
 
@@ -85,9 +85,9 @@ class PrismPair(Device):
     def detail(self) -> str:
         """Medium, separation, insertions, passes."""
         return (
-            f"{self.medium.name}, {show(self.apex_separation, 'mm')} from tip to tip, "
-            f"insertion {show(self.insertion, 'mm', 3)} and {show(self.second, 'mm', 3)}, "
-            f"{self.passes} passes"
+            f"{self.medium.name}, {in_unit(self.apex_separation, 'mm')} from tip to tip, "
+            f"insertion {in_unit(self.insertion, 'mm', 3)} and {in_unit(self.second, 'mm', 3)}, "
+            f"{times(self.passes, 'pass', 'passes')}"
         )
 
     @cached_property
@@ -174,7 +174,7 @@ class PrismPair(Device):
     def remedy_beyond(self, low: float, high: float) -> str:
         """What to change where the blue end is totally reflected."""
         return (
-            f"Light below {show(TWO_PI_C / self.band.high, 'nm', 6)} is totally reflected in the first "
+            f"Light below {nanometres(self.band.high)} is totally reflected in the first "
             "prism: take a smaller apex_angle, or a glass of less dispersion"
         )
 
@@ -217,8 +217,8 @@ class PrismPair(Device):
             return ()
         needed = self.beam_radius * np.cos(0.5 * self.apex) / np.cos(self.incidence)
         return (
-            f"{self.name}: a tip cuts into the beam; its radius of {show(self.beam_radius, 'mm', 3)} needs "
-            f"an insertion of {show(float(needed), 'mm', 3)} or more at both prisms",
+            f"{self.name}: a tip cuts into the beam; its radius of {in_unit(self.beam_radius, 'mm', 3)} "
+            f"needs an insertion of {in_unit(float(needed), 'mm', 3)} or more at both prisms",
         )
 
     @property
