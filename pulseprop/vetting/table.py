@@ -65,6 +65,7 @@ class SentTable:
 
     lines: line (or spreadsheet row) of each row in the file, (R,). axis_*: the spectral axis as printed,
     omega: the same in rad/s, (R,), wavelengths taken as `wavelength_in` says. thickness: m, of the sample.
+    axis_half_unit: half a unit of the axis's last printed place, in axis_unit, (R,).
     """
 
     file: str
@@ -82,6 +83,7 @@ class SentTable:
     title: str = ""
     comments: tuple[str, ...] = ()
     inferred: tuple[Inference, ...] = field(default=())
+    axis_half_unit: Real | None = None
 
     def column(self, quantity: Quantity) -> Column | None:
         """The column of that quantity, or None."""
