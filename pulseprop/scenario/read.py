@@ -20,7 +20,7 @@ from pulseprop.scenario.places import Keys, Places, key_path, places_in
 from pulseprop.scenario.schema import ScenarioTable
 from pulseprop.scenario.settings_of import settings_of
 
-__all__ = ["Scenario", "read_scenario", "scenario_from"]
+__all__ = ["Scenario", "Where", "parsed", "read_scenario", "scenario_from", "summary", "text_of"]
 
 LARGEST_FILE = 8 << 20
 """Bytes; a scenario is written by hand, its tables stand in files of their own."""
@@ -58,7 +58,7 @@ class Scenario:
 
         An error that names a file of its own keeps it, and the key path comes to it.
         """
-        where = _Where(self.text, self.file, self.origins)
+        where = Where(self.text, self.file, self.origins)
         file, place = where.of(keys, value=True)
         if error.complaint.file:
             return error.located(place=error.complaint.place or f"named by {file}, {place}")
@@ -72,8 +72,8 @@ def read_scenario(path: str | Path, overrides: Iterable[str] = ()) -> Scenario:
     at once.
     """
     file = str(path)
-    text = _text_of(Path(path), file)
-    document = _parsed(text, file)
+    text = text_of(Path(path), file)
+    document = parsed(text, file)
     return scenario_from(document, text=text, file=file, directory=Path(path).parent, overrides=overrides)
 
 
@@ -89,15 +89,15 @@ def scenario_from(
     messages."""
     overrides = tuple(overrides)
     changed, origins = overridden(dict(document), overrides)
-    where = _Where(text, file, origins)
+    where = Where(text, file, origins)
     try:
         settings = settings_of(changed)
         today = settled(changed, settings) if settings else changed
         content = ScenarioTable.model_validate(today)
     except NoSetting as error:
-        raise _summary([(error.keys, error.complaint)], where) from None
+        raise summary([(error.keys, error.complaint)], where) from None
     except ValidationError as error:
-        raise _summary(findings_of(error.errors(include_url=False), today), where) from None
+        raise summary(findings_of(error.errors(include_url=False), today), where) from None
     return Scenario(
         content=content,
         file=file,
@@ -111,7 +111,7 @@ def scenario_from(
     )
 
 
-class _Where:
+class Where:
     """Names the place of keys: in the file with line and column, or on the command line."""
 
     def __init__(self, text: str, file: str, origins: Mapping[Keys, str]) -> None:
@@ -135,8 +135,8 @@ class _Where:
         return self.file + line, key_path(keys)
 
 
-def _summary(findings: list[Finding], where: _Where) -> InputError:
-    """One error: the finding itself, or a list of the first few."""
+def summary(findings: list[Finding], where: Where) -> InputError:
+    """All findings in one error: the finding itself, or a list of the first few."""
     placed = [_placed(keys, complaint, where) for keys, complaint in findings]
     if len(placed) == 1:
         return _raised(placed[0])
@@ -146,7 +146,7 @@ def _summary(findings: list[Finding], where: _Where) -> InputError:
     return InputError(f"{len(placed)} things cannot be used:\n  " + "\n  ".join(lines), file=where.file)
 
 
-def _placed(keys: Keys, complaint: Complaint, where: _Where) -> Complaint:
+def _placed(keys: Keys, complaint: Complaint, where: Where) -> Complaint:
     file, place = where.of(keys, value=complaint.value is not None)
     return replace(complaint, file=file, place=place)
 
@@ -162,7 +162,8 @@ def _raised(complaint: Complaint) -> InputError:
     )
 
 
-def _text_of(path: Path, file: str) -> str:
+def text_of(path: Path, file: str) -> str:
+    """The text of a TOML file, named `file` in messages. Raises InputError."""
     if not path.exists():
         raise InputError(
             "there is no such file", file=file, remedy="Check the path; it is relative to where you are"
@@ -205,7 +206,8 @@ def _decoded(data: bytes, file: str) -> str:
 TOML_PLACE = re.compile(r"(.*?) \(at (?:line (\d+), column (\d+)|end of document)\)", re.DOTALL)
 
 
-def _parsed(text: str, file: str) -> dict[str, Any]:
+def parsed(text: str, file: str) -> dict[str, Any]:
+    """Plain tables of a TOML text. Raises InputError with line and column."""
     try:
         return tomllib.loads(text)
     except (tomllib.TOMLDecodeError, RecursionError) as error:

@@ -141,6 +141,7 @@ class Printed:
         for _ in range(ROUNDS):
             rows = self._rows_at(self._places)
             size = np.max(np.abs(rows), axis=0)
+            size[size == 0] = 1.0  # the constant, where only orders are known
             cost = _cost(terms, self._places) / size
             scale = float(np.max(np.abs(cost))) or 1.0
             found = self._programme(rows / size, cost / scale, factor)

@@ -15,7 +15,7 @@ from pulseprop.vetting.certificate_proof import KnownRow, LeastFactor, Printed
 from pulseprop.vetting.certificate_values import PrintedValue
 from pulseprop.vetting.requirement_quantities import LINE_C, LINE_D, LINE_F
 
-__all__ = ["ABBE_ABOVE", "ABBE_BELOW", "proof_of", "terms_of"]
+__all__ = ["ABBE_ABOVE", "ABBE_BELOW", "INDICES", "ORDERS", "proof_of", "terms_of"]
 
 ORDERS: dict[str, Order] = {
     "n_d": "index",

@@ -24,7 +24,7 @@ def abbe_bounds(data: PassiveData) -> tuple[float, float] | None:
     """V_d of every passive causal material with these numbers; None where the material absorbs in the band,
     where the lines lie outside it, or where the numbers contradict each other."""
     low, high = float(data.omega[0]), float(data.omega[-1])
-    if data.k is not None or not (low < LINE_C and LINE_F < high):
+    if data.k is not None or not (low < LINE_C and high > LINE_F):
         return None
     keep = np.unique(np.linspace(0, len(data.omega) - 1, min(MOST_ROWS, len(data.omega))).astype(int))
     rows = [

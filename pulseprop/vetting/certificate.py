@@ -1,0 +1,214 @@
+"""Printed numbers alone: an index here and there, an Abbe number, a GVD. Can they be true together, are they
+those of the medium named, and what do they guarantee?"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Sequence
+
+from pulseprop.constants import TWO_PI_C
+from pulseprop.vetting.certificate_catalogue import against_catalogue
+from pulseprop.vetting.certificate_follow import ROOM, contradictions, implied_by
+from pulseprop.vetting.certificate_functionals import Order, Term
+from pulseprop.vetting.certificate_medium import Claim, claim_of
+from pulseprop.vetting.certificate_proof import Printed
+from pulseprop.vetting.certificate_rows import ABBE_ABOVE, ABBE_BELOW, INDICES, ORDERS, proof_of
+from pulseprop.vetting.certificate_values import Certificate, PrintedValue
+from pulseprop.vetting.request import Request
+from pulseprop.vetting.requirement import read_requirement
+from pulseprop.vetting.requirement_answer import FS2_PER_MM, FS3_PER_MM, material_answer
+from pulseprop.vetting.requirement_quantities import LINE_C, LINE_F
+from pulseprop.vetting.result import Bounds, Finding, ImpliedUncertainty, RequirementAnswer, Vetted
+from pulseprop.vetting.told import Stamp, told, verdict_of
+
+__all__ = ["judge_certificate"]
+
+Band = tuple[float, float]
+
+BESIDE = 1.25
+"""So much beyond the first and last printed wavelength a material is taken as transparent where nothing else
+is known."""
+FEWEST = 2
+"""Numbers below which there is nothing to compare."""
+
+BLIND = (
+    "a common factor on chi, a constant of 0 or more added to n, and an index against air taken for one "
+    "against vacuum leave every test of causality as it is",
+)
+
+
+def judge_certificate(certificate: Certificate, request: Request, *, date: str, version: str) -> Vetted:
+    """Raises InputError for a requirement that cannot be read, NumericalLimit where a programme is not
+    solved."""
+    claim = claim_of(
+        request.claimed or certificate.name,
+        certificate.orientation,
+        [value.omega for value in certificate.values],
+    )
+    band, inferred = _band(certificate, request, claim)
+    values = [
+        value for value in certificate.values if value.value != 0 or value.quantity in ("gvd", "tod", "fod")
+    ]
+    proof = proof_of(values, band) if len(values) >= FEWEST else None
+    findings = tuple(_findings(certificate, claim, values, proof, band))
+    factor = proof.least_factor.factor if proof is not None else None
+    stated = all(value.stated for value in values)
+    proven = factor is not None and factor > 1 and stated and not inferred
+    repaired = any(finding.code == "does-not-follow" and finding.repair for finding in findings)
+    at = _Guaranteed(proof, stated)
+    return told(
+        file=certificate.file,
+        sha256=certificate.sha256,
+        stamp=Stamp(date=date, version=version),
+        what=_what(certificate, claim),
+        verdict=verdict_of(findings, proven=proven, mended=factor if repaired and not inferred else None),
+        headline=_headline(certificate, findings, factor),
+        findings=findings,
+        factor=factor,
+        stated=stated,
+        implied=_implied(values, factor),
+        bounds=tuple(at(omega) for omega in request.at),
+        requirements=tuple(_required(text, at) for text in request.require),
+        inferred=tuple(inferred),
+        assumptions=(
+            f"Between {_nm(band[1])} and {_nm(band[0])} nm the material absorbs nothing.",
+            "Zeros that end a whole number are taken as holding the place only.",
+        ),
+        blind_spots=BLIND,
+    )
+
+
+class _Guaranteed:
+    """Bounds by frequency from the numbers of a certificate."""
+
+    def __init__(self, proof: Printed | None, stated: bool) -> None:
+        self._proof, self._stated = proof, stated
+
+    @property
+    def reason(self) -> str:
+        """Why there are none; empty where there are."""
+        if self._proof is None:
+            return "a single number guarantees nothing of another"
+        if self._stated and self._proof.least_factor.factor > 1:
+            return "the numbers contradict each other within their uncertainties, so they guarantee nothing"
+        return ""
+
+    def __call__(self, omega: float) -> Bounds:
+        """Bounds at omega, rad/s."""
+        proof, reason = self._proof, self.reason
+        if proof is not None and not reason and not proof.band[0] < omega < proof.band[1]:
+            reason = "outside the transparent band"
+        if proof is None or reason:
+            return Bounds(wavelength_nm=TWO_PI_C / omega * 1e9, reason=reason)
+        found = {order: _interval(proof, order, omega) for order in ("index", "group index", "gvd", "tod")}
+        return Bounds(
+            wavelength_nm=TWO_PI_C / omega * 1e9,
+            index=found["index"],
+            group_index=found["group index"],
+            gvd_fs2_per_mm=_in(found["gvd"], FS2_PER_MM),
+            tod_fs3_per_mm=_in(found["tod"], FS3_PER_MM),
+            reason="" if all(found.values()) else "the numbers do not limit what is left open",
+        )
+
+    def abbe(self) -> tuple[float, float] | None:
+        """Bounds of V_d."""
+        if self._proof is None or self.reason:
+            return None
+        return self._proof.ratio_interval(ABBE_ABOVE, ABBE_BELOW, _factor(self._proof))
+
+
+def _factor(proof: Printed) -> float:
+    return max(1.0, proof.least_factor.factor * ROOM)
+
+
+def _interval(proof: Printed, order: Order, omega: float) -> tuple[float, float] | None:
+    found = proof.interval((Term(order=order, omega=omega),), _factor(proof))
+    more = 1.0 if order in INDICES else 0.0
+    return None if found is None else (found[0] + more, found[1] + more)
+
+
+def _in(interval: tuple[float, float] | None, unit: float) -> tuple[float, float] | None:
+    return None if interval is None else (interval[0] / unit, interval[1] / unit)
+
+
+def _required(text: str, at: _Guaranteed) -> RequirementAnswer:
+    return material_answer(read_requirement(text), at, abbe=at.abbe)
+
+
+def _band(certificate: Certificate, request: Request, claim: Claim) -> tuple[Band, list[dict[str, str]]]:
+    """The transparent band: as stated, the range of the medium named, or a little more than the numbers."""
+    places = [value.omega for value in certificate.values]
+    if any(value.quantity == "V_d" for value in certificate.values):
+        places += [LINE_F, LINE_C]
+    low, high = min(places), max(places)
+    stated = request.transparent or certificate.transparent
+    if stated is not None:
+        return (min(low, stated[0]), max(high, stated[1])), []
+    if claim.media:
+        bands = [medium.band for medium in claim.media]
+        return (min(low, max(band.low for band in bands)), max(high, min(band.high for band in bands))), []
+    band = low / BESIDE, high * BESIDE
+    return band, [
+        {
+            "about": "transparent band",
+            "taken": f"{_nm(band[1])} to {_nm(band[0])} nm",
+            "why": "not stated: a quarter more than the printed wavelengths on either side",
+            "overrule": 'transparent = ["300 nm", "2.5 um"] in the file',
+        }
+    ]
+
+
+def _findings(
+    certificate: Certificate, claim: Claim, values: Sequence[PrintedValue], proof: Printed | None, band: Band
+) -> Iterator[Finding]:
+    if proof is not None and proof.least_factor.factor > 1:
+        yield from contradictions(values, proof, band)
+    yield from against_catalogue(certificate.values, claim.media)
+    yield from claim.findings
+    if proof is not None and proof.least_factor.factor <= 1:
+        yield from _follows(values, band)
+
+
+def _follows(values: Sequence[PrintedValue], band: Band) -> Iterator[Finding]:
+    """What the other numbers say of each that can follow from them."""
+    parts = []
+    for value in values:
+        rest = [other for other in values if other is not value]
+        if value.quantity not in ("V_d", *ORDERS) or ORDERS.get(value.quantity) == "index" or not rest:
+            continue
+        implied = implied_by(proof_of(rest, band), value)
+        if implied is not None:
+            low, high = (value.in_unit(end) for end in implied)
+            parts.append(f"{value.words} {low:.5g} to {high:.5g} (printed {value.text})")
+    if parts:
+        yield Finding(
+            code="follows",
+            severity="note",
+            text=f"The other numbers guarantee: {'; '.join(parts)}.",
+        )
+
+
+def _implied(values: Sequence[PrintedValue], factor: float | None) -> ImpliedUncertainty:
+    """Of the index: the factor times the largest of its errors."""
+    errors = [value.error for value in values if ORDERS.get(value.quantity) == "index"]
+    return ImpliedUncertainty(n=None if factor is None or not errors else factor * max(errors), k=None)
+
+
+def _what(certificate: Certificate, claim: Claim) -> str:
+    named = f" of {certificate.name}" if certificate.name else ""
+    compared = " or ".join(f"{medium.name} ({medium.source})" for medium in claim.media)
+    text = f"{len(certificate.values)} printed numbers{named}"
+    return text + (f", compared with the catalogue's {compared}." if compared else ".")
+
+
+def _headline(certificate: Certificate, findings: Sequence[Finding], factor: float | None) -> str:
+    grave = [finding for finding in findings if finding.severity == "error"]
+    if grave:
+        return grave[0].text
+    if factor is None:
+        return "a single number cannot contradict itself; see what it was compared with."
+    count = len(certificate.values)
+    return f"the {count} printed numbers can be true together (uncertainty factor {factor:.2g})."
+
+
+def _nm(omega: float) -> str:
+    return f"{TWO_PI_C / omega * 1e9:.5g}" if omega > 0 else "infinity"

@@ -1,0 +1,98 @@
+"""What was found about numbers that are no table, as the same answer that tables get."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import dataclass
+from typing import Any
+
+from pulseprop.vetting.requirement_answer import DECISION_RULE
+from pulseprop.vetting.result import (
+    Bounds,
+    Finding,
+    ImpliedUncertainty,
+    RequirementAnswer,
+    Verdict,
+    Vetted,
+)
+
+__all__ = ["Stamp", "told", "verdict_of"]
+
+
+@dataclass(frozen=True, kw_only=True)
+class Stamp:
+    """When, as printed, and by which version of the program."""
+
+    date: str
+    version: str
+
+
+STRUCTURED = 10.0
+"""Factor from which on numbers that one undone mistake makes agree are no matter of noise."""
+
+
+def verdict_of(findings: Iterable[Finding], *, proven: bool = False, mended: float | None = None) -> Verdict:
+    """contradictory: the numbers contradict each other at stated uncertainties or break a physical bound
+    (`proven`), or one mistake undone `mended` a factor of 10 or more; doubtful: some finding is an error;
+    else consistent."""
+    if proven or (mended is not None and mended >= STRUCTURED):
+        return "contradictory"
+    return "doubtful" if any(finding.severity == "error" for finding in findings) else "consistent"
+
+
+def told(
+    *,
+    file: str,
+    sha256: str,
+    stamp: Stamp,
+    what: str,
+    verdict: Verdict,
+    headline: str,
+    findings: tuple[Finding, ...],
+    factor: float | None = None,
+    gap: float | None = None,
+    stated: bool = False,
+    implied: ImpliedUncertainty | None = None,
+    bounds: tuple[Bounds, ...] = (),
+    requirements: tuple[RequirementAnswer, ...] = (),
+    inferred: tuple[dict[str, str], ...] = (),
+    assumptions: tuple[str, ...] = (),
+    blind_spots: tuple[str, ...] = (),
+    curves: dict[str, Any] | None = None,
+) -> Vetted:
+    """The answer; the sentence to the supplier is that of the gravest finding."""
+    return Vetted(
+        file=file,
+        sha256=sha256,
+        date=stamp.date,
+        version=stamp.version,
+        what=what,
+        verdict=verdict,
+        headline=headline,
+        sentence=_sentence(findings, requirements),
+        decision_rule=DECISION_RULE,
+        uncertainty_factor=factor,
+        certified_gap=gap,
+        uncertainty_stated=stated,
+        implied_uncertainty=implied or ImpliedUncertainty(n=None, k=None),
+        factor_without_conflict_rows=None,
+        conflict=(),
+        bounds=bounds,
+        requirements=requirements,
+        findings=findings,
+        inferred=inferred,
+        assumptions=assumptions,
+        blind_spots=blind_spots,
+        curves=curves or {},
+    )
+
+
+def _sentence(findings: tuple[Finding, ...], requirements: tuple[RequirementAnswer, ...]) -> str:
+    """Something a supplier can answer; empty where there is nothing to ask."""
+    grave = next((finding for finding in findings if finding.severity == "error"), None)
+    if grave is not None:
+        return f"{grave.text} Please check these numbers and tell us which are right."
+    unmet = [answer.text for answer in requirements if answer.verdict == "not conforming"]
+    if unmet:
+        return f"By your numbers these requirements are not met: {'; '.join(unmet)}. Please comment."
+    return ""
