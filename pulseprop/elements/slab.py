@@ -18,10 +18,11 @@ from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.elements.faces import Polarisation, reflection_squared
+from pulseprop.elements.oblique import normal_index
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
-from pulseprop.numerics.series import Numbers, Series, product, quotient, root, variable
+from pulseprop.numerics.series import Numbers, Series, product, quotient, variable
 
 __all__ = ["DEPTH_OF_DECAY", "Slab"]
 
@@ -92,11 +93,7 @@ class Slab:
         return product(variable(np.asarray(omega), count), excess) * (1j * self.thickness / SPEED_OF_LIGHT)
 
     def _root_plus_cosine(self, chi: Series) -> Series:
-        squared = chi.astype(complex)
-        squared[0] += np.cos(self.angle) ** 2
-        # The principal root with the signed zero of passive matter, as in material.refraction.
-        passive = squared[0].real + 1j * np.where(squared[0].imag == 0, 0.0, squared[0].imag)
-        series = root(squared, np.sqrt(passive))
+        series = normal_index(chi, self.angle)
         series[0] += np.cos(self.angle)
         return series
 

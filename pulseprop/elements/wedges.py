@@ -20,6 +20,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
+from pulseprop.elements.oblique import normal_index
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
 from pulseprop.numerics.series import Numbers, Series, product, root, variable
@@ -45,20 +46,15 @@ class Wedge:
         wave = variable(np.asarray(omega), count) / SPEED_OF_LIGHT
         chi = self.medium.response.series(np.asarray(omega), count, view)
         sine = np.sin(self.incidence)
-        along = product(wave, np.sin(self.apex) * self._inside(chi)) - np.cos(self.apex) * sine * wave
+        along = (
+            product(wave, np.sin(self.apex) * normal_index(chi, self.incidence))
+            - np.cos(self.apex) * sine * wave
+        )
         along[0] += self.momentum
         squared = product(wave - along, wave + along).astype(complex)
         leaves = np.asarray(np.real(squared[0]) > 0)
         squared[0] = np.where(leaves, squared[0], 1.0)
         return along, root(squared, np.sqrt(squared[0])), leaves
-
-    def _inside(self, chi: Series) -> Series:
-        """sqrt(n^2 - sin^2 i): the component of n along the normal of the entry face."""
-        squared = chi.astype(complex)
-        squared[0] += np.cos(self.incidence) ** 2
-        # The principal root with the signed zero of passive matter, as in material.refraction.
-        passive = squared[0].real + 1j * np.where(squared[0].imag == 0, 0.0, squared[0].imag)
-        return root(squared, np.sqrt(passive))
 
     def angles(self, omega: Numbers | float) -> tuple[Real, Real, Real]:
         """Real angles in rad at omega (rad/s): inside at the entry, inside at the exit, outside at the exit
