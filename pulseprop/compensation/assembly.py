@@ -61,7 +61,7 @@ class Assembly:
         """Its derivatives by u, (n, k)."""
         columns = [model.jacobian(values) for model, values in zip(self.models, self.values(u), strict=True)]
         empty = np.zeros((self.background.size, 0), dtype=complex)
-        return np.concatenate([empty, *columns], axis=1) * (self.high - self.low)
+        return np.asarray(np.concatenate([empty, *columns], axis=1) * (self.high - self.low), dtype=complex)
 
     def size(self, u: Real) -> float:
         """Footprint in m of the parts that are used."""

@@ -1,7 +1,7 @@
 """Proof that no setting of a discrete choice reaches a score.
 
-Let p >= 0, sum p = 1, be the amplitude spectrum and M = sum p exp(i phase); the peak ratio is the largest |M|^2
-over delays. Of three equidistant frequencies with weights 1/4, 1/2, 1/4 the sum can be no larger than
+Let p >= 0, sum p = 1, be the amplitude spectrum and M = sum p exp(i phase); the peak ratio is the largest
+|M|^2 over delays. Of three equidistant frequencies with weights 1/4, 1/2, 1/4 the sum can be no larger than
 cos(s/4), whatever delay and constant are added, if their second difference of phase s is at most pi in size
 (for larger ones sin takes over). So for any q >= 0 whose convolution with those three weights stays below p,
 
@@ -88,7 +88,7 @@ class Bounds:
         return self._empty(base.imag + self._phase, slopes.imag, allowance)
 
     def _spread(self, loss: Real, slopes: Real) -> float:
-        """How far losses, (n,) and (n, k) nepers, depart from those of the background by more than a factor."""
+        """Span of the losses, (n,) and (n, k) nepers, beyond a factor on those of the background."""
         loss = loss - self.background.real
         most = loss + np.maximum(slopes, 0).sum(axis=1)
         least = loss + np.minimum(slopes, 0).sum(axis=1)
@@ -156,7 +156,7 @@ def _scales(amplitude: Real) -> list[_Scale]:
     middle = float(np.dot(amplitude, index))
     deviation = float(np.sqrt(np.dot(amplitude, (index - middle) ** 2)))
     wanted = np.geomspace(NARROWEST, WIDEST, SCALES) * deviation
-    distances = sorted({max(int(round(one)), 1) for one in wanted})
+    distances = sorted({max(round(float(one)), 1) for one in wanted})
     return [_Scale(one, _weight(amplitude, one)) for one in distances if 2 * one < amplitude.size]
 
 
@@ -170,10 +170,8 @@ def _weight(amplitude: Real, distance: int) -> Real:
     for _ in range(SHARPENINGS):
         q *= _three(_ratio(amplitude, q, distance), distance)
     ratio = _ratio(amplitude, q, distance)
-    smallest = np.minimum(
-        ratio[distance:-distance], np.minimum(ratio[2 * distance :], ratio[: -2 * distance])
-    )
-    return np.asarray(q * np.minimum(smallest, 1.0))
+    sides = np.minimum(ratio[2 * distance :], ratio[: -2 * distance])
+    return np.asarray(q * np.minimum(np.minimum(ratio[distance:-distance], sides), 1.0))
 
 
 def _three(values: Real, distance: int) -> Real:

@@ -1,7 +1,7 @@
-"""Every discrete choice, with the flattest phase that its continuous settings allow: ranked before any field.
+"""Every discrete choice with the flattest phase that its continuous settings allow, before any field.
 
-A choice says which compensators are used and what their steps and lists stand at. Settings that do not enter as
-straight lines are looked at on a lattice here, and moved freely later.
+A choice says which compensators are used and what their steps and lists stand at. Settings that do not enter
+as straight lines are looked at on a lattice here, and moved freely later.
 """
 
 from __future__ import annotations

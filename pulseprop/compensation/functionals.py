@@ -4,9 +4,9 @@ A pulse is its spectrum B on lit samples. The variation g (n,) of a number f say
 
     d f = Re sum_k g_k d(ln B_k),
 
-so that with the logarithm of a transfer in hand, d(ln B) = d(exponent), every derivative by a setting is one
-dot product. Peaks and windows lie where they are best, so that their own movement does not enter (the envelope
-theorem).
+so that with the logarithm of a transfer in hand, d(ln B) = d(exponent), every derivative by a setting is
+one dot product. Peaks and windows lie where they are best, so that their own movement does not enter (the
+envelope theorem).
 """
 
 from __future__ import annotations
@@ -42,7 +42,7 @@ class Varied:
 def energy(samples: Samples, spectrum: Complex) -> Varied:
     """Energy in J."""
     density = (spectrum.real**2 + spectrum.imag**2) / samples.grid.span
-    return Varied(float(density.sum()), 2.0 * density.astype(complex))
+    return Varied(float(density.sum()), np.asarray(2.0 * density, dtype=complex))
 
 
 def limit_power(samples: Samples, spectrum: Complex) -> Varied:
@@ -108,7 +108,7 @@ def square_integral(samples: Samples, spectrum: Complex, field: Complex) -> Vari
     """int P^2 dt in W^2 s."""
     power = field.real**2 + field.imag**2
     step = samples.grid.step
-    variation = 4.0 * step * spectrum * samples.folded(power * np.conj(field))
+    variation = 4.0 * step * spectrum * samples.folded(np.asarray(power * np.conj(field)))
     return Varied(float(np.dot(power, power)) * step, variation)
 
 
@@ -119,7 +119,7 @@ def contained(samples: Samples, spectrum: Complex, field: Complex, window: float
     """
     grid = samples.grid
     power = field.real**2 + field.imag**2
-    frequency = np.fft.fftfreq(grid.points, grid.step)
+    frequency = np.asarray(np.fft.fftfreq(grid.points, grid.step), dtype=float)
     box = window * np.sinc(frequency * window)
     turning = np.fft.fft(power) * box
     running = np.fft.ifft(turning).real
@@ -127,7 +127,7 @@ def contained(samples: Samples, spectrum: Complex, field: Complex, window: float
     # The box around `place` as the samples see it: what each instant's power adds to the integral.
     weights = np.fft.ifft(box * np.exp(-2j * np.pi * frequency * place)).real
     value = float(np.dot(weights, power))
-    return Varied(value, 2.0 * spectrum * samples.folded(weights * np.conj(field)), place)
+    return Varied(value, 2.0 * spectrum * samples.folded(np.asarray(weights * np.conj(field))), place)
 
 
 def _top_between(turning: Complex, frequency: Real, running: Real, step: float) -> float:

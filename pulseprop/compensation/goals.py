@@ -122,10 +122,7 @@ class Judge:
         if self.goal.name == "contrast":
             inside = contained(self.samples, spectrum, envelope, self.goal.window or 0.0)
             whole = energy(self.samples, spectrum)
-            term = Varied(
-                _log(inside).value - _log(whole).value, _log(inside).variation - _log(whole).variation
-            )
-            return 1.0 - inside.value / whole.value, term
+            return 1.0 - inside.value / whole.value, _over(inside, whole)
         flatness = _flatness(self.samples, exponent, spectrum)
         return float(np.sqrt(-flatness.value)), flatness
 
@@ -138,6 +135,12 @@ class Judge:
 
 def _log(found: Varied) -> Varied:
     return Varied(float(np.log(found.value)), found.variation / found.value)
+
+
+def _over(part: Varied, whole: Varied) -> Varied:
+    """The logarithm of a quotient."""
+    above, below = _log(part), _log(whole)
+    return Varied(above.value - below.value, above.variation - below.variation)
 
 
 def _flatness(samples: Samples, exponent: Complex, spectrum: Complex) -> Varied:

@@ -1,8 +1,8 @@
 """Logarithms of transfers as functions of settings, evaluated as seldom as possible.
 
-Most adjustments (separation, insertion, thickness, orders) enter the exponent as straight lines. A model finds
-out which do, holds those as a base and slopes, and evaluates the elements anew only where another adjustment
-(an angle) moves. The field itself is never needed for a derivative.
+Most adjustments (separation, insertion, thickness, orders) enter the exponent as straight lines. A model
+finds out which do, holds those as a base and slopes, and evaluates the elements anew only where another
+adjustment (an angle) moves. The field itself is never needed for a derivative.
 """
 
 from __future__ import annotations
@@ -47,7 +47,7 @@ def exponent_of(elements: Sequence[Element], omega: Real) -> Complex:
             with np.errstate(divide="ignore"):
                 total += np.log(np.abs(factor)) + 1j * np.unwrap(np.angle(factor))
     _refuse_undefined(total, elements, omega)
-    return np.maximum(total.real, DARK) + 1j * total.imag
+    return np.asarray(np.maximum(total.real, DARK) + 1j * total.imag)
 
 
 def _refuse_undefined(total: Complex, elements: Sequence[Element], omega: Real) -> None:

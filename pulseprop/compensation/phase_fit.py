@@ -1,8 +1,8 @@
 """Phases fitted in the sense of least squares: where a search begins.
 
-The mean square of the spectral phase beyond a constant and a delay, weighted by the amplitude spectrum, is to
-second order the logarithm of the peak ratio with its sign turned, and for straight adjustments it is a quadratic
-form. Fitting it takes no field.
+The mean square of the spectral phase beyond a constant and a delay, weighted by the amplitude spectrum, is
+to second order the logarithm of the peak ratio with its sign turned, and for straight adjustments it is a
+quadratic form. Fitting it takes no field.
 """
 
 from __future__ import annotations
@@ -30,7 +30,7 @@ SPOT = 0.8
 
 
 def spectral_windows(amplitude: Real) -> list[Window]:
-    """Weights under which fits are tried: |B|, |B|^2, and |B| about three places of the spectrum; (n,) each."""
+    """Weights (n,) under which fits are tried: |B|, |B|^2, and |B| about three places of the spectrum."""
     height = amplitude / amplitude.sum()
     index = np.arange(height.size)
     middle = float(np.dot(height, index))

@@ -70,7 +70,7 @@ class Adjustment:
         if not (np.isfinite(self.low) and np.isfinite(self.high) and self.low <= self.high):
             raise InputError(
                 f"the range of {self.parameter} ends before it begins",
-                value=f"{self.low / self.unit_size:.6g} to {self.high / self.unit_size:.6g} {self.unit}".rstrip(),
+                value=f"{self.low / self.unit_size:.6g} to {self.high / self.unit_size:.6g} {self.unit}",
                 allowed="two finite numbers, the lower first",
             )
         if self.step is not None and not self.step > 0:
@@ -101,10 +101,10 @@ class Part:
     """One place of the path: an element, or a compensator with what may be set on it.
 
     build(settings): the elements for the values of all its adjustments (and, for tolerances, of one of its
-    `drifts`), in the order of the beam; raises InputError where no such element can be built. optional: it may
-    be left out (a compensator at hand). drifts: parameters that are not set but may be off, such as the
-    thickness of a glass or an angle; each needs `now`, its nominal value. to_order: a mirror that is yet to be
-    made, with the adjustments "gdd" and "tod" of one bounce and, where more than one, "bounces".
+    `drifts`), in the order of the beam; raises InputError where no such element can be built. optional: it
+    may be left out (a compensator at hand). drifts: parameters that are not set but may be off, such as the
+    thickness of a glass or an angle; each needs `now`, its nominal value. to_order: a mirror that is yet to
+    be made, with the adjustments "gdd" and "tod" of one bounce and, where more than one, "bounces".
     """
 
     name: str
@@ -135,9 +135,9 @@ class Goal:
     """What is wanted most.
 
     name: "peak power" (peak power over that of the same transmitted spectrum with flat phase), "duration"
-    (shortest FWHM), "flat phase" (least rms of the spectral phase, weighted by the spectrum, beyond a constant
-    and a delay), "two-photon" (integral of the power squared over that with flat phase), "contrast" (least
-    share of the energy outside a window of length `window` seconds, laid where it holds most).
+    (shortest FWHM), "flat phase" (least rms of the spectral phase, weighted by the spectrum, beyond a
+    constant and a delay), "two-photon" (integral of the power squared over that with flat phase), "contrast"
+    (least share of the energy outside a window of length `window` seconds, laid where it holds most).
     target: in the goal's terms: a ratio, seconds, radians, a ratio, a share; None for none.
     transmission_weight: 0 asks for quality alone; 1 counts what gets through in full, so that "peak power"
     means absolute peak power and "two-photon" the absolute signal. size_weight: in 1/m: how many times e

@@ -122,7 +122,7 @@ def _stiffness(assembly: Assembly, u: Real) -> Real:
     """Rms phase in rad that each setting makes over its range, (k,): the natural unit of a step."""
     amplitude = np.abs(assembly.samples.amplitude * np.exp(assembly.exponent(u).real))
     columns = whitened(assembly.jacobian(u).imag, assembly.samples.detuning, amplitude / amplitude.sum())
-    return np.maximum(np.linalg.norm(columns, axis=0), 1e-6)
+    return np.asarray(np.maximum(np.linalg.norm(columns, axis=0), 1e-6))
 
 
 def _climb_from(climb: _Climb, u: Real) -> None:

@@ -56,6 +56,14 @@ class Samples:
         whole[self.lit] = spectrum
         return self.grid.to_field(whole)
 
+    def thinned(self, every: int) -> tuple[Samples, slice]:
+        """One in `every` samples (a power of two), for a window as many times shorter, and which they are."""
+        offset = (self.grid.points // 2 - self.first) % every
+        grid = replace(self.grid, points=self.grid.points // every)
+        first = (self.first + offset - self.grid.points // 2) // every + grid.points // 2
+        taken = slice(offset, None, every)
+        return Samples(grid=grid, first=first, amplitude=self.amplitude[taken]), taken
+
     def folded(self, field: Complex) -> Complex:
         """sum_j field_j exp(-i detuning t_j) / span at the lit samples: the transpose of `envelope`."""
         transform = self.grid.to_spectrum(np.conj(field))[self.lit]
