@@ -8,8 +8,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.elements.device import Composite
 from pulseprop.elements.element import Element, transfer_of
+from pulseprop.elements.group import media_of
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
@@ -46,7 +46,7 @@ class Path:
         """The media of the path, each once, in order of appearance."""
         found: dict[str, Medium] = {}
         for element in self.elements:
-            for medium in _media_of(element):
+            for medium in media_of(element):
                 found.setdefault(medium.name, medium)
         return tuple(found.values())
 
@@ -66,9 +66,3 @@ class Path:
         for element in self.elements:
             total *= transfer_of(element, omega, view)
         return total
-
-
-def _media_of(element: Element) -> tuple[Medium, ...]:
-    if isinstance(element, Composite):
-        return element.media
-    return () if element.medium is None else (element.medium,)

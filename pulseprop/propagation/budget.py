@@ -2,16 +2,18 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable
-from dataclasses import dataclass, field
+from collections.abc import Callable, Iterable, Iterator, Sequence
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import FEMTO
 from pulseprop.elements.element import Element, orders_of_element
+from pulseprop.elements.group import Group
 from pulseprop.elements.path import Path
 from pulseprop.elements.slab import Slab
+from pulseprop.elements.telling import Telling
 from pulseprop.errors import InputError
 from pulseprop.grid import Grid
 from pulseprop.measures.widths import fwhm
@@ -20,7 +22,7 @@ from pulseprop.propagation.linear import blocks
 from pulseprop.propagation.result import ElementMeasures
 from pulseprop.propagation.sizing import Windows
 
-__all__ = ["Advance", "Walk", "walk"]
+__all__ = ["Advance", "Walk", "largest", "smallest", "summed", "walk"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -39,7 +41,8 @@ FORMULA_DIGITS = 4
 
 @dataclass(kw_only=True)
 class Walk:
-    """State while walking; `rows` is the result, `spectrum` what leaves.
+    """State while walking; `rows` is the result, `spectrum` what leaves. passed: elements so far, the parts
+    of a group on each passage.
 
     transmission: |transfer|^2, and group_delay: of the direct passage in s, both of all elements so far, on
     the frequencies.
@@ -50,7 +53,8 @@ class Walk:
     transmission: Real
     group_delay: Real
     omega: float
-    pulse_radius: float | None
+    advance: Advance
+    passed: int = 0
     rows: list[ElementMeasures] = field(default_factory=list)
     gdd: float | None = 0.0
     tod: float | None = 0.0
@@ -68,23 +72,91 @@ def walk(
         transmission=np.zeros(spectrum.size),
         group_delay=np.zeros(spectrum.size),
         omega=omega,
-        pulse_radius=radius,
+        advance=advance,
     )
     state.transmission[windows.grid.positive] = 1.0
-    for index, element in enumerate(path):
-        state.rows.append(_row(state, index, element, advance))
+    for element in path:
+        state.rows.append(_told(element, _row(state, element, radius)))
     return state
 
 
-def _row(state: Walk, index: int, element: Element, advance: Advance) -> ElementMeasures:
-    before = state.windows.after(index - 1)
-    grid = state.windows.after(index)
+def _told(element: Element, row: ElementMeasures) -> ElementMeasures:
+    if not isinstance(element, Telling):
+        return row
+    return replace(row, figures=dict(element.figures), notes=element.notes)
+
+
+def _row(state: Walk, element: Element, outer_radius: float | None) -> ElementMeasures:
+    """The row of an element; outer_radius: of the beam where the element states none, m."""
+    radius = element.beam_radius or outer_radius
+    if isinstance(element, Group):
+        return _row_of_group(state, element, radius)
+    return _row_of_one(state, element, radius)
+
+
+def _row_of_group(state: Walk, group: Group, radius: float | None) -> ElementMeasures:
+    rounds = [[_row(state, part, radius) for part in group.parts] for _ in range(group.times)]
+    parts = [
+        _told(part, _joined([passes[place] for passes in rounds])) for place, part in enumerate(group.parts)
+    ]
+    whole = _joined([row for passes in rounds for row in passes])
+    shown = tuple(parts) if len(parts) > 1 else ()
+    return replace(whole, name=group.name, kind=group.kind, detail=group.detail, parts=shown)
+
+
+def _joined(rows: Sequence[ElementMeasures]) -> ElementMeasures:
+    """One row, named as the first, for several in the order of the beam."""
+    last = rows[-1]
+    return replace(
+        rows[0],
+        group_delay_fs=summed(row.group_delay_fs for row in rows),
+        gdd_fs2=summed(row.gdd_fs2 for row in rows),
+        tod_fs3=summed(row.tod_fs3 for row in rows),
+        fod_fs4=summed(row.fod_fs4 for row in rows),
+        transmission=float(np.prod([row.transmission for row in rows])),
+        gdd_sum_fs2=last.gdd_sum_fs2,
+        tod_sum_fs3=last.tod_sum_fs3,
+        fwhm_after_fs=last.fwhm_after_fs,
+        peak_fluence_J_per_cm2=largest(row.peak_fluence_J_per_cm2 for row in rows),
+        peak_intensity_W_per_cm2=largest(row.peak_intensity_W_per_cm2 for row in rows),
+        b_integral_rad=summed(row.b_integral_rad for row in rows),
+        digits=min(row.digits for row in rows),
+    )
+
+
+def smallest(rows: Iterable[ElementMeasures]) -> Iterator[ElementMeasures]:
+    """The rows, those of parts in place of what is made of them."""
+    for row in rows:
+        if row.parts:
+            yield from smallest(row.parts)
+        else:
+            yield row
+
+
+def summed(values: Iterable[float | None]) -> float | None:
+    """The sum, or None where one of the values is unknown."""
+    total = 0.0
+    for value in values:
+        if value is None:
+            return None
+        total += value
+    return total
+
+
+def largest(values: Iterable[float | None]) -> float | None:
+    """The largest of those that are known, None where there is none."""
+    return max((value for value in values if value is not None), default=None)
+
+
+def _row_of_one(state: Walk, element: Element, radius: float | None) -> ElementMeasures:
+    before = state.windows.after(state.passed - 1)
+    grid = state.windows.after(state.passed)
+    state.passed += 1
     energy_in = before.energy(state.spectrum)
-    radius = element.beam_radius or state.pulse_radius
     exponent = _exponent(state, element, before)
     b = _b_of(state, element, before, radius, exponent)
     peak_in = _peak_in(state, before) if radius else None
-    advance(element, exponent, state.spectrum)
+    state.advance(element, exponent, state.spectrum)
     _through_faces(state, element, exponent, grid)
     orders = _orders(element, state.omega)
     state.gdd = None if orders[1] is None or state.gdd is None else state.gdd + orders[1]

@@ -9,6 +9,8 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 
 from pulseprop.elements.element import Element
+from pulseprop.elements.gas_cell import GasCell
+from pulseprop.elements.group import every
 from pulseprop.elements.path import Path
 from pulseprop.material.medium import Medium
 from pulseprop.propagation.numerals import significant
@@ -20,6 +22,10 @@ IONISING_W_PER_CM2 = 1e13
 """Peak intensity from which X-rays are expected in material processing; a legal figure of Germany
 (Strahlenschutzgesetz, section 17; from memory).
 """
+
+ATMOSPHERE = 101325.0
+PRESSURE_THAT_MATTERS = 1e3
+"""Pa of difference from a normal atmosphere from which a cell is a vessel (the weather changes more)."""
 
 KELVINS_THAT_MATTER = 5.0
 """From here on a stated temperature is set against that of the record (common practice, no source)."""
@@ -45,8 +51,10 @@ def cautions_for(
 ) -> tuple[Caution, ...]:
     """The cautions of a run, most general first; substances: what media of other names are made of."""
     found = [LASER, *_strong_light(rows), *_gases([*(medium.name for medium in path.media), *substances])]
-    for element in path:
+    for element in every(path):
         found += _temperature(element)
+        if isinstance(element, GasCell):
+            found += _vessel(element)
     for medium in path.media:
         found += _of_medium(medium)
     return tuple(found)
@@ -94,6 +102,21 @@ def _gases(media: Sequence[str]) -> Iterator[Caution]:
             text=(
                 f"The path holds {listed}, which displaces oxygen in closed rooms. Ventilate, and follow the "
                 "local rules for compressed gases; the strength of cells and windows is not considered."
+            ),
+        )
+
+
+def _vessel(cell: GasCell) -> Iterator[Caution]:
+    difference = abs(cell.pressure - ATMOSPHERE)
+    if difference > PRESSURE_THAT_MATTERS:
+        yield Caution(
+            code="pressure-vessel",
+            line=f"{cell.name}: {cell.pressure / 1e5:.4g} bar absolute: mechanical strength not considered",
+            text=(
+                f"The cell {cell.name!r} holds {cell.pressure / 1e5:.4g} bar absolute, about "
+                f"{difference / 1e5:.2g} bar from a normal atmosphere. The mechanical strength of its "
+                "windows and body is not considered: have it rated for this pressure under the local rules "
+                "for pressure and vacuum equipment."
             ),
         )
 

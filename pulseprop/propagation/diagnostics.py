@@ -13,6 +13,7 @@ from pulseprop.causality.front import TestPulse, front_test
 from pulseprop.causality.residual import acausal_share
 from pulseprop.causality.sum_rules import Feature, sum_rules
 from pulseprop.elements.element import Element
+from pulseprop.elements.group import Group, every, kept
 from pulseprop.elements.path import Path
 from pulseprop.elements.slab import DEPTH_OF_DECAY
 from pulseprop.material.features import features_of, knots_of, relaxes
@@ -50,11 +51,15 @@ def causality_of(
     progress: Callable[[float], None] | None = None,
 ) -> Causality:
     """Diagnostics of a path for a finite pulse of this centre (rad/s) and FWHM (s); memory: bytes allowed."""
-    tested = Path(tuple(element for element in path if _is_testable(element)))
-    left_out = tuple(element.name for element in path if not _is_testable(element))
+    tested = Path(tuple(found for element in path if (found := kept(element, _is_testable)) is not None))
+    left_out = tuple(
+        element.name
+        for element in every(path)
+        if not isinstance(element, Group) and not _is_testable(element)
+    )
     passive = all(_is_passive(medium, centre) for medium in path.media)
     rules = tuple(rule for medium in tested.media for rule in _sum_rules(medium))
-    if not any(element.medium for element in tested):
+    if not tested.media:
         return _nothing_to_test(left_out, passive)
     pulse = _test_pulse(centre, duration)
     low, high = pulse.band(WEIGHTY)

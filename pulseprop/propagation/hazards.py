@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 
 import numpy as np
 from numpy.typing import NDArray
@@ -10,9 +10,11 @@ from numpy.typing import NDArray
 from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.elements.device import Straying
 from pulseprop.elements.element import Element
+from pulseprop.elements.group import every
 from pulseprop.elements.slab import Slab
 from pulseprop.grid import Grid
 from pulseprop.measures.limits import TransformLimit
+from pulseprop.propagation.budget import largest
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.numerals import percent
 from pulseprop.propagation.result import ElementMeasures, HazardFacts
@@ -37,7 +39,7 @@ def hazard_facts(
     """
     pulse, known = experiment.pulse, experiment.energy_stated
     energy, rate = grid.energy(spectrum), pulse.repetition_rate
-    stray = [text for element in experiment.path for text in _stray(element, pulse.centre)]
+    stray = [text for element in every(experiment.path) for text in _stray(element, pulse.centre)]
     return HazardFacts(
         wavelengths_at_1_percent_nm=_wavelengths(grid, spectrum, 1e-2),
         wavelengths_at_1e_4_nm=_wavelengths(grid, spectrum, 1e-4),
@@ -47,14 +49,10 @@ def hazard_facts(
         shortest_possible_fwhm_fs=limit.fwhm * 1e15,
         peak_power_at_limit_W=limit.peak_power if known else None,
         beam_radius_m=pulse.beam_radius,
-        peak_fluence_J_per_cm2=_largest(row.peak_fluence_J_per_cm2 for row in rows),
-        peak_intensity_W_per_cm2=_largest(row.peak_intensity_W_per_cm2 for row in rows),
+        peak_fluence_J_per_cm2=largest(row.peak_fluence_J_per_cm2 for row in rows),
+        peak_intensity_W_per_cm2=largest(row.peak_intensity_W_per_cm2 for row in rows),
         stray_beams=tuple(stray),
     )
-
-
-def _largest(values: Iterable[float | None]) -> float | None:
-    return max((value for value in values if value is not None), default=None)
 
 
 def _wavelengths(grid: Grid, spectrum: Complex, level: float) -> tuple[float, float]:

@@ -4,6 +4,7 @@ answer.
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import asdict, dataclass, field
 from functools import cached_property
 from typing import Any
@@ -93,6 +94,12 @@ class ElementMeasures:
     """Significant digits that the data behind the row carry."""
     echoes: tuple[tuple[float, float], ...] = ()
     """(delay in fs after the direct passage, share of the energy that leaves) of coherent echoes."""
+    figures: Mapping[str, float | None] = field(default_factory=dict)
+    """What else is known of the element, the unit in each key."""
+    notes: tuple[str, ...] = ()
+    """What to know of the figures, a sentence each."""
+    parts: tuple[ElementMeasures, ...] = ()
+    """Rows of what the element is made of; of parts that the beam meets again, all passages together."""
 
 
 @dataclass(frozen=True, kw_only=True)

@@ -2,16 +2,20 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 
 import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import FEMTO
 from pulseprop.elements.device import Remarking
+from pulseprop.elements.group import every, media_of
+from pulseprop.elements.telling import Light, Telling
 from pulseprop.errors import PulsepropError
 from pulseprop.measures.delays import delay_split
+from pulseprop.measures.limits import TransformLimit
 from pulseprop.propagation.assess import measured
+from pulseprop.propagation.budget import smallest, summed
 from pulseprop.propagation.cautions import cautions_for
 from pulseprop.propagation.converge import Progress, Propagated, propagated
 from pulseprop.propagation.diagnostics import causality_of
@@ -103,6 +107,7 @@ def run(experiment: Experiment, version: str, catalogue_sha256: str, progress: P
             *range_warnings(experiment, grid_in, done.spectrum_in),
             *_b_warnings(experiment, rows),
             *_remarks(experiment),
+            *_beside_orders(experiment, done, limit_in),
         ),
         cautions=(*cautions_for(experiment.path, rows, experiment.substances), *experiment.cautions),
         pulse_notes=experiment.pulse.notes,
@@ -127,7 +132,7 @@ def _b_warnings(experiment: Experiment, rows: Sequence[ElementMeasures]) -> tupl
     unsettled = [
         row.name
         for element, row in zip(experiment.path, rows, strict=True)
-        if row.b_integral_rad is None and element.medium and element.medium.name not in unknown
+        if row.b_integral_rad is None and not any(medium.name in unknown for medium in media_of(element))
     ]
     said = []
     if unknown:
@@ -143,7 +148,26 @@ def _b_warnings(experiment: Experiment, rows: Sequence[ElementMeasures]) -> tupl
 def _remarks(experiment: Experiment) -> tuple[str, ...]:
     """What elements have to say of their settings."""
     return tuple(
-        text for element in experiment.path if isinstance(element, Remarking) for text in element.remarks
+        text
+        for element in every(experiment.path)
+        if isinstance(element, Remarking)
+        for text in element.remarks
+    )
+
+
+def _beside_orders(experiment: Experiment, done: Propagated, limit: TransformLimit) -> tuple[str, ...]:
+    """What elements do to this pulse that no order tells."""
+    spectrum, grid = done.spectrum_in, done.windows.grid
+    light = Light(
+        omega=2 * np.pi * grid.frequency,
+        power=spectrum.real**2 + spectrum.imag**2,
+        duration=limit.fwhm,
+    )
+    return tuple(
+        text
+        for element in every(experiment.path)
+        if isinstance(element, Telling)
+        for text in element.warnings(light)
     )
 
 
@@ -154,13 +178,13 @@ def _path_measures(
     split = delay_split(
         done.exit, done.spectrum_in, np.sqrt(fields.transmission), done.exit.to_field(done.walked.spectrum)
     )
-    gdd = _sum(row.gdd_fs2 for row in rows)
-    b = [row.b_integral_rad for row in rows if row.b_integral_rad is not None]
+    gdd = summed(row.gdd_fs2 for row in rows)
+    b = [row.b_integral_rad for row in smallest(rows) if row.b_integral_rad is not None]
     return PathMeasures(
-        group_delay_fs=_sum(row.group_delay_fs for row in rows),
+        group_delay_fs=summed(row.group_delay_fs for row in rows),
         gdd_fs2=gdd,
-        tod_fs3=_sum(row.tod_fs3 for row in rows),
-        fod_fs4=_sum(row.fod_fs4 for row in rows),
+        tod_fs3=summed(row.tod_fs3 for row in rows),
+        fod_fs4=summed(row.fod_fs4 for row in rows),
         transmission=after.energy_J / before.energy_J,
         broadening=after.fwhm_fs / before.fwhm_fs,
         centroid_delay_fs=split.centroid * FEMTO,
@@ -169,16 +193,6 @@ def _path_measures(
         b_integral_rad=sum(b) if b else None,
         gdd_only_fwhm_fs=_gdd_only(experiment, before, gdd),
     )
-
-
-def _sum(values: Iterable[float | None]) -> float | None:
-    """The sum, or None where one of the values is unknown."""
-    total = 0.0
-    for value in values:
-        if value is None:
-            return None
-        total += value
-    return total
 
 
 def _gdd_only(experiment: Experiment, before: PulseMeasures, gdd: float | None) -> float | None:

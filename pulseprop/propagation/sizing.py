@@ -8,6 +8,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.elements.element import Element
+from pulseprop.elements.group import passages
 from pulseprop.elements.path import Path
 from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.grid import Grid
@@ -48,7 +49,7 @@ class GridWish:
 
 @dataclass(frozen=True, kw_only=True)
 class Windows:
-    """The grid at the entrance, and the start of the window (s) after each element; the last is the exit.
+    """The grid at the entrance, and the start of the window (s) after each passage; the last is the exit.
 
     needed: what pulse and delays fill of the window anywhere on the path, s, without ringing.
     """
@@ -58,7 +59,7 @@ class Windows:
     needed: float
 
     def after(self, index: int) -> Grid:
-        """The grid after element `index` (from 0); the entrance for -1."""
+        """The grid after passage `index` (from 0); the entrance for -1."""
         return self.grid if index < 0 else self.grid.moved(self.starts[index])
 
 
@@ -136,26 +137,31 @@ def _step_and_carrier(pulse: PulseSource, form: str) -> tuple[float, float]:
 
 
 def _delays(pulse: PulseSource, path: Path) -> list[Real]:
-    """Group delays in s at probe frequencies, summed up to and including each element, where light still
+    """Group delays in s at probe frequencies, summed up to and including each passage, where light still
     passes.
     """
     low, high = pulse.spectral_extent(DELAY_SHARE)
     omega = np.linspace(max(low, high / 1e4), high, PROBES)
     total, opacity, sums = np.zeros(PROBES), np.zeros(PROBES), []
-    for element in path:
-        series = element.exponent(omega, 2)
-        total = total + np.imag(series[1])
-        opacity = opacity - 2 * np.real(series[0]) - _lost_besides(element, omega)
+    known: dict[int, tuple[Real, Real]] = {}
+    for element in passages(path):
+        if id(element) not in known:
+            known[id(element)] = _delay_and_loss(element, omega)
+        delay, loss = known[id(element)]
+        total, opacity = total + delay, opacity + loss
         strength = _strength(pulse, omega) * np.exp(-opacity)
         seen = strength > DELAY_SHARE * max(float(strength.max()), 1e-300)
         sums.append(total[seen] if seen.any() else np.zeros(1))
     return sums
 
 
-def _lost_besides(element: Element, omega: Real) -> Real | float:
-    """ln of the share of energy that faces and edges let through; 0 without any."""
-    factor = element.factor(omega)
-    return 0.0 if factor is None else 2 * np.log(np.maximum(np.abs(factor), FAINTEST))
+def _delay_and_loss(element: Element, omega: Real) -> tuple[Real, Real]:
+    """Group delay in s, and minus the logarithm of the share of energy that passes, faces and edges too."""
+    series, factor = element.exponent(omega, 2), element.factor(omega)
+    loss = -2 * np.real(series[0])
+    if factor is not None:
+        loss = loss - 2 * np.log(np.maximum(np.abs(factor), FAINTEST))
+    return np.imag(series[1]), loss
 
 
 def _strength(pulse: PulseSource, omega: Real) -> Real:
