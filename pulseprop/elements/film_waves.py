@@ -6,7 +6,8 @@ the film known,
     r' = (r_01 + r e^2) / (1 + r_01 r e^2),    t' = t_01 e t / (1 + r_01 r e^2),
 
 r_01 = (y_0 - y_1)/(y_0 + y_1) with y = q in s and q/n^2 in p polarisation. No growing exponential appears,
-so thick and strongly absorbing films keep their digits. Source: M. Born, E. Wolf, Principles of Optics, section 1.6 (from memory).
+so thick and strongly absorbing films keep their digits. Source: M. Born, E. Wolf, Principles of Optics,
+section 1.6 (from memory).
 """
 
 from __future__ import annotations
