@@ -20,6 +20,7 @@ import numpy as np
 from pulseprop.constants import FEMTO, SPEED_OF_LIGHT
 from pulseprop.elements.group import Group
 from pulseprop.elements.telling import NOTICEABLE, Light
+from pulseprop.elements.words import in_unit
 from pulseprop.errors import InputError
 from pulseprop.material.response import View
 from pulseprop.units import show
@@ -51,8 +52,8 @@ class Lens(Group):
         if abs(sum(powers) - 1 / self.focal_length) > AGREEMENT * sum(map(abs, powers)):
             raise InputError(
                 "the focal lengths of the glasses do not make that of the lens",
-                value=f"1/({show(1 / sum(powers), 'mm')}) in sum" if sum(powers) else "no power in sum",
-                allowed=f"powers that add up to 1/({show(self.focal_length, 'mm')}) within {AGREEMENT:.0%}",
+                value=f"1/({in_unit(1 / sum(powers), 'mm')}) in sum" if sum(powers) else "no power in sum",
+                allowed=f"a sum of 1/({in_unit(self.focal_length, 'mm')}), within {AGREEMENT:.0%}",
                 place="focal_length",
             )
 
@@ -93,7 +94,7 @@ class Lens(Group):
             return (f"{self.name}: difference of arrival between marginal and axial ray: {self._missing()}",)
         order = "before" if difference >= 0 else "after"
         return (
-            f"{self.name}: the ray at {show(radius, 'mm', 3)} arrives {show(abs(difference), 'fs', 3)} "
+            f"{self.name}: the ray at {in_unit(radius, 'mm', 3)} arrives {show(abs(difference), 'fs', 3)} "
             f"{order} the axial one; the orders are those on the axis",
         )
 

@@ -11,10 +11,11 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from pulseprop.constants import FEMTO, TWO_PI_C
+from pulseprop.constants import FEMTO
 from pulseprop.elements.element import orders_of_element
 from pulseprop.elements.group import Group
 from pulseprop.elements.telling import NOTICEABLE, Light
+from pulseprop.elements.words import nanometres
 from pulseprop.material.response import View
 from pulseprop.units import show
 
@@ -60,7 +61,7 @@ class Waveplate(Group):
         """The same in words."""
         figures = self.figures
         other = "extraordinary" if self.axis == "ordinary" else "ordinary"
-        wavelength = show(TWO_PI_C / self.centre, "nm")
+        wavelength = nanometres(self.centre, 4)
         order = "later" if self.walk_off >= 0 else "earlier"
         return (
             f"{self.name}: {figures['retardance_waves']:.4g} waves between the axes at {wavelength} "

@@ -17,11 +17,11 @@ from numpy.typing import NDArray
 
 from pulseprop.elements.faces import Polarisation
 from pulseprop.elements.slab import Slab
+from pulseprop.elements.words import in_unit
 from pulseprop.errors import InputError
 from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
 from pulseprop.numerics.series import Numbers, Series
-from pulseprop.units import show
 
 __all__ = ["WedgePair", "glass_at"]
 
@@ -66,7 +66,7 @@ class WedgePair:
         if not self.glass >= 0:
             raise InputError(
                 "the beam would miss the wedges",
-                value=f"{show(self.glass, 'mm')} of glass",
+                value=f"{in_unit(self.glass, 'mm')} of glass",
                 allowed="a setting with 0 mm of glass or more",
             )
         self.plate  # noqa: B018  refuses an angle, a reflectance or faces that no plate has
@@ -116,9 +116,9 @@ class WedgePair:
         if away >= CLEARANCE * self.beam_radius:
             return ()
         return (
-            f"{self.name}: the beam's axis passes {show(away, 'mm', 3)} from the tips of the wedges, "
-            f"less than {CLEARANCE:g} beam radii of {show(self.beam_radius, 'mm', 3)}: part of it misses the "
-            "glass",
+            f"{self.name}: the beam's axis passes {in_unit(away, 'mm', 3)} from the tips of the wedges, "
+            f"less than {CLEARANCE:g} beam radii of {in_unit(self.beam_radius, 'mm', 3)}: part of it misses "
+            "the glass",
         )
 
     @property
