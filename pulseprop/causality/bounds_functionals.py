@@ -31,9 +31,9 @@ def quantity_weights(omega: float) -> Real:
     )
 
 
-def mass_derivatives(omega: float, s: Real) -> Real:
-    """1/(s - omega^2) and its derivatives with respect to omega: (ORDERS, masses)."""
-    inverse = 1 / (s - omega**2)
+def mass_derivatives(omega: float, away: Real) -> Real:
+    """1/(s - omega^2) and its derivatives with respect to omega, away = s - omega^2: (ORDERS, masses)."""
+    inverse = 1 / away
     step = 2 * omega * inverse
     return np.stack(
         [

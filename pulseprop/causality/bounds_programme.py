@@ -1,0 +1,184 @@
+"""Lowest and highest value of a linear functional over all materials of a class, proven from outside.
+
+Weights w of the rows prove  f . x >= w . (rows)  for every material whose columns obey w A <= f. Where columns
+violate that by up to r times their size, and all sizes add up to at most M in any material of the class (one
+more linear programme, solved once), the proof still holds less r M. The columns outside the band are a
+continuum: they are looked at on a fine grid, the worst places are refined, and join the programme until each
+end is proven to a small share of the distance between both.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.causality.bounds_materials import Functional, Materials
+from pulseprop.errors import NumericalLimit
+from pulseprop.numerics.box_programme import solve_box
+
+__all__ = ["Proofs"]
+
+Real = NDArray[np.float64]
+Interval = tuple[float, float]
+
+ROUNDS = 15
+WELL_WITHIN = 0.1
+"""Share of the uncertainties that a material leaves free from which on the programmes have room to start."""
+ROUGH = 0.5
+"""How far the proof of M may miss."""
+FIRST, LAST = 1e-4, 1e-9
+"""Accuracy of the first programme of an end, and the best that is asked for."""
+COUNTS = 0.01
+"""Places that violate by less than this share of the worst can wait."""
+TOWARDS = (1 / 3, 2 / 3)
+"""Shares of the way from a new place to the known ones beside it."""
+ZOOMS, SHARES = 5, np.linspace(0.0, 1.0, 9)
+
+
+class Proofs:
+    """All proofs about one class of materials: they share its matrix, its size, and the places found useful.
+
+    Raises NumericalLimit where no material of the class keeps within the limits, or nothing limits it.
+    """
+
+    def __init__(self, materials: Materials, places: Real | None = None) -> None:
+        self.materials = materials
+        self.places = materials.coarse if places is None else np.union1d(materials.coarse, places)
+        self.grid_columns = materials.continuum(materials.grid)
+        self.grid_sizes = self._sizes(self.grid_columns)
+        self.fixed_sizes = self._sizes(materials.fixed)
+        self._find_room()
+        self.total = self._total()
+        self._base = self.places
+
+    def interval(self, functional: Functional, given_away: float) -> Interval:
+        """Lowest and highest value, each proven to the share `given_away` of the width.
+
+        Raises NumericalLimit where the programmes are not solved.
+        """
+        low, high = _End(self, functional), _End(self, functional.negative())
+        for _ in range(ROUNDS):
+            width = max(-high.reached - low.reached, 0.0)
+            late = [end for end in (low, high) if end.reached - end.proven > given_away * width]
+            if not late:
+                break
+            for end in late:
+                end.improve(given_away * width)
+        # the next functional is like this one; those before it no longer matter
+        self.places = np.unique(np.concatenate((self._base, low.found, high.found)))
+        return low.proven, -high.proven
+
+    def solved(self, functional: Functional, places: Real, accuracy: float) -> tuple[Real, float]:
+        """Weights of the rows, and the value of the functional that these places reach."""
+        materials = self.materials
+        matrix = np.hstack([materials.fixed, materials.continuum(places)])
+        cost = np.append(functional.fixed, functional.continuum(places))
+        scale = float(np.max(np.abs(cost)))
+        found = solve_box(
+            matrix, materials.lower, materials.upper, cost=cost / scale, accuracy=accuracy, floor=1e-30
+        )
+        return found.dual * scale, found.value * scale
+
+    def worth(self, weights: Real) -> float:
+        """What the weights prove where no column violates them."""
+        held = weights != 0
+        limit = np.where(weights > 0, self.materials.lower, self.materials.upper)
+        return float(weights[held] @ limit[held])
+
+    def worst(self, functional: Functional, weights: Real) -> tuple[float, Real]:
+        """Largest violation of any column over its size; the places that violate."""
+        materials = self.materials
+        fixed = (weights @ materials.fixed - functional.fixed) / self.fixed_sizes
+        on_grid = (weights @ self.grid_columns - functional.continuum(materials.grid)) / self.grid_sizes
+        place, value = self._refined(functional, weights, on_grid)
+        largest = float(max(np.max(fixed), np.max(value)))
+        return largest, place[value > max(COUNTS * largest, 0.0)]
+
+    def _excess(self, functional: Functional, weights: Real, q: Real) -> Real:
+        """By how much the columns at q violate the weights, over their size."""
+        columns = self.materials.continuum(q)
+        return np.asarray((weights @ columns - functional.continuum(q)) / self._sizes(columns))
+
+    def _refined(self, functional: Functional, weights: Real, on_grid: Real) -> tuple[Real, Real]:
+        """All local maxima, between the points of the grid."""
+        padded = np.pad(on_grid, 1, constant_values=-np.inf)
+        peak = np.flatnonzero((on_grid >= padded[:-2]) & (on_grid >= padded[2:]))
+        least, most = self.materials.least[peak, None], self.materials.most[peak, None]
+        for _ in range(ZOOMS):
+            tried = least + (most - least) * SHARES
+            excess = self._excess(functional, weights, tried.ravel()).reshape(tried.shape)
+            best = np.arange(len(peak)), np.argmax(excess, axis=1)
+            place, value = tried[best], excess[best]
+            step = (most - least) * SHARES[1]
+            least, most = (
+                np.maximum(least, place[:, None] - step),
+                np.minimum(most, place[:, None] + step),
+            )
+        return place, value
+
+    def _sizes(self, columns: Real) -> Real:
+        """Largest entry of each, in units of the rows."""
+        return np.asarray(np.max(np.abs(columns) / self.materials.size[:, None], axis=0))
+
+    def _find_room(self) -> None:
+        """Places enough for a material that keeps well within all limits, or else the best there is."""
+        none = Functional(fixed=np.zeros(len(self.fixed_sizes)), continuum=np.zeros_like)
+        materials = self.materials
+        for _ in range(ROUNDS):
+            matrix = np.hstack([materials.fixed, materials.continuum(self.places)])
+            found = solve_box(
+                matrix, materials.lower, materials.upper, stretch=materials.size, accuracy=1e-2, floor=1.0
+            )
+            if found.t < -WELL_WITHIN:
+                return
+            _, more = self.worst(none, found.dual)
+            if not len(more):
+                break
+            self.places = np.union1d(self.places, more)
+        if found.t > 0:
+            raise NumericalLimit("no material of the class keeps within the limits")
+
+    def _total(self) -> float:
+        """M: no material of the class has columns whose sizes add up to more."""
+        sizes = Functional(
+            fixed=-self.fixed_sizes, continuum=lambda q: -self._sizes(self.materials.continuum(q))
+        )
+        for _ in range(ROUNDS):
+            weights, _ = self.solved(sizes, self.places, 1e-2)
+            worst, more = self.worst(sizes, weights)
+            if worst <= ROUGH:
+                return -self.worth(weights) / (1 - max(worst, 0.0))
+            self.places = np.union1d(self.places, more)
+        raise NumericalLimit("nothing limits the absorption outside the band")
+
+
+class _End:
+    """The least value of a functional: `proven` from below, `reached` by a material of the class."""
+
+    def __init__(self, proofs: Proofs, functional: Functional) -> None:
+        self.proofs, self.functional = proofs, functional
+        self.places, self.found = proofs.places, np.zeros(0)
+        self.proven, self.reached = -np.inf, np.inf
+        self._round(FIRST)
+
+    def improve(self, goal: float) -> None:
+        """One more round, towards a distance `goal` of proven and reached."""
+        self._round(max(min(FIRST, 0.1 * goal / abs(self.reached)), LAST))
+
+    def _round(self, accuracy: float) -> None:
+        """Solve, prove, and let the places join that would have helped."""
+        proofs, functional = self.proofs, self.functional
+        weights, self.reached = proofs.solved(functional, self.places, accuracy)
+        worst, more = proofs.worst(functional, weights)
+        self.proven = max(self.proven, proofs.worth(weights) - max(worst, 0.0) * proofs.total)
+        more = _with_neighbours(more, self.places)
+        self.places = np.union1d(self.places, more)
+        self.found = np.union1d(self.found, more)
+
+
+def _with_neighbours(more: Real, places: Real) -> Real:
+    """Places, and some towards the known ones beside each: alone they would only halve the gap each round."""
+    after = np.searchsorted(places, more)
+    left, right = places[np.maximum(after - 1, 0)], places[np.minimum(after, len(places) - 1)]
+    towards = [more + share * (end - more) for end in (left, right) for share in TOWARDS]
+    return np.unique(np.concatenate((more, *towards)))
