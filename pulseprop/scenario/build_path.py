@@ -8,7 +8,7 @@ from typing import Any
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
 from pulseprop.errors import PulsepropError
-from pulseprop.scenario import build_basics, build_compressors
+from pulseprop.scenario import build_basics, build_compressors, build_mirrors
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.read import Scenario
@@ -28,6 +28,9 @@ BUILDERS: Mapping[str, Builder] = {
     "stretcher": build_compressors.grating_pair,
     "prism pair": build_compressors.prism_pair,
     "grism pair": build_compressors.grism_pair,
+    "chirped mirror": build_mirrors.chirped_mirror,
+    "coating": build_mirrors.coating,
+    "gires-tournois mirror": build_mirrors.gires_tournois,
 }
 """A builder for each kind of element."""
 

@@ -14,6 +14,7 @@ from pulseprop.scenario.schema_compressors import (
     StretcherTable,
 )
 from pulseprop.scenario.schema_element import RIGHT_ANGLE, ElementTable, OrdersTable
+from pulseprop.scenario.schema_mirrors import ChirpedMirrorTable, CoatingTable, GiresTournoisTable
 
 __all__ = [
     "Element",
@@ -99,7 +100,10 @@ Element = Annotated[
     | GratingPairTable
     | StretcherTable
     | PrismPairTable
-    | GrismPairTable,
+    | GrismPairTable
+    | ChirpedMirrorTable
+    | CoatingTable
+    | GiresTournoisTable,
     Field(discriminator="kind"),
 ]
 """Any element, told apart by `kind`."""
