@@ -92,7 +92,8 @@ def blocks_of(
         elif cells is None or not _is_row(cells):
             waiting.append(line)
         else:
-            if not found or _begins(found[-1], cells, waiting, blank, is_heading):
+            apart = bool(waiting) or blank
+            if not found or (apart and _begins(found[-1], cells, waiting, blank, is_heading)):
                 found.append(Block(file=file, padded=padded, follows=bool(found), above=waiting))
             else:
                 found[-1].below += waiting

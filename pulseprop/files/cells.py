@@ -18,7 +18,7 @@ __all__ = ["decimal_commas", "is_missing", "looks_numeric", "numbers", "tidy"]
 Real = NDArray[np.float64]
 Lines = Sequence[int] | NDArray[np.int64]
 
-LOOKS_NUMERIC = re.compile(r"[+-]?(?=[.,]?[0-9])[0-9.,'’]+(?:[eEdD][+-]?[0-9]{1,4})?")
+LOOKS_NUMERIC = re.compile(r"[+-]?(?=[.,]?[0-9])[0-9.,'’]+(?:[eEdD][+-]?[0-9]{1,4})?(?:\s?%)?")
 MISSING = re.compile(
     r"""|[-–—_*?.]+|[+-]?nan|[+-]?inf(inity)?|n\.?\s?/?[ad]\.?|null|none|nil|missing"""
     r"""|\#(n/a|div/0!|value!|ref!|num!|name\?|null!)|over(flow)?|sat(urated)?""",

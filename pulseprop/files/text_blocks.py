@@ -14,6 +14,7 @@ __all__ = ["cells_of", "text_blocks"]
 
 ENOUGH = 200
 """Rows that decide on the separator."""
+DIGITS = frozenset("0123456789")
 
 
 def text_blocks(text: str, file: str, is_heading: Callable[[str], bool]) -> list[Block]:
@@ -31,13 +32,14 @@ def cells_of(line: str, separator: str | None) -> tuple[str, ...]:
         except csv.Error:
             row = line.split(separator)
         return tuple(cell.strip().strip('"').strip() for cell in row)
-    return tuple(part.strip() for part in line.split(separator))
+    return tuple(map(str.strip, line.split(separator)))
 
 
 def _lines(texts: list[str], separator: str | None) -> Iterator[Line]:
     for number, text in enumerate(texts, start=1):
         cells = cells_of(text, separator)
-        remark = text.lstrip().startswith(COMMENT) and not all(map(looks_numeric, filter(None, cells)))
+        marked = text[:1] not in DIGITS and text.lstrip().startswith(COMMENT)
+        remark = marked and not all(map(looks_numeric, filter(None, cells)))
         yield Line(number, text, None if remark else cells)
 
 

@@ -44,9 +44,7 @@ def first_sheet(data: bytes, file: str, is_heading: Callable[[str], bool]) -> Sh
         lines = [Line(number, _text(row), row) for number, row in _rows(rows_of(name))]
         try:
             blocks = blocks_of(lines, f"{file}[{name}]", is_heading, padded=True)
-        except InputError as error:
-            if any(sum(map(_is_digit, line.cells or ())) > 1 for line in lines):
-                raise error
+        except InputError:
             continue
         return Sheet(name=name, blocks=blocks, others=tuple(names[position + 1 :]))
     raise InputError(
@@ -94,7 +92,3 @@ def _cell(value: Any) -> str:
 
 def _text(cells: tuple[str, ...]) -> str:
     return " ".join(filter(None, cells))
-
-
-def _is_digit(cell: str) -> bool:
-    return cell[:1].isdigit()

@@ -12,12 +12,12 @@ from numpy.typing import NDArray
 from pulseprop.errors import InputError
 from pulseprop.material.wavelength_in_air import omegas_of_air_wavelengths
 from pulseprop.units import to_si
-from pulseprop.vetting.heading_words import Axis, Quantity
+from pulseprop.vetting.heading_words import Axis
 from pulseprop.vetting.kinds import FRACTIONS, KIND_OF, USUAL_UNIT
 from pulseprop.vetting.read_options import ReadOptions
 from pulseprop.vetting.remarks import Remark, axis_medium, index_medium, sample_thickness
 from pulseprop.vetting.sizes import is_percent
-from pulseprop.vetting.table import Column, Inference, SentTable
+from pulseprop.vetting.table import Column, Inference, Quantity, SentTable
 
 __all__ = ["Printed", "Source", "table_of"]
 

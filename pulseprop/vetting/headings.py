@@ -16,8 +16,11 @@ from pulseprop.vetting.heading_words import AXES, Axis, Meaning, is_attenuation,
 __all__ = ["Heading", "heading_of", "headings_of", "is_heading"]
 
 BRACKETED = re.compile(r"[\[({<]([^\[\](){}<>]*(?:\([^()]*\))?[^\[\](){}<>]*)[\])}>]")
-POWER_OF_TEN = re.compile(r"10\s*\^|10\s*\*\*|10[⁻⁺⁰¹²³⁴-⁹]|[x×*]\s*10|1e[-+]?[0-9]|10\s*-[0-9]|1000")
+POWER_OF_TEN = re.compile(r"10\s*\^|10\s*\*\*|10[⁻⁺⁰¹²³⁴-⁹]|[x×*]\s*10|\b1e[-+]?[0-9]|\b10\s?-[0-9]\b")
 LENGTH = re.compile(r"([0-9]+(?:[.,][0-9]+)?)\s*(um|µm|μm|mm|cm|m)\b")
+TEMPERATURE = re.compile(r"°\s?C|\bdeg ?C\b|[\[(]\s*K\s*[\])]|/\s*K\b|kelvin|celsius", re.IGNORECASE)
+CONDITION = re.compile(r"\s+(?:at|bei|@|à|a)\s+[0-9].*|\s*@.*")
+"""What a heading adds about the sample: "n at 20 °C"."""
 FARTHEST = 8
 """Lines above the rows among which headings are looked for."""
 LONGEST = 60
@@ -49,9 +52,10 @@ class Heading:
 def heading_of(text: str) -> Heading:
     """What one heading says."""
     text = text.strip().strip('"').strip("# ").strip()
-    if len(text) > LONGEST:
+    told = CONDITION.sub("", text)
+    if len(text) > LONGEST or TEMPERATURE.search(told):
         return Heading(text=text)
-    words, unit = _taken_apart(text)
+    words, unit = _taken_apart(told)
     meaning = meaning_of(words) if words else None
     if meaning is None and not words and unit:
         meaning = _axis_of(unit)

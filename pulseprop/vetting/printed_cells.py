@@ -7,30 +7,21 @@ significant digits (small entries go to finer places) and cells with exponents k
 
 from __future__ import annotations
 
+import re
 from collections.abc import Sequence
 
 import numpy as np
 from numpy.typing import NDArray
 
-__all__ = ["half_units", "places_and_digits"]
+__all__ = ["half_units", "significant_digits"]
 
 Real = NDArray[np.float64]
 
+EXPONENT = re.compile("[eEdD]")
 FINER = 2
 """Entries below a tenth of the largest, this many places finer than the others, show significant digits."""
 MOST_DIGITS = 8
 """More digits than these come from arithmetic, not from measurement."""
-
-
-def places_and_digits(cell: str) -> tuple[int, int]:
-    """Decimal places and significant digits: (3, 4) for "1.450", (5, 3) for "1.20e-3"; (0, 0) for no
-    number."""
-    mantissa, _, exponent = cell.replace(",", ".").lower().replace("d", "e").partition("e")
-    whole, _, rest = mantissa.lstrip("+-").partition(".")
-    try:
-        return len(rest) - int(exponent or 0), len((whole + rest).lstrip("0"))
-    except ValueError:
-        return 0, 0
 
 
 def half_units(cells: Sequence[str], values: Real) -> Real:
@@ -38,23 +29,41 @@ def half_units(cells: Sequence[str], values: Real) -> Real:
 
     values: (R,), the numbers of the cells; NaN for missing ones, for which the result means nothing.
     """
-    places, digits = (np.array(part) for part in zip(*map(places_and_digits, cells), strict=True))
     known = np.isfinite(values)
-    if not known.any():
-        return np.zeros(len(values))
-    size = np.abs(values)
-    largest = float(np.max(size[known]))
-    if largest == 0:
-        return np.full(len(values), 0.5 * 10.0 ** -float(np.max(places[known])))
+    size = np.abs(np.where(known, values, 0.0))
+    largest = float(np.max(size, initial=0.0))
+    plain = not any(EXPONENT.search(cell) for cell, kept in zip(cells, known, strict=True) if kept)
+    places = _decimal_places(cells) if plain else np.zeros(len(cells), dtype=np.int64)
+    finest = int(np.max(places[known], initial=0))
     large = known & (size >= largest / 10)
-    coarsest = np.floor(np.log10(largest)) + 1 - MOST_DIGITS
-    if _has_exponent(cells) or np.max(places[known]) >= np.max(places[large]) + FINER:
-        smallest = np.min(size[known & (size > 0)])
-        leading = np.floor(np.log10(np.where(known & (size > 0), size, smallest)))
-        used = min(int(np.max(digits[known])), MOST_DIGITS)
-        return np.asarray(0.5 * 10.0 ** (leading + 1 - used))
-    return np.full(len(values), 0.5 * 10.0 ** max(-float(np.max(places[known])), coarsest))
+    if largest > 0 and (not plain or finest >= np.max(places[large]) + FINER):
+        return _of_digits(cells, size)
+    coarsest = _leading(largest) + 1 - MOST_DIGITS if largest > 0 else -finest
+    return np.full(len(values), 0.5 * 10.0 ** max(-finest, coarsest))
 
 
-def _has_exponent(cells: Sequence[str]) -> bool:
-    return any("e" in cell or "E" in cell for cell in cells)
+def _of_digits(cells: Sequence[str], size: Real) -> Real:
+    """Half a unit of the last significant digit, of which each cell has as many as any."""
+    used = min(max(map(significant_digits, cells)), MOST_DIGITS)
+    smallest = float(np.min(size[size > 0]))
+    return np.asarray(0.5 * 10.0 ** (_leading(np.where(size > 0, size, smallest)) + 1 - used))
+
+
+def _leading(size: Real | float) -> Real:
+    """Power of ten of the first digit; the smallest doubles may lie one beside it."""
+    return np.asarray(np.floor(np.log10(size)))
+
+
+def _decimal_places(cells: Sequence[str]) -> NDArray[np.int64]:
+    """Decimal places of each cell without an exponent, (R,)."""
+    signs = [max(cell.rfind("."), cell.rfind(",")) for cell in cells]
+    return np.array(
+        [len(cell) - 1 - sign if sign >= 0 else 0 for cell, sign in zip(cells, signs, strict=True)],
+        dtype=np.int64,
+    )
+
+
+def significant_digits(cell: str) -> int:
+    """3 for "1.20e-3" and for "0.0120", 0 for no number."""
+    mantissa = EXPONENT.split(cell)[0].replace(".", "").replace(",", "")
+    return len(mantissa.lstrip("+-0"))

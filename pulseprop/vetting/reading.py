@@ -72,8 +72,19 @@ def _of_workbook(data: bytes, source: Source) -> list[SentTable]:
 
 
 def _of_blocks(blocks: Sequence[Block], source: Source, notes: Sequence[Inference]) -> list[SentTable]:
-    tables = [table for block in blocks for table in tables_of_block(source, block, notes)]
+    tables: list[SentTable] = []
+    for number, block in enumerate(blocks):
+        options = _options_of_block(source.options, blocks, number)
+        tables += tables_of_block(replace(source, options=options), block, notes)
     return joined(tables)
+
+
+def _options_of_block(options: ReadOptions, blocks: Sequence[Block], number: int) -> ReadOptions:
+    """ "wavelength,n,k" for a block of wavelength and n and one of wavelength and k names both."""
+    names = options.columns.split(",") if options.columns else []
+    if len(names) < 3 or len(names) != len(blocks) + 1 or any(block.width != 2 for block in blocks):
+        return options
+    return replace(options, columns=f"{names[0]},{names[number + 1]}")
 
 
 def _check_kind(data: bytes, file: str) -> None:

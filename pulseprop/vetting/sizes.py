@@ -8,7 +8,8 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.vetting.heading_words import Axis, Quantity
+from pulseprop.vetting.heading_words import Axis
+from pulseprop.vetting.table import Quantity
 
 __all__ = ["axis_by_size", "is_percent", "quantity_by_size", "unit_by_size"]
 

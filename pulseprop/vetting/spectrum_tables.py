@@ -12,12 +12,12 @@ from pulseprop.errors import InputError
 from pulseprop.files.jcamp import Spectrum
 from pulseprop.vetting.assemble import Printed, Source, table_of
 from pulseprop.vetting.heading_units import AXIS_OF_DIMENSION, dimension
-from pulseprop.vetting.heading_words import AXES, QUANTITIES, Quantity
+from pulseprop.vetting.heading_words import AXES, QUANTITIES
 from pulseprop.vetting.headings import Heading, heading_of
 from pulseprop.vetting.read_options import named_columns
 from pulseprop.vetting.remarks import sample_thickness
 from pulseprop.vetting.sizes import unit_by_size
-from pulseprop.vetting.table import Inference, SentTable
+from pulseprop.vetting.table import Inference, Quantity, SentTable
 
 __all__ = ["table_of_spectrum"]
 

@@ -11,9 +11,10 @@ import re
 
 from pulseprop.errors import InputError
 from pulseprop.units import quantity
-from pulseprop.vetting.heading_words import QUANTITIES, Quantity, meaning_of
+from pulseprop.vetting.heading_words import QUANTITIES, meaning_of
 from pulseprop.vetting.kinds import FRACTIONS, KIND_OF
 from pulseprop.vetting.request import Stated
+from pulseprop.vetting.table import Quantity
 
 __all__ = ["uncertainties_in"]
 
