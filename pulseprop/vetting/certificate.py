@@ -52,7 +52,8 @@ def judge_certificate(certificate: Certificate, request: Request, *, date: str, 
     findings = tuple(_findings(certificate, claim, values, proof, band))
     factor = proof.least_factor.factor if proof is not None else None
     stated = all(value.stated for value in values)
-    proven = factor is not None and factor > 1 and stated and not inferred
+    holds = not inferred or _holds_without_guess(certificate, values)
+    proven = factor is not None and factor > 1 and stated and holds
     repaired = any(finding.code == "does-not-follow" and finding.repair for finding in findings)
     at = _Guaranteed(proof, stated)
     return told(
@@ -60,7 +61,7 @@ def judge_certificate(certificate: Certificate, request: Request, *, date: str, 
         sha256=certificate.sha256,
         stamp=Stamp(date=date, version=version),
         what=_what(certificate, claim),
-        verdict=verdict_of(findings, proven=proven, mended=factor if repaired and not inferred else None),
+        verdict=verdict_of(findings, proven=proven, mended=factor if repaired and holds else None),
         headline=_headline(certificate, findings, factor),
         findings=findings,
         factor=factor,
@@ -136,9 +137,7 @@ def _required(text: str, at: _Guaranteed) -> RequirementAnswer:
 
 def _band(certificate: Certificate, request: Request, claim: Claim) -> tuple[Band, list[dict[str, str]]]:
     """The transparent band: as stated, the range of the medium named, or a little more than the numbers."""
-    places = [value.omega for value in certificate.values]
-    if any(value.quantity == "V_d" for value in certificate.values):
-        places += [LINE_F, LINE_C]
+    places = _places(certificate)
     low, high = min(places), max(places)
     stated = request.transparent or certificate.transparent
     if stated is not None:
@@ -155,6 +154,19 @@ def _band(certificate: Certificate, request: Request, claim: Claim) -> tuple[Ban
             "overrule": 'transparent = ["300 nm", "2.5 um"] in the file',
         }
     ]
+
+
+def _holds_without_guess(certificate: Certificate, values: Sequence[PrintedValue]) -> bool:
+    """Whether the numbers contradict each other even if the material absorbs just beyond the last of them."""
+    places = _places(certificate)
+    return len(values) >= FEWEST and proof_of(values, (min(places), max(places))).least_factor.factor > 1
+
+
+def _places(certificate: Certificate) -> list[float]:
+    """Where something is printed, rad/s; of V_d its three lines."""
+    places = [value.omega for value in certificate.values]
+    abbe = any(value.quantity == "V_d" for value in certificate.values)
+    return places + ([LINE_F, LINE_C] if abbe else [])
 
 
 def _findings(

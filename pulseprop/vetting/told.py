@@ -9,6 +9,7 @@ from typing import Any
 from pulseprop.vetting.requirement_answer import DECISION_RULE
 from pulseprop.vetting.result import (
     Bounds,
+    ConflictRow,
     Finding,
     ImpliedUncertainty,
     RequirementAnswer,
@@ -53,6 +54,7 @@ def told(
     gap: float | None = None,
     stated: bool = False,
     implied: ImpliedUncertainty | None = None,
+    conflict: tuple[ConflictRow, ...] = (),
     bounds: tuple[Bounds, ...] = (),
     requirements: tuple[RequirementAnswer, ...] = (),
     inferred: tuple[dict[str, str], ...] = (),
@@ -76,7 +78,7 @@ def told(
         uncertainty_stated=stated,
         implied_uncertainty=implied or ImpliedUncertainty(n=None, k=None),
         factor_without_conflict_rows=None,
-        conflict=(),
+        conflict=conflict,
         bounds=bounds,
         requirements=requirements,
         findings=findings,
