@@ -14,7 +14,14 @@ from pulseprop.vetting.request import Request
 from pulseprop.vetting.table import Column, Quantity, SentTable
 from pulseprop.vetting.uncertainty import column_uncertainty
 
-__all__ = ["ABSORPTIONS", "AbsorptionRows", "absorption_column", "absorption_rows", "surface_reflectance"]
+__all__ = [
+    "ABSORPTIONS",
+    "AbsorptionRows",
+    "absorption_column",
+    "absorption_rows",
+    "has_constant_index",
+    "surface_reflectance",
+]
 
 Real = NDArray[np.float64]
 
@@ -27,8 +34,11 @@ ABSORPTIONS: tuple[Quantity, ...] = (
     "transmittance",
 )
 """In the order in which they are preferred where a table has several."""
-TRANSMITTANCES = ("internal_transmittance", "transmittance")
+TRANSMITTANCES: tuple[Quantity, ...] = ("internal_transmittance", "transmittance")
 NEED_THICKNESS = ("napierian", "absorbance", *TRANSMITTANCES)
+
+MANY = 5
+"""Rows from which on an index that is the same in all of them says something."""
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
@@ -43,6 +53,14 @@ class AbsorptionRows:
 def absorption_column(table: SentTable) -> Column | None:
     """The column that k is taken from."""
     return next((known for name in ABSORPTIONS if (known := table.column(name))), None)
+
+
+def has_constant_index(table: SentTable) -> bool:
+    """Whether the index is one number in all rows, to its printed digits."""
+    column = table.column("n")
+    if column is None or len(column.values) < MANY:
+        return False
+    return bool(np.nanmax(column.values) - np.nanmin(column.values) <= 2 * np.max(column.half_unit))
 
 
 def absorption_rows(table: SentTable, column: Column, request: Request) -> AbsorptionRows | str:

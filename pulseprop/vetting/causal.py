@@ -37,7 +37,8 @@ class Unresolved:
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Standing:
-    """factor: of the data's uncertainties. gap: certified, relative. conflict: empty where factor is at most 1.
+    """factor: of the data's uncertainties. gap: certified, relative. conflict: empty where factor is at most
+    1.
 
     coarse: places (rad/s) of features of k with fewer than five rows over their width. index, k: of the
     material of least factor, at the data's omega and k_omega; None where there is none.

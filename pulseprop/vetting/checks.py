@@ -12,7 +12,13 @@ from pulseprop.vetting.checks_amounts import (
     negative_absorption,
     transmittance_too_high,
 )
-from pulseprop.vetting.checks_band import ceiling_rows, coarse_features, falling_index, narrow_lines
+from pulseprop.vetting.checks_band import (
+    ceiling_rows,
+    coarse_features,
+    constant_index,
+    falling_index,
+    narrow_lines,
+)
 from pulseprop.vetting.checks_catalogue import claimed_medium, nearest_medium, wavelength_unit
 from pulseprop.vetting.checks_digits import too_few_digits
 from pulseprop.vetting.checks_printed import abbe_number, printed_orders
@@ -24,6 +30,7 @@ from pulseprop.vetting.result import Finding
 __all__ = ["CHECKS", "found_in"]
 
 CHECKS: tuple[Callable[[Case], Iterator[Finding]], ...] = (
+    constant_index,
     index_not_positive,
     negative_absorption,
     transmittance_too_high,
@@ -52,7 +59,9 @@ FOLLOWS = ("falling-index",)
 
 
 def found_in(case: Case, few: FewRows | None) -> tuple[Finding, ...]:
-    """All findings, what is named with its repair first, the rest by severity; few: rows that carry the proof."""
+    """All findings, what is named with its repair first, the rest by severity; few: rows that carry the
+    proof.
+    """
     named = [*displaced(case, few)] or [*mended_by(case)]
     others = [finding for check in CHECKS for finding in check(case)]
     if named:

@@ -83,8 +83,8 @@ def fractions_called_percent(case: Case) -> Iterator[Finding]:
             yield Finding(
                 code="percent-fraction",
                 severity="warning",
-                text=f"No transmittance is above {100 * highest:.3g} %: as fractions the same numbers would be "
-                "those of a clear sample.",
+                text=f"No transmittance is above {100 * highest:.3g} %: as fractions the same numbers would "
+                "be those of a clear sample.",
                 repair=f"read the {column.quantity.replace('_', ' ')} column as fractions",
             )
 
@@ -95,9 +95,9 @@ def columns_disagree(case: Case) -> Iterator[Finding]:
     for name in ABSORPTIONS:
         column = case.table.column(name)
         if column is not None:
-            rows = absorption_rows(case.table, column, case.request)
-            if isinstance(rows, AbsorptionRows):
-                known.append((column, rows))
+            found = absorption_rows(case.table, column, case.request)
+            if isinstance(found, AbsorptionRows):
+                known.append((column, found))
     for (one, first), (other, second) in combinations(known, 2):
         apart = np.abs(first.k - second.k) > first.error + second.error
         rows = np.flatnonzero(apart & ~first.least & ~second.least)

@@ -18,8 +18,8 @@ __all__ = ["index_not_positive", "negative_absorption", "transmittance_too_high"
 Real = NDArray[np.float64]
 
 BASELINE = 0.02
-"""Share of the largest absorption (or of full transmittance) up to which an offset is that of a baseline, where
-no uncertainty is stated (common practice, no source)."""
+"""Share of the largest absorption (or of full transmittance) up to which an offset is that of a baseline,
+where no uncertainty is stated (common practice, no source)."""
 
 
 def negative_absorption(case: Case) -> Iterator[Finding]:

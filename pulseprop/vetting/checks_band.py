@@ -1,4 +1,6 @@
-"""Bands: an index that falls where nothing absorbs, lines narrower than the instrument, rows at its ceiling."""
+"""Bands: an index that falls where nothing absorbs, lines narrower than the instrument, rows at its
+ceiling.
+"""
 
 from __future__ import annotations
 
@@ -8,19 +10,24 @@ from collections.abc import Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.vetting.absorption_rows import AbsorptionRows, absorption_column, absorption_rows
+from pulseprop.vetting.absorption_rows import (
+    AbsorptionRows,
+    absorption_column,
+    absorption_rows,
+    has_constant_index,
+)
 from pulseprop.vetting.case import Case
 from pulseprop.vetting.ceiling import at_ceiling
 from pulseprop.vetting.peaks import peaks
 from pulseprop.vetting.result import Finding
 
-__all__ = ["ceiling_rows", "coarse_features", "falling_index", "narrow_lines"]
+__all__ = ["ceiling_rows", "coarse_features", "constant_index", "falling_index", "narrow_lines"]
 
 Real = NDArray[np.float64]
 
 SEEN = 1.2
-"""Width in slit widths up to which a line may be the instrument's: a true width of two thirds of the slit shows
-so (widths add as squares)."""
+"""Width in slit widths up to which a line may be the instrument's: a true width of two thirds of the slit
+shows so (widths add as squares)."""
 
 
 def falling_index(case: Case) -> Iterator[Finding]:
@@ -40,11 +47,22 @@ def falling_index(case: Case) -> Iterator[Finding]:
     yield Finding(
         code="falling-index",
         severity="error",
-        text=f"The index falls towards higher frequency by up to {drop:.2g} a row, in {100 * share:.0f} % of the "
-        "steps through the band where nothing is said to absorb; in a transparent band it can only rise. "
-        "Either it absorbs there, and the absorption belongs into the table, or the numbers are wrong.",
+        text=f"The index falls towards higher frequency by up to {drop:.2g} a row, in {100 * share:.0f} % "
+        "of the steps through the band where nothing is said to absorb; in a transparent band it can only "
+        "rise. Either it absorbs there, and the absorption belongs into the table, or the numbers are wrong.",
         rows=case.lines(np.sort(rows[rows >= 0])),
     )
+
+
+def constant_index(case: Case) -> Iterator[Finding]:
+    """One number for the index of a material that absorbs: a filler, for the absorption bends the index."""
+    if has_constant_index(case.table) and absorption_column(case.table) is not None:
+        yield Finding(
+            code="constant-index",
+            severity="error" if case.factor is not None and case.factor > 1 else "note",
+            text="The index is one number in all rows, though the sample absorbs: absorption bends the "
+            "index, so this is a filler and no measurement.",
+        )
 
 
 def narrow_lines(case: Case) -> Iterator[Finding]:
@@ -73,8 +91,8 @@ def coarse_features(case: Case) -> Iterator[Finding]:
     yield Finding(
         code="coarse-rows",
         severity="warning",
-        text=f"Fewer than five rows lie over the width of the absorption at {places}: between the rows it may "
-        "have any shape, so the answer is never more than doubtful and gives no bounds of GVD there.",
+        text=f"Fewer than five rows lie over the width of the absorption at {places}: between the rows it "
+        "may have any shape, so the answer is never more than doubtful and gives no bounds of GVD there.",
     )
 
 
@@ -87,8 +105,8 @@ def ceiling_rows(case: Case) -> Iterator[Finding]:
             yield Finding(
                 code="instrument-ceiling",
                 severity="warning" if ceiling.inferred else "note",
-                text=f"{int(ceiling.rows.sum())} rows stand at the instrument's ceiling{found}: they are lower "
-                "limits of the absorption and were used as such, not as data.",
+                text=f"{int(ceiling.rows.sum())} rows stand at the instrument's ceiling{found}: they are "
+                "lower limits of the absorption and were used as such, not as data.",
                 rows=case.lines(np.flatnonzero(ceiling.rows)),
             )
 

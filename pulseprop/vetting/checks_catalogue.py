@@ -1,5 +1,5 @@
-"""The table beside the catalogue: what it is said to be, what it is nearest to, units and air that only another
-source can show."""
+"""The table beside the catalogue: what it is said to be, what it is nearest to, units and air that only
+another source can show."""
 
 from __future__ import annotations
 
@@ -20,7 +20,9 @@ __all__ = ["claimed_medium", "claimed_of", "nearest_medium", "wavelength_unit"]
 Real = NDArray[np.float64]
 
 MELT = 1e-3
-"""Difference from a catalogue index that melts, cuts and temperatures explain (common practice, no source)."""
+"""Difference from a catalogue index that melts, cuts and temperatures explain (common practice, no
+source).
+"""
 FAR = 0.02
 """Difference of index from which on the nearest medium is no likeness."""
 ALIKE = 2e-4
@@ -88,16 +90,16 @@ def wavelength_unit(case: Case) -> Iterator[Finding]:
     for scale in SCALES:
         then = likeness(claim[0], omega / scale, index) if claim else nearest(omega / scale, index)
         limit = MELT if claim else ALIKE
-        if then is None or then.distance > limit or then.rows < len(omega):
+        if then is None or then.distance > limit or not then.whole:
             continue
         if now is not None and now.distance < BETTER * then.distance + ALIKE:
             continue
         yield Finding(
             code="axis-unit",
             severity="error",
-            text=f"With the axis in {case.table.axis_unit} the table is like no such medium; with wavelengths "
-            f"{scale:g} times as long it is {then.medium.name} within {then.distance:.1g}. A unit of "
-            "wavelength is mixed up.",
+            text=f"With the axis in {case.table.axis_unit} the table is like no such medium; with "
+            f"wavelengths {scale:g} times as long it is {then.medium.name} within {then.distance:.1g}. A "
+            "unit of wavelength is mixed up.",
             repair=f"read the wavelengths as {scale:g} times as long",
             factor_after_repair=case.factor,
         )

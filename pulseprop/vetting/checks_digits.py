@@ -14,7 +14,7 @@ from pulseprop.vetting.case import Case
 from pulseprop.vetting.guaranteed import at_implied_uncertainty, guaranteed
 from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_answer import FS2_PER_MM
-from pulseprop.vetting.result import Bounds, Finding
+from pulseprop.vetting.result import Finding
 
 __all__ = ["too_few_digits"]
 
@@ -29,7 +29,7 @@ MORE = 4
 def too_few_digits(case: Case) -> Iterator[Finding]:
     """For each asked GVD whose bounds are too wide: how well the index has to be known."""
     asked = _asked(case)
-    if not asked or case.standing is None or case.standing.index is None:
+    if not asked:
         return
     for bounds, omega, wanted in zip(
         guaranteed(case, np.array(list(asked))), asked, asked.values(), strict=True
@@ -39,7 +39,7 @@ def too_few_digits(case: Case) -> Iterator[Finding]:
             continue
         limit = wanted or max(LOOSE * abs(sum(gvd) / 2), SMALL * LOOSE)
         if gvd[1] - gvd[0] > limit:
-            yield _finding(case, bounds, omega, limit)
+            yield _finding(case, bounds.wavelength_nm, omega, gvd, limit)
 
 
 def _asked(case: Case) -> dict[float, float | None]:
@@ -56,23 +56,25 @@ def _asked(case: Case) -> dict[float, float | None]:
     return asked
 
 
-def _finding(case: Case, bounds: Bounds, omega: float, limit: float) -> Finding:
+def _finding(case: Case, nm: float, omega: float, gvd: tuple[float, float], limit: float) -> Finding:
     data, _ = at_implied_uncertainty(case)
-    assert data is not None and bounds.gvd_fs2_per_mm is not None
-    low, high = bounds.gvd_fs2_per_mm
-    error = float(np.median(data.index_error))
+    error = float(np.median(data.index_error)) if data is not None else 0.0
+    low, high = gvd
     text = (
-        f"An index known to +-{error:.1g} leaves the GVD at {bounds.wavelength_nm:.6g} nm anywhere from {low:.4g} "
-        f"to {high:.4g} fs^2/mm. "
+        f"An index known to +-{error:.1g} leaves the GVD at {nm:.6g} nm anywhere from "
+        f"{low:.4g} to {high:.4g} fs^2/mm. "
     )
-    needed = _needed(case, data, omega, limit)
+    index = case.standing.index if case.standing is not None else None
+    if data is None or index is None:
+        return Finding(code="too-few-digits", severity="warning", text=text.rstrip())
+    needed = _needed(case, replace(data, index=index), omega, limit)
     if needed is None:
         text += f"Even an index {10**MORE:,} times better known does not narrow it to {limit:.2g} fs^2/mm."
     else:
         digits = math.ceil(-math.log10(2 * needed) - 1e-9)
         text += (
-            f"To know it within {limit:.2g} fs^2/mm the index has to be true to about +-{needed:.0e}, which takes "
-            f"{digits} decimals."
+            f"To know it within {limit:.2g} fs^2/mm the index has to be true to about +-{needed:.0e}, which "
+            f"takes {digits} decimals."
         )
     return Finding(code="too-few-digits", severity="warning", text=text)
 
@@ -80,13 +82,11 @@ def _finding(case: Case, bounds: Bounds, omega: float, limit: float) -> Finding:
 def _needed(case: Case, data: PassiveData, omega: float, limit: float) -> float | None:
     """The uncertainty of n at which the bounds are no wider than `limit`, by powers of ten.
 
-    About the material of least factor, for the printed digits themselves may have no material at the finer
-    uncertainty.
+    data: with the index of the material of least factor, for the printed digits themselves may have no
+    material at the finer uncertainty.
     """
-    assert case.standing is not None
-    centre = replace(data, index=case.standing.index)
     for digits in range(1, MORE + 1):
-        finer = replace(centre, index_error=data.index_error * 10.0**-digits)
+        finer = replace(data, index_error=data.index_error * 10.0**-digits)
         try:
             gvd = case.causality.bounds(finer, np.array([omega]))[0].gvd_fs2_per_mm
         except NumericalLimit:

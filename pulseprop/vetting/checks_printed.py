@@ -82,17 +82,15 @@ def abbe_number(case: Case) -> Iterator[Finding]:
     places = len(re.split("[.,]", found[1])[1]) if re.search("[.,]", found[1]) else 0
     d, f, c = (bounds.index for bounds in guaranteed(case, np.array([LINE_D, LINE_F, LINE_C])))
     between = abbe_interval(d, f, c) if d and f and c else None
-    if (
-        between is None
-        or (between[0] <= printed + 0.5 * 10.0**-places
-        and printed - 0.5 * 10.0**-places <= between[1])
+    if between is None or (
+        between[0] <= printed + 0.5 * 10.0**-places and printed - 0.5 * 10.0**-places <= between[1]
     ):
         return
     yield Finding(
         code="abbe-number",
         severity="error",
-        text=f"The printed Abbe number, {printed:g}, does not follow from the printed index, which guarantees "
-        f"{between[0]:.2f} to {between[1]:.2f}.",
+        text=f"The printed Abbe number, {printed:g}, does not follow from the printed index, which "
+        f"guarantees {between[0]:.2f} to {between[1]:.2f}.",
     )
 
 
@@ -134,8 +132,8 @@ def _finding(case: Case, column: Column, compared: _Compared) -> Finding:
     row = int(compared.rows[worst])
     text = (
         f"The printed {_name(column)} does not follow from the printed index: in row {case.lines([row])[0]} "
-        f"({case.wavelength_nm(row):.6g} nm) {compared.values[worst] / unit:.6g}{words} is printed, and the index "
-        f"guarantees {compared.low[worst] / unit:.6g} to {compared.high[worst] / unit:.6g}{words}."
+        f"({case.wavelength_nm(row):.6g} nm) {compared.values[worst] / unit:.6g}{words} is printed, and the "
+        f"index guarantees {compared.low[worst] / unit:.6g} to {compared.high[worst] / unit:.6g}{words}."
     )
     repair = _repair(column, case.table.columns, compared)
     return Finding(

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 import numpy as np
+from numpy.typing import NDArray
 
 from pulseprop.vetting.case import Case
 from pulseprop.vetting.result import Finding
@@ -23,13 +24,14 @@ def double_rows(case: Case) -> Iterator[Finding]:
             f"that differ by {repeat.factor:.3g} times what their uncertainties allow.",
             rows=case.lines(sorted(repeat.rows)),
         )
-    _, first, count = np.unique(table.omega, return_index=True, return_counts=True)
+    _, first = np.unique(table.omega, return_index=True)
     again = np.setdiff1d(np.arange(len(table.omega)), first)
     if len(again) and not (repeat is not None and repeat.factor > 1):
         yield Finding(
             code="double-row",
             severity="note",
-            text=f"{len(again)} wavelengths stand more than once, with values that agree; their mean was used.",
+            text=f"{len(again)} wavelengths stand more than once, with values that agree; their mean was "
+            "used.",
             rows=case.lines(again),
         )
 
@@ -50,7 +52,8 @@ def rows_out_of_order(case: Case) -> Iterator[Finding]:
         code="rows-out-of-order",
         severity="warning" if few else "note",
         text=(
-            "A wavelength breaks the order of the rows: a slip in the wavelength, or a row in the wrong place."
+            "A wavelength breaks the order of the rows: a slip in the wavelength, or a row in the wrong "
+            "place."
             if few
             else "The rows are in no order; they were sorted."
         ),
@@ -66,13 +69,13 @@ def empty_cells(case: Case) -> Iterator[Finding]:
             yield Finding(
                 code="empty-cell",
                 severity="note",
-                text=f"{len(rows)} cells of the {column.quantity.replace('_', ' ')} column hold no number and "
-                "were left out.",
+                text=f"{len(rows)} cells of the {column.quantity.replace('_', ' ')} column hold no number "
+                "and were left out.",
                 rows=case.lines(rows),
             )
 
 
-def _odd_one(values: np.ndarray, step: int, direction: float) -> int:
+def _odd_one(values: NDArray[np.float64], step: int, direction: float) -> int:
     """Of the two rows of a step in the wrong direction, the one without which the order holds."""
     without_first = step == 0 or (values[step + 1] - values[step - 1]) * direction > 0
     return step if without_first else step + 1

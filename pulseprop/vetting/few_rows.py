@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -112,14 +113,10 @@ def _without(data: PassiveData, part: Part) -> PassiveData:
             index=np.delete(data.index, part.row),
             index_error=np.delete(data.index_error, part.row),
         )
-    assert data.k_omega is not None and data.k is not None and data.k_error is not None
-    return replace(
-        data,
-        k_omega=np.delete(data.k_omega, part.row),
-        k=np.delete(data.k, part.row),
-        k_error=np.delete(data.k_error, part.row),
-        least=None if data.least is None else np.delete(data.least, part.row),
-    )
+    columns = ("k_omega", "k", "k_error", "least")
+    known = {name: column for name in columns if (column := getattr(data, name)) is not None}
+    rest: dict[str, Any] = {name: np.delete(column, part.row) for name, column in known.items()}
+    return replace(data, **rest)
 
 
 def _fitting(case: Case, few: FewRows) -> list[Interval | None]:

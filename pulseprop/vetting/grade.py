@@ -1,8 +1,8 @@
 """The uncertainty that the numbers imply, and how it stands beside what such measurements usually reach.
 
-What methods reach is common practice, no source: minimum deviation of a prism 1e-6 to 1e-5, refractometers and
-routine prisms to 1e-4, interferometry of plates to 1e-3, ellipsometry 1e-3 to 1e-2, films by reflection and
-transmission to 3e-2. Of gases the refractivity n - 1 is what is measured.
+What methods reach is common practice, no source: minimum deviation of a prism 1e-6 to 1e-5, refractometers
+and routine prisms to 1e-4, interferometry of plates to 1e-3, ellipsometry 1e-3 to 1e-2, films by reflection
+and transmission to 3e-2. Of gases the refractivity n - 1 is what is measured.
 """
 
 from __future__ import annotations
@@ -37,7 +37,9 @@ DILUTE = 0.01
 
 @dataclass(frozen=True)
 class Grade:
-    """index: implied uncertainty relative to n (to n - 1 of a gas). gross: more than any usual measurement."""
+    """index: implied uncertainty relative to n (to n - 1 of a gas). gross: more than any usual
+    measurement.
+    """
 
     index: float
     gross: bool

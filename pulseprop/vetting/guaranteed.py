@@ -42,7 +42,9 @@ def guaranteed(case: Case, omega: Real) -> Sequence[Bounds]:
 
 
 def at_implied_uncertainty(case: Case) -> tuple[PassiveData | None, str]:
-    """The data, with unstated uncertainties enlarged to where the numbers can be true; or why there are none."""
+    """The data, with unstated uncertainties enlarged to where the numbers can be true; or why there are
+    none.
+    """
     data, factor = case.numbers.data, case.factor
     if data is None or case.standing is None or factor is None:
         return None, case.numbers.reason or case.trouble

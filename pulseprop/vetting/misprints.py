@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from itertools import pairwise
 
 __all__ = ["Misprint", "misprint"]
 
@@ -37,7 +38,7 @@ def misprint(printed: str, fit: tuple[float, float]) -> Misprint | None:
 def _exchanged(text: str) -> list[str]:
     places = [at for at, sign in enumerate(text) if sign.isdigit()]
     found = []
-    for one, other in zip(places, places[1:], strict=False):
+    for one, other in pairwise(places):
         if text[one] != text[other]:
             signs = list(text)
             signs[one], signs[other] = signs[other], signs[one]

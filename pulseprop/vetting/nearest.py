@@ -12,7 +12,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
-from pulseprop.material.catalogue import names
+from pulseprop.material.catalogue import names, record
 from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.medium import Medium
 from pulseprop.vetting.table import SentTable
@@ -25,19 +25,18 @@ PLACES = 24
 """Rows at which media are compared."""
 SHARED = 0.5
 """Share of the rows that must lie in a record's range."""
-SHORTEST = 2
-"""Letters of a name that is looked for in a title."""
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Likeness:
-    """offset: table minus medium, mean over the shared rows. shape: largest departure from that mean. rows: how
-    many were shared."""
+    """offset: table minus medium, mean over the compared rows. shape: largest departure from that mean. rows:
+    how many were compared. whole: whether all rows lie in the record's range."""
 
     medium: Medium
     offset: float
     shape: float
     rows: int
+    whole: bool
 
     @property
     def distance(self) -> float:
@@ -46,28 +45,36 @@ class Likeness:
 
 
 def likeness(medium: Medium, omega: Real, index: Real) -> Likeness | None:
-    """How a table's index (R,) lies to a medium's; None where too few rows lie in the record's range."""
+    """How a table's index (R,) lies to a medium's, at a few rows; None where too few lie in its range."""
+    pick = np.unique(np.linspace(0, len(omega) - 1, min(PLACES, len(omega))).astype(int))
+    omega, index = omega[pick], index[pick]
     inside = medium.band.contains(omega)
     if np.sum(inside) < max(2, SHARED * len(omega)):
         return None
     apart = index[inside] - np.real(medium.index(omega[inside]))
     offset = float(np.mean(apart))
     return Likeness(
-        medium=medium, offset=offset, shape=float(np.max(np.abs(apart - offset))), rows=int(np.sum(inside))
+        medium=medium,
+        offset=offset,
+        shape=float(np.max(np.abs(apart - offset))),
+        rows=int(np.sum(inside)),
+        whole=bool(np.all(inside)),
     )
 
 
 def nearest(omega: Real, index: Real) -> Likeness | None:
     """The most alike of all catalogue media; None where no record covers half of the rows."""
-    pick = np.unique(np.linspace(0, len(omega) - 1, min(PLACES, len(omega))).astype(int))
-    found = [like for medium in _media() if (like := likeness(medium, omega[pick], index[pick]))]
+    found = [like for medium in _media() if (like := likeness(medium, omega, index))]
     return min(found, key=lambda like: like.distance, default=None)
 
 
 def said_to_be(table: SentTable) -> str | None:
-    """The catalogue name that stands in the table's title, comments or file name; the longest of them."""
-    text = " ".join((table.title, *table.comments, re.sub(r"[_+]", " ", Path(table.file).stem)))
-    found = [name for name in _searched() if _stands_in(name, text)]
+    """The catalogue name that stands in the table's title or file name, or, where it is no common word, in
+    its comments; the longest of them. Gases are the surroundings more often than the sample and are left out.
+    """
+    heading = " ".join((table.title, re.sub(r"[_+]", " ", Path(table.file).stem)))
+    everything = " ".join((heading, *table.comments))
+    found = [name for name in _searched() if _stands_in(name, heading if name.islower() else everything)]
     return max(found, key=len, default=None)
 
 
@@ -78,7 +85,7 @@ def _stands_in(name: str, text: str) -> bool:
 
 @cache
 def _searched() -> tuple[str, ...]:
-    return tuple(name for name in names() if len(name) > SHORTEST or name in ("F2",))
+    return tuple(name for name in names() if record(name).family != "gas")
 
 
 def _media() -> Iterator[Medium]:

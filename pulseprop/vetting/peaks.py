@@ -17,8 +17,8 @@ WORTH = 0.02
 
 @dataclass(frozen=True)
 class Peak:
-    """omega, rad/s, and row of the maximum; width: full width at half height over the higher foot, rad/s; None
-    where one side leaves the table first."""
+    """omega, rad/s, and row of the maximum; width: full width at half height over the higher foot, rad/s;
+    None where one side leaves the table first."""
 
     omega: float
     row: int

@@ -12,7 +12,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from pulseprop.units import to_si
-from pulseprop.vetting.absorption_rows import TRANSMITTANCES, absorption_column
+from pulseprop.vetting.absorption_rows import TRANSMITTANCES, absorption_column, has_constant_index
 from pulseprop.vetting.case import Case
 from pulseprop.vetting.result import Finding
 from pulseprop.vetting.retold import as_quantity, on_axis, only_rows, reordered, scaled, swapped, with_column
@@ -53,7 +53,7 @@ def mended_by(case: Case) -> Iterator[Finding]:
     The mistakes are tried from the commonest on; of several that mend the numbers the one with the smallest
     factor is the error, the others are notes.
     """
-    if case.factor is None or case.factor <= BROKEN:
+    if case.factor is None or case.factor <= BROKEN or has_constant_index(case.table):
         return
     mended: list[tuple[float, Repair]] = []
     for propose in REPAIRS:

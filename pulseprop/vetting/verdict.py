@@ -18,12 +18,12 @@ from pulseprop.vetting.result import Finding, Verdict
 __all__ = ["DECISION_RULE", "PHYSICAL", "verdict_on"]
 
 DECISION_RULE = (
-    "Stated uncertainties: consistent up to an uncertainty factor of 1, contradictory above. Not stated: the printed "
-    "digits stand for them, and the numbers are contradictory only where a physical bound is broken, where the "
-    "error they would need is larger than any usual measurement's, or where undoing one mistake makes them agree "
-    "to the last digit; else doubtful above 1. Doubtful also: an error found by the checks at a factor of at most "
-    "1, a narrow line that the rows cannot resolve, fewer than five rows over the width of a feature. The factor "
-    "is a largest ratio, not a chi-square and not a coverage factor."
+    "Stated uncertainties: consistent up to an uncertainty factor of 1, contradictory above. Not stated: "
+    "the printed digits stand for them, and the numbers are contradictory only where a physical bound is "
+    "broken, where the error they would need is larger than any usual measurement's, or where undoing one "
+    "mistake makes them agree to the last digit; else doubtful above 1. Doubtful also: an error found by "
+    "the checks at a factor of at most 1, a narrow line that the rows cannot resolve, fewer than five rows "
+    "over the width of a feature. The factor is a largest ratio, not a chi-square and not a coverage factor."
 )
 
 PHYSICAL = ("negative-absorption", "transmittance-above-1", "index-not-positive")

@@ -7,6 +7,7 @@ from collections.abc import Sequence
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.absorption_rows import absorption_column
 from pulseprop.vetting.case import Case
+from pulseprop.vetting.causal import Unresolved
 from pulseprop.vetting.few_rows import FewRows
 from pulseprop.vetting.result import ConflictRow, Finding, ImpliedUncertainty, Verdict
 
@@ -49,7 +50,7 @@ def headline(
     if named is not None and named.severity == "error":
         parts.append(f"they agree (factor {named.factor_after_repair:.2g}) with this repair: {named.repair}")
     if case.standing is not None and case.standing.unresolved is not None:
-        parts.append(_unresolved(case))
+        parts.append(_unresolved(case.standing.unresolved))
     return "; ".join(parts) + "."
 
 
@@ -91,8 +92,8 @@ def assumptions(case: Case) -> tuple[str, ...]:
         said.append(f"The index is used as printed{f', against {against}' if against else ''}.")
     if not case.numbers.stated:
         said.append(
-            "No uncertainty is stated: half a unit of the last printed place stands for it, and bounds hold for "
-            "the implied uncertainty where that is larger."
+            "No uncertainty is stated: half a unit of the last printed place stands for it, and bounds hold "
+            "for the implied uncertainty where that is larger."
         )
     request = case.request
     if request.anchors:
@@ -114,14 +115,20 @@ def _answer(case: Case, verdict: Verdict, implied: ImpliedUncertainty, findings:
     if not case.numbers.stated and implied.n is not None:
         return _led_by_implied(case, verdict, implied)
     if verdict == "consistent":
-        return f"a passive causal material can have these numbers within their uncertainties (factor {factor:.2g})"
+        return (
+            "a passive causal material can have these numbers within their uncertainties (factor "
+            f"{factor:.2g})"
+        )
     if verdict == "contradictory" and factor > 1:
         return (
             "the printed values contradict each other: no passive causal material has them unless the stated "
             f"uncertainties are {factor:.3g} times as large"
         )
     if verdict == "doubtful" and factor > 1:
-        return f"the numbers need {factor:.3g} times their uncertainties, which the rows are too coarse to settle"
+        return (
+            f"the numbers need {factor:.3g} times their uncertainties, which the rows are too coarse to "
+            "settle"
+        )
     return f"the uncertainties would allow the numbers (factor {factor:.2g}), but {_first(findings)}"
 
 
@@ -151,14 +158,12 @@ def _first(findings: Sequence[Finding]) -> str:
     return error.text[0].lower() + error.text[1:].rstrip(".") if error else "the checks found an error"
 
 
-def _unresolved(case: Case) -> str:
-    assert case.standing is not None and case.standing.unresolved is not None
-    line = case.standing.unresolved
+def _unresolved(line: Unresolved) -> str:
     place = TWO_PI_C / line.omega * 1e9
     spacing = TWO_PI_C * line.spacing / line.omega**2 * 1e9
     return (
-        f"a narrow line near {place:.5g} nm that falls between the rows would explain them: rows {spacing:.2g} nm "
-        "apart there would settle it"
+        f"a narrow line near {place:.5g} nm that falls between the rows would explain them: rows "
+        f"{spacing:.2g} nm apart there would settle it"
     )
 
 
