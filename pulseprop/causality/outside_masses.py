@@ -1,4 +1,4 @@
-"""Absorption on one side of the rows, as point masses anywhere there: columns, and where a weighting favours them.
+"""Absorption on one side of the rows, as point masses anywhere there: columns, and where weights favour them.
 
 A mass at the distance S (in s = omega^2) beyond the outermost row of n changes the rows by
 
@@ -26,8 +26,8 @@ STEP = 1 / 8
 """Of the logarithm of S on the grid."""
 BEYOND = 18.0
 """Logarithm by which the grid goes on beyond the least and the greatest a."""
-NEWTON = 6
-"""Steps from a grid maximum to the true one."""
+NEWTON = 8
+"""Steps from between the neighbours of a grid maximum to the true one."""
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)
@@ -63,30 +63,33 @@ class Side:
             for places, table in zip(self.grid, self._table, strict=True)
         ]
 
-    def favoured(self, weights: Real, price: float, least: float) -> tuple[Real, Real]:
-        """Places at which weights . column - price S is locally greatest and above `least`, and it there."""
-        places, values = [np.zeros(0)], [np.zeros(0)]
+    def favoured(self, weights: Real, price: float) -> tuple[Real, Real]:
+        """Places at which weights . column - price S is locally greatest, and it there."""
+        places = [np.zeros(0)]
         for at, value in self.on_grid(weights):
-            cost = price * np.where(np.isfinite(at), at, 0.0)
-            top = _tops(value - cost)
-            place = self._refined(weights, price, at, top[(value - cost)[top] > least])
-            places.append(place)
-            values.append(self.weighed(weights, place) - price * np.where(np.isfinite(place), place, 0.0))
-        return np.concatenate(places), np.concatenate(values)
+            top = _tops(value - _cost(price, at))
+            places.append(self._refined(weights, price, at, top))
+        place = np.concatenate(places)
+        return place, self.weighed(weights, place) - _cost(price, place)
 
     def _refined(self, weights: Real, price: float, at: Real, top: NDArray[np.intp]) -> Real:
-        """Newton on the logarithm of S, within the neighbours on the grid; the ends stay where they are."""
-        inner = top[(top > 1) & (top < len(at) - 2)]
-        low, high = np.log(at[inner - 1]), np.log(at[inner + 1])
-        x = np.log(at[inner])
+        """Newton on the logarithm of S, between the neighbours on the grid; 0 and inf stay where they are."""
+        before, after = at[np.maximum(top - 1, 0)], at[np.minimum(top + 1, len(at) - 1)]
+        moves = (before > 0) & np.isfinite(after)
+        low, high = np.log(before[moves]), np.log(after[moves])
+        x = (low + high) / 2
         for _ in range(NEWTON):
             share = _share(self.away[:, None], np.exp(x))
-            slope = self.sign * (weights @ (share * (1 - share))) - price * np.exp(x)
-            bend = self.sign * (weights @ (share * (1 - share) * (1 - 2 * share))) - price * np.exp(x)
-            step = np.where(bend < 0, -slope / np.where(bend < 0, bend, -1.0), 0.0)
-            x = np.clip(x + step, low, high)
-        kept = np.setdiff1d(top, inner)
-        return np.concatenate((at[kept], np.exp(x)))
+            curve = share * (1 - share)
+            cost = price * np.exp(x)
+            slope = self.sign * (weights @ curve) - cost
+            bend = self.sign * (weights @ (curve * (1 - 2 * share))) - cost
+            x = np.clip(x - slope / np.where(bend < 0, bend, -np.inf), low, high)
+        return np.concatenate((at[top], np.exp(x)))
+
+
+def _cost(price: float, distance: Real) -> Real:
+    return price * distance if price > 0 else np.zeros_like(distance)
 
 
 def _share(away: Real, distance: Real) -> Real:

@@ -36,7 +36,7 @@ COARSE = 4
 
 @dataclass(frozen=True, eq=False)
 class Masses:
-    """Distances in s of point masses beyond the outermost row of n, units of the highest frequency squared."""
+    """Distances in s = omega^2 of point masses beyond the outermost row of n, highest frequency 1."""
 
     below: Real
     above: Real

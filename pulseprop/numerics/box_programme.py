@@ -50,12 +50,14 @@ def solve_box(
     stretch: Real | None = None,
     accuracy: float = 1e-6,
     floor: float = 1e-9,
+    tolerable: float | None = None,
 ) -> BoxSolution:
     """The minimum over x >= 0 (and t, where `stretch` is given).
 
     matrix: (rows, columns), any scale of either. lower, upper: (rows,), -inf and inf where a row has one
     limit only. cost: (columns,), 0 unless given. stretch: (rows,), 0 or more. accuracy, floor: largest
-    difference of value and bound, over the value and by itself.
+    difference of value and bound, over the value and by itself. tolerable: what is accepted in place of
+    accuracy where rounding stops the way there.
 
     Raises NumericalLimit where that is not reached: the programme may have no solution, or the numbers are
     beyond double precision.
@@ -71,7 +73,7 @@ def solve_box(
         cost=np.zeros(len(column)) if cost is None else cost / column,
         stretch=None if stretch is None else stretch / unit,
     )
-    point = _solved(problem, accuracy, floor)
+    point = _solved(problem, accuracy, floor, accuracy if tolerable is None else tolerable)
     value, bound = value_and_bound(problem, point)
     dual = (point.from_lower - point.from_upper) / unit
     return BoxSolution(x=point.x / column, t=point.t, dual=dual, value=value, bound=bound)
@@ -86,16 +88,19 @@ def _row_units(matrix: Real, lower: Real, upper: Real, stretch: Real | None) -> 
     return np.where(unit > 0, unit, 1.0)
 
 
-def _solved(problem: Problem, accuracy: float, floor: float) -> Point:
-    left = np.inf
+def _solved(problem: Problem, accuracy: float, floor: float, tolerable: float) -> Point:
+    best: tuple[float, Point | None] = (np.inf, None)
     # where there is no solution the duals grow without limit, until a factorisation fails
     with np.errstate(all="ignore"), suppress(np.linalg.LinAlgError):
         point = start(problem)
         for _ in range(STEPS):
-            left = _left(problem, point, floor)
-            if left <= accuracy:
-                return point
+            best = min(best, (_left(problem, point, floor), point), key=lambda one: one[0])
+            if best[0] <= accuracy:
+                break
             point = improved(problem, point)
+    left, found = best
+    if found is not None and left <= tolerable:
+        return found
     raise NumericalLimit(
         "a linear programme was not solved",
         value=f"{left:.2g} of its value left",
