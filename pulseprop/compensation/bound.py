@@ -11,7 +11,7 @@ the last by concavity of cos. The second differences are straight lines in the s
 right-hand sum over a box is bounded least squares, and the settings that could still reach |M| = m lie in
 an ellipsoid: the box shrinks, and a wider distance between the three frequencies, which sees more, becomes
 usable. Losses that differ from those for which p was taken by factors within a span of r nepers add at most
-exp(r) - 1 to |M|.
+exp(r) - 1 to |M|, and twice what lies in faint ends of the spectrum that may be lost.
 
 Own derivation (concavity and the triangle inequality); nothing in it is estimated.
 """
@@ -41,6 +41,8 @@ NARROWEST, WIDEST = 0.03, 1.5
 SHARPENINGS = 40
 SINGULAR = 1e-14
 ROUNDING = 1e-9
+FAINT = 1e-4
+"""Amplitude over the largest below which the ends of the spectrum may go dark without spoiling a bound."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -65,6 +67,7 @@ class Bounds:
         self._amplitude = height / height.sum()
         self._phase = np.unwrap(np.angle(self.samples.amplitude))
         self._scales = _scales(self._amplitude)
+        self._bright = self._amplitude > FAINT * self._amplitude.max()
         flat = height.astype(complex)
         square = square_integral(self.samples, flat, self.samples.envelope(flat))
         top = limit_power(self.samples, flat).value * energy(self.samples, flat).value
@@ -83,16 +86,24 @@ class Bounds:
         most = base.real + np.maximum(slopes.real, 0).sum(axis=1)
         spread = self._spread(base.real, slopes.real)
         peak = score - self._beyond_peak_ratio(goal, float(most.max()), spread)
-        least = np.exp(0.5 * min(peak, 1.0)) - float(np.expm1(spread)) - ROUNDING
+        least = np.exp(0.5 * min(peak, 1.0)) - self._slack(spread) - ROUNDING
         allowance = (1 - least) / BEND
         return self._empty(base.imag + self._phase, slopes.imag, allowance)
 
+    def _slack(self, spread: float) -> float:
+        """How much |M| may gain from losses of this span, the faint ends of the spectrum lost at will."""
+        faint = float(self._amplitude[~self._bright].sum())
+        return float(np.exp(min(spread, 1.0)) * (1 + 2 * faint) / (1 - faint) - 1)
+
     def _spread(self, loss: Real, slopes: Real) -> float:
-        """Span of the losses, (n,) and (n, k) nepers, beyond a factor on those of the background."""
+        """Span of the losses, (n,) and (n, k) nepers, beyond a factor on those of the background.
+
+        The faint ends may lose as much as they like, but not gain.
+        """
         loss = loss - self.background.real
         most = loss + np.maximum(slopes, 0).sum(axis=1)
         least = loss + np.minimum(slopes, 0).sum(axis=1)
-        return float(most.max() - least.min())
+        return float(most.max() - least[self._bright].min())
 
     def _beyond_peak_ratio(self, goal: Goal, most: float, spread: float) -> float:
         """The most that a score can be above the logarithm of the peak ratio; most: nepers that are gained.

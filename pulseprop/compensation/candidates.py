@@ -108,7 +108,7 @@ def _options(part: Part, samples: Samples, refusals: list[str]) -> list[_Option]
     names = [one.parameter for one in part.discrete]
     options = []
     for chosen in product(*(one.values for one in part.discrete)):
-        model = Model(part=part, discrete=dict(zip(names, chosen, strict=True)), omega=samples.omega)
+        model = Model(part=part, discrete=dict(zip(names, chosen, strict=True)), samples=samples)
         for place in _lattice(model):
             try:
                 base, slopes = model.lines(model.low + place * (model.high - model.low))

@@ -78,7 +78,7 @@ def compensate(problem: Problem, progress: Progress = _silent) -> Compensation:
 
 def _settled(problem: Problem, progress: Progress) -> tuple[Samples, Found, list[Sent]]:
     """Search, and search again on a longer window until full runs of the designs agree."""
-    samples = samples_for(problem.pulse, problem.grid)
+    samples = samples_for(problem.pulse, problem.grid, problem.beyond_range)
     while True:
         found = search(problem, samples, progress)
         checked = [sent(problem, path_of(problem, one)) for one in found.best]
@@ -87,7 +87,7 @@ def _settled(problem: Problem, progress: Progress) -> tuple[Samples, Found, list
             for one, run in zip(found.best, checked, strict=True)
         ):
             return samples, found, checked
-        samples = longer(samples, problem.pulse, problem.grid)
+        samples = longer(samples, problem.grid)
 
 
 def _state(problem: Problem, run: Sent) -> State:
@@ -131,8 +131,8 @@ def _notes(problem: Problem, found: Found) -> tuple[str, ...]:
     said = []
     if found.by_phase:
         said.append(
-            f"{found.by_phase} of {found.choices} discrete choices were left out because their phase, fitted, stayed "
-            "behind that of the others; no proof excludes them"
+            f"{found.by_phase} of {found.choices} discrete choices were left out because their fitted phase "
+            "stayed behind that of the others; no proof excludes them"
         )
     unknown = [
         f"{part.name}, {one.parameter}"

@@ -18,6 +18,7 @@ from numpy.typing import NDArray
 
 from pulseprop.compensation.samples import Samples
 from pulseprop.measures.profile import half_maximum
+from pulseprop.numerics.transforms import backward, forward
 
 __all__ = ["Varied", "contained", "energy", "limit_power", "peak_power", "square_integral", "width"]
 
@@ -119,21 +120,20 @@ def contained(samples: Samples, spectrum: Complex, field: Complex, window: float
     """
     grid = samples.grid
     power = field.real**2 + field.imag**2
-    frequency = np.asarray(np.fft.fftfreq(grid.points, grid.step), dtype=float)
+    frequency = (np.arange(grid.points) - grid.points // 2) / grid.span
     box = window * np.sinc(frequency * window)
-    turning = np.fft.fft(power) * box
-    running = np.fft.ifft(turning).real
-    place = _top_between(turning, frequency, running, grid.step)
+    turning = forward(power.astype(complex)) * box
+    place = _top_between(turning, frequency, backward(turning).real, grid.step)
     # The box around `place` as the samples see it: what each instant's power adds to the integral.
-    weights = np.fft.ifft(box * np.exp(-2j * np.pi * frequency * place)).real
-    value = float(np.dot(weights, power))
-    return Varied(value, 2.0 * spectrum * samples.folded(np.asarray(weights * np.conj(field))), place)
+    weights = backward(box * np.exp(2j * np.pi * frequency * place)).real / grid.points
+    variation = 2.0 * spectrum * samples.folded(np.asarray(weights * np.conj(field)))
+    return Varied(float(np.dot(weights, power)), variation, place)
 
 
 def _top_between(turning: Complex, frequency: Real, running: Real, step: float) -> float:
-    """Where a band-limited periodic real function is largest, s; turning: its discrete transform."""
+    """Where a band-limited periodic real function is largest, s; turning: its transform."""
     place = int(np.argmax(running)) * step
-    rate = 2j * np.pi * frequency
+    rate = -2j * np.pi * frequency
     for _ in range(NEWTON_STEPS):
         here = turning * np.exp(rate * place)
         slope, bend = float((rate * here).sum().real), float((rate**2 * here).sum().real)

@@ -66,7 +66,7 @@ def _order(
     low, high = _band(judge.samples, spectrum)
     omega = TWO_PI_C / np.linspace(TWO_PI_C / high, TWO_PI_C / low, ROWS)
     target = gdd + tod * (omega - centre)
-    width = spectral_fwhm(_whole(judge.samples, spectrum), 1 / judge.samples.grid.span)
+    width = spectral_fwhm(judge.samples.whole(spectrum), 1 / judge.samples.grid.span)
     ripples = tuple(_ripple(share * width, exponent, bounces, judge) for share in PERIODS)
     slowest = ripples[0].amplitude_fs2
     offset = _least(exponent, judge, [_offset(bounces, centre, judge)])
@@ -92,12 +92,6 @@ def _band(samples: Samples, spectrum: Complex) -> tuple[float, float]:
     power = spectrum.real**2 + spectrum.imag**2
     inside = np.flatnonzero(power > BAND * power.max())
     return float(samples.omega[inside[0]]), float(samples.omega[inside[-1]])
-
-
-def _whole(samples: Samples, spectrum: Complex) -> Complex:
-    whole = np.zeros(samples.grid.points, dtype=complex)
-    whole[samples.lit] = spectrum
-    return whole
 
 
 def _offset(bounces: float, centre: float, judge: Judge) -> Complex:

@@ -14,6 +14,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.compensation.problem import Adjustment, Part, Settings, Value
+from pulseprop.compensation.samples import Samples
 from pulseprop.elements.element import Element
 from pulseprop.errors import InputError
 
@@ -22,8 +23,11 @@ __all__ = ["Model", "exponent_of"]
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
-STRAIGHT = 1e-7
-"""Departure from a straight line, in rad and nepers, below which an adjustment is one."""
+STRAIGHT = 1e-6
+"""Departure from a straight line below which an adjustment is one, in the field over its largest sample.
+
+At the ends of the spectrum, where a grating may go dark, that allows anything.
+"""
 ROUNDING = 1e-11
 """The same over the largest exponent met: phases of 1e6 rad are known no better."""
 DARK = -300.0
@@ -71,7 +75,7 @@ class Model:
 
     part: Part
     discrete: dict[str, Value]
-    omega: Real
+    samples: Samples
     straight: tuple[int, ...] = field(init=False)
     _known: dict[tuple[float, ...], tuple[Complex, Complex]] = field(init=False, default_factory=dict)
 
@@ -101,7 +105,9 @@ class Model:
 
     def evaluated(self, settings: Settings) -> Complex:
         """The exponent of the elements for settings of any kind, drifts included, with no shortcut."""
-        return exponent_of(self.part.build(settings), self.omega)
+        elements = self.part.build(settings)
+        self.samples.refuse_outside(elements)
+        return exponent_of(elements, self.samples.omega)
 
     def size(self, values: Real) -> float:
         """Footprint in m of the elements that state one."""
@@ -115,7 +121,7 @@ class Model:
     def jacobian(self, values: Real) -> Complex:
         """Derivatives of the exponent by each value, (n, k): exact along straight ones, central differences
         of the exponent along the others."""
-        result = np.empty((self.omega.size, len(self.continuous)), dtype=complex)
+        result = np.empty((self.samples.omega.size, len(self.continuous)), dtype=complex)
         result[:, list(self.straight)] = self.lines(values)[1]
         for index in self.curved:
             reach = NUDGE * (self.high[index] - self.low[index])
@@ -154,7 +160,7 @@ class Model:
         corner = values.copy()
         corner[list(straight)] = self.low[list(straight)]
         base = self._at(corner)
-        slopes = np.empty((self.omega.size, len(straight)), dtype=complex)
+        slopes = np.empty((self.samples.omega.size, len(straight)), dtype=complex)
         for column, index in enumerate(straight):
             rise = self._at(self._moved(corner, index, self.high[index])) - base
             slopes[:, column] = rise / (self.high[index] - self.low[index])
@@ -180,5 +186,6 @@ class Model:
         found = self._at(middle)
         chosen = list(straight)
         guess = base + slopes @ (middle[chosen] - self.low[chosen])
-        allowed = STRAIGHT + ROUNDING * float(np.abs(found).max())
-        return bool(np.abs(found - guess).max() <= allowed)
+        height = np.abs(self.samples.amplitude)
+        departure = np.minimum(np.abs(found - guess), 1.0) * (height / height.max())
+        return bool(departure.max() <= STRAIGHT + ROUNDING * float(np.abs(found).max()))

@@ -28,14 +28,8 @@ def remainder_of(judge: Judge, background: Complex) -> Remainder:
     samples = judge.samples
     entering = np.abs(samples.amplitude).astype(complex)
     leaving = entering * np.exp(background.real)
-    grid, lit = samples.grid, samples.lit
-
-    def on_grid(spectrum: Complex) -> Complex:
-        whole = np.zeros(grid.points, dtype=complex)
-        whole[lit] = spectrum
-        return whole
-
-    before, after = on_grid(entering), on_grid(leaving)
+    grid = samples.grid
+    before, after = samples.whole(entering), samples.whole(leaving)
     limit_in, limit_out = transform_limit(grid, before), transform_limit(grid, after)
     return Remainder(
         limit_in_fs=limit_in.fwhm * FEMTO,
