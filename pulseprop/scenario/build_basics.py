@@ -5,10 +5,9 @@ from __future__ import annotations
 from pulseprop.elements.phase_orders import Loss, PhaseOrders
 from pulseprop.elements.slab import Slab
 from pulseprop.scenario.build_site import Site, length_words
-from pulseprop.scenario.schema_element import OrdersTable
-from pulseprop.scenario.schema_path import KnownOrdersTable, LossTable, ShaperTable, SlabTable
+from pulseprop.scenario.schema_path import KnownOrdersTable, LossTable, SlabTable
 
-__all__ = ["known_orders", "loss", "shaper", "slab"]
+__all__ = ["known_orders", "loss", "slab"]
 
 
 def slab(table: SlabTable, site: Site) -> Slab:
@@ -41,26 +40,14 @@ def loss(table: LossTable, site: Site) -> Loss:
 
 def known_orders(table: KnownOrdersTable, site: Site) -> PhaseOrders:
     """A device of which only orders are known."""
-    return _phase(table, site, table.kind, table.group_delay, table.transmittance)
-
-
-def shaper(table: ShaperTable, site: Site) -> PhaseOrders:
-    """A pulse shaper that sets orders."""
-    return _phase(table, site, table.kind, 0.0, 1.0)
-
-
-def _phase(
-    table: OrdersTable, site: Site, kind: str, group_delay: float, transmittance: float
-) -> PhaseOrders:
     return PhaseOrders(
-        name=site.name_of(table, kind),
-        kind=kind,
+        name=site.name_of(table, table.kind),
         centre=site.centre,
-        group_delay=group_delay,
+        group_delay=table.group_delay,
         gdd=table.gdd,
         tod=table.tod,
         fod=table.fod,
-        transmittance=transmittance,
+        transmittance=table.transmittance,
         beam_radius=table.beam_radius,
         detail="phase only",
     )

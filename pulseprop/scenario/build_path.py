@@ -8,11 +8,12 @@ from typing import Any
 from pulseprop.elements.element import Element
 from pulseprop.elements.path import Path
 from pulseprop.errors import PulsepropError
-from pulseprop.scenario import build_basics, build_compressors, build_mirrors
+from pulseprop.scenario import build_basics, build_compressors, build_mirrors, build_optics, build_shaper
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.read import Scenario
 from pulseprop.scenario.schema_element import ElementTable
+from pulseprop.scenario.schema_path import RepeatTable
 
 __all__ = ["built_element", "built_path"]
 
@@ -23,7 +24,11 @@ BUILDERS: Mapping[str, Builder] = {
     "slab": build_basics.slab,
     "loss": build_basics.loss,
     "known orders": build_basics.known_orders,
-    "pulse shaper": build_basics.shaper,
+    "pulse shaper": build_shaper.shaper,
+    "lens": build_optics.lens,
+    "waveplate": build_optics.waveplate,
+    "wedge pair": build_optics.wedge_pair,
+    "gas cell": build_optics.gas_cell,
     "grating pair": build_compressors.grating_pair,
     "stretcher": build_compressors.grating_pair,
     "prism pair": build_compressors.prism_pair,
@@ -56,4 +61,6 @@ def built_path(scenario: Scenario, media: MediaOfScenario, centre: float) -> Pat
 
 def built_element(table: ElementTable, site: Site) -> Element:
     """One element of any kind. Raises InputError without place where its settings do not fit."""
+    if isinstance(table, RepeatTable):
+        return build_optics.repeated(table, site, built_element)
     return BUILDERS[table.kind](table, site)

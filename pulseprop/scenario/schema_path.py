@@ -6,7 +6,7 @@ from typing import Annotated, Literal
 
 from pydantic import Field, model_validator
 
-from pulseprop.scenario.fields import Fraction, Name, complain, measured
+from pulseprop.scenario.fields import Fraction, Name, complain, exactly_one, measured
 from pulseprop.scenario.schema_compressors import (
     GratingPairTable,
     GrismPairTable,
@@ -15,13 +15,15 @@ from pulseprop.scenario.schema_compressors import (
 )
 from pulseprop.scenario.schema_element import RIGHT_ANGLE, ElementTable, OrdersTable
 from pulseprop.scenario.schema_mirrors import ChirpedMirrorTable, CoatingTable, GiresTournoisTable
+from pulseprop.scenario.schema_optics import GasCellTable, LensTable, WaveplateTable, WedgePairTable
+from pulseprop.scenario.schema_shaper import ShaperTable
 
 __all__ = [
     "Element",
     "ElementTable",
     "KnownOrdersTable",
     "LossTable",
-    "ShaperTable",
+    "RepeatTable",
     "SlabTable",
 ]
 
@@ -80,16 +82,28 @@ class KnownOrdersTable(OrdersTable):
         return self
 
 
-class ShaperTable(OrdersTable):
-    """A pulse shaper that sets orders."""
+class RepeatTable(ElementTable):
+    """Elements that the beam goes through several times, in their order. path, or elements: what they are."""
 
-    kind: Literal["pulse shaper"]
+    kind: Literal["repeat"]
+    times: Annotated[int, Field(ge=1, le=100_000)]
+    path: Annotated[list[Element], Field(min_length=1)] | None = None
+    elements: Annotated[list[Element], Field(min_length=1)] | None = None
 
     @model_validator(mode="after")
-    def _says_something(self) -> ShaperTable:
-        if not self.given("gdd", "tod", "fod"):
-            raise complain("no order is given", allowed="one or more of gdd, tod, fod")
+    def _one_list(self) -> RepeatTable:
+        exactly_one(self, "path", "elements")
         return self
+
+    @property
+    def inner_key(self) -> str:
+        """Under which key the elements stand."""
+        return "elements" if self.path is None else "path"
+
+    @property
+    def inner(self) -> list[Element]:
+        """The elements."""
+        return self.path or self.elements or []
 
 
 Element = Annotated[
@@ -101,6 +115,11 @@ Element = Annotated[
     | StretcherTable
     | PrismPairTable
     | GrismPairTable
+    | LensTable
+    | WaveplateTable
+    | WedgePairTable
+    | GasCellTable
+    | RepeatTable
     | ChirpedMirrorTable
     | CoatingTable
     | GiresTournoisTable,
