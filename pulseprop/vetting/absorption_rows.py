@@ -123,7 +123,7 @@ def _from_transmittance(
     """
     value = np.maximum(column.values, error / 2)
     least = limited | (column.values - error <= 0)
-    shown = [np.maximum(value - error, error / 4), value + error, value]
+    shown = [np.maximum(value - error, error / 4), column.values + error, value]
     high, low, middle = (-np.log(_inside(part, reflectance)) for part in shown)
     k = np.where(least, middle, (low + high) / 2)
     width = np.where(least, middle - low, (high - low) / 2)
