@@ -102,7 +102,7 @@ def blocks_of(
     if not found:
         raise _no_rows(waiting, file)
     found[-1].below += waiting
-    return _without_strays(found)
+    return _without_strays(found, is_heading)
 
 
 def _is_row(cells: Sequence[str]) -> bool:
@@ -126,21 +126,33 @@ def _begins(
     return any(line.cells is not None for line in waiting)
 
 
-def _without_strays(found: list[Block]) -> list[Block]:
-    """Lone rows of numbers beside true blocks, as in a preamble, become words around them."""
-    if all(len(block.rows) < 2 for block in found):
+def _is_stray(block: Block, others: Sequence[Block], is_heading: Callable[[str], bool]) -> bool:
+    """A lone row, or rows that begin with words where true rows do not, as in a preamble."""
+    if any(is_heading(line.text) for line in block.above):
+        return False
+    return len(block.rows) < 2 or (_led_by_words(block) and not all(map(_led_by_words, others)))
+
+
+def _led_by_words(block: Block) -> bool:
+    return not any(looks_numeric(row[0]) for row in block.rows)
+
+
+def _without_strays(found: list[Block], is_heading: Callable[[str], bool]) -> list[Block]:
+    """The true blocks; numbers of a preamble become words around them."""
+    strays = [_is_stray(block, found, is_heading) for block in found]
+    if all(strays) or not any(strays):
         return found
     kept: list[Block] = []
     before: list[Line] = []
-    for block in found:
-        if len(block.rows) > 1:
+    for block, stray in zip(found, strays, strict=True):
+        if not stray:
             block.above = before + block.above
             block.follows = bool(kept)
             kept.append(block)
             before = []
             continue
-        row = Line(block.numbers[0], " ".join(block.rows[0]), block.rows[0])
-        around = [*block.above, row, *block.below]
+        rows = [Line(n, " ".join(row), row) for n, row in zip(block.numbers, block.rows, strict=True)]
+        around = [*block.above, *rows, *block.below]
         if kept:
             kept[-1].below += around
         else:

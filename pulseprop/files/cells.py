@@ -90,8 +90,11 @@ def numbers(column: Sequence[str], commas: bool, lines: Lines, file: str) -> Rea
     """
     texts = [cell.replace(",", ".") for cell in column] if commas else column
     try:
-        values = np.array(list(map(float, texts)))
+        plain = "_" not in "".join(texts)
+        values = np.array(list(map(float, texts)) if plain else [])
     except ValueError:
+        plain = False
+    if not plain:
         pairs = zip(texts, column, lines, strict=True)
         values = np.array([_number(text, cell, line, file) for text, cell, line in pairs])
     return np.where(np.isfinite(values), values, np.nan)

@@ -59,7 +59,7 @@ def is_jcamp(text: str) -> bool:
     """Whether a text begins with the record TITLE or JCAMP-DX, remarks aside."""
     for line in text.lstrip("\ufeff").splitlines()[:20]:
         if line.strip() and not line.lstrip().startswith("$$"):
-            return re.match(r"\s*##\s*(TITLE|JCAMP)", line, re.IGNORECASE) is not None
+            return re.match(r"\s*##\s*(TITLE|JCAMP-?DX)\s*=", line, re.IGNORECASE) is not None
     return False
 
 
@@ -202,9 +202,10 @@ class _Reader:
         step = abs(x[-1] - x[0]) / max(len(x) - 1, 1)
         for number, word, place, check in found.starts:
             printed = float(word) * factor
-            near = 0.5 * step + abs(factor) * 10.0 ** -_places(word) + 1e-9 * abs(printed)
+            unit = abs(factor) * 10.0 ** -_places(word)
+            near = max(0.5 * (step + unit), unit) * (1 - 1e-6)
             places = [place, place + 1] if check else [place]
-            if not any(abs(printed - x[min(at, len(x) - 1)]) <= near for at in places):
+            if len(x) > 1 and not any(abs(printed - x[min(at, len(x) - 1)]) < near for at in places):
                 raise InputError(
                     "the check of the abscissa fails: points are missing or too many before this line",
                     value=word,
@@ -219,8 +220,8 @@ class _Reader:
         if not np.isfinite(first) or not np.isfinite(y[0]):
             return
         factor = self._number("YFACTOR", 1.0)
-        near = unit + 10.0 ** -_places(self.section.records["FIRSTY"]) + 1e-6 * abs(first)
-        if min(abs(first - y[0]), abs(first * factor - y[0])) > near:
+        near = 0.5 * unit + 0.5 * 10.0 ** -_places(self.section.records["FIRSTY"])
+        if min(abs(first - y[0]), abs(first * factor - y[0])) >= near * (1 - 1e-9):
             raise self._refused(
                 "FIRSTY is not the first ordinate", "FIRSTY", value=f"{first:g}", allowed=f"{y[0]:g}"
             )
