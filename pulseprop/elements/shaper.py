@@ -135,6 +135,11 @@ class Shaper(Device):
         return np.asarray(0.5 * (rising - falling))
 
     def ringing(self, low: float, high: float) -> float:
+        """As long after the pulse as before it; see `lead`."""
+        return self.lead
+
+    @property
+    def lead(self) -> float:
         """Until the spot on the mask, or the edge of the range, has let the repetitions die, s."""
         if self.range is None:
             return 0.0

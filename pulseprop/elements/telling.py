@@ -9,7 +9,7 @@ from typing import Protocol, runtime_checkable
 import numpy as np
 from numpy.typing import NDArray
 
-__all__ = ["NOTICEABLE", "Light", "Telling"]
+__all__ = ["NOTICEABLE", "Leading", "Light", "Telling"]
 
 Real = NDArray[np.float64]
 
@@ -29,6 +29,14 @@ class Light:
     def share(self, where: NDArray[np.bool_]) -> float:
         """Share of the energy at frequencies for which `where`, (K,), is true."""
         return float(self.power[where].sum() / self.power.sum())
+
+
+@runtime_checkable
+class Leading(Protocol):
+    """An element that is no matter and may answer before its group delay: lead, by how many s at most."""
+
+    @property
+    def lead(self) -> float: ...
 
 
 @runtime_checkable

@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 from pulseprop.elements.element import Element
 from pulseprop.elements.group import passages
 from pulseprop.elements.path import Path
+from pulseprop.elements.telling import Leading
 from pulseprop.errors import InputError, NumericalLimit
 from pulseprop.grid import Grid
 from pulseprop.propagation.numerals import span
@@ -76,7 +77,8 @@ def first_windows(pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
     first, last = pulse.field_extent(FIELD_SHARE)
     delays = _delays(pulse, path)
     needed = (last - first) + float(np.ptp(delays[-1])) if len(delays) else last - first
-    needed *= MARGIN
+    lead = _lead(path)
+    needed = MARGIN * (needed + lead)
     _refuse_gigantic(wish, step)
     _refuse_short(wish, needed)
     points = _points(needed, MARGIN * _ringing(pulse, path), step, wish)
@@ -88,7 +90,7 @@ def first_windows(pulse: PulseSource, path: Path, wish: GridWish) -> Windows:
     if wish.form == "field":
         carrier = 0.5 / step
     grid = Grid(points=points, step=step, start=_start(first, last, points * step), carrier=carrier)
-    return _placed(grid, first, last, delays)
+    return _placed(grid, first - lead, last, delays)
 
 
 def _refuse_gigantic(wish: GridWish, step: float) -> None:
@@ -174,6 +176,11 @@ def _ringing(pulse: PulseSource, path: Path) -> float:
     return max((element.ringing(low, high) for element in path), default=0.0)
 
 
+def _lead(path: Path) -> float:
+    """How long in s before the group delay the answer may begin."""
+    return sum(element.lead for element in passages(path) if isinstance(element, Leading))
+
+
 def _points(needed: float, ringing: float, step: float, wish: GridWish) -> int:
     """Points for the window; ringing may be cut to what memory allows, as a faint one matters little (it is
     checked).
@@ -241,4 +248,4 @@ def larger(windows: Windows, pulse: PulseSource, path: Path, wish: GridWish) -> 
         raise too_large(points, wish.memory)
     first, last = pulse.field_extent(FIELD_SHARE)
     grid = replace(windows.grid, points=points, start=_start(first, last, points * windows.grid.step))
-    return _placed(grid, first, last, _delays(pulse, path))
+    return _placed(grid, first - _lead(path), last, _delays(pulse, path))

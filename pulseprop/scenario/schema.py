@@ -15,7 +15,7 @@ from pydantic import Field, PlainValidator, model_validator
 from pulseprop.scenario.fields import Name, Table, complain, measured
 from pulseprop.scenario.schema_compensate import CompensateTable
 from pulseprop.scenario.schema_medium import MediumTable
-from pulseprop.scenario.schema_path import Element
+from pulseprop.scenario.schema_path import Element, all_elements
 from pulseprop.scenario.schema_pulse import PulseTable
 
 __all__ = ["Expected", "GridTable", "PropagationTable", "ScenarioTable"]
@@ -94,7 +94,7 @@ class ScenarioTable(Table):
     @model_validator(mode="after")
     def _names_are_unique(self) -> ScenarioTable:
         seen: set[str] = set()
-        for element in self.path:
+        for element in all_elements(self.path):
             if element.place is not None:
                 raise complain("a place belongs to [[compensate.with]]", at="path", value=element.place)
             if element.name in seen:

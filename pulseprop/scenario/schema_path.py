@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable, Iterator
 from typing import Annotated, Literal
 
 from pydantic import Field, model_validator
@@ -25,6 +26,7 @@ __all__ = [
     "LossTable",
     "RepeatTable",
     "SlabTable",
+    "all_elements",
 ]
 
 
@@ -126,3 +128,11 @@ Element = Annotated[
     Field(discriminator="kind"),
 ]
 """Any element, told apart by `kind`."""
+
+
+def all_elements(path: Iterable[ElementTable]) -> Iterator[ElementTable]:
+    """The elements of a path, each repeat followed by those inside it."""
+    for element in path:
+        yield element
+        if isinstance(element, RepeatTable):
+            yield from all_elements(element.inner)
