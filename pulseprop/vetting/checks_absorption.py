@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import dataclass
 from itertools import combinations
 
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.constants import SPEED_OF_LIGHT
+from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.absorption_rows import (
     ABSORPTIONS,
     TRANSMITTANCES,
@@ -33,8 +34,8 @@ NEAR = 0.003
 practice, no source)."""
 FAINT = 0.02
 """Largest transmittance below which a whole table was probably divided by 100 once too often."""
-STEADY = 0.01
-"""Relative spread of a ratio of columns up to which it counts as one number."""
+SPREAD = 0.1
+"""Share of the longest wavelength that rows must span for a missing wavelength to show."""
 
 RATIOS = (
     (float(np.log(10)), "wrong-logarithm", "by the factor 2.302585: one of them has the other logarithm"),
@@ -102,28 +103,40 @@ def columns_disagree(case: Case) -> Iterator[Finding]:
         apart = np.abs(first.k - second.k) > first.error + second.error
         rows = np.flatnonzero(apart & ~first.least & ~second.least)
         if len(rows):
-            yield _disagreement(case, one, other, rows, first.k, second.k)
+            parts = [_Known(part.k[rows], part.error[rows]) for part in (first, second)]
+            yield _disagreement(case, (one, other), rows, *parts)
+
+
+@dataclass(frozen=True, eq=False)
+class _Known:
+    """k and its uncertainty in the rows where two columns differ."""
+
+    k: Real
+    error: Real
 
 
 def _disagreement(
-    case: Case, one: Column, other: Column, rows: NDArray[np.int64], first: Real, second: Real
+    case: Case, columns: tuple[Column, Column], rows: NDArray[np.int64], first: _Known, second: _Known
 ) -> Finding:
-    names = f"{one.quantity.replace('_', ' ')} and {other.quantity.replace('_', ' ')}"
+    """With the factor between them, where one factor explains all rows."""
     code, how = "columns-disagree", f"in {len(rows)} rows"
-    with np.errstate(divide="ignore", invalid="ignore"):
-        ratio = np.asarray(first[rows] / second[rows])
-        as_printed = ratio * SPEED_OF_LIGHT / (2 * case.table.omega[rows])
     for factor, named, words in RATIOS:
-        for number in (factor, 1 / factor):
-            if np.all(np.abs(ratio / number - 1) < STEADY):
-                code, how = named, words
-    if one.quantity == "k" and np.all(np.abs(as_printed / np.median(as_printed) - 1) < STEADY):
-        spread = float(np.ptp(case.table.omega[rows]) / np.max(case.table.omega[rows]))
-        if spread > 10 * STEADY:
+        if any(_agree(first, second, number) for number in (factor, 1 / factor)):
+            code, how = named, words
+    if columns[0].quantity == "k":
+        wavelengths = TWO_PI_C / case.table.omega[rows]
+        ratio = float(np.median(first.k * wavelengths / second.k))
+        if np.ptp(wavelengths) > SPREAD * np.max(wavelengths) and _agree(first, second, ratio / wavelengths):
             code, how = "absorption-quantity", "as if one had been copied into the other without wavelength"
+    one, other = (column.quantity.replace("_", " ") for column in columns)
     return Finding(
         code=code,
         severity="error",
-        text=f"The columns {names} do not follow from each other: they differ {how}.",
+        text=f"The columns {one} and {other} do not follow from each other: they differ {how}.",
         rows=case.lines(rows),
     )
+
+
+def _agree(first: _Known, second: _Known, factor: Real | float) -> bool:
+    """Whether first is factor times second within the uncertainties of both."""
+    return bool(np.all(np.abs(first.k - factor * second.k) <= first.error + factor * second.error))
