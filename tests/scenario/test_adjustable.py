@@ -64,7 +64,7 @@ def test_a_pulse_is_not_sent_through_an_open_range() -> None:
         ({"choices": ["1 mm"], "now": "2 mm"}, "today's value is none of the choices"),
         ({"choices": ["1 mm"], "from": "2 mm"}, "a setting is a range or a list"),
         ({"from": "a mm", "to": "2 mm"}, "this is no number with a unit"),
-        ({"from": "1 furlong", "to": "2 furlong"}, "furlong"),
+        ({"from": "1 quux", "to": "2 quux"}, "quux"),
     ],
 )
 def test_what_is_no_setting_is_refused_with_its_place(value: object, part: str) -> None:
