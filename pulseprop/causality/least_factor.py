@@ -17,7 +17,7 @@ from pulseprop.causality.proof import Proof, favoured_masses, proven
 from pulseprop.errors import NumericalLimit
 from pulseprop.numerics.box_programme import solve_box
 
-__all__ = ["FLOOR", "GAP", "Attained", "least_factor"]
+__all__ = ["FLOOR", "GAP", "Attained", "factor_with", "least_factor"]
 
 Real = NDArray[np.float64]
 
@@ -67,22 +67,45 @@ def least_factor(cls: PassiveClass) -> tuple[Attained, Proof]:
 
 def _solved(cls: PassiveClass, masses: Masses) -> tuple[Attained, Real, float]:
     """The material of these masses, weights of the rows and the price of strength."""
-    matrix, lower, stretch = cls.matrix(masses), cls.target, cls.error
-    upper = np.where(cls.least, np.inf, cls.target)
+    matrix, strengths = cls.matrix(masses), cls.strengths(masses)
+    amounts, weights, price = _programme(cls, matrix, strengths, np.ones(len(cls.target), dtype=bool))
+    return Attained(masses, amounts, float(np.max(_stretch(cls, matrix @ amounts)))), weights, price
+
+
+def factor_with(
+    cls: PassiveClass, masses: Masses, lines: Real, strengths: Real, rows: NDArray[np.bool_]
+) -> tuple[float, Real]:
+    """Least factor on some rows (R + K,) where materials may have further columns, and the amounts of these.
+
+    lines: (R + K, any), of the given strengths. Masses are not added.
+    """
+    matrix = np.concatenate((cls.matrix(masses), lines), axis=1)
+    every = np.concatenate((cls.strengths(masses), strengths))
+    amounts, _, _ = _programme(cls, matrix, every, rows)
+    factor = float(np.max(_stretch(cls, matrix @ amounts)[rows]))
+    return factor, amounts[len(amounts) - len(strengths) :]
+
+
+def _programme(
+    cls: PassiveClass, matrix: Real, strengths: Real, rows: NDArray[np.bool_]
+) -> tuple[Real, Real, float]:
+    """Amounts of the columns, weights of the chosen rows and the price of strength."""
+    matrix, lower, stretch = matrix[rows], cls.target[rows], cls.error[rows]
+    upper = np.where(cls.least[rows], np.inf, lower)
     if cls.limit is not None:
-        matrix = np.concatenate((matrix, cls.strengths(masses)[None] / cls.limit))
+        matrix = np.concatenate((matrix, strengths[None] / cls.limit))
         lower, upper, stretch = np.append(lower, -np.inf), np.append(upper, 1.0), np.append(stretch, 0.0)
     found = solve_box(
         matrix, lower, upper, stretch=stretch, accuracy=ACCURACY, floor=FLOOR, tolerable=TOLERABLE
     )
-    weights, price = found.dual[: len(cls.target)], 0.0
-    amounts = np.maximum(found.x, 0.0)
+    amounts, weights, price = np.maximum(found.x, 0.0), found.dual, 0.0
     if cls.limit is not None:
-        price = max(-float(found.dual[-1]), 0.0) / cls.limit
+        weights, price = weights[:-1], max(-float(weights[-1]), 0.0) / cls.limit
         amounts = amounts / max(float(matrix[-1] @ amounts), 1.0)
-    return Attained(masses, amounts, _stretch(cls, matrix[: len(cls.target)] @ amounts)), weights, price
+    return amounts, weights, price
 
 
-def _stretch(cls: PassiveClass, value: Real) -> float:
+def _stretch(cls: PassiveClass, value: Real) -> Real:
+    """By how much each row misses, over its uncertainty: (R + K,)."""
     missed = np.where(cls.least, np.maximum(cls.target - value, 0.0), np.abs(value - cls.target))
-    return float(np.max(missed / cls.error))
+    return np.asarray(missed / cls.error)

@@ -32,16 +32,22 @@ NEWTON = 8
 
 @dataclass(frozen=True, eq=False, kw_only=True)
 class Side:
-    """sign: +1 above the rows, -1 below. away: a of each row, (R,), 0 or more. allowed: (least, greatest) S
-    of each stretch where masses may lie."""
+    """sign: +1 above the rows, -1 below. end: the outermost row of n, a frequency. away: a of each row, (R,),
+    0 or more. allowed: (least, greatest) S of each stretch where masses may lie."""
 
     sign: int
+    end: float
     away: Real
     allowed: tuple[tuple[float, float], ...]
 
     def columns(self, distance: Real) -> Real:
         """Change of the rows by a unit mass at each distance: (R, places)."""
         return _share(self.away[:, None], distance) * self.sign
+
+    def elsewhere(self, omega: Real, distance: Real) -> Real:
+        """The same change of the index at any frequencies: (frequencies, places)."""
+        away = (self.end - omega) * (self.end + omega) * self.sign
+        return _share(away[:, None], distance) * self.sign
 
     def weighed(self, weights: Real, distance: Real) -> Real:
         """weights . column at each distance, (places,)."""
@@ -97,7 +103,8 @@ def _share(away: Real, distance: Real) -> Real:
     far = np.isinf(distance)
     size = np.where(far, 1.0, distance)
     total = size + np.where(far, 0.0, away)
-    return np.where(total > 0, size / np.where(total > 0, total, 1.0), 1.0)
+    alone = (total == 0) & (size == 0)
+    return np.asarray(np.where(alone, 1.0, size / np.where(alone, 1.0, total)))
 
 
 def _places(away: Real, low: float, high: float) -> Real:

@@ -103,8 +103,8 @@ class PassiveClass:
         down = without(_squares(inner, first), inner**2, (_squares(inner, dark[1]), _squares(inner, dark[0])))
         up = without(_squares(last, outer), np.inf, (_squares(dark[0], outer), _squares(dark[1], outer)))
         return (
-            Side(sign=-1, away=_squares(self.rows, inner), allowed=down),
-            Side(sign=1, away=_squares(outer, self.rows), allowed=up),
+            Side(sign=-1, end=float(inner), away=_squares(self.rows, inner), allowed=down),
+            Side(sign=1, end=float(outer), away=_squares(outer, self.rows), allowed=up),
         )
 
     @cached_property

@@ -50,12 +50,17 @@ def favoured_masses(cls: PassiveClass, weights: Real, price: float) -> tuple[Mas
     return Masses(below, above), every[every > 0]
 
 
-def proven(cls: PassiveClass, weights: Real, price: float) -> Proof | None:
-    """The proof next to weights (R + K,), price >= 0; None where there is none nearby."""
+def proven(
+    cls: PassiveClass, weights: Real, price: float, rows: NDArray[np.bool_] | None = None
+) -> Proof | None:
+    """The proof next to weights (R + K,), price >= 0; None where there is none nearby.
+
+    rows: (R + K,), those of k that may take part; all unless given.
+    """
     weights = np.where(cls.least, np.maximum(weights, 0.0), weights)
     if len(cls.rows) == 1:
         weights = np.where(np.arange(len(weights)) == 0, 0.0, weights)  # one row of n alone can be anything
-    ways = _ways_inward(cls)
+    ways = _ways_inward(cls, rows)
     for _ in range(ROUNDS):
         shares = _needed(cls, weights, price, ways)
         if shares is None:
@@ -72,8 +77,8 @@ def _normalised(cls: PassiveClass, weights: Real, price: float) -> Proof:
     return Proof(weights / size, price / size, max(missed / size, 0.0))
 
 
-def _ways_inward(cls: PassiveClass) -> Real:
-    """Weights (3, R + K) that no column favours, but those of splines that only lower limits hold.
+def _ways_inward(cls: PassiveClass, rows: NDArray[np.bool_] | None) -> Real:
+    """Weights (3, R + K) that no column favours, but those of splines that none of the rows holds from above.
 
     +1 on the reddest row of n with -1 on the bluest: the constant is on the border; the same with so little
     on the reddest that a mass at s = 0 is; -1 on each row of k that holds splines from above.
@@ -83,7 +88,8 @@ def _ways_inward(cls: PassiveClass) -> Real:
     if count > 1:
         ways[:2, 0] = 1.0, (cls.rows[0] / cls.rows[-1]) ** 2
         ways[:2, count - 1] = -1.0
-    ways[2, count:] = np.where(cls.least[count:], 0.0, -1.0)
+    free = cls.least if rows is None else cls.least | ~rows
+    ways[2, count:] = np.where(free[count:], 0.0, -1.0)
     held = -ways[2] @ cls.spline_columns
     some = held > 0
     for way in ways[:2]:
