@@ -9,6 +9,8 @@ end is proven to a small share of the distance between both.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -26,6 +28,8 @@ WELL_WITHIN = 0.1
 """Share of the uncertainties that a material leaves free from which on the programmes have room to start."""
 ROUGH = 0.5
 """How far the proof of M may miss."""
+ROUGHLY = 1e-2
+"""Accuracy of programmes whose value only has to be of the right size."""
 FIRST, LAST = 1e-4, 1e-9
 """Accuracy of the first programme of an end, and the best that is asked for."""
 COUNTS = 0.01
@@ -47,7 +51,6 @@ class Proofs:
         self.grid_columns = materials.continuum(materials.grid)
         self.grid_sizes = self._sizes(self.grid_columns)
         self.fixed_sizes = self._sizes(materials.fixed)
-        self._find_room()
         self.total = self._total()
         self._base = self.places
 
@@ -68,6 +71,11 @@ class Proofs:
         self.places = np.unique(np.concatenate((self._base, low.found, high.found)))
         return low.proven, -high.proven
 
+    def of_material(self, functionals: Sequence[Functional]) -> Real:
+        """Values of one of the materials."""
+        places, amounts = self._material
+        return np.array([np.append(f.fixed, f.continuum(places)) @ amounts for f in functionals])
+
     def solved(self, functional: Functional, places: Real, accuracy: float) -> tuple[Real, float]:
         """Weights of the rows, and the value of the functional that these places reach."""
         materials = self.materials
@@ -77,6 +85,7 @@ class Proofs:
         found = solve_box(
             matrix, materials.lower, materials.upper, cost=cost / scale, accuracy=accuracy, floor=1e-30
         )
+        self._material = places, found.x
         return found.dual * scale, found.value * scale
 
     def worth(self, weights: Real) -> float:
@@ -120,6 +129,32 @@ class Proofs:
         """Largest entry of each, in units of the rows."""
         return np.asarray(np.max(np.abs(columns) / self.materials.size[:, None], axis=0))
 
+    def _total(self) -> float:
+        """M: no material of the class has columns whose sizes add up to more."""
+        try:
+            return self._proven_total()
+        except NumericalLimit:
+            self._find_room()
+        try:
+            return self._proven_total()
+        except NumericalLimit:
+            raise NumericalLimit(
+                "the rows do not limit what the material absorbs outside them",
+                remedy="State the index at another wavelength, or a limit on the strength of all absorption",
+            ) from None
+
+    def _proven_total(self) -> float:
+        sizes = Functional(
+            fixed=-self.fixed_sizes, continuum=lambda q: -self._sizes(self.materials.continuum(q))
+        )
+        for _ in range(ROUNDS):
+            weights, _ = self.solved(sizes, self.places, ROUGHLY)
+            worst, more = self.worst(sizes, weights)
+            if worst <= ROUGH:
+                return -self.worth(weights) / (1 - max(worst, 0.0))
+            self.places = np.union1d(self.places, more)
+        raise NumericalLimit("no proof of the total was found")
+
     def _find_room(self) -> None:
         """Places enough for a material that keeps well within all limits, or else the best there is."""
         none = Functional(fixed=np.zeros(len(self.fixed_sizes)), continuum=np.zeros_like)
@@ -127,29 +162,16 @@ class Proofs:
         for _ in range(ROUNDS):
             matrix = np.hstack([materials.fixed, materials.continuum(self.places)])
             found = solve_box(
-                matrix, materials.lower, materials.upper, stretch=materials.size, accuracy=1e-2, floor=1.0
+                matrix, materials.lower, materials.upper, stretch=materials.size, accuracy=ROUGHLY, floor=1.0
             )
             if found.t < -WELL_WITHIN:
                 return
             _, more = self.worst(none, found.dual)
             if not len(more):
                 break
-            self.places = np.union1d(self.places, more)
+            self.places = np.union1d(self.places, _with_neighbours(more, self.places))
         if found.t > 0:
-            raise NumericalLimit("no material of the class keeps within the limits")
-
-    def _total(self) -> float:
-        """M: no material of the class has columns whose sizes add up to more."""
-        sizes = Functional(
-            fixed=-self.fixed_sizes, continuum=lambda q: -self._sizes(self.materials.continuum(q))
-        )
-        for _ in range(ROUNDS):
-            weights, _ = self.solved(sizes, self.places, 1e-2)
-            worst, more = self.worst(sizes, weights)
-            if worst <= ROUGH:
-                return -self.worth(weights) / (1 - max(worst, 0.0))
-            self.places = np.union1d(self.places, more)
-        raise NumericalLimit("nothing limits the absorption outside the band")
+            raise NumericalLimit("no passive causal material has these numbers within their uncertainties")
 
 
 class _End:

@@ -1,14 +1,14 @@
-"""Bounds tightened with real chi = n^2 - 1, where a material is transparent.
+"""Bounds in real chi = n^2 - 1, where a material is transparent.
 
 Im chi = 2 n k >= 0 with Re n > 0 is more than k >= 0: chi itself is then a sum over absorption outside the band,
-and the rows of n are rows of chi, |n +- u|^2 - 1. (Inside absorption chi is not real, and this is false.) With
-X_m the derivatives of chi and N + delta those of n, N the middle of what is known,
+and the rows of n are rows of chi, between (n - u)^2 - 1 and (n + u)^2 - 1. (Inside absorption chi is not real,
+and this is false.) With X the derivatives of chi, N + delta those of n about the middle N of what is known, and
 
-    X_m = sum_j binomial(m, j) n_j n_(m-j)    (less 1 for m = 0)
+    X_m = sum_j binomial(m, j) n_j n_(m-j)    (less 1 for m = 0),
 
-is exactly X_m(N) + (L delta)_m + Q_m(delta) with L triangular and Q the same sum over delta. So any
-combination w . delta = (w L^-1) . (X - X(N)) - (w L^-1) . Q(delta): a functional linear in chi, and a remainder
-of second order that the bounds known already confine.
+X is exactly X(N) + L delta + Q(delta), L triangular and Q the same sum over delta. So any combination of n and
+its derivatives, w . delta = (w / L) . (X - X(N)) - (w / L) . Q(delta), is a functional linear in chi and a
+remainder of second order.
 """
 
 from __future__ import annotations
@@ -22,10 +22,12 @@ from numpy.typing import NDArray
 from pulseprop.causality.bounds_functionals import ORDERS
 from pulseprop.causality.passive_data import PassiveData
 
-__all__ = ["Squared", "squared_rows"]
+__all__ = ["Squared", "index_of_chi", "squared_rows"]
 
 Real = NDArray[np.float64]
-Interval = tuple[float, float]
+
+SETTLING, SPARE = 20, 1.02
+"""Tries to find a room, each with so much to spare."""
 
 
 def squared_rows(data: PassiveData) -> PassiveData | None:
@@ -45,33 +47,61 @@ def squared_rows(data: PassiveData) -> PassiveData | None:
 class Squared:
     """weights: of n - 1 and its derivatives in each quantity, (quantities, ORDERS), lower triangular.
 
-    intervals: of the quantities, as known.
+    middle: of the quantities, any values near those that the materials have. of_chi: weights of chi and its
+    derivatives in each quantity, to first order.
     """
 
-    def __init__(self, weights: Real, intervals: list[Interval]) -> None:
-        ends = np.array(intervals)
-        self.middle = np.mean(ends, axis=1)
-        self.room = (ends[:, 1] - ends[:, 0]) / 2
-        self.back = np.linalg.inv(weights)
-        derivatives = self.back @ self.middle + ONE
-        self.of_chi = np.linalg.inv(2 * np.tensordot(PRODUCTS, derivatives, axes=1) @ self.back)
-        """Weights of chi and its derivatives in each quantity, to first order."""
-        self.chi = derivatives @ PRODUCTS @ derivatives - ONE
+    def __init__(self, weights: Real, middle: Real) -> None:
+        self.middle, self._back = middle, np.linalg.inv(weights)
+        index = self._back @ middle + ONE
+        self._chi = index @ PRODUCTS @ index - ONE
+        self.of_chi = np.linalg.inv(2 * np.tensordot(PRODUCTS, index, axes=1) @ self._back)
 
-    def interval(self, quantity: int, of_chi: Interval) -> Interval:
-        """Of the quantity, from that of its combination of chi and its derivatives."""
-        combination = self.of_chi[quantity]
-        offset = self.middle[quantity] - combination @ self.chi
-        least, most = self._remainder(combination)
-        return of_chi[0] + offset - most, of_chi[1] + offset - least
+    def linear(self, found: Real) -> Real:
+        """Intervals (quantities, 2) of the distances from the middle to first order, from those of of_chi."""
+        return np.asarray(found - (self.of_chi @ self._chi)[:, None])
 
-    def _remainder(self, combination: Real) -> Interval:
-        """Of combination . Q, the quantities within their room: squares have one sign, other products both."""
-        form = self.back.T @ np.tensordot(combination, PRODUCTS, axes=1) @ self.back
-        form = form * np.outer(self.room, self.room)
-        squares = np.diag(form)
-        either = float(np.sum(np.abs(form)) - np.sum(np.abs(squares)))
-        return float(np.sum(np.minimum(squares, 0))) - either, float(np.sum(np.maximum(squares, 0))) + either
+    def settled(self, linear: Real) -> Real | None:
+        """How far the quantities can be from the middle, which is that of one of the materials: (quantities,).
+
+        The materials are a connected set. If within some room the linear part and the remainder stay strictly
+        inside it, no material can have left it. None where no such room is found.
+        """
+        room = np.max(np.abs(linear), axis=1)
+        for _ in range(SETTLING):
+            needed = np.max(np.abs(self._with_remainder(linear, room)), axis=1)
+            if np.all(needed < room):
+                return np.asarray(room)
+            room = SPARE * needed
+        return None
+
+    def intervals(self, linear: Real, room: Real) -> Real:
+        """Of the quantities, (quantities, 2), no material having them further than room from the middle."""
+        return self._with_remainder(linear, room) + self.middle[:, None]
+
+    def shares(self, linear: Real, room: Real) -> Real:
+        """Of the width of each interval, what the remainder takes."""
+        whole = np.diff(self._with_remainder(linear, room), axis=1)[:, 0]
+        return np.asarray(1 - np.diff(linear, axis=1)[:, 0] / whole)
+
+    def _with_remainder(self, linear: Real, room: Real) -> Real:
+        """Squares in Q have one sign, other products both."""
+        forms = self._back.T @ np.tensordot(self.of_chi, PRODUCTS, axes=1) @ self._back
+        forms = forms * np.outer(room, room)
+        squares = np.diagonal(forms, axis1=1, axis2=2)
+        either = np.sum(np.abs(forms), axis=(1, 2)) - np.sum(np.abs(squares), axis=1)
+        least = np.sum(np.minimum(squares, 0), axis=1) - either
+        most = np.sum(np.maximum(squares, 0), axis=1) + either
+        return np.stack((linear[:, 0] - most, linear[:, 1] - least), axis=1)
+
+
+def index_of_chi(chi: Real) -> Real:
+    """n - 1 and its derivatives from chi and its derivatives, (ORDERS,)."""
+    index = np.zeros(ORDERS)
+    index[0] = np.sqrt(1 + chi[0])
+    for m in range(1, ORDERS):
+        index[m] = (chi[m] - index @ PRODUCTS[m] @ index) / (2 * index[0])
+    return np.asarray(index - ONE)
 
 
 def _products() -> Real:
