@@ -132,4 +132,4 @@ class Coating(Device):
         if rest < 1e-4:
             return ()
         other = "passes or is absorbed" if self.side == "reflection" else "is reflected or absorbed"
-        return (f"{self.name}: about {rest:.2g} % {other} each time",)
+        return (f"{self.name}: about {rest:.3g} % {other} each time",)

@@ -27,7 +27,6 @@ __all__ = [
     "Straying",
     "require_count",
     "require_share",
-    "share_between",
     "without_delay",
 ]
 
@@ -125,18 +124,6 @@ def without_delay(phase: Series, omega: Numbers, at_centre: Series, centre: floa
     if result.shape[0] > 1:
         result[1] -= slope
     return result
-
-
-def share_between(first: Real | float, second: Real | float, radius: float) -> Real:
-    """Energy of a Gaussian beam that passes between two straight edges, 0 to 1.
-
-    first, second: distances in m of the beam's axis from the edges on its two sides (negative: the axis lies
-    beyond the edge). radius: 1/e^2 intensity radius, m. From the integral of exp(-2 x^2 / radius^2).
-    """
-    from scipy.special import erf
-
-    scale = np.sqrt(2) / radius
-    return np.asarray(np.maximum(0.5 * (erf(scale * first) + erf(scale * second)), 0.0))
 
 
 def require_share(value: float, words: str) -> None:

@@ -6,18 +6,23 @@ k_t^2) = (omega/c) G cos(theta_d) on each pass; all else is constant or linear i
 IEEE J. Quantum Electron. QE-5, 454 (1969), order -1; any order m in sin(theta_d) = -m lambda/d -
 sin(incidence), both angles positive on one side of the normal.
 
-Light is diffracted up to the wavelength at which theta_d reaches 90 deg; beyond, it stays at the grating.
+Light is diffracted up to the wavelength at which theta_d reaches 90 deg. Short of that no grating has any
+efficiency left, and none is long enough: what would leave within 3 deg of the surface is lost.
 """
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
-from pulseprop.elements.device import DARK, Device, require_count, require_share, share_between, without_delay
+from pulseprop.elements.device import DARK, Device, require_count, require_share, without_delay
+from pulseprop.elements.edges import missed, share_between
+from pulseprop.elements.telling import Light
+from pulseprop.elements.wedges import GRAZING
 from pulseprop.elements.words import in_unit, nanometres, times
 from pulseprop.errors import InputError, RangeError
 from pulseprop.material.response import Band, View
@@ -27,6 +32,7 @@ __all__ = ["GratingPair"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
+Mask = NDArray[np.bool_]
 
 RIGHT_ANGLE = 0.5 * np.pi
 CLEARANCE = 3.0
@@ -69,11 +75,12 @@ class GratingPair(Device):
                 "what misses a grating of this width depends on the beam",
                 remedy="State beam_radius, of the element or in [pulse]",
             )
-        if not self.centre > self.band.low:
+        if not self._normal(np.array(self.centre), 1)[1]:
             raise RangeError(
                 "the gratings do not diffract the centre of the pulse",
                 value=nanometres(self.centre),
-                allowed=f"wavelengths below {nanometres(self.band.low)}",
+                allowed=f"wavelengths below {nanometres(self._leaving_at(GRAZING))}, where they leave at "
+                "3 deg or more from the surface",
                 remedy=self.remedy_beyond(self.centre, self.centre),
             )
 
@@ -93,7 +100,11 @@ class GratingPair(Device):
     @property
     def band(self) -> Band:
         """From where theta_d reaches 90 deg on, rad/s."""
-        return Band(abs(self._momentum) * SPEED_OF_LIGHT / (1 + self._towards), np.inf)
+        return Band(self._leaving_at(RIGHT_ANGLE), np.inf)
+
+    def _leaving_at(self, angle: float) -> float:
+        """The frequency in rad/s diffracted at theta_d = angle, on the long-wave side."""
+        return abs(self._momentum) * SPEED_OF_LIGHT / (float(np.sin(angle)) + self._towards)
 
     @property
     def _momentum(self) -> float:
@@ -107,9 +118,9 @@ class GratingPair(Device):
 
     def remedy_beyond(self, low: float, high: float) -> str:
         """The incidence that would diffract light down to `low`, rad/s."""
-        sine = abs(self._momentum) * SPEED_OF_LIGHT / low - 1
+        sine = abs(self._momentum) * SPEED_OF_LIGHT / low - np.sin(GRAZING)
         fewer = "Take gratings of fewer grooves"
-        if sine >= 1:
+        if sine >= np.sin(GRAZING):
             return fewer
         angle = np.sign(self._momentum) * np.arcsin(max(sine, -1.0))
         bound = "above" if self._momentum > 0 else "below"
@@ -120,24 +131,22 @@ class GratingPair(Device):
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i times the phase, and the loss of the diffractions; dark where there is no diffraction."""
         omega = np.asarray(omega)
-        normal, decay = self._normal(omega, max(count, 2))
+        normal, arrives = self._normal(omega, max(count, 2))
         at_centre, _ = self._normal(np.array(self.centre), 2)
-        travelled = self.passes * self.separation
-        phase = travelled * without_delay(normal, omega, at_centre, self.centre)[:count]
-        exponent = np.where(decay > 0, 0.0, (-1j if self.stretches else 1j) * phase)
-        exponent[0] += self.passes * np.log(self.efficiency)
-        exponent[0] += np.where(decay > 0, np.maximum(-decay * travelled, DARK), 0.0)
+        sign = -1j if self.stretches else 1j
+        phase = without_delay(normal, omega, at_centre, self.centre)[:count]
+        exponent = np.where(arrives, sign * self.passes * self.separation * phase, 0.0)
+        exponent[0] += np.where(arrives, self.passes * np.log(self.efficiency), DARK)
         return np.asarray(exponent)
 
-    def _normal(self, omega: Numbers, count: int) -> tuple[Series, Real]:
-        """Component of the wave vector along the normal, 1/m, and where there is none its decay, 1/m."""
+    def _normal(self, omega: Numbers, count: int) -> tuple[Series, Mask]:
+        """Component of the wave vector along the normal, 1/m, and where light comes off the grating."""
         wave = variable(omega, count) / SPEED_OF_LIGHT
         along = self._along(wave)
         squared = product(wave - along, wave + along)
-        decay = np.sqrt(np.maximum(-np.real(squared[0]), 0.0))
-        decay = np.where(np.real(squared[0]) == 0, np.finfo(float).tiny, decay)
-        squared[0] = np.where(decay > 0, 1.0, squared[0])
-        return root(squared, np.sqrt(squared[0])), decay
+        arrives = np.asarray(np.real(squared[0]) > (np.cos(GRAZING) * np.real(wave[0])) ** 2)
+        squared[0] = np.where(arrives, squared[0], 1.0)
+        return root(squared, np.sqrt(squared[0])), arrives
 
     def _along(self, wave: Series) -> Series:
         along = -np.sin(self.incidence) * wave
@@ -198,6 +207,25 @@ class GratingPair(Device):
             f"({in_unit(abs(angle - self.incidence), 'deg', 3)} between incident and diffracted beam): it "
             "needs an offset in height, or another incidence",
         )
+
+    @property
+    def figures(self) -> Mapping[str, float | None]:
+        """What a person sets up by."""
+        return {
+            "diffraction_angle_deg": float(np.degrees(self.diffraction_angle(self.centre))),
+            "littrow_angle_deg": None if self.littrow is None else float(np.degrees(self.littrow)),
+            "distance_along_beam_mm": self.footprint * 1e3,
+            "beam_passes_second_grating_at_mm": self.clearance * 1e3,
+        }
+
+    @property
+    def notes(self) -> tuple[str, ...]:
+        """None."""
+        return ()
+
+    def warnings(self, light: Light) -> tuple[str, ...]:
+        """How much misses the second grating."""
+        return missed(self.name, self.factor(light.omega), light, "the second grating")
 
     @property
     def stray_beams(self) -> tuple[str, ...]:

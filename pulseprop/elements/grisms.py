@@ -10,13 +10,16 @@ apex_angle less that of refraction at the entry face, and angles count away from
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.elements.device import DARK, Device, require_count, require_share, share_between, without_delay
+from pulseprop.elements.device import DARK, Device, require_count, require_share, without_delay
+from pulseprop.elements.edges import missed, share_between
+from pulseprop.elements.telling import Light
 from pulseprop.elements.wedges import Wedge, Wedges
 from pulseprop.elements.words import in_unit, nanometres, times
 from pulseprop.errors import InputError, RangeError
@@ -174,6 +177,26 @@ class GrismPair(Device):
         """The carrier's way from grating to grating and in glass, m."""
         _, _, outside = self.wedges.wedge.angles(self.centre)
         return float(self.separation / np.cos(outside)) + self.wedges.glass()
+
+    @property
+    def figures(self) -> Mapping[str, float | None]:
+        """What a person sets up by."""
+        _, inside, outside = self.wedges.wedge.angles(self.centre)
+        return {
+            "angle_in_glass_at_grating_deg": float(np.degrees(inside)),
+            "diffraction_angle_deg": float(np.degrees(outside)),
+            "distance_along_beam_mm": float(self.separation / np.cos(outside)) * 1e3,
+            "glass_mm_a_pass": self.wedges.glass() * 1e3,
+        }
+
+    @property
+    def notes(self) -> tuple[str, ...]:
+        """None."""
+        return ()
+
+    def warnings(self, light: Light) -> tuple[str, ...]:
+        """How much misses the second grating."""
+        return missed(self.name, self.factor(light.omega), light, "the second grating")
 
     @property
     def stray_beams(self) -> tuple[str, ...]:

@@ -9,6 +9,7 @@ between them where it was.
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import cached_property
 from typing import Literal
@@ -16,8 +17,10 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.elements.device import DARK, Device, require_count, share_between, without_delay
+from pulseprop.elements.device import DARK, Device, require_count, without_delay
+from pulseprop.elements.edges import missed, share_between
 from pulseprop.elements.faces import Polarisation, reflection_squared
+from pulseprop.elements.telling import Light
 from pulseprop.elements.wedges import Wedge, Wedges
 from pulseprop.elements.words import in_unit, nanometres, times
 from pulseprop.errors import InputError
@@ -220,6 +223,31 @@ class PrismPair(Device):
             f"{self.name}: a tip cuts into the beam; its radius of {in_unit(self.beam_radius, 'mm', 3)} "
             f"needs an insertion of {in_unit(float(needed), 'mm', 3)} or more at both prisms",
         )
+
+    @property
+    def figures(self) -> Mapping[str, float | None]:
+        """What a person sets up by."""
+        first, second = self.clearance
+        return {
+            "apex_angle_deg": float(np.degrees(self.apex)),
+            "incidence_deg": float(np.degrees(self.incidence)),
+            "deviation_deg": float(np.degrees(self.deviation)),
+            "beam_from_first_tip_mm": first * 1e3,
+            "beam_from_second_tip_mm": second * 1e3,
+            "glass_mm_a_pass": self.length / self.passes * 1e3,
+        }
+
+    @property
+    def notes(self) -> tuple[str, ...]:
+        """None."""
+        return ()
+
+    def warnings(self, light: Light) -> tuple[str, ...]:
+        """How much misses the prisms."""
+        if self.beam_radius is None:
+            return ()
+        passed = self._past_the_tips(light.omega, self.beam_radius)
+        return missed(self.name, passed, light, "the tips of the prisms")
 
     @property
     def stray_beams(self) -> tuple[str, ...]:

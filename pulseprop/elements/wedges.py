@@ -25,11 +25,15 @@ from pulseprop.material.medium import Medium
 from pulseprop.material.response import View
 from pulseprop.numerics.series import Numbers, Series, product, root, variable
 
-__all__ = ["Wedge", "Wedges"]
+__all__ = ["GRAZING", "Wedge", "Wedges"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 Mask = NDArray[np.bool_]
+
+GRAZING = np.radians(87.0)
+"""Light that leaves a face or grating nearer to its surface is lost: its way to the second one would grow
+without bound, and little of it leaves (common practice, no source)."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -52,7 +56,7 @@ class Wedge:
         )
         along[0] += self.momentum
         squared = product(wave - along, wave + along).astype(complex)
-        leaves = np.asarray(np.real(squared[0]) > 0)
+        leaves = np.asarray(np.real(squared[0]) > (np.cos(GRAZING) * np.real(wave[0])) ** 2)
         squared[0] = np.where(leaves, squared[0], 1.0)
         return along, root(squared, np.sqrt(squared[0])), leaves
 
@@ -61,10 +65,14 @@ class Wedge:
         (NaN where the wave does not leave)."""
         omega = np.asarray(omega, dtype=float)
         index = np.real(self.medium.index(omega))
-        entry = np.arcsin(np.sin(self.incidence) / index)
-        leaving = index * np.sin(self.apex - entry) + self.momentum * SPEED_OF_LIGHT / omega
-        outside = np.arcsin(np.where(np.abs(leaving) < 1, leaving, np.nan))
-        return np.asarray(entry), np.asarray(self.apex - entry), np.asarray(outside)
+        entry = _arcsin(np.sin(self.incidence) / index)
+        outside = _arcsin(index * np.sin(self.apex - entry) + self.momentum * SPEED_OF_LIGHT / omega)
+        return entry, self.apex - entry, outside
+
+
+def _arcsin(sine: Numbers) -> Real:
+    sine = np.real(sine)
+    return np.asarray(np.arcsin(np.where(np.abs(sine) < 1, sine, np.nan)))
 
 
 @dataclass(frozen=True, kw_only=True)

@@ -9,6 +9,7 @@ from pulseprop.constants import TWO_PI_C
 from pulseprop.elements.device import Banded
 from pulseprop.errors import RangeError
 from pulseprop.grid import Grid
+from pulseprop.material.response import Band
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.numerals import percent
 
@@ -62,13 +63,21 @@ def _check_band(experiment: Experiment, grid: Grid, spectrum: Complex, element: 
         return
     raise RangeError(
         f"the pulse leaves the band of the {element.kind} {element.name!r}",
-        value=f"{percent(outside, 2)} of the pulse's energy lies outside "
-        f"{_nanometres(element.band.high)} to {_nanometres(element.band.low)}",
+        value=f"{percent(outside, 2)} of the pulse's energy lies {_beyond(element.band)}",
         allowed=f"at most {RANGE_SHARE:g} of the energy outside",
         remedy=element.remedy_beyond(*_filled(grid, spectrum)),
         file=experiment.file,
         place=element.name,
     )
+
+
+def _beyond(band: Band) -> str:
+    """The outside of a band, in wavelengths."""
+    if not np.isfinite(band.high):
+        return f"above {_nanometres(band.low)}"
+    if band.low <= 0:
+        return f"below {_nanometres(band.high)}"
+    return f"outside {_nanometres(band.high)} to {_nanometres(band.low)}"
 
 
 def _filled(grid: Grid, spectrum: Complex) -> tuple[float, float]:

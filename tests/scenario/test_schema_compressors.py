@@ -180,7 +180,7 @@ def test_a_gires_tournois_mirror_in_si() -> None:
         (gratings(separation="-1 mm"), ["path.1.separation", "0 m or more"]),
         (gratings(grooves="600 mm"), ["path.1.grooves", '"600 /mm"']),
         (gratings(width="20 mm"), ["path.1", "beam_radius"]),
-        (gratings(grooves="2000 /mm", incidence="10 deg"), ["path.1", "36.87 deg"]),
+        (gratings(grooves="2000 /mm", incidence="10 deg"), ["path.1", "36.97 deg"]),
         ({"kind": "prism pair", "apex_separation": "1 m"}, ["path.1.medium", "missing"]),
         (
             {"kind": "prism pair", "medium": "SF11x", "apex_separation": "1 m"},

@@ -1,0 +1,42 @@
+"""What straight edges take off a Gaussian beam, and off the light of a pulse."""
+
+from __future__ import annotations
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.elements.telling import Light
+
+__all__ = ["missed", "share_between"]
+
+Complex = NDArray[np.complex128]
+Real = NDArray[np.float64]
+
+WORTH_SAYING = 1e-3
+"""Share of the energy from which on what is cut off is told."""
+
+
+def share_between(first: Real | float, second: Real | float, radius: float) -> Real:
+    """Energy of a Gaussian beam that passes between two straight edges, 0 to 1.
+
+    first, second: distances in m of the beam's axis from the edges on its two sides (negative: the axis lies
+    beyond the edge). radius: 1/e^2 intensity radius, m. From the integral of exp(-2 x^2 / radius^2).
+    """
+    from scipy.special import erf
+
+    scale = np.sqrt(2) / radius
+    return np.asarray(np.maximum(0.5 * (erf(scale * first) + erf(scale * second)), 0.0))
+
+
+def missed(name: str, amplitude: Complex | None, light: Light, what: str) -> tuple[str, ...]:
+    """A sentence where some of the light misses what an element of that name offers it.
+
+    amplitude: what meets it at the frequencies of the light; None where all does.
+    """
+    if amplitude is None:
+        return ()
+    passed = np.abs(amplitude) ** 2
+    share = 1 - float((light.power * passed).sum() / light.power.sum())
+    if share < WORTH_SAYING:
+        return ()
+    return (f"{name}: {100 * share:.2g} % of the energy misses {what}",)
