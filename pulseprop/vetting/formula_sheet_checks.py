@@ -121,8 +121,8 @@ def _claim(sheet: FormulaSheet) -> Iterator[Finding]:
     if like is None:
         return
     text = (
-        f"Against the catalogue's {sheet.claimed} n - 1 differs by up to {100 * like.index:.2g} % and the GVD "
-        f"by up to {100 * like.gvd:.2g} % of its largest, at {like.worst_nm:.4g} nm"
+        f"Against the catalogue's {sheet.claimed} n - 1 differs by up to {100 * like.index:.2g} % and the "
+        f"GVD by up to {100 * like.gvd:.2g} % of its largest, at {like.worst_nm:.4g} nm"
     )
     slips = "; ".join(differing_constants(sheet))
     more: dict[str, Any] = {"repair": slips or None}

@@ -103,7 +103,7 @@ def _repairs(repairs: list[Mended]) -> Iterator[Finding]:
             code="misprint",
             severity="error",
             text=f"One change makes all of it agree: {mended.words}."
-            + ("" if len(repairs) == 1 else f" It is one of {len(repairs)} such changes."),
+            + ("" if len(repairs) == 1 else " Others do too, and causality cannot tell which is meant."),
             repair=mended.words,
             factor_after_repair=mended.factor,
         )

@@ -22,8 +22,8 @@ __all__ = ["Mended", "mending"]
 ROWS = 32
 LOWEST, HIGHEST = 1.0, 6.0
 """Index of transparent matter (common practice, no source; gases lie just above 1)."""
-MOST = 4
-"""Repairs that are told; more of them are no evidence for any."""
+MOST = 3
+"""Repairs that are looked for: the likeliest ones."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -35,7 +35,7 @@ class Mended:
 
 
 def mending(sheet: FormulaSheet, causality: Causality) -> list[Mended]:
-    """The repairs that mend the sheet, the likeliest first; empty where none does or too many do."""
+    """The repairs that mend the sheet, the likeliest first."""
     found = []
     for edit in edits(sheet):
         if not _plausible(edit.sheet) or not _agrees(edit.sheet):
@@ -43,8 +43,8 @@ def mending(sheet: FormulaSheet, causality: Causality) -> list[Mended]:
         factor = _factor(edit.sheet, causality)
         if factor is not None and factor <= 1:
             found.append(Mended(words=edit.words, factor=factor))
-        if len(found) > MOST:
-            return []
+        if len(found) == MOST:
+            break
     return found
 
 
