@@ -176,8 +176,8 @@ class Shaper(Device):
             said.append(
                 f"{self.name}: {self.pixels.count} pixels of "
                 f"{show(self.pixels.width(self.centre) / (2 * np.pi), 'THz', 3)} at the centre repeat the "
-                f"answer every {show(self.time_window, 'fs', 4)}, weakened by a focus of "
-                f"{self.pixels.spot:.3g} pixels radius"
+                f"answer every {show(self.time_window, 'fs', 4)}, weakened by a focus "
+                f"{self.pixels.spot:.3g} pixels in radius"
             )
         return tuple(said)
 

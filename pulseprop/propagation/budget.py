@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterable, Iterator, Sequence
+from collections.abc import Callable, Iterable, Sequence
 from dataclasses import dataclass, field, replace
 
 import numpy as np
@@ -22,7 +22,7 @@ from pulseprop.propagation.linear import blocks
 from pulseprop.propagation.result import ElementMeasures
 from pulseprop.propagation.sizing import Windows
 
-__all__ = ["Advance", "Walk", "largest", "smallest", "summed", "walk"]
+__all__ = ["Advance", "Walk", "largest", "summed", "walk"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -122,15 +122,6 @@ def _joined(rows: Sequence[ElementMeasures]) -> ElementMeasures:
         b_integral_rad=summed(row.b_integral_rad for row in rows),
         digits=min(row.digits for row in rows),
     )
-
-
-def smallest(rows: Iterable[ElementMeasures]) -> Iterator[ElementMeasures]:
-    """The rows, those of parts in place of what is made of them."""
-    for row in rows:
-        if row.parts:
-            yield from smallest(row.parts)
-        else:
-            yield row
 
 
 def summed(values: Iterable[float | None]) -> float | None:

@@ -4,7 +4,7 @@ answer.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import asdict, dataclass, field
 from functools import cached_property
 from typing import Any
@@ -29,6 +29,7 @@ __all__ = [
     "Run",
     "SignCase",
     "Solver",
+    "smallest",
 ]
 
 Complex = NDArray[np.complex128]
@@ -100,6 +101,15 @@ class ElementMeasures:
     """What to know of the figures, a sentence each."""
     parts: tuple[ElementMeasures, ...] = ()
     """Rows of what the element is made of; of parts that the beam meets again, all passages together."""
+
+
+def smallest(rows: Iterable[ElementMeasures]) -> Iterator[ElementMeasures]:
+    """The rows, those of parts in place of what is made of them."""
+    for row in rows:
+        if row.parts:
+            yield from smallest(row.parts)
+        else:
+            yield row
 
 
 @dataclass(frozen=True, kw_only=True)

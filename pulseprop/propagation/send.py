@@ -15,7 +15,7 @@ from pulseprop.errors import PulsepropError
 from pulseprop.measures.delays import delay_split
 from pulseprop.measures.limits import TransformLimit
 from pulseprop.propagation.assess import measured
-from pulseprop.propagation.budget import smallest, summed
+from pulseprop.propagation.budget import summed
 from pulseprop.propagation.cautions import cautions_for
 from pulseprop.propagation.converge import Progress, Propagated, propagated
 from pulseprop.propagation.diagnostics import causality_of
@@ -30,6 +30,7 @@ from pulseprop.propagation.result import (
     PulseMeasures,
     Run,
     Solver,
+    smallest,
 )
 from pulseprop.propagation.signs import autocorrelation_fit, denial, open_chirp, sign_cases
 from pulseprop.propagation.sources import media_used

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from pulseprop.propagation.numerals import NOTHING, fixed, last_place, percent, scaled, significant, span
-from pulseprop.propagation.result import ElementMeasures, PathMeasures, Run
+from pulseprop.propagation.result import ElementMeasures, PathMeasures, Run, smallest
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
 
 __all__ = ["budget_section", "digits_of", "on_a_line"]
@@ -11,6 +11,11 @@ __all__ = ["budget_section", "digits_of", "on_a_line"]
 MOST_DIGITS = 4
 """Digits of a width or a share, however many the data behind it carry."""
 
+
+REPEATED = "repeat"
+
+PART = "- "
+"""Stands before what the element above is made of."""
 
 SAME = 1e-9
 """Loads that differ by a smaller share are one."""
@@ -35,7 +40,7 @@ def budget_section(run: Run) -> Section:
         text = "The path is empty: what leaves is what enters."
         return Section("budget", "Dispersion budget", (Paragraph(text),))
     blocks: list[Table | Paragraph] = [_table(run), Paragraph(_estimate(run))]
-    blocks += [Paragraph(text) for text in (_loads(run), *_echoes(run)) if text]
+    blocks += [Paragraph(text) for text in (_loads(run), *_notes(run), *_echoes(run)) if text]
     return Section("budget", "Dispersion budget", tuple(blocks))
 
 
@@ -51,8 +56,23 @@ def _table(run: Run) -> Table:
         Column("FWHM after", unit),
         Column("transmission"),
     )
-    rows = [_row(element, run.elements[: number + 1], factor) for number, element in enumerate(run.elements)]
+    rows: list[tuple[str, ...]] = []
+    for number, element in enumerate(run.elements):
+        so_far = run.elements[: number + 1]
+        rows += [_row(element, so_far, factor), *_parts(element, so_far[:-1], factor)]
     return Table(columns, tuple(rows), (_total(run, factor),))
+
+
+def _parts(
+    element: ElementMeasures, before: tuple[ElementMeasures, ...], factor: float
+) -> list[tuple[str, ...]]:
+    """A row each for what an element is made of; the parts of a repeat mingle, and stand in its row alone."""
+    if element.kind == REPEATED:
+        return []
+    return [
+        (PART + (part.detail or part.name), *_row(part, (*before, *element.parts[:number]), factor)[1:])
+        for number, part in enumerate(element.parts, start=1)
+    ]
 
 
 def _row(element: ElementMeasures, so_far: tuple[ElementMeasures, ...], factor: float) -> tuple[str, ...]:
@@ -85,7 +105,7 @@ def _total(run: Run, factor: float) -> tuple[str, ...]:
 
 
 def _name(element: ElementMeasures) -> str:
-    if not element.detail or element.detail == element.name:
+    if not element.detail or element.detail == element.name or (element.parts and element.kind != REPEATED):
         return element.name
     return f"{element.name}: {element.detail}"
 
@@ -138,11 +158,20 @@ def _highest(what: str, unit: str, names: list[str], values: list[float | None])
     return f"Highest peak {what}: {significant(top, 2)} {unit}, {place}."
 
 
+def _notes(run: Run) -> list[str]:
+    """What elements tell beside their orders, those in a repeat too."""
+    return [f"{text}." for element in run.elements for text in _told(element)]
+
+
+def _told(element: ElementMeasures) -> list[str]:
+    return [*element.notes, *(text for part in element.parts for text in _told(part))]
+
+
 def _echoes(run: Run) -> list[str]:
     return [
         f"Echoes of {element.name}, after the direct passage, with their share of what leaves: "
         f"{_listed(element.echoes)}."
-        for element in run.elements
+        for element in smallest(run.elements)
         if element.echoes
     ]
 
