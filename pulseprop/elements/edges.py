@@ -7,7 +7,7 @@ from numpy.typing import NDArray
 
 from pulseprop.elements.telling import Light
 
-__all__ = ["missed", "share_between"]
+__all__ = ["missed", "share_beside", "share_between"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -26,6 +26,13 @@ def share_between(first: Real | float, second: Real | float, radius: float) -> R
 
     scale = np.sqrt(2) / radius
     return np.asarray(np.maximum(0.5 * (erf(scale * first) + erf(scale * second)), 0.0))
+
+
+def share_beside(distance: Real | float, radius: float) -> Real:
+    """Energy of a Gaussian beam that passes one straight edge, `distance` m from its axis: 0 to 1."""
+    from scipy.special import erfc
+
+    return np.asarray(0.5 * erfc(-np.sqrt(2) / radius * np.asarray(distance)))
 
 
 def missed(name: str, amplitude: Complex | None, light: Light, what: str) -> tuple[str, ...]:

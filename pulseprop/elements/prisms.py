@@ -18,7 +18,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.elements.device import DARK, Device, require_count, without_delay
-from pulseprop.elements.edges import missed, share_between
+from pulseprop.elements.edges import missed, share_beside
 from pulseprop.elements.faces import Polarisation, reflection_squared
 from pulseprop.elements.telling import Light
 from pulseprop.elements.wedges import Wedge, Wedges
@@ -190,11 +190,12 @@ class PrismPair(Device):
         return faces if amplitude is None else faces * amplitude
 
     def _past_the_tips(self, omega: Numbers, radius: float) -> Complex:
-        """The tips cut the beam from both sides; once, as later passes find only what is left."""
-        first = self.clearance[0]
+        """Each tip cuts a Gaussian beam, as the cut edge fades on the way between the prisms; once, as later
+        passes find only what is left."""
         crossing = self.wedges.second_crossing(omega)
         second = crossing * np.cos(self.wedges.wedge.angles(omega)[2])
-        share = share_between(first, np.where(np.isfinite(second), second, -np.inf), radius)
+        second = np.where(np.isfinite(second), second, -np.inf)
+        share = share_beside(self.clearance[0], radius) * share_beside(second, radius)
         return np.asarray(np.sqrt(share), dtype=complex)
 
     def _through_faces(self, omega: Numbers, view: View) -> Complex:
