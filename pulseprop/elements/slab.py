@@ -83,6 +83,11 @@ class Slab:
         """The thickness, m: what phase and B-integral are counted per."""
         return self.thickness
 
+    @property
+    def footprint(self) -> float:
+        """Room along the beam, m: the thickness."""
+        return self.thickness
+
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i (omega/c) d [sqrt(n^2 - sin^2) - cos], as a Taylor series: see `Element.exponent`."""
         if self.angle == 0:

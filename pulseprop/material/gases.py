@@ -13,7 +13,7 @@ import numpy as np
 
 from pulseprop.errors import InputError
 from pulseprop.material.catalogue import Record, record
-from pulseprop.material.catalogue_media import catalogue_medium
+from pulseprop.material.catalogue_media import VACUUM, catalogue_medium
 from pulseprop.material.composition import Scaled
 from pulseprop.material.medium import Medium
 from pulseprop.material.molar_density import molar_density
@@ -53,7 +53,7 @@ def gas_at(name: str, pressure: float, temperature: float, humidity: float | Non
     return replace(
         base,
         name=f"{base.name} at {pressure / 1e5:.4g} bar, {temperature:.2f} K",
-        response=Scaled(base.response, ratio),
+        response=Scaled(base.response, ratio) if ratio > 0 else VACUUM.response,
         temperature=f"{temperature:.2f} K (record: {entry.temperature})",
         temperature_K=temperature,
         n2=tuple(replace(known, value=known.value * ratio) for known in base.n2),
