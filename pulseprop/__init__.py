@@ -8,7 +8,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from pulseprop.api import catalogue, dataset, media, medium, read, send
+    from pulseprop.api import catalogue, compensate, dataset, media, medium, read, send
     from pulseprop.errors import InputError, NumericalLimit, PulsepropError, RangeError
 
 __all__ = [
@@ -17,6 +17,7 @@ __all__ = [
     "PulsepropError",
     "RangeError",
     "catalogue",
+    "compensate",
     "dataset",
     "media",
     "medium",

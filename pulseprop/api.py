@@ -1,4 +1,4 @@
-"""What the command line does, as functions: read, send, media. The same words, the same numbers."""
+"""What the command line does, as functions, in the same words and with the same numbers."""
 
 from __future__ import annotations
 
@@ -14,6 +14,7 @@ import numpy as np
 if TYPE_CHECKING:
     import xarray
 
+    from pulseprop.compensation.result import Compensation
     from pulseprop.material.medium import Medium
     from pulseprop.propagation.result import Run
     from pulseprop.propagation.send import Progress
@@ -22,7 +23,17 @@ if TYPE_CHECKING:
 from pulseprop import __version__
 from pulseprop.constants import TWO_PI_C
 
-__all__ = ["MediumReport", "OrdersRow", "catalogue", "dataset", "media", "medium", "read", "send"]
+__all__ = [
+    "MediumReport",
+    "OrdersRow",
+    "catalogue",
+    "compensate",
+    "dataset",
+    "media",
+    "medium",
+    "read",
+    "send",
+]
 
 UNASKED_OMEGA = 2.4e15
 """rad/s: n2 is that measured nearest to it where no wavelength is asked for."""
@@ -45,14 +56,39 @@ def send(
     from pulseprop.propagation.send import run
     from pulseprop.scenario.build import build
 
-    if isinstance(scenario, str | Path):
-        scenario = read(scenario, overrides)
-    elif tuple(overrides):
-        raise ValueError("overrides go with a file: give them to read()")
-    experiment = build(scenario)
+    experiment = build(_read(scenario, overrides))
     if progress is None:
         return run(experiment, __version__, catalogue_checksum())
     return run(experiment, __version__, catalogue_checksum(), progress)
+
+
+def _read(scenario: str | Path | Scenario, overrides: Iterable[str]) -> Scenario:
+    if isinstance(scenario, str | Path):
+        return read(scenario, overrides)
+    if tuple(overrides):
+        raise ValueError("overrides go with a file: give them to read()")
+    return scenario
+
+
+def compensate(
+    scenario: str | Path | Scenario,
+    overrides: Iterable[str] = (),
+    best: int | None = None,
+    progress: Progress | None = None,
+) -> Compensation:
+    """The best settings and additions for a scenario's goal, with tolerances. best: how many designs.
+
+    progress(stage, fraction) is called as the work goes on. Raises InputError and NumericalLimit.
+    """
+    from dataclasses import replace
+
+    from pulseprop.compensation.compensate import compensate as solve
+    from pulseprop.scenario.build_compensate import problem_of
+
+    problem = problem_of(_read(scenario, overrides))
+    if best is not None:
+        problem = replace(problem, best=best)
+    return solve(problem) if progress is None else solve(problem, progress)
 
 
 def dataset(run: Run) -> xarray.Dataset:

@@ -25,6 +25,7 @@ def test_the_package_offers_these_names():
         "PulsepropError",
         "RangeError",
         "catalogue",
+        "compensate",
         "dataset",
         "media",
         "medium",

@@ -10,13 +10,15 @@ from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.errors import InputError, PulsepropError
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.sizing import GridWish
+from pulseprop.pulse.measured import MeasuredPulse
+from pulseprop.pulse.pulse import Pulse
 from pulseprop.pulse.source import PulseSource
 from pulseprop.scenario.build_medium import MediaOfScenario
 from pulseprop.scenario.build_path import built_path
 from pulseprop.scenario.build_pulse import autocorrelation_of, built_pulse
 from pulseprop.scenario.read import Scenario
 
-__all__ = ["build", "media_of"]
+__all__ = ["build", "grid_wish", "media_of", "pulse_of"]
 
 RANGE_SHARE = 1e-6
 """Share of the pulse's energy that may lie where a medium was not measured."""
@@ -60,6 +62,21 @@ def _nanometres(omega: float) -> str:
     return f"{2e9 * pi * SPEED_OF_LIGHT / omega:.6g}"
 
 
+def pulse_of(scenario: Scenario) -> tuple[Pulse | MeasuredPulse, bool]:
+    """The pulse, and whether the sign of its GDD is open. Raises InputError with its place."""
+    try:
+        return built_pulse(scenario)
+    except PulsepropError as error:
+        raise scenario.blamed(error, "pulse") from None
+
+
+def grid_wish(scenario: Scenario) -> GridWish:
+    """What the scenario says about the grid."""
+    content = scenario.content
+    wish = GridWish(span=content.grid.span, points=content.grid.points, form=content.propagation.form)
+    return wish if content.grid.memory is None else replace(wish, memory=content.grid.memory)
+
+
 def _refuse_open_settings(scenario: Scenario) -> None:
     """A pulse can be sent through elements as they stand today only."""
     for setting in scenario.settings:
@@ -78,16 +95,13 @@ def build(scenario: Scenario) -> Experiment:
     content = scenario.content
     _refuse_open_settings(scenario)
     media = media_of(scenario)
+    pulse, both_signs = pulse_of(scenario)
     try:
-        pulse, both_signs = built_pulse(scenario)
         trace = autocorrelation_of(scenario)
     except PulsepropError as error:
         raise scenario.blamed(error, "pulse") from None
     path = built_path(scenario, media, pulse.centre)
     method = content.propagation.method
-    wish = GridWish(span=content.grid.span, points=content.grid.points, form=content.propagation.form)
-    if content.grid.memory is not None:
-        wish = replace(wish, memory=content.grid.memory)
     return Experiment(
         title=content.title or scenario.file,
         question=content.question,
@@ -103,7 +117,7 @@ def build(scenario: Scenario) -> Experiment:
         both_signs=both_signs,
         energy_stated=bool(content.pulse.given("energy", "peak_power")),
         warnings=(*_warnings(scenario), *_beyond_rows(pulse, media)),
-        grid=wish,
+        grid=grid_wish(scenario),
         beyond_range=content.grid.beyond_range,
         method="exact" if method == "auto" else method,
         autocorrelation=trace,

@@ -13,8 +13,8 @@ from pulseprop.compensation.problem import Adjustment, Goal, Part, Problem, Sett
 from pulseprop.elements.element import Element
 from pulseprop.errors import InputError, PulsepropError
 from pulseprop.material.medium import Medium
-from pulseprop.propagation.experiment import Experiment
 from pulseprop.scenario.adjustable import Raw, Setting, put
+from pulseprop.scenario.build import grid_wish, media_of, pulse_of
 from pulseprop.scenario.build_path import built_element
 from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.complaints import findings_of
@@ -110,14 +110,15 @@ class _Row:
                 yield _adjustment(key, setting)
 
 
-def problem_of(scenario: Scenario, experiment: Experiment, find: Callable[[str], Medium]) -> Problem:
-    """The question of a scenario; experiment: its pulse and grid; find: its media by name.
+def problem_of(scenario: Scenario) -> Problem:
+    """The question of a scenario.
 
     Raises InputError with the place of what cannot be used: nothing to adjust, a place after no element, an
     element at hand that its settings do not allow.
     """
     asked = scenario.content.compensate or CompensateTable.model_validate({})
-    centre = experiment.pulse.centre
+    pulse, _ = pulse_of(scenario)
+    centre, find = pulse.centre, media_of(scenario).medium
     rows = [_Row(scenario, ("path", at), centre, find) for at in range(len(scenario.content.path))]
     at_hand = [_Row(scenario, ("compensate", "with", at), centre, find) for at in range(len(asked.with_))]
     _refuse_nothing(scenario, rows, at_hand)
@@ -136,15 +137,15 @@ def problem_of(scenario: Scenario, experiment: Experiment, find: Callable[[str],
             after.setdefault(name, []).append(part)
     ordered = [*starts, *(one for part in parts for one in (part, *after.get(part.name, ()))), *ends]
     return Problem(
-        pulse=experiment.pulse,
+        pulse=pulse,
         parts=tuple(ordered),
         goal=_goal(asked),
         best=asked.best,
         seed=asked.seed,
-        grid=experiment.grid,
-        beyond_range=experiment.beyond_range,
-        title=experiment.title,
-        file=experiment.file,
+        grid=grid_wish(scenario),
+        beyond_range=scenario.content.grid.beyond_range,
+        title=scenario.content.title or scenario.file,
+        file=scenario.file,
     )
 
 
