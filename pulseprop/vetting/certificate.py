@@ -43,6 +43,7 @@ def judge_certificate(certificate: Certificate, request: Request, *, date: str, 
         request.claimed or certificate.name,
         certificate.orientation,
         [value.omega for value in certificate.values],
+        certificate.relative_to,
     )
     band, inferred = _band(certificate, request, claim)
     values = [

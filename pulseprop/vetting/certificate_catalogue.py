@@ -22,7 +22,8 @@ ROUNDED_C = (2.9979e8, 2.998e8, 3e8)
 POWER_OF_C = {"gvd": 2, "tod": 3, "fod": 4}
 """An order is a derivative by wavelength over this power of c."""
 
-MELTS = {"index": 1e-3, "group index": 1e-3, "n_d": 1e-3, "n_F": 1e-3, "n_C": 1e-3}
+INDEX_LIKE = ("index", "n_d", "n_F", "n_C")
+MELTS = dict.fromkeys((*INDEX_LIKE, "group index"), 1e-3)
 OTHER_MELTS = 0.01
 """Relative differences that melts, temperatures and other records explain (common practice, no source)."""
 SEARCH = 400
@@ -87,8 +88,8 @@ def _rounded_c(value: PrintedValue, medium: Medium, number: float) -> Finding | 
 
 def _differs(values: Sequence[PrintedValue], value: PrintedValue, medium: Medium, number: float) -> Finding:
     apart = abs(value.value - number) / abs(number) if number else np.inf
-    copies = tuple(_copies(values, value, medium, number))
     grave = apart > MELTS.get(value.quantity, OTHER_MELTS)
+    copies = tuple(_copies(values, value, medium, number, grave))
     text = (
         f"{value.words} is printed as {value.text}; {medium.name} has {_shown(value, number)} by its "
         f"catalogue formula ({medium.source}), {_apart(apart)} away and outside the printed digits"
@@ -108,18 +109,18 @@ def _differs(values: Sequence[PrintedValue], value: PrintedValue, medium: Medium
 
 
 def _copies(
-    values: Sequence[PrintedValue], value: PrintedValue, medium: Medium, number: float
+    values: Sequence[PrintedValue], value: PrintedValue, medium: Medium, number: float, grave: bool
 ) -> Iterator[str]:
-    """Where the number may come from, in words that follow "it is"."""
+    """Where the number may come from, in words that follow "it is". Small differences come about in too many
+    ways for wavelengths and siblings to be evidence."""
     if value.error > TELLING * abs(value.value):
         return
     for words, factor in readings(value):
         if agrees(value.value * factor, number, value.error * abs(factor)):
             yield words
-    if value.quantity == "index" and _is(medium, "group index", value):
-        yield "the group index"
-    if value.quantity == "group index" and _is(medium, "index", value):
-        yield "the index and not the group index"
+    yield from _other_index(value, medium, number)
+    if not grave:
+        return
     if value.quantity not in ("V_d", "zero dispersion wavelength"):
         for omega in usual_places(values, value):
             other = catalogue_number(medium, value.quantity, omega)
@@ -128,6 +129,21 @@ def _copies(
     for sibling in _siblings(medium.name):
         if _is(sibling, value.quantity, value):
             yield f"that of {sibling.name}"
+
+
+def _other_index(value: PrintedValue, medium: Medium, number: float) -> Iterator[str]:
+    """The group index for the index, air for vacuum, and the other way round."""
+    if value.quantity == "index" and _is(medium, "group index", value):
+        yield "the group index"
+    if value.quantity == "group index" and _is(medium, "index", value):
+        yield "the index and not the group index"
+    air = catalogue_number(catalogue_medium("air"), "index", value.omega)
+    if value.quantity not in INDEX_LIKE or air is None:
+        return
+    if medium.relative_to == "air" and agrees(value.value, number * air, value.error):
+        yield "against vacuum and not against air"
+    if medium.relative_to == "vacuum" and agrees(value.value, number / air, value.error):
+        yield "against air and not against vacuum"
 
 
 def _is(medium: Medium, quantity: str, value: PrintedValue) -> bool:

@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from typing import Literal
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.material.catalogue import Record, near_names, record
 from pulseprop.material.catalogue_media import catalogue_medium
+from pulseprop.material.composition import Absolute
 from pulseprop.material.medium import Medium
 from pulseprop.vetting.result import Finding
 
@@ -39,9 +41,24 @@ def axes_of(name: str) -> dict[str, str]:
     }
 
 
-def claim_of(name: str, orientation: str, omegas: Sequence[float]) -> Claim:
+def claim_of(
+    name: str, orientation: str, omegas: Sequence[float], relative_to: Literal["air", "vacuum"] | None = None
+) -> Claim:
     """What the name says. orientation: an axis, "random", or "" where it is not stated. omegas: rad/s, where
-    values are printed."""
+    values are printed. relative_to: what the printed index is against, if stated: media follow it."""
+    claim = _named(name, orientation, omegas)
+    return replace(claim, media=tuple(_against(medium, relative_to) for medium in claim.media))
+
+
+def _against(medium: Medium, relative_to: str | None) -> Medium:
+    """The medium with its index against vacuum, where that was stated and its own is against air."""
+    if relative_to != "vacuum" or medium.relative_to != "air":
+        return medium
+    absolute = Absolute(medium.response, catalogue_medium("air").response)
+    return replace(medium, response=absolute, relative_to="vacuum")
+
+
+def _named(name: str, orientation: str, omegas: Sequence[float]) -> Claim:
     try:
         own = record(name)
     except InputError as error:
