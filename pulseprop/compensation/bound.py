@@ -2,15 +2,16 @@
 
 Let p >= 0, sum p = 1, be the amplitude spectrum and M = sum p exp(i phase); the peak ratio is the largest
 |M|^2 over delays. Of three equidistant frequencies with weights 1/4, 1/2, 1/4 the sum can be no larger than
-cos(s/4), whatever delay and constant are added, if their second difference of phase s is at most pi in size
-(for larger ones sin takes over). So for any q >= 0 whose convolution with those three weights stays below p,
+cos(s/4), whatever delay and constant are added, if their second difference of phase s is at most pi in size.
+So for any q >= 0 whose convolution with those three weights stays below p,
 
     |M| <= 1 - sum q (1 - cos(s/4)) <= 1 - BEND sum q s^2,      BEND = (1 - cos(pi/4)) / pi^2,
 
 the last by concavity of cos. The second differences are straight lines in the settings, so the least of the
 right-hand sum over a box is bounded least squares, and the settings that could still reach |M| = m lie in
 an ellipsoid: the box shrinks, and a wider distance between the three frequencies, which sees more, becomes
-usable. Losses that differ from those for which p was taken by factors within a span of r nepers add at most
+usable. Beyond pi the sum is at most cos of a quarter of the distance of s to the next multiple of 2 pi.
+Losses that differ from those for which p was taken by factors within a span of r nepers add at most
 exp(r) - 1 to |M|, and twice what lies in faint ends of the spectrum that may be lost.
 
 Own derivation (concavity and the triangle inequality); nothing in it is estimated.
@@ -35,7 +36,7 @@ Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
 BEND = (1 - np.cos(np.pi / 4)) / np.pi**2
-SCALES = 10
+SCALES = 14
 NARROWEST, WIDEST = 0.03, 1.5
 """Distances of the three frequencies over the standard deviation of p."""
 SHARPENINGS = 40
@@ -116,18 +117,31 @@ class Bounds:
         return self._squeeze + 8 * spread + goal.transmission_weight * 4 * most
 
     def _empty(self, base: Real, slopes: Real, allowance: float) -> bool:
-        """Whether sum q s^2 <= allowance holds nowhere in the box; scales from narrow to wide."""
+        """Whether the settings that could still reach the score are none; scales from narrow to wide."""
         low, high = np.zeros(slopes.shape[1]), np.ones(slopes.shape[1])
         for scale in self._scales:
             second = _second_difference(base, scale.distance)
             bends = _second_difference(slopes, scale.distance)
-            reach = np.abs(second + bends @ (0.5 * (low + high))) + np.abs(bends) @ (0.5 * (high - low))
-            weight = np.where(reach <= np.pi, scale.weight, 0.0)
+            middle = second + bends @ (0.5 * (low + high))
+            reach = np.abs(bends) @ (0.5 * (high - low))
+            near = np.abs(middle) + reach <= np.pi
+            left = allowance - _far(middle[~near], reach[~near], scale.weight[~near]) / BEND
+            weight = np.where(near, scale.weight, 0.0)
             least, gram, slope = _least(second, bends, weight, low, high)
-            if least > allowance:
+            if least > left:
                 return True
-            low, high = _shrunk(gram, slope, float(np.dot(weight, second**2)), allowance, low, high)
+            low, high = _shrunk(gram, slope, float(np.dot(weight, second**2)), left, low, high)
         return False
+
+
+def _far(middle: Real, reach: Real, weight: Real) -> float:
+    """sum q (1 - cos(distance / 4)), the distance from multiples of 2 pi of second differences in
+    middle -+ reach: what triples lose at the least that lie beyond pi."""
+    low, high = middle - reach, middle + reach
+    turn = 2 * np.pi
+    passed = np.floor(high / turn) >= np.ceil(low / turn)
+    ends = np.minimum(*(np.abs(end - turn * np.round(end / turn)) for end in (low, high)))
+    return float(np.dot(weight, np.where(passed, 0.0, 1 - np.cos(ends / 4))))
 
 
 def _second_difference(values: Real, distance: int) -> Real:

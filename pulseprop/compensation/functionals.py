@@ -125,7 +125,7 @@ def contained(samples: Samples, spectrum: Complex, field: Complex, window: float
     turning = forward(power.astype(complex)) * box
     place = _top_between(turning, frequency, backward(turning).real, grid.step)
     # The box around `place` as the samples see it: what each instant's power adds to the integral.
-    weights = backward(box * np.exp(2j * np.pi * frequency * place)).real / grid.points
+    weights = backward(box * np.exp(2j * np.pi * frequency * place)).real
     variation = 2.0 * spectrum * samples.folded(np.asarray(weights * np.conj(field)))
     return Varied(float(np.dot(weights, power)), variation, place)
 
