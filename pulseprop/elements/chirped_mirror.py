@@ -42,7 +42,7 @@ class ChirpedMirror(Device):
     @property
     def detail(self) -> str:
         """What one bounce gives at the centre, and how many there are."""
-        said = " and ".join(orders_words(*self.orders_of_bounce(mirror)) for mirror in self.mirrors)
+        said = ", then ".join(orders_words(*self.orders_of_bounce(mirror)) for mirror in self.mirrors)
         each = " off each" if len(self.mirrors) > 1 else ""
         count = times(self.bounces, "bounce", "bounces")
         return f"{said} a bounce at {nanometres(self.centre, 4)}; {count}{each}"

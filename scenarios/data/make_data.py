@@ -12,6 +12,7 @@ import math
 import random
 import sys
 from collections.abc import Iterable, Iterator
+from functools import partial
 from pathlib import Path
 
 __all__ = ["FILES", "write_all"]
@@ -46,6 +47,9 @@ CYCLE_PS = 0.22
 
 CRYSTAL = ((1.462, 0.0106), (0.930, 96.0))
 """Invented crystal: strength and squared resonance (um^2) of its Sellmeier terms."""
+
+MIRROR_GDD, MIRROR_TOD, MIRROR_RIPPLE, MIRROR_SWING = -45.0, -33.0, 60.0, 26.0
+"""A bounce off the mirrors at 800 nm, fs^2 and fs^3; size of their ripple, fs^2, and its swing, fs."""
 
 AIR_AT = 1.00027
 """Index of air, in which the vendor of the crystal measures."""
@@ -131,6 +135,15 @@ def crystal_table() -> Iterable[str]:
         yield f"{wavelength:.2f},{crystal_index(wavelength * AIR_AT) / AIR_AT:.5f}"
 
 
+def mirror(sign: int) -> Iterable[str]:
+    """GDD of one bounce; the ripples of the two mirrors have opposite signs."""
+    yield "wavelength_nm,gdd_fs2"
+    for wavelength in steps(600, 1150, 2):
+        away = 2 * math.pi * LIGHT * (1 / wavelength - 1 / 800)
+        ripple = sign * MIRROR_RIPPLE * math.cos(MIRROR_SWING * away)
+        yield f"{wavelength:.0f},{MIRROR_GDD + MIRROR_TOD * away + ripple:.3f}"
+
+
 FILES = {
     "green_filter.csv": green_filter,
     "gas_lines.csv": gas_lines,
@@ -138,6 +151,8 @@ FILES = {
     "oscillator_autocorrelation.csv": oscillator_autocorrelation,
     "reference_waveform.csv": reference_waveform,
     "crystal.csv": crystal_table,
+    "mirror_a.csv": partial(mirror, 1),
+    "mirror_b.csv": partial(mirror, -1),
 }
 
 

@@ -128,6 +128,7 @@ def test_the_ripples_of_a_pair_in_antiphase_cancel():
     plain = mirror(OrdersOfBounce(centre=CENTRE, gdd=-40 * FS**2), bounces=10)
     omega = CENTRE * np.linspace(0.9, 1.1, 50)
     assert both.exponent(omega, 1)[0] == pytest.approx(plain.exponent(omega, 1)[0], abs=1e-9)
+    assert both.detail.startswith("-10 fs^2, then -70 fs^2 a bounce")
     assert both.detail.endswith("a bounce at 800 nm; 5 bounces off each")
 
 

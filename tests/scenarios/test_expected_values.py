@@ -198,6 +198,55 @@ def test_cryostats_achromat() -> None:
     agrees(5.0**2 / (2 * LIGHT_MM) * chromatic, "cryostat", key)
 
 
+def treacy(omega: float, separation_mm: float) -> mpmath.mpf:
+    """Phase of a pair of gratings, 600 /mm at 30 deg, there and back: twice the component of the wave vector
+    along their normal times their distance. E. B. Treacy, IEEE J. Quantum Electron. QE-5, 454 (1969)."""
+    wave = omega / mpmath.mpf(LIGHT_MM)
+    along = 2 * mpmath.pi * 600 - wave * mpmath.sin(mpmath.pi / 6)
+    return 2 * separation_mm * mpmath.sqrt(wave**2 - along**2)
+
+
+def test_grating_compressor() -> None:
+    name, omega = "grating_compressor", omega_of(800)
+    crystal = GLASS["sapphire"]
+    with mpmath.workdps(40):
+        pair = [float(mpmath.diff(lambda w: treacy(w, 1.0), omega, order)) for order in (2, 3)]
+    agrees(-250 * pair[0], name, "elements.stretcher.gdd_fs2")
+    agrees(-250 * pair[1], name, "elements.stretcher.tod_fs3")
+    agrees(260.66 * pair[0], name, "elements.compressor.gdd_fs2")
+    for order, key in ((2, "path.gdd_fs2"), (3, "path.tod_fs3")):
+        agrees(10.66 * pair[order - 2] + gdd(crystal, omega, 120, order), name, key)
+    agrees(chirped(30, 250 * pair[0]), name, "elements.stretcher.fwhm_after_fs")
+    agrees(0.92**4, name, "path.transmission")
+
+    def phase(frequencies: Real) -> Complex:
+        glass = [complex(w * (crystal(w) - 1) * 120 / LIGHT_MM) for w in frequencies]
+        return np.array(glass) + np.array([complex(treacy(w, 10.66)) for w in frequencies])
+
+    duration, peak, _ = gaussian_after(30, phase, omega)
+    agrees(duration, name, "pulse_out.fwhm_fs")
+    agrees(peak, name, "pulse_out.peak_ratio")
+
+
+def test_mirror_pair() -> None:
+    """The ripples are equal and opposite; what is left of sixteen bounces is a parabola and a cubic."""
+    name, omega, data = "mirror_pair", omega_of(800), made_data()
+    silica, bounces = GLASS["fused silica"], 16
+    agrees(bounces * data.MIRROR_GDD, name, "elements.mirrors.gdd_fs2")
+    agrees(bounces * data.MIRROR_GDD + gdd(silica, omega, 20), name, "path.gdd_fs2")
+    agrees(bounces * data.MIRROR_TOD + gdd(silica, omega, 20, 3), name, "path.tod_fs3")
+    agrees(0.998**bounces, name, "path.transmission")
+
+    def phase(frequencies: Real) -> Complex:
+        away = frequencies - omega
+        mirrors = bounces * (data.MIRROR_GDD / 2 * away**2 + data.MIRROR_TOD / 6 * away**3)
+        return mirrors + np.array([complex(w * (silica(w) - 1) * 20 / LIGHT_MM) for w in frequencies])
+
+    duration, peak, _ = gaussian_after(12, phase, omega)
+    agrees(duration, name, "pulse_out.fwhm_fs")
+    agrees(peak, name, "pulse_out.peak_ratio")
+
+
 def test_vapour_ringing() -> None:
     """D. C. Burnham and R. Y. Chiao, Phys. Rev. 188, 667 (1969): the impulse response of a line is
     delta(t) - (b/T2) exp(-t/T2) J1(2 sqrt(b t/T2)) / sqrt(b t/T2) with b half the optical depth. The energy
