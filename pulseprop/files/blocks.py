@@ -18,6 +18,7 @@ from pulseprop.files.cells import is_missing, looks_numeric
 
 __all__ = ["Block", "Line", "blocks_of"]
 
+MOST_COLUMNS = 1000
 BROKEN = frozenset("0123456789+-.,<>~")
 """A cell that begins so and is no number was meant as one."""
 
@@ -61,8 +62,21 @@ class Block:
         """Cells of one column, from 0."""
         return tuple(row[index] for row in self.rows)
 
+    def as_lines(self) -> list[Line]:
+        """All that was read into it, as lines."""
+        pairs = zip(self.numbers, self.rows, strict=True)
+        return [*self.above, *(Line(number, " ".join(row), row) for number, row in pairs), *self.below]
+
     def take(self, line: Line, cells: tuple[str, ...]) -> None:
-        """One row more. Raises InputError where it has another number of cells."""
+        """One row more. Raises InputError where it has another number of cells, or too many."""
+        if len(cells) > MOST_COLUMNS:
+            raise InputError(
+                "the row has too many cells",
+                value=len(cells),
+                allowed=f"{MOST_COLUMNS} cells",
+                remedy="Write a row a line",
+                file=f"{self.file}:{line.number}",
+            )
         short = self.width - len(cells) if self.rows else 0
         if short < 0 or (short and not self.padded):
             raise InputError(
@@ -102,7 +116,7 @@ def blocks_of(
     if not found:
         raise _no_rows(waiting, file)
     found[-1].below += waiting
-    return _without_strays(found, is_heading)
+    return _without_preamble(found, is_heading)
 
 
 def _is_row(cells: Sequence[str]) -> bool:
@@ -126,38 +140,27 @@ def _begins(
     return any(line.cells is not None for line in waiting)
 
 
-def _is_stray(block: Block, others: Sequence[Block], is_heading: Callable[[str], bool]) -> bool:
-    """A lone row, or rows that begin with words where true rows do not, as in a preamble."""
-    if any(is_heading(line.text) for line in block.above):
+def _without_preamble(found: list[Block], is_heading: Callable[[str], bool]) -> list[Block]:
+    """The true blocks; rows of numbers in a preamble become words above the first of them."""
+    longest = max(found, key=lambda block: (len(block.rows), not _led_by_words(block)))
+    count = next(place for place, block in enumerate(found) if not _is_preamble(block, longest, is_heading))
+    before = [line for block in found[:count] for line in block.as_lines()]
+    kept = found[count:]
+    kept[0].above, kept[0].follows = before + kept[0].above, False
+    return kept
+
+
+def _is_preamble(block: Block, longest: Block, is_heading: Callable[[str], bool]) -> bool:
+    """Rows that begin with words where true rows do not, or a lone row unlike them, and no heading above."""
+    if block is longest or any(is_heading(line.text) for line in block.above):
         return False
-    return len(block.rows) < 2 or (_led_by_words(block) and not all(map(_led_by_words, others)))
+    if _led_by_words(block):
+        return not _led_by_words(longest)
+    return len(block.rows) < 2 and block.width != longest.width
 
 
 def _led_by_words(block: Block) -> bool:
     return not any(looks_numeric(row[0]) for row in block.rows)
-
-
-def _without_strays(found: list[Block], is_heading: Callable[[str], bool]) -> list[Block]:
-    """The true blocks; numbers of a preamble become words around them."""
-    strays = [_is_stray(block, found, is_heading) for block in found]
-    if all(strays) or not any(strays):
-        return found
-    kept: list[Block] = []
-    before: list[Line] = []
-    for block, stray in zip(found, strays, strict=True):
-        if not stray:
-            block.above = before + block.above
-            block.follows = bool(kept)
-            kept.append(block)
-            before = []
-            continue
-        rows = [Line(n, " ".join(row), row) for n, row in zip(block.numbers, block.rows, strict=True)]
-        around = [*block.above, *rows, *block.below]
-        if kept:
-            kept[-1].below += around
-        else:
-            before += around
-    return kept
 
 
 def _no_rows(lines: list[Line], file: str) -> InputError:

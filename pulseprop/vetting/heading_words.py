@@ -9,7 +9,7 @@ from __future__ import annotations
 
 import re
 import unicodedata
-from functools import cache
+from functools import lru_cache
 from typing import Literal, get_args
 
 from pulseprop.vetting.table import Quantity
@@ -130,7 +130,7 @@ WORDS: dict[Meaning, tuple[str, ...]] = {
 PATTERNS = {meaning: re.compile("|".join(phrases)) for meaning, phrases in WORDS.items()}
 
 
-@cache
+@lru_cache(maxsize=4096)
 def meaning_of(words: str) -> Meaning | None:
     """The axis or quantity that a heading, its unit taken off, calls by name; None where it is not known."""
     symbol = re.sub(r"[\s_{}$\\^*]", "", words.replace("lambda", "λ").replace("Lambda", "λ"))
@@ -155,7 +155,7 @@ def is_generic(words: str) -> bool:
     return GENERIC.fullmatch(plain_words(words)) is not None
 
 
-@cache
+@lru_cache(maxsize=4096)
 def plain_words(text: str) -> str:
     """Lower case, without accents; every other sign a space."""
     spread = unicodedata.normalize("NFKD", text).casefold().replace("λ", " lambda ").replace("ł", "l")

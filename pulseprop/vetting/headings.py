@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
-from functools import cache
+from functools import lru_cache
 
 from pulseprop.files.blocks import Block, Line
 from pulseprop.files.text_blocks import cells_of
@@ -25,6 +25,7 @@ FARTHEST = 8
 """Lines above the rows among which headings are looked for."""
 LONGEST = 60
 """Characters of a heading; longer cells are sentences."""
+LONGEST_LINE = 4000
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -48,7 +49,7 @@ class Heading:
         return next((axis for axis in AXES if axis == self.meaning), None)
 
 
-@cache
+@lru_cache(maxsize=4096)
 def heading_of(text: str) -> Heading:
     """What one heading says."""
     text = text.strip().strip('"').strip("# ").strip()
@@ -114,7 +115,7 @@ def _thickness(text: str) -> float | None:
 
 
 def is_heading(line: str) -> bool:
-    """Whether a line names an axis and a quantity: a table begins below it."""
+    """Whether a line names an axis and a quantity, and little else: a table begins below it."""
     return any(_named(names) for names in _splits(line))
 
 
@@ -122,7 +123,7 @@ def _named(names: Sequence[str]) -> bool:
     heads = [heading_of(name) for name in names]
     axes = sum(head.axis is not None for head in heads)
     quantities = sum(head.extinction or (head.meaning is not None and not head.axis) for head in heads)
-    return axes > 0 and quantities > 0
+    return axes > 0 and quantities > 0 and 2 * (axes + quantities) >= len(heads)
 
 
 def headings_of(block: Block, width: int) -> tuple[Heading, ...]:
@@ -170,7 +171,9 @@ def _splits_of(line: Line) -> Iterator[tuple[str, ...]]:
 
 
 def _splits(text: str) -> Iterator[tuple[str, ...]]:
-    """The ways to take a line of headings apart."""
+    """The ways to take a line of headings apart; none for what is too long to be one."""
+    if len(text) > LONGEST_LINE:
+        return
     bare = text.strip().lstrip("#;!/ ").strip()
     if bare.startswith("% "):
         bare = bare[2:].strip()

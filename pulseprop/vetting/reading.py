@@ -25,7 +25,7 @@ from pulseprop.vetting.spectrum_tables import table_of_spectrum
 from pulseprop.vetting.table import Column, Inference, Quantity, SentTable
 from pulseprop.vetting.uncertainty_text import uncertainties_in
 
-__all__ = ["read_table"]
+__all__ = ["read_table", "tables_in"]
 
 
 def read_table(path: str | Path, options: ReadOptions | None = None) -> tuple[SentTable, ...]:
@@ -36,17 +36,21 @@ def read_table(path: str | Path, options: ReadOptions | None = None) -> tuple[Se
     Raises InputError with file and line where the file cannot be read, or where what it means cannot be told
     (then with the option that says it).
     """
-    options = options or ReadOptions()
+    path = Path(path)
+    return tables_in(contents(path), str(path), options or ReadOptions())
+
+
+def tables_in(data: bytes, file: str, options: ReadOptions) -> tuple[SentTable, ...]:
+    """The tables in the bytes of a file; `file` is its name in messages. Raises as `read_table` does."""
     uncertainty = uncertainties_in(options.uncertainty) if options.uncertainty else {}
-    tables = _tables(Path(path), options)
+    tables = _tables(data, file, options)
     return tuple(
         replace(table, columns=tuple(_with_uncertainty(column, uncertainty) for column in table.columns))
         for table in tables
     )
 
 
-def _tables(path: Path, options: ReadOptions) -> list[SentTable]:
-    data, file = contents(path), str(path)
+def _tables(data: bytes, file: str, options: ReadOptions) -> list[SentTable]:
     source = Source(file=file, place=file, sha256=hashlib.sha256(data).hexdigest(), options=options)
     if is_workbook(data):
         return _of_workbook(data, source)
