@@ -6,14 +6,13 @@ from __future__ import annotations
 import re
 from dataclasses import dataclass
 
-__all__ = ["COMMA_NUMBER", "NOT_FINITE", "NUMBER", "Style", "first_row", "header_of", "is_comment"]
+__all__ = ["COMMA_NUMBER", "NUMBER", "Style", "first_row", "header_of", "is_comment"]
 
 COMMENT = ("#", "%", ";", "//", '"', "!")
 """What begins a line that is no row, unless the line is one all the same."""
 
 NUMBER = re.compile(r"[+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eEdD][+-]?[0-9]+)?")
 COMMA_NUMBER = re.compile(r"[+-]?(?:[0-9]+,?[0-9]*|,[0-9]+)(?:[eE][+-]?[0-9]+)?")
-NOT_FINITE = re.compile(r"[+-]?(?:nan|inf|infinity|#n/a|n/a|na|-+)", re.IGNORECASE)
 
 
 @dataclass(frozen=True)

@@ -14,7 +14,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
-from pulseprop.files.layout import COMMA_NUMBER, NOT_FINITE, NUMBER, first_row, header_of, is_comment
+from pulseprop.files.cells import is_missing
+from pulseprop.files.layout import COMMA_NUMBER, NUMBER, first_row, header_of, is_comment
 from pulseprop.files.source import contents, decoded
 
 __all__ = ["NumberTable", "numbers_in", "read_numbers"]
@@ -200,7 +201,7 @@ def _number(cell: str, line: int, file: str) -> float:
     """One cell; Fortran's D in exponents is read too."""
     if NUMBER.fullmatch(cell):
         return float(cell.replace("D", "E").replace("d", "e"))
-    if not cell or NOT_FINITE.fullmatch(cell):
+    if is_missing(cell):
         raise _not_finite(cell, line, file)
     comma = COMMA_NUMBER.fullmatch(cell)
     raise InputError(

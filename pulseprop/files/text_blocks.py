@@ -48,7 +48,7 @@ def _separator(texts: list[str]) -> str | None:
     votes: Counter[str | None] = Counter()
     rows = 0
     for text in texts:
-        separator = Style.of(text.replace('"', "")).separator if '"' not in text else _quoted(text)
+        separator = _separator_of(text)
         cells = cells_of(text, separator)
         count = sum(map(looks_numeric, cells))
         if count < 2:
@@ -58,6 +58,13 @@ def _separator(texts: list[str]) -> str | None:
         if rows == ENOUGH:
             break
     return votes.most_common(1)[0][0] if votes else None
+
+
+def _separator_of(text: str) -> str | None:
+    """The separator of one line, were it a row."""
+    if '"' in text:
+        return _quoted(text)
+    return "|" if "|" in text else Style.of(text).separator
 
 
 def _quoted(text: str) -> str | None:

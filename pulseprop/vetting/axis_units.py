@@ -52,6 +52,9 @@ def _with_stated(columns: NumberColumns, role: Role, unit: str, *, named: bool) 
             value=f"{role.name} in {unit}",
             allowed=f"a unit of a {role.name}",
         )
+    if role.unit and role.unit != unit and not named:
+        why = f'--unit goes before the heading "{role.heading}"'
+        columns.tell(f"unit of the {axis.replace('_', ' ')}", unit, why, "--unit")
     return replace(role, unit=unit, meaning=axis)
 
 

@@ -35,16 +35,30 @@ def tables_of_block(source: Source, block: Block, notes: Sequence[Inference]) ->
     _check_words_between(block)
     roles = roles_of(block, source.options)
     told = [*notes, *roles.inferred]
+    groups = _groups(roles.columns, told)
     source = replace(source, words=tuple(line.text.strip() for line in [*block.above, *block.below]))
-    return [_table(source, block, group, told) for group in _groups(roles.columns, told)]
+    return [_table(source, block, group, told) for group in groups]
 
 
 def _table(source: Source, block: Block, group: _Group, told: Sequence[Inference]) -> SentTable:
-    title = ", ".join(part for part in (source.title, group.title) if part)
+    name = _name_above(block, group) if group.title else ""
+    title = ", ".join(part for part in (source.title, name, group.title) if part)
     thickness = next((role.thickness for role in group.columns if role.thickness), None)
     columns = [(role.quantity, _printed(role)) for role in group.columns]
     source = replace(source, title=title, thickness=thickness)
     return table_of(source, _printed(group.axis), columns, block.lines, told)
+
+
+def _name_above(block: Block, group: _Group) -> str:
+    """What stands over the headings of a group, such as the name of a sample; empty where nothing does."""
+    places = [group.axis.index, *(role.index for role in group.columns)]
+    for line in reversed(block.above):
+        if line.cells is None or len(line.cells) != block.width or is_heading(line.text):
+            continue
+        found = [line.cells[place] for place in places if line.cells[place]]
+        if found:
+            return found[0]
+    return ""
 
 
 def _printed(role: Role) -> Printed:

@@ -18,7 +18,8 @@ __all__ = ["Heading", "heading_of", "headings_of", "is_heading"]
 BRACKETED = re.compile(r"[\[({<]([^\[\](){}<>]*(?:\([^()]*\))?[^\[\](){}<>]*)[\])}>]")
 POWER_OF_TEN = re.compile(r"10\s*\^|10\s*\*\*|10[⁻⁺⁰¹²³⁴-⁹]|[x×*]\s*10|\b1e[-+]?[0-9]|\b10\s?-[0-9]\b")
 LENGTH = re.compile(r"([0-9]+(?:[.,][0-9]+)?)\s*(um|µm|μm|mm|cm|m)\b")
-TEMPERATURE = re.compile(r"°\s?C|\bdeg ?C\b|[\[(]\s*K\s*[\])]|/\s*K\b|kelvin|celsius", re.IGNORECASE)
+TEMPERATURE = re.compile(r"T\b.*(°\s?C|\b[dD]eg ?C\b|[\[(]\s*K\s*[\])]|/\s*K\b|[kK]elvin|[cC]elsius).*")
+"""T may be a temperature."""
 CONDITION = re.compile(r"\s+(?:at|bei|@|à|a)\s+[0-9].*|\s*@.*")
 """What a heading adds about the sample: "n at 20 °C"."""
 FARTHEST = 8
@@ -54,7 +55,7 @@ def heading_of(text: str) -> Heading:
     """What one heading says."""
     text = text.strip().strip('"').strip("# ").strip()
     told = CONDITION.sub("", text)
-    if len(text) > LONGEST or TEMPERATURE.search(told):
+    if len(text) > LONGEST or TEMPERATURE.fullmatch(told):
         return Heading(text=text)
     words, unit = _taken_apart(told)
     meaning = meaning_of(words) if words else None
@@ -68,8 +69,17 @@ def heading_of(text: str) -> Heading:
         unit=unit,
         thickness=_thickness(text),
         extinction=is_extinction(text),
-        scaled=POWER_OF_TEN.search(text) is not None,
+        scaled=_is_scaled(text),
     )
+
+
+def _is_scaled(text: str) -> bool:
+    """Whether a power of ten stands beside words that are known without it."""
+    if not POWER_OF_TEN.search(text):
+        return False
+    words = POWER_OF_TEN.sub(" ", BRACKETED.sub(" ", text))
+    first = re.sub(r"[⁻⁺⁰-⁹¹²³0-9^*×+/-]|\bx\b", " ", words).strip()
+    return meaning_of(first) is not None or is_extinction(first)
 
 
 def _taken_apart(text: str) -> tuple[str, str | None]:
@@ -174,12 +184,12 @@ def _splits(text: str) -> Iterator[tuple[str, ...]]:
     """The ways to take a line of headings apart; none for what is too long to be one."""
     if len(text) > LONGEST_LINE:
         return
-    bare = text.strip().lstrip("#;!/ ").strip()
-    if bare.startswith("% "):
-        bare = bare[2:].strip()
+    whole = text.strip()
+    bare = re.sub(r"^[#;!/ ]+|^% ", "", whole).strip()
     for separator in ("\t", ";", ",", "|"):
         if separator in bare:
             yield cells_of(bare, separator)
+            yield cells_of(whole, separator)
     yield tuple(re.split(r"\s{2,}", bare))
     yield tuple(re.split(r"\s+(?![\[(])(?![^\[(]*[\])])", bare))
 

@@ -43,6 +43,8 @@ from pulseprop.vetting.headings import heading_of, is_heading
         ("n_o", "n", None),
         ("n (ordinary)", "n", None),
         ("n at 20 °C", "n", None),
+        ("n (20 °C)", "n", None),
+        ("dn/dT [1e-6/K]", None, None),
         ("Brechungsindex n", "n", None),
         ("Brechzahl", "n", None),
         ("indice de réfraction", "n", None),

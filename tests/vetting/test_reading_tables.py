@@ -199,6 +199,23 @@ def test_columns_side_by_side_and_repeated_quantities_are_tables_of_their_own(tm
     assert (values(first, "n"), values(second, "k")) == ([1.5, 1.4], [1e-5])
 
 
+def test_samples_side_by_side_keep_their_names(tmp_path: Path) -> None:
+    text = (
+        "Baseline,,Sample 1,,\nWavelength (nm),%T,Wavelength (nm),%T,\n800,100.1,800,91.2,\n"
+        "799,100.0,799,91.3,\n\nSample 1\nCollected: 3/4/2031\nScan rate: 600, 1\n"
+    )
+    first, second = sent(tmp_path, text)
+    assert (first.title, second.title) == ("Baseline, %T", "Sample 1, %T")
+    assert values(second, "transmittance") == pytest.approx([0.912, 0.913])
+
+
+def test_a_numbered_table_and_one_with_upright_lines(tmp_path: Path) -> None:
+    table = one(tmp_path, "#;nm;n\n1;400;1.47\n2;500;1.46\n")
+    assert table.axis_values.tolist() == [400, 500]
+    table = one(tmp_path, "| λ (µm) | n |\n|---|---|\n| 0.4 | 1.47 |\n| 0.5 | 1.46 |\n")
+    assert (table.axis_unit, values(table, "n")) == ("um", [1.47, 1.46])
+
+
 def test_each_transmittance_has_its_thickness(tmp_path: Path) -> None:
     heading = "nm, Internal transmittance (10 mm), Internal transmittance (25 mm)"
     first, second = sent(tmp_path, f"{heading}\n400,0.991,0.98\n500,0.999,0.998\n")
@@ -338,6 +355,7 @@ def test_options_go_before_the_file(tmp_path: Path) -> None:
     )  # fmt: skip
     assert [column.quantity for column in table.columns] == ["k"]
     assert one(tmp_path, text, unit="um").axis_unit == "um"
+    assert "goes before the heading" in told(one(tmp_path, text, unit="um"), "unit of the wavelength")
 
 
 @pytest.mark.parametrize("name", ["T_err", "remark", "u(n)"])
