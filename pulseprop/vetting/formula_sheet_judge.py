@@ -101,7 +101,7 @@ def _repairs(repairs: list[Mended]) -> Iterator[Finding]:
     for mended in repairs:
         yield Finding(
             code="misprint",
-            severity="error",
+            severity="error" if len(repairs) == 1 else "warning",
             text=f"One change makes all of it agree: {mended.words}."
             + ("" if len(repairs) == 1 else " Others do too, and causality cannot tell which is meant."),
             repair=mended.words,

@@ -12,7 +12,7 @@ from numpy.typing import NDArray
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.mirror_derivative import Agreement, agreement, common_rows
 from pulseprop.vetting.mirror_rows import FEMTO, WORDS, MirrorCurve
-from pulseprop.vetting.result import Finding
+from pulseprop.vetting.result import Finding, Severity
 from pulseprop.vetting.table import Quantity
 
 __all__ = ["CHAIN", "Mismatch", "compared_columns"]
@@ -26,6 +26,8 @@ COARSE = 0.05
 """Share of the integral that the row spacing may leave open for a comparison."""
 MEASURED = 0.05
 """Relative uncertainty that measured dispersion easily has (common practice, no source)."""
+UNRESOLVED, MOST_OF_ROWS = 0.5, 90
+"""Share of the change from row to row (in per cent of the rows) that may lie unseen between them."""
 NEAR = 4
 BISECTIONS = 8
 PRINTED_UNIT: dict[Quantity, float] = {"group_delay": 1e-15, "gdd": 1e-30, "mirror_tod": 1e-45}
@@ -103,32 +105,37 @@ def _mismatch(upper: MirrorCurve, lower: MirrorCurve, found: Agreement) -> Misma
     stated = upper.stated and lower.stated
     text = f"The {names[1]} is not the derivative of the {names[0]}: between rows {lines[0]} and {lines[1]} "
     text += f"they depart by {found.factor:.3g} times what digits and row spacing allow."
-    reading, lone = _reading(upper, lower), None
-    if reading is None:
-        lone = _lone(upper, lower, found)
-    small = False
+    reading = _reading(upper, lower)
+    severity: Severity = "error"
     if reading is not None:
         text += f" They agree if {reading}."
-    elif lone is not None:
-        lines = [int(upper.lines[lone])]
-        text += f" Without row {lines[0]} ({upper.nm[lone]:.6g} nm) all others agree."
     else:
         needed = _needed(upper, lower)
         size, unit = FEMTO[lower.quantity]
-        small = not stated and needed <= MEASURED * float(np.median(np.abs(lower.values)))
-        text += f" They agree if the {names[1]} is uncertain by +-{needed / size:.2g} {unit}."
+        agree = f" They agree if the {names[1]} is uncertain by +-{needed / size:.2g} {unit}"
+        if needed <= UNRESOLVED * _between_rows(lower.values):
+            severity, text = "warning", text + agree + ", no more than it changes from row to row: structure "
+            text += "that the rows do not resolve, or noise, would explain it."
+        elif not stated and needed <= MEASURED * float(np.median(np.abs(lower.values))):
+            severity, text = "warning", text + agree + ", as measurements are."
+        elif (lone := _lone(upper, lower, found)) is not None:
+            lines = [int(upper.lines[lone])]
+            text += f" Without row {lines[0]} ({upper.nm[lone]:.6g} nm) all others agree."
+        else:
+            text += agree + "."
     return Mismatch(
         finding=Finding(
-            code="columns-disagree",
-            severity="warning" if small else "error",
-            text=text,
-            rows=tuple(lines),
-            repair=reading,
+            code="columns-disagree", severity=severity, text=text, rows=tuple(lines), repair=reading
         ),
-        factor=found.factor,
+        factor=found.factor if severity == "error" else 1.0,
         mended=reading is not None,
         stated=stated,
     )
+
+
+def _between_rows(values: Real) -> float:
+    """How much a column bends from row to row, in most of its rows."""
+    return float(np.percentile(np.abs(np.diff(values, 2)), MOST_OF_ROWS))
 
 
 def _lone(upper: MirrorCurve, lower: MirrorCurve, found: Agreement) -> int | None:

@@ -26,6 +26,10 @@ COLUMNS: dict[str, Quantity] = {
 }
 
 
+BEND = 6.0
+SAME_PLACE = 1e-9
+
+
 def quantity_of(requirement: Requirement) -> Quantity | None:
     """The column that a requirement is about; None for those on materials."""
     return COLUMNS.get(requirement.quantity.name)
@@ -49,8 +53,8 @@ def mirror_answer(requirement: Requirement, curves: Mapping[Quantity, MirrorCurv
 def mirror_bounds(curve: MirrorCurve, low: float, high: float) -> Interval | None:
     """Least and greatest value from low to high, rad/s; None where the rows do not reach so far.
 
-    Between rows the curve is taken as their straight line, within an eighth of the second difference of its
-    rows, the error of that for a curve with no structure finer than them.
+    Between rows the curve is taken as their straight line, within a sixth of the larger second difference
+    beside: an eighth is the error of that, and the second differences of rows fall short of their largest.
     """
     if low < curve.omega[0] * (1 - 1e-12) or high > curve.omega[-1] * (1 + 1e-12):
         return None
@@ -68,10 +72,11 @@ def value_at(curve: MirrorCurve, omega: float) -> float:
 
 def _between(curve: MirrorCurve, omega: Real) -> Real:
     """What a curve may depart from straight lines at these places; nothing at a single row, (P,)."""
-    if len(curve.omega) < 3 or (omega[0] == omega[-1] and omega[0] in curve.omega):
+    nearest = float(np.min(np.abs(curve.omega - omega[0])))
+    if len(curve.omega) < 3 or (omega[0] == omega[-1] and nearest <= SAME_PLACE * omega[0]):
         return np.zeros(len(omega))
-    slope = np.diff(curve.values) / np.diff(curve.omega)
-    width = np.diff(curve.omega)
+    slope, width = np.diff(curve.values) / np.diff(curve.omega), np.diff(curve.omega)
     bend = np.abs(np.diff(slope)) * (width[:-1] + width[1:]) / 2
     padded = np.concatenate((bend[:1], bend, bend[-1:]))
-    return np.asarray(np.interp(omega, curve.omega, padded) / 8)
+    below = np.clip(np.searchsorted(curve.omega, omega, side="right") - 1, 0, len(curve.omega) - 2)
+    return np.asarray(np.maximum(padded[below], padded[below + 1]) / BEND)
