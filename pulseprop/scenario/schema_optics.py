@@ -198,7 +198,7 @@ class GasCellTable(FacedTable):
             raise complain(
                 "a cell has a window at each end",
                 at="windows",
-                value=f"{len(self.windows)} windows",
+                value=len(self.windows),
                 allowed="none, or two in the order of the beam",
             )
         return self

@@ -60,7 +60,7 @@ def sent(*path: dict[str, Any], directory: Path = Path()) -> Any:
             ["path.1", "would miss the wedges"],
         ),
         (GAS, ["needs its temperature"]),
-        (GAS | {"temperature": "0 degC", "windows": [WINDOW]}, ["path.1.windows", "1 windows", "two"]),
+        (GAS | {"temperature": "0 degC", "windows": [WINDOW]}, ["path.1.windows", "(got 1)", "two"]),
         (GAS | {"temperature": "0 degC", "gas": "argone"}, ["path.1.gas", "argon"]),
         (GAS | {"temperature": "0 degC", "gas": "SF10"}, ["path.1.gas", "not a gas"]),
         ({"kind": "repeat", "times": 2}, ["one of path, elements is missing"]),
