@@ -10,10 +10,11 @@ import numpy as np
 
 from pulseprop.errors import InputError
 from pulseprop.files.blocks import Block, Line
-from pulseprop.vetting.assemble import Printed, Source, table_of
+from pulseprop.vetting.assemble import table_of
 from pulseprop.vetting.column_roles import roles_of
 from pulseprop.vetting.headings import is_heading
 from pulseprop.vetting.number_columns import Role
+from pulseprop.vetting.printed import Printed, Source
 from pulseprop.vetting.printed_cells import half_units
 from pulseprop.vetting.table import Inference, SentTable
 

@@ -15,10 +15,10 @@ from pulseprop.files.jcamp import is_jcamp, spectra_of
 from pulseprop.files.source import contents, decoded
 from pulseprop.files.text_blocks import text_blocks
 from pulseprop.files.workbook import first_sheet, is_workbook
-from pulseprop.vetting.assemble import Source
 from pulseprop.vetting.block_tables import tables_of_block
 from pulseprop.vetting.headings import is_heading
 from pulseprop.vetting.joined import joined
+from pulseprop.vetting.printed import Source
 from pulseprop.vetting.read_options import ReadOptions
 from pulseprop.vetting.request import Stated
 from pulseprop.vetting.spectrum_tables import table_of_spectrum

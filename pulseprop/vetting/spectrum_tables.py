@@ -10,10 +10,11 @@ from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
 from pulseprop.files.jcamp import Spectrum
-from pulseprop.vetting.assemble import Printed, Source, table_of
+from pulseprop.vetting.assemble import table_of
 from pulseprop.vetting.heading_units import AXIS_OF_DIMENSION, dimension
 from pulseprop.vetting.heading_words import AXES, QUANTITIES
 from pulseprop.vetting.headings import Heading, heading_of
+from pulseprop.vetting.printed import Printed, Source
 from pulseprop.vetting.read_options import named_columns
 from pulseprop.vetting.remarks import sample_thickness
 from pulseprop.vetting.sizes import unit_by_size

@@ -1,0 +1,78 @@
+"""A printed column in SI: its unit as said, percent by size, or the usual unit of data sheets."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from pulseprop.errors import InputError
+from pulseprop.units import to_si
+from pulseprop.vetting.kinds import FRACTIONS, KIND_OF, USUAL_UNIT
+from pulseprop.vetting.printed import Printed, Source
+from pulseprop.vetting.sizes import is_percent
+from pulseprop.vetting.table import Column, Inference, Quantity
+
+__all__ = ["column_in_si"]
+
+
+def column_in_si(source: Source, name: Quantity, printed: Printed, told: list[Inference]) -> Column:
+    """The column; what is inferred goes to `told`. Raises InputError for a unit that is missing or not one of
+    the quantity."""
+    unit = _unit(source, name, printed, told)
+    values, half = printed.values, printed.half
+    kind = KIND_OF.get(name)
+    if kind and unit:
+        with np.errstate(over="ignore"):
+            values = np.asarray(to_si(values, unit, kind))
+            half = np.asarray(to_si(half, unit, kind))
+        if not np.isfinite(values).all():
+            raise InputError(f"a number of {name} is beyond all measure", file=source.place)
+    return Column(
+        quantity=name, header=printed.heading, unit=unit, cells=printed.cells, values=values, half_unit=half
+    )
+
+
+def _unit(source: Source, name: Quantity, printed: Printed, told: list[Inference]) -> str:
+    """The unit of a column: as said, percent by size, or the usual one; "" for a plain number."""
+    if name not in KIND_OF:
+        return ""
+    heading = f'"{printed.heading}" ' if printed.heading else ""
+    if name in FRACTIONS:
+        if printed.unit in ("%", ""):
+            return printed.unit
+        if printed.unit:
+            raise _no_unit(source, name, printed, 'a fraction, or "%"')
+        percent = is_percent(printed.values)
+        taken = "in percent" if percent else "as fractions of 1"
+        why = f"the largest is {np.max(printed.values):g}"
+        told.append(
+            Inference(about=f"column {heading}{name}", taken=taken, why=why, overrule=f"--columns {name}/%")
+        )
+        return "%" if percent else ""
+    if printed.unit:
+        return _checked(source, name, printed)
+    usual = USUAL_UNIT.get(name)
+    if usual is None:
+        raise _no_unit(source, name, printed, "cm^-1, mm^-1, 1/m, dB/m")
+    why = "no unit is said, and data sheets use this one"
+    told.append(Inference(about=f"unit of {name}", taken=usual, why=why, overrule=f"--columns {name}/UNIT"))
+    return usual
+
+
+def _checked(source: Source, name: Quantity, printed: Printed) -> str:
+    """The printed unit, where it is one of that quantity."""
+    unit = printed.unit or ""
+    try:
+        to_si(1.0, unit, KIND_OF[name])
+    except InputError as error:
+        raise error.located(file=source.place, place=printed.heading or name) from None
+    return unit
+
+
+def _no_unit(source: Source, name: Quantity, printed: Printed, allowed: str) -> InputError:
+    return InputError(
+        f"the unit of {name} is missing or not one of it",
+        value=printed.unit or printed.heading or None,
+        allowed=allowed,
+        remedy=f"Say it behind the name: --columns wavelength,{name}/{allowed.split(',')[0].split()[-1]}",
+        file=source.place,
+    )

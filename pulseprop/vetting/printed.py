@@ -1,0 +1,40 @@
+"""Columns as printed, and where they come from: what every kind of file is turned into before SI."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.vetting.read_options import ReadOptions
+
+__all__ = ["Printed", "Source"]
+
+Real = NDArray[np.float64]
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class Printed:
+    """A column as printed. values, half: (R,), in its unit; values are NaN for missing cells. unit: "" for a
+    plain number, None where none was said."""
+
+    name: str
+    unit: str | None
+    heading: str
+    cells: tuple[str, ...]
+    values: Real
+    half: Real
+
+
+@dataclass(frozen=True, kw_only=True)
+class Source:
+    """Where a table comes from, and the words around it. place: file and sheet, for messages."""
+
+    file: str
+    place: str
+    sha256: str
+    options: ReadOptions
+    words: tuple[str, ...] = ()
+    title: str = ""
+    thickness: float | None = None

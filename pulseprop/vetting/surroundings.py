@@ -1,0 +1,94 @@
+"""What a table is measured in and on: wavelengths in air or vacuum, index against either, thickness."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from typing import Literal
+
+import numpy as np
+from numpy.typing import NDArray
+
+from pulseprop.errors import InputError
+from pulseprop.material.wavelength_in_air import omegas_of_air_wavelengths
+from pulseprop.units import to_si
+from pulseprop.vetting.printed import Printed, Source
+from pulseprop.vetting.remarks import Remark, axis_medium, index_medium, sample_thickness
+from pulseprop.vetting.table import Inference
+
+__all__ = ["axis_omega", "index_against", "thickness_of"]
+
+Real = NDArray[np.float64]
+Surrounding = Literal["air", "vacuum"]
+
+
+def axis_omega(
+    source: Source, axis: Printed, lines: NDArray[np.int64], remarks: Sequence[str], told: list[Inference]
+) -> tuple[Surrounding, Real]:
+    """What the wavelengths are measured in, and the angular frequency of each row in rad/s, (R,).
+
+    Raises InputError, with the line, for a place that is not above zero, and outside the range of the formula
+    of air where an option says air.
+    """
+    bad = np.flatnonzero(~(axis.values > 0))
+    if len(bad):
+        raise InputError(
+            "a place on the spectrum must be above zero",
+            value=f"{axis.cells[bad[0]]} {axis.unit}",
+            allowed=f"a {axis.name.replace('_', ' ')} above zero",
+            remedy="Check which column is the spectral axis (--columns)",
+            file=f"{source.place}:{lines[bad[0]]}",
+        )
+    omega = np.asarray(to_si(axis.values, axis.unit or "", "spectral"))
+    if not (np.isfinite(omega).all() and np.all(omega > 0)):
+        raise InputError("the spectral axis is beyond all measure", file=f"{source.place}:{lines[0]}")
+    if axis.name != "wavelength":
+        return "vacuum", omega
+    if source.options.wavelength_in == "air":
+        try:
+            return "air", omegas_of_air_wavelengths(omega)
+        except InputError as error:
+            raise error.located(file=source.place) from None
+    remark = axis_medium(remarks)
+    if source.options.wavelength_in is None and remark is not None and remark.value == "air":
+        return _in_air(omega, remark, told)
+    return "vacuum", omega
+
+
+def _in_air(omega: Real, remark: Remark, told: list[Inference]) -> tuple[Surrounding, Real]:
+    """Wavelengths said to be in air, where the formula of air covers them all."""
+    about, why, overrule = "wavelengths", f'the file says "{remark.words[:80]}"', "--wavelength-in vacuum"
+    try:
+        converted = omegas_of_air_wavelengths(omega)
+    except InputError:
+        why += ", but the formula of air covers 230 to 1690 nm only"
+        told.append(Inference(about=about, taken="as they stand", why=why, overrule="--wavelength-in"))
+        return "vacuum", omega
+    told.append(Inference(about=about, taken="in air", why=why, overrule=overrule))
+    return "air", converted
+
+
+def index_against(source: Source, remarks: Sequence[str], told: list[Inference]) -> Surrounding | None:
+    """What the index is against: as stated, as the words say, else None."""
+    if source.options.relative_to is not None:
+        return source.options.relative_to
+    remark = index_medium(remarks)
+    if remark is None:
+        return None
+    why = f'the file says "{remark.words[:80]}"'
+    told.append(Inference(about="index", taken=f"against {remark.value}", why=why, overrule="--relative-to"))
+    return "air" if remark.value == "air" else "vacuum"
+
+
+def thickness_of(source: Source, told: list[Inference]) -> float | None:
+    """As stated, as the column's heading says, or as the words around the table do."""
+    stated = source.options.length()
+    if stated is not None:
+        return stated
+    length, why = source.thickness, "the heading of the column says so"
+    if length is None:
+        remark = sample_thickness(source.words)
+        if remark is None:
+            return None
+        length, why = remark.length, f'the file says "{remark.words[:80]}"'
+    told.append(Inference(about="thickness", taken=f"{length * 1e3:g} mm", why=why, overrule="--thickness"))
+    return length
