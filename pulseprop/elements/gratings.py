@@ -131,10 +131,10 @@ class GratingPair(Device):
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i times the phase, and the loss of the diffractions; dark where there is no diffraction."""
         omega = np.asarray(omega)
-        normal, arrives = self._normal(omega, max(count, 2))
+        normal, arrives = self._normal(omega, count)
         at_centre, _ = self._normal(np.array(self.centre), 2)
         sign = -1j if self.stretches else 1j
-        phase = without_delay(normal, omega, at_centre, self.centre)[:count]
+        phase = without_delay(normal, omega, at_centre, self.centre)
         exponent = np.where(arrives, sign * self.passes * self.separation * phase, 0.0)
         exponent[0] += np.where(arrives, self.passes * np.log(self.efficiency), DARK)
         return np.asarray(exponent)

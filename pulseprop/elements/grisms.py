@@ -120,9 +120,9 @@ class GrismPair(Device):
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i times the phase, and the loss of the diffractions; dark where nothing is diffracted."""
         omega = np.asarray(omega)
-        found, leaves = self.wedges.phase(omega, max(count, 2), view)
+        found, leaves = self.wedges.phase(omega, count, view)
         at_centre, _ = self.wedges.phase(np.array(self.centre), 2, view)
-        phase = self.passes * without_delay(found, omega, at_centre, self.centre)[:count]
+        phase = self.passes * without_delay(found, omega, at_centre, self.centre)
         exponent = np.where(leaves, 1j * phase, 0.0)
         exponent[0] = np.minimum(exponent[0].real, 0.0) + 1j * exponent[0].imag
         exponent[0] += np.where(leaves, self.passes * np.log(self.efficiency), DARK)
@@ -158,30 +158,27 @@ class GrismPair(Device):
     def landing(self, omega: Numbers | float) -> Real:
         """Where light of omega (rad/s) meets the second grating, m from the carrier; NaN where nothing
         does."""
-        return np.asarray(
-            self.wedges.second_crossing(self.centre) - self.wedges.second_crossing(omega), dtype=float
-        )
+        return self.second - self.wedges.second_crossing(omega)[0]
 
     def factor(self, omega: Numbers, view: View = View.AXIS) -> Complex | None:
         """Amplitude that meets the second grating, shape of omega; None where its width is not stated."""
         if self.width is None or self.beam_radius is None:
             return None
         offset = self.landing(omega)
-        entry, exit_, _ = self.wedges.wedge.angles(self.centre)
-        spot = self.beam_radius / np.cos(self.incidence) * float(np.cos(entry) / np.cos(exit_))
+        entry, inside, _ = self.wedges.carrier
+        spot = self.beam_radius / np.cos(self.incidence) * float(np.cos(entry) / np.cos(inside))
         share = share_between(0.5 * self.width - offset, 0.5 * self.width + offset, spot)
         return np.asarray(np.sqrt(np.where(np.isfinite(offset), share, 0.0)), dtype=complex)
 
     @property
     def footprint(self) -> float:
         """The carrier's way from grating to grating and in glass, m."""
-        _, _, outside = self.wedges.wedge.angles(self.centre)
-        return float(self.separation / np.cos(outside)) + self.wedges.glass()
+        return float(self.separation / np.cos(self.wedges.carrier[2])) + self.wedges.glass()
 
     @property
     def figures(self) -> Mapping[str, float | None]:
         """What a person sets up by."""
-        _, inside, outside = self.wedges.wedge.angles(self.centre)
+        _, inside, outside = self.wedges.carrier
         return {
             "angle_in_glass_at_grating_deg": float(np.degrees(inside)),
             "diffraction_angle_deg": float(np.degrees(outside)),

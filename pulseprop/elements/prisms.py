@@ -145,9 +145,9 @@ class PrismPair(Device):
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i times the phase; dark where light is totally reflected in the first prism."""
         omega = np.asarray(omega)
-        found, leaves = self.wedges.phase(omega, max(count, 2), view)
+        found, leaves = self.wedges.phase(omega, count, view)
         at_centre, _ = self.wedges.phase(np.array(self.centre), 2, view)
-        phase = self.passes * without_delay(found, omega, at_centre, self.centre)[:count]
+        phase = self.passes * without_delay(found, omega, at_centre, self.centre)
         exponent = np.where(leaves, 1j * phase, 0.0)
         # A ray that passes beside the second tip crosses no glass there: it is not amplified.
         exponent[0] = np.minimum(exponent[0].real, 0.0) + 1j * exponent[0].imag
@@ -192,8 +192,7 @@ class PrismPair(Device):
     def _past_the_tips(self, omega: Numbers, radius: float) -> Complex:
         """Each tip cuts a Gaussian beam, as the cut edge fades on the way between the prisms; once, as later
         passes find only what is left."""
-        crossing = self.wedges.second_crossing(omega)
-        second = crossing * np.cos(self.wedges.wedge.angles(omega)[2])
+        _, second = self.wedges.second_crossing(omega)
         second = np.where(np.isfinite(second), second, -np.inf)
         share = share_beside(self.clearance[0], radius) * share_beside(second, radius)
         return np.asarray(np.sqrt(share), dtype=complex)

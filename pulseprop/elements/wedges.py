@@ -15,6 +15,7 @@ ray of a plane wave gathers the same phase between two of its wavefronts, the ra
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import cached_property
 
 import numpy as np
 from numpy.typing import NDArray
@@ -55,7 +56,7 @@ class Wedge:
             - np.cos(self.apex) * sine * wave
         )
         along[0] += self.momentum
-        squared = product(wave - along, wave + along).astype(complex)
+        squared = product(wave - along, wave + along)
         leaves = np.asarray(np.real(squared[0]) > (np.cos(GRAZING) * np.real(wave[0])) ** 2)
         squared[0] = np.where(leaves, squared[0], 1.0)
         return along, root(squared, np.sqrt(squared[0])), leaves
@@ -64,7 +65,7 @@ class Wedge:
         """Real angles in rad at omega (rad/s): inside at the entry, inside at the exit, outside at the exit
         (NaN where the wave does not leave)."""
         omega = np.asarray(omega, dtype=float)
-        index = np.real(self.medium.index(omega))
+        index = np.real(np.sqrt(1 + self.medium.susceptibility(omega)))
         entry = _arcsin(np.sin(self.incidence) / index)
         outside = _arcsin(index * np.sin(self.apex - entry) + self.momentum * SPEED_OF_LIGHT / omega)
         return entry, self.apex - entry, outside
@@ -86,26 +87,31 @@ class Wedges:
     second: float
     gap: float
 
-    @property
+    @cached_property
+    def carrier(self) -> tuple[float, float, float]:
+        """The angles of the carrier, rad, as `Wedge.angles` gives them."""
+        entry, inside, outside = self.wedge.angles(self.centre)
+        return float(entry), float(inside), float(outside)
+
+    @cached_property
     def offset(self) -> float:
         """X: distance of the tips along the faces, m."""
-        _, _, outside = self.wedge.angles(self.centre)
-        return self.first + self.second + self.gap * float(np.tan(outside))
+        return self.first + self.second + self.gap * float(np.tan(self.carrier[2]))
 
     def phase(self, omega: Numbers, count: int, view: View) -> tuple[Series, Mask]:
         """k_t X + k_n Z, complex where the glass absorbs, and where there is any."""
         along, across, leaves = self.wedge.wave_vectors(omega, count, view)
         return np.asarray(along * self.offset + across * self.gap), leaves
 
-    def second_crossing(self, omega: Numbers | float) -> Real:
-        """Distance in m along the face from the second tip at which light of omega (rad/s) meets it."""
-        entry, exit_, outside = self.wedge.angles(omega)
-        entry_0, exit_0, _ = self.wedge.angles(self.centre)
+    def second_crossing(self, omega: Numbers | float) -> tuple[Real, Real]:
+        """Where light of omega (rad/s) meets the face of the second wedge: distance in m from its tip along
+        the face, and across the ray; NaN where nothing does."""
+        entry, inside, outside = self.wedge.angles(omega)
         # The ray enters the first wedge where the carrier does; the sides of the triangle at its tip.
-        left = self.first * np.cos(exit_0) / np.cos(entry_0) * np.cos(entry) / np.cos(exit_)
-        return np.asarray(self.offset - self.gap * np.tan(outside) - left)
+        left = self.first * np.cos(self.carrier[1]) / np.cos(self.carrier[0])
+        crossing = self.offset - self.gap * np.tan(outside) - left * np.cos(entry) / np.cos(inside)
+        return np.asarray(crossing), np.asarray(crossing * np.cos(outside))
 
     def glass(self) -> float:
         """The carrier's way in both wedges, m."""
-        entry, _, _ = self.wedge.angles(self.centre)
-        return float((self.first + self.second) * np.sin(self.wedge.apex) / np.cos(entry))
+        return float((self.first + self.second) * np.sin(self.wedge.apex) / np.cos(self.carrier[0]))
