@@ -49,9 +49,9 @@ def feasibility(data: PassiveData, *, thorough: bool = True) -> Feasibility:
     attained, proof = least_factor(cls)
     conflict, unresolved = None, None
     if thorough and proof.factor > 1:
-        proof = fewer_rows(cls, proof)
-        conflict = _checked(data, cls, proof)
-        unresolved = unresolved_line(cls, attained, proof)
+        shorter = fewer_rows(cls, proof)
+        conflict = _checked(data, cls, shorter)
+        unresolved = unresolved_line(cls, attained, shorter)
     return Feasibility(
         factor=attained.factor,
         certified=proof.factor,

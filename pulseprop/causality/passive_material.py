@@ -73,4 +73,4 @@ class PassiveMaterial:
 
     @property
     def _splines(self) -> int:
-        return self.cls.spline_columns.shape[1]
+        return len(self.attained.amounts) - len(self.attained.masses)

@@ -1,7 +1,7 @@
 """Could a line too narrow for the rows explain a conflict? Lines are tried in a few neighbouring gaps.
 
-With narrow lines allowed between all rows every table is possible; so they are allowed at least a quarter of
-the gap from any row, and in at most three neighbouring gaps. Where they bring the factor to 1, or down by 4,
+With narrow lines allowed between all rows every table is possible; so they are allowed a third of the gap from
+any row, and in at most three neighbouring gaps. Where they bring the factor to 1, or down by 4,
 the rows cannot tell a wrong number from a line that they missed.
 """
 
@@ -20,8 +20,9 @@ __all__ = ["UnresolvedLine", "unresolved_line"]
 
 Real = NDArray[np.float64]
 
-SHARES = np.array([0.25, 0.375, 0.5, 0.625, 0.75])
-"""Places of lines in a gap."""
+SHARES = np.array([1 / 3, 2 / 3])
+"""Places of lines in a gap. Nearer to a row, a line is as good as a wrong row: at a quarter of the gap one
+displaced row falls as far as true data that miss a line (2.6 to 4 against 2.6 to 3.9 times; measured)."""
 GAPS = 3
 """Neighbouring gaps in which lines may lie."""
 TRIED = 6
