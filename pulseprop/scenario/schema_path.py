@@ -88,7 +88,7 @@ class RepeatTable(ElementTable):
     """Elements that the beam goes through several times, in their order. path, or elements: what they are."""
 
     kind: Literal["repeat"]
-    times: Annotated[int, Field(ge=1, le=100_000)]
+    times: Annotated[int, Field(ge=1, le=10_000)]
     path: Annotated[list[Element], Field(min_length=1)] | None = None
     elements: Annotated[list[Element], Field(min_length=1)] | None = None
 
