@@ -13,8 +13,9 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.causality.bounds_band import allowed_band, coarse_features
+from pulseprop.causality.bounds_band import allowed_band
 from pulseprop.causality.bounds_sources import Absorbing, Source, Transparent
+from pulseprop.causality.coarse_features import coarse_features
 from pulseprop.causality.passive_data import PassiveData
 from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import NumericalLimit
@@ -76,11 +77,11 @@ def _unasked(data: PassiveData, omega: float) -> PassiveBounds:
 
 def _source(data: PassiveData) -> tuple[Source, str]:
     """With what is to be said of quantities it does not tell."""
-    if data.k is None:
+    if data.k is None or data.k_omega is None or data.k_error is None:
         return Transparent(data), ""
-    coarse = coarse_features(data)
-    if len(coarse):
-        places = ", ".join(f"{TWO_PI_C / place * 1e9:.5g}" for place in coarse[:3])
+    coarse = coarse_features(data.k_omega, data.k, data.k_error)
+    if coarse:
+        places = ", ".join(f"{TWO_PI_C / feature.omega * 1e9:.5g}" for feature in coarse[:3])
         return Absorbing(data, WITHOUT_GVD), (
             f"GVD and TOD need five rows over the width of each feature of k, which those at {places} nm"
             f"{' and others' * (len(coarse) > 3)} do not have"

@@ -30,7 +30,7 @@ ROUGH = 0.5
 """How far the proof of M may miss."""
 ROUGHLY = 1e-2
 """Accuracy of programmes whose value only has to be of the right size."""
-FIRST, LAST = 1e-4, 1e-9
+FIRST, LAST = 3e-4, 1e-9
 """Accuracy of the first programme of an end, and the best that is asked for."""
 COUNTS = 0.01
 """Places that violate by less than this share of the worst can wait."""
@@ -100,7 +100,7 @@ class Proofs:
         fixed = (weights @ materials.fixed - functional.fixed) / self.fixed_sizes
         on_grid = (weights @ self.grid_columns - functional.continuum(materials.grid)) / self.grid_sizes
         place, value = self._refined(functional, weights, on_grid)
-        largest = float(max(np.max(fixed), np.max(value)))
+        largest = float(np.max(np.concatenate((fixed, value))))
         return largest, place[value > max(COUNTS * largest, 0.0)]
 
     def _excess(self, functional: Functional, weights: Real, q: Real) -> Real:
@@ -185,7 +185,7 @@ class _End:
 
     def improve(self, goal: float) -> None:
         """One more round, towards a distance `goal` of proven and reached."""
-        self._round(max(min(FIRST, 0.1 * goal / abs(self.reached)), LAST))
+        self._round(max(min(FIRST, 0.2 * goal / abs(self.reached)), LAST))
 
     def _round(self, accuracy: float) -> None:
         """Solve, prove, and let the places join that would have helped."""
