@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 from dataclasses import dataclass
 from itertools import pairwise
+from math import inf
 
 import numpy as np
 from numpy.typing import NDArray
@@ -12,7 +13,7 @@ from numpy.typing import NDArray
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.mirror_derivative import Agreement, agreement, common_rows
 from pulseprop.vetting.mirror_rows import FEMTO, WORDS, MirrorCurve
-from pulseprop.vetting.result import Finding, Severity
+from pulseprop.vetting.result import Finding
 from pulseprop.vetting.table import Quantity
 
 __all__ = ["CHAIN", "Mismatch", "compared_columns"]
@@ -26,8 +27,10 @@ COARSE = 0.05
 """Share of the integral that the row spacing may leave open for a comparison."""
 MEASURED = 0.05
 """Relative uncertainty that measured dispersion easily has (common practice, no source)."""
-UNRESOLVED, MOST_OF_ROWS = 0.5, 90
+UNRESOLVED, MOST_OF_ROWS = 1.0, 90
 """Share of the change from row to row (in per cent of the rows) that may lie unseen between them."""
+FEWEST_ROWS = 12
+"""Rows below which a ripple may hide between them altogether."""
 NEAR = 4
 BISECTIONS = 8
 PRINTED_UNIT: dict[Quantity, float] = {"group_delay": 1e-15, "gdd": 1e-30, "mirror_tod": 1e-45}
@@ -100,41 +103,56 @@ def _phase_convention(upper: MirrorCurve, lower: MirrorCurve) -> Mismatch | None
 
 
 def _mismatch(upper: MirrorCurve, lower: MirrorCurve, found: Agreement) -> Mismatch:
-    names = WORDS[upper.quantity], WORDS[lower.quantity]
+    """That the columns depart, with what would explain it."""
     lines = sorted(upper.lines[list(found.pair)].tolist())
     stated = upper.stated and lower.stated
-    text = f"The {names[1]} is not the derivative of the {names[0]}: between rows {lines[0]} and {lines[1]} "
-    text += f"they depart by {found.factor:.3g} times what digits and row spacing allow."
-    reading = _reading(upper, lower)
-    severity: Severity = "error"
-    if reading is not None:
-        text += f" They agree if {reading}."
-    else:
-        needed = _needed(upper, lower)
-        size, unit = FEMTO[lower.quantity]
-        agree = f" They agree if the {names[1]} is uncertain by +-{needed / size:.2g} {unit}"
-        if needed <= UNRESOLVED * _between_rows(lower.values):
-            severity, text = "warning", text + agree + ", no more than it changes from row to row: structure "
-            text += "that the rows do not resolve, or noise, would explain it."
-        elif not stated and needed <= MEASURED * float(np.median(np.abs(lower.values))):
-            severity, text = "warning", text + agree + ", as measurements are."
-        elif (lone := _lone(upper, lower, found)) is not None:
-            lines = [int(upper.lines[lone])]
-            text += f" Without row {lines[0]} ({upper.nm[lone]:.6g} nm) all others agree."
-        else:
-            text += agree + "."
-    return Mismatch(
-        finding=Finding(
-            code="columns-disagree", severity=severity, text=text, rows=tuple(lines), repair=reading
-        ),
-        factor=found.factor if severity == "error" else 1.0,
-        mended=reading is not None,
-        stated=stated,
+    text = (
+        f"The {WORDS[lower.quantity]} is not the derivative of the {WORDS[upper.quantity]}: between rows "
+        f"{lines[0]} and {lines[1]} they depart by {found.factor:.3g} times what digits and row spacing allow."
     )
+    reading, severity = _reading(upper, lower), "error"
+    if reading is not None:
+        why = f"They agree if {reading}."
+    else:
+        severity, why, lone = _unread(upper, lower, found, stated)
+        lines = lines if lone is None else [int(upper.lines[lone])]
+    finding = Finding(
+        code="columns-disagree",
+        severity="error" if severity == "error" else "warning",
+        text=f"{text} {why}",
+        rows=tuple(lines),
+        repair=reading,
+    )
+    blame = found.factor if severity == "error" else 1.0
+    return Mismatch(finding=finding, factor=blame, mended=reading is not None, stated=stated)
+
+
+def _unread(
+    upper: MirrorCurve, lower: MirrorCurve, found: Agreement, stated: bool
+) -> tuple[str, str, int | None]:
+    """Of columns that no slip explains: the severity, what would make them agree, and the one row at fault."""
+    needed = _needed(upper, lower)
+    size, unit = FEMTO[lower.quantity]
+    agree = f"They agree if the {WORDS[lower.quantity]} is uncertain by +-{needed / size:.2g} {unit}"
+    if needed <= UNRESOLVED * _between_rows(lower.values):
+        return (
+            "warning",
+            f"{agree}: structure that the rows do not resolve, or noise, would explain it.",
+            None,
+        )
+    if not stated and needed <= MEASURED * float(np.median(np.abs(lower.values))):
+        return "warning", f"{agree}, as measurements are.", None
+    lone = _lone(upper, lower, found)
+    if lone is None:
+        return "error", f"{agree}.", None
+    row = f"row {upper.lines[lone]} ({upper.nm[lone]:.6g} nm)"
+    return "error", f"Without {row} all others agree.", lone
 
 
 def _between_rows(values: Real) -> float:
-    """How much a column bends from row to row, in most of its rows."""
+    """How much a column bends from row to row, in most of its rows; without limit where they are few."""
+    if len(values) < FEWEST_ROWS:
+        return inf
     return float(np.percentile(np.abs(np.diff(values, 2)), MOST_OF_ROWS))
 
 

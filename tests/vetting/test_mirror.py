@@ -261,6 +261,37 @@ def test_a_calculated_curve_looks_so():
     assert "looks-calculated" not in codes(judged(table(measured)))
 
 
+def random_mirror(seed):
+    """Wavelengths, columns and digits: a chirp and one to three ripples, any row spacing and print."""
+    rng = np.random.default_rng(seed)
+    start = rng.uniform(600, 900)
+    step = rng.choice([0.5, 1, 2, 3, 5, 8, 10, 20])
+    nm = np.round(np.arange(start, start + rng.uniform(80, 300), step), 1)
+    x = detuning(nm) - np.mean(detuning(nm))
+    gdd, slope = rng.uniform(-120, 120), rng.uniform(-200, 200)
+    delay = rng.uniform(0, 60) + gdd * x + slope * x**2 / 2
+    dispersion = gdd + slope * x
+    for _ in range(rng.integers(1, 4)):
+        size, turn, start = rng.uniform(1, 25), 2 * np.pi / rng.uniform(0.04, 0.4), rng.uniform(0, 6)
+        dispersion = dispersion + size * np.sin(turn * x + start)
+        delay = delay - size / turn * np.cos(turn * x + start)
+    digits = int(rng.integers(0, 4))
+    return nm, {"group_delay": delay, "gdd": dispersion}, {"group_delay": digits, "gdd": max(digits - 1, 0)}
+
+
+def test_random_true_mirrors_are_never_doubted_and_slips_are_named():
+    named = seen = 0
+    for seed in range(60):
+        nm, columns, places = random_mirror(seed)
+        assert judged(table(columns, nm, places)).verdict == "consistent", seed
+        turned = judged(table(columns | {"gdd": -columns["gdd"]}, nm, places))
+        found = [entry for entry in turned.findings if entry.code == "columns-disagree"]
+        seen += bool(found)
+        named += any(entry.repair and "sign" in entry.repair for entry in found)
+    assert seen >= 50
+    assert named >= 0.9 * seen
+
+
 # What was ordered
 
 
