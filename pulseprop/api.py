@@ -14,7 +14,7 @@ import numpy as np
 if TYPE_CHECKING:
     import xarray
 
-    from pulseprop.compensation.result import Compensation
+    from pulseprop.compensation.result import Compensation, Design
     from pulseprop.material.medium import Medium
     from pulseprop.propagation.result import Run
     from pulseprop.propagation.send import Progress
@@ -24,6 +24,7 @@ from pulseprop import __version__
 from pulseprop.constants import TWO_PI_C
 
 __all__ = [
+    "Compensated",
     "MediumReport",
     "OrdersRow",
     "catalogue",
@@ -70,12 +71,40 @@ def _read(scenario: str | Path | Scenario, overrides: Iterable[str]) -> Scenario
     return scenario
 
 
+@dataclass(frozen=True, kw_only=True)
+class Compensated:
+    """The answer to `compensate`; run: its best design, sent in full as `send` does."""
+
+    compensation: Compensation
+    run: Run
+
+    @property
+    def designs(self) -> tuple[Design, ...]:
+        """The designs, the best first."""
+        return self.compensation.designs
+
+    @property
+    def exit_code(self) -> int:
+        """1 where no design comes within the target, else 0."""
+        return self.compensation.exit_code
+
+    def as_json(self) -> dict[str, Any]:
+        """The document of the JSON report."""
+        sent = self.run.as_json()
+        return {
+            **{key: sent[key] for key in ("scenario", "overrides", "question", "version")},
+            **self.compensation.as_json(),
+            "build_sheet": sent["elements"],
+            **{key: sent[key] for key in ("media", "hazard_assessment", "warnings", "cautions")},
+        }
+
+
 def compensate(
     scenario: str | Path | Scenario,
     overrides: Iterable[str] = (),
     best: int | None = None,
     progress: Progress | None = None,
-) -> Compensation:
+) -> Compensated:
     """The best settings and additions for a scenario's goal, with tolerances. best: how many designs.
 
     progress(stage, fraction) is called as the work goes on. Raises InputError and NumericalLimit.
@@ -83,12 +112,17 @@ def compensate(
     from dataclasses import replace
 
     from pulseprop.compensation.compensate import compensate as solve
+    from pulseprop.propagation.send import run
+    from pulseprop.scenario.build import build
     from pulseprop.scenario.build_compensate import problem_of
 
-    problem = problem_of(_read(scenario, overrides))
+    scenario = _read(scenario, overrides)
+    problem = problem_of(scenario)
     if best is not None:
         problem = replace(problem, best=best)
-    return solve(problem) if progress is None else solve(problem, progress)
+    answer = solve(problem) if progress is None else solve(problem, progress)
+    experiment = build(scenario, answer.designs[0].path)
+    return Compensated(compensation=answer, run=run(experiment, __version__, catalogue_checksum()))
 
 
 def dataset(run: Run) -> xarray.Dataset:

@@ -12,6 +12,7 @@ from collections.abc import Sequence
 
 import rich_click as click
 
+from pulseprop.cli.compensate import compensate
 from pulseprop.cli.media import media
 from pulseprop.cli.outputs import DONE
 from pulseprop.cli.send import send
@@ -115,5 +116,5 @@ def commands() -> None:
     """
 
 
-for command in (send, media):
+for command in (send, compensate, media):
     commands.add_command(command)

@@ -100,7 +100,8 @@ def _state(problem: Problem, run: Sent) -> State:
         residual_gdd_fs2=run.gdd,
         residual_tod_fs3=run.tod,
         residual_fod_fs4=run.fod,
-        in_place=tuple(part.name for part in problem.parts if part.adjustments and in_place(part)),
+        in_place=tuple(part.name for part in problem.parts if part.movable and in_place(part)),
+        fields=run.fields,
     )
 
 
@@ -134,13 +135,7 @@ def _notes(problem: Problem, found: Found) -> tuple[str, ...]:
             f"{found.by_phase} of {found.choices} discrete choices were left out because their fitted phase "
             "stayed behind that of the others; no proof excludes them"
         )
-    unknown = [
-        f"{part.name}, {one.parameter}"
-        for part in problem.parts
-        if in_place(part)
-        for one in part.adjustments
-        if one.now is None
-    ]
+    unknown = [part.name for part in problem.parts if not part.optional and not in_place(part)]
     if unknown:
-        said.append(f"no present setting is stated for {'; '.join(unknown)}: the lowest stands for today's")
+        said.append(f"no present setting is stated for {', '.join(unknown)}: today's path is taken without")
     return tuple(said)

@@ -138,9 +138,12 @@ class MirrorOrder:
     high_fs2: Real
 
 
-@dataclass(frozen=True, kw_only=True)
+@dataclass(frozen=True, kw_only=True, eq=False)
 class State:
-    """A path as it stands: its pulse, transmission and orders (the pulse's stated chirp included)."""
+    """A path as it stands: its pulse, transmission and orders (the pulse's stated chirp included).
+
+    fields: for figures.
+    """
 
     fwhm_fs: float
     peak_ratio: float
@@ -151,6 +154,7 @@ class State:
     residual_fod_fs4: float | None
     in_place: tuple[str, ...]
     """Compensators that stand in the path."""
+    fields: Fields = field(repr=False)
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -206,9 +210,11 @@ class Target:
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Design:
-    """One set-up. quality: in the goal's terms. size_m: sum of the footprints that elements state.
+    """One set-up. quality: in the goal's terms. size_m: sum of the footprints that the parts on which something is
+    decided state.
 
-    left_out: compensators that stand in the path today and are not used. worst_case: the least favourable of
+    left_out: compensators that stand in the path today and are not used. cautions: what the design does not
+    consider. worst_case: the least favourable of
     `data`. path: the elements, ready to be sent through. fields: for figures.
     """
 
@@ -224,6 +230,7 @@ class Design:
     score: float
     size_m: float
     left_out: tuple[str, ...]
+    cautions: tuple[str, ...]
     pulse_out: PulseMeasures
     tolerance: tuple[Drift, ...]
     angles: tuple[AngleError, ...]
@@ -261,7 +268,7 @@ class Compensation:
         """The document of the JSON report: arrays as lists, without paths and fields."""
         return {
             "transform_limit_fwhm_fs": self.transform_limit_fwhm_fs,
-            "before": asdict(self.before),
+            "before": {key: value for key, value in vars(self.before).items() if key != "fields"},
             "designs": [_design(design) for design in self.designs],
             "target": asdict(self.target),
             "remainder": asdict(self.remainder),

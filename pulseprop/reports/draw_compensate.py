@@ -49,14 +49,12 @@ def _pulses(answer: Compensation, run: Run) -> Drawing:
     unit, factor = scaled([2 * UNITS * reach])
     figure, panels = canvas(source=source_line(run), frame=Frame(top=0.86))
     columns: dict[str, Real] = {}
-    looks = (
-        ("before", "--", "today", today, answer.before),
-        ("after", "-", "design 1", best, answer.designs[0]),
-    )
-    for colour, style, name, fields, state in looks:
-        curve = pulse_curve(
-            fields.grid_out, fields.envelope_out, _within(fields, reach), _within(fields, reach)
-        )
+    for colour, style, name, state in (
+        ("before", "--", "today", answer.before),
+        ("after", "-", "design 1", best),
+    ):
+        half = min(reach, 0.45 * state.fields.grid_out.span)
+        curve = pulse_curve(state.fields.grid_out, state.fields.envelope_out, half, half)
         share = curve.power / curve.power.max() * state.peak_ratio
         label = f"{name}: {span(state.fwhm_fs, 3)}"
         panels[0].plot(curve.time * UNITS * factor, share, style, color=COLOURS[colour], label=label)

@@ -7,6 +7,7 @@ from dataclasses import replace
 from math import pi
 
 from pulseprop.constants import SPEED_OF_LIGHT
+from pulseprop.elements.path import Path
 from pulseprop.errors import InputError, PulsepropError
 from pulseprop.propagation.experiment import Experiment
 from pulseprop.propagation.sizing import GridWish
@@ -90,17 +91,21 @@ def _refuse_open_settings(scenario: Scenario) -> None:
             )
 
 
-def build(scenario: Scenario) -> Experiment:
-    """Build pulse, media and path. Raises InputError with file and place for what cannot be built."""
+def build(scenario: Scenario, path: Path | None = None) -> Experiment:
+    """Build pulse, media and path, or take a path that is built already.
+
+    Raises InputError with file and place for what cannot be built.
+    """
     content = scenario.content
-    _refuse_open_settings(scenario)
     media = media_of(scenario)
     pulse, both_signs = pulse_of(scenario)
     try:
         trace = autocorrelation_of(scenario)
     except PulsepropError as error:
         raise scenario.blamed(error, "pulse") from None
-    path = built_path(scenario, media, pulse.centre)
+    if path is None:
+        _refuse_open_settings(scenario)
+        path = built_path(scenario, media, pulse.centre)
     method = content.propagation.method
     return Experiment(
         title=content.title or scenario.file,

@@ -1,0 +1,53 @@
+"""`pulseprop compensate`."""
+
+from __future__ import annotations
+
+import sys
+
+import rich_click as click
+
+from pulseprop.cli.outputs import JSON_HELP, check_outputs
+
+__all__ = ["compensate"]
+
+
+@click.command()
+@click.argument("scenario", metavar="SCENARIO.toml")
+@click.option("--json", "json_path", metavar="PATH|-", help=JSON_HELP)
+@click.option("--page", "page_path", metavar="FILE", help="Write designs, order and build sheet as a page.")
+@click.option("--best", metavar="N", type=click.IntRange(1, 50), help="How many designs that differ in kind.")
+@click.option(
+    "--set",
+    "overrides",
+    metavar="KEY=VALUE",
+    multiple=True,
+    help='Override a value: compensate.target=0.9, "path.cold window.thickness=0.5 mm".',
+)
+def compensate(
+    scenario: str, json_path: str | None, page_path: str | None, best: int | None, overrides: tuple[str, ...]
+) -> int:
+    """Find what to set and what to buy: ranked designs with tolerances, order sheet and build sheet.
+
+    Ranges on elements of the path and the elements in [[compensate.with]] are what may be set.
+    """
+    from pulseprop import api
+    from pulseprop.reports.document import write_json
+    from pulseprop.reports.progress import Progress
+
+    check_outputs((scenario,), json_path, (page_path,))
+    read = api.read(scenario, overrides)
+    with Progress(sys.stderr) as progress:
+        answer = api.compensate(read, best=best, progress=progress)
+        if page_path:
+            from pulseprop.reports.compensate_page import write_compensate_page
+            from pulseprop.reports.draw_compensate import compensation_drawings
+
+            drawn = compensation_drawings(answer.compensation, answer.run)
+            write_compensate_page(answer.compensation, answer.run, drawn, page_path)
+    if json_path is not None:
+        write_json(json_path, answer.as_json())
+    else:
+        from pulseprop.reports.compensate_text import compensate_text
+
+        click.echo(compensate_text(answer.compensation, answer.run), nl=False)
+    return answer.compensation.exit_code
