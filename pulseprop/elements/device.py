@@ -26,6 +26,7 @@ __all__ = [
     "Remarking",
     "Straying",
     "require_count",
+    "require_diffraction",
     "require_share",
     "without_delay",
 ]
@@ -130,6 +131,14 @@ def require_share(value: float, words: str) -> None:
     """Refuse what is no share above 0 and at most 1."""
     if not 0 < value <= 1:
         raise InputError(f"{words} outside its range", value=value, allowed="above 0 and at most 1 (100 %)")
+
+
+def require_diffraction(order: int, passes: int, efficiency: float) -> None:
+    """Refuse order 0, and numbers and shares that no gratings have."""
+    require_count(passes, "passes")
+    require_share(efficiency, "an efficiency")
+    if order == 0:
+        raise InputError("order 0 is not diffracted", value=0, allowed="-1, 1, -2, ...")
 
 
 def require_count(value: int, words: str, least: int = 1) -> None:

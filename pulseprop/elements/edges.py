@@ -6,8 +6,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.elements.telling import Light
+from pulseprop.errors import InputError
 
-__all__ = ["missed", "share_beside", "share_between"]
+__all__ = ["amplitude_on", "missed", "require_beam", "share_beside", "share_between"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -26,6 +27,24 @@ def share_between(first: Real | float, second: Real | float, radius: float) -> R
 
     scale = np.sqrt(2) / radius
     return np.asarray(np.maximum(0.5 * (erf(scale * first) + erf(scale * second)), 0.0))
+
+
+def amplitude_on(width: float, offset: Real, spot: float) -> Complex:
+    """What a face of that width takes of beams that meet it `offset` from its middle, shape kept; m.
+
+    spot: 1/e^2 radius on the face. Nothing where the offset is NaN.
+    """
+    share = share_between(0.5 * width - offset, 0.5 * width + offset, spot)
+    return np.asarray(np.sqrt(np.where(np.isfinite(offset), share, 0.0)), dtype=complex)
+
+
+def require_beam(width: float | None, beam_radius: float | None) -> None:
+    """Refuse a width that nothing can be made of."""
+    if width is not None and beam_radius is None:
+        raise InputError(
+            "what misses a grating of this width depends on the beam",
+            remedy="State beam_radius, of the element or in [pulse]",
+        )
 
 
 def share_beside(distance: Real | float, radius: float) -> Real:

@@ -19,8 +19,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
-from pulseprop.elements.device import DARK, Device, require_count, require_share, without_delay
-from pulseprop.elements.edges import missed, share_between
+from pulseprop.elements.device import DARK, Device, require_diffraction, without_delay
+from pulseprop.elements.edges import amplitude_on, missed, require_beam
 from pulseprop.elements.telling import Light
 from pulseprop.elements.wedges import GRAZING
 from pulseprop.elements.words import in_unit, nanometres, times
@@ -62,19 +62,12 @@ class GratingPair(Device):
     stretches: bool = False
 
     def __post_init__(self) -> None:
-        require_count(self.passes, "passes")
-        require_share(self.efficiency, "an efficiency")
+        require_diffraction(self.order, self.passes, self.efficiency)
+        require_beam(self.width, self.beam_radius)
         if not self.separation >= 0:
             raise InputError("no such separation", value=self.separation, allowed="a length of 0 or more")
         if not abs(self.incidence) < RIGHT_ANGLE:
             raise InputError("the beam would not meet the grating", allowed="angles below 90 deg")
-        if self.order == 0:
-            raise InputError("order 0 is a mirror", value=0, allowed="-1, 1, -2, ...")
-        if self.width is not None and self.beam_radius is None:
-            raise InputError(
-                "what misses a grating of this width depends on the beam",
-                remedy="State beam_radius, of the element or in [pulse]",
-            )
         if not self._normal(np.array(self.centre), 1)[1]:
             raise RangeError(
                 "the gratings do not diffract the centre of the pulse",
@@ -169,10 +162,7 @@ class GratingPair(Device):
         """Amplitude that meets the second grating, shape of omega; None where its width is not stated."""
         if self.width is None or self.beam_radius is None:
             return None
-        offset = self.landing(omega)
-        spot = self.beam_radius / np.cos(self.incidence)
-        share = share_between(0.5 * self.width - offset, 0.5 * self.width + offset, spot)
-        return np.asarray(np.sqrt(np.where(np.isfinite(offset), share, 0.0)), dtype=complex)
+        return amplitude_on(self.width, self.landing(omega), self.beam_radius / np.cos(self.incidence))
 
     def landing(self, omega: Numbers | float) -> Real:
         """Where light of omega (rad/s) meets the second grating, m from the carrier; NaN where nothing

@@ -17,8 +17,8 @@ from functools import cached_property
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.elements.device import DARK, Device, require_count, require_share, without_delay
-from pulseprop.elements.edges import missed, share_between
+from pulseprop.elements.device import Device, require_diffraction
+from pulseprop.elements.edges import amplitude_on, missed, require_beam
 from pulseprop.elements.telling import Light
 from pulseprop.elements.wedges import Wedge, Wedges
 from pulseprop.elements.words import in_unit, nanometres, times
@@ -33,10 +33,6 @@ Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
 RIGHT_ANGLE = 0.5 * np.pi
-PLACES = 1025
-HALVINGS = 60
-FARTHEST = 4.0
-"""The band is looked for within this factor of the centre frequency, and within the medium's record."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -64,20 +60,13 @@ class GrismPair(Device):
     kind: str = "grism pair"
 
     def __post_init__(self) -> None:
-        require_count(self.passes, "passes")
-        require_share(self.efficiency, "an efficiency")
+        require_diffraction(self.order, self.passes, self.efficiency)
+        require_beam(self.width, self.beam_radius)
         if min(self.separation, self.insertion, self.second) < 0:
             raise InputError("a distance below 0", allowed="separation and insertions of 0 or more")
         if not (abs(self.incidence) < RIGHT_ANGLE and 0 <= self.apex_angle < RIGHT_ANGLE):
             raise InputError("the beam would not meet the faces", allowed="angles below 90 deg")
-        if self.order == 0:
-            raise InputError("order 0 is no diffraction", value=0, allowed="-1, 1, -2, ...")
-        if self.width is not None and self.beam_radius is None:
-            raise InputError(
-                "what misses a grating of this width depends on the beam",
-                remedy="State beam_radius, of the element or in [pulse]",
-            )
-        if not self._leaves(np.array(self.centre)):
+        if not self.wedges.wedge.lets_out(self.centre):
             raise RangeError(
                 "the gratings do not diffract the centre of the pulse out of the glass",
                 value=nanometres(self.centre),
@@ -119,37 +108,14 @@ class GrismPair(Device):
 
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i times the phase, and the loss of the diffractions; dark where nothing is diffracted."""
-        omega = np.asarray(omega)
-        found, leaves = self.wedges.phase(omega, count, view)
-        at_centre, _ = self.wedges.phase(np.array(self.centre), 2, view)
-        phase = self.passes * without_delay(found, omega, at_centre, self.centre)
-        exponent = np.where(leaves, 1j * phase, 0.0)
-        exponent[0] = np.minimum(exponent[0].real, 0.0) + 1j * exponent[0].imag
-        exponent[0] += np.where(leaves, self.passes * np.log(self.efficiency), DARK)
-        return np.asarray(exponent)
+        exponent = self.wedges.exponent(omega, count, view, self.passes)
+        exponent[0] += self.passes * np.log(self.efficiency)
+        return exponent
 
-    def _leaves(self, omega: Real) -> NDArray[np.bool_]:
-        return np.asarray(np.isfinite(self.wedges.wedge.angles(omega)[2]))
-
-    @cached_property
+    @property
     def band(self) -> Band:
         """Around the centre, where the gratings diffract, rad/s."""
-        medium = self.medium.band
-        low = self._end(max(medium.low, self.centre / FARTHEST), 0.0)
-        return Band(low, self._end(min(medium.high, FARTHEST * self.centre), np.inf))
-
-    def _end(self, farthest: float, beyond: float) -> float:
-        """Where diffraction stops on the way to `farthest`; `beyond` where it does not."""
-        places = np.linspace(self.centre, farthest, PLACES)
-        lost = ~self._leaves(places)
-        if not lost.any():
-            return beyond
-        first = int(np.argmax(lost))
-        inside, outside = float(places[first - 1]), float(places[first])
-        for _ in range(HALVINGS):
-            middle = 0.5 * (inside + outside)
-            inside, outside = (middle, outside) if self._leaves(np.array(middle)) else (inside, middle)
-        return inside
+        return self.wedges.band
 
     def remedy_beyond(self, low: float, high: float) -> str:
         """What to change."""
@@ -164,11 +130,9 @@ class GrismPair(Device):
         """Amplitude that meets the second grating, shape of omega; None where its width is not stated."""
         if self.width is None or self.beam_radius is None:
             return None
-        offset = self.landing(omega)
         entry, inside, _ = self.wedges.carrier
         spot = self.beam_radius / np.cos(self.incidence) * float(np.cos(entry) / np.cos(inside))
-        share = share_between(0.5 * self.width - offset, 0.5 * self.width + offset, spot)
-        return np.asarray(np.sqrt(np.where(np.isfinite(offset), share, 0.0)), dtype=complex)
+        return amplitude_on(self.width, self.landing(omega), spot)
 
     @property
     def footprint(self) -> float:

@@ -17,7 +17,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.elements.device import DARK, Device, require_count, without_delay
+from pulseprop.elements.device import Device, require_count
 from pulseprop.elements.edges import missed, share_beside
 from pulseprop.elements.faces import Polarisation, reflection_squared
 from pulseprop.elements.telling import Light
@@ -34,10 +34,6 @@ Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
 
 PLANES: tuple[Polarisation, Polarisation] = ("p", "s")
-PLACES = 513
-HALVINGS = 60
-FARTHEST = 4.0
-"""Total reflection is looked for up to this many times the centre frequency, or the end of the record."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -144,35 +140,12 @@ class PrismPair(Device):
 
     def exponent(self, omega: Numbers, count: int, view: View = View.AXIS) -> Series:
         """i times the phase; dark where light is totally reflected in the first prism."""
-        omega = np.asarray(omega)
-        found, leaves = self.wedges.phase(omega, count, view)
-        at_centre, _ = self.wedges.phase(np.array(self.centre), 2, view)
-        phase = self.passes * without_delay(found, omega, at_centre, self.centre)
-        exponent = np.where(leaves, 1j * phase, 0.0)
-        # A ray that passes beside the second tip crosses no glass there: it is not amplified.
-        exponent[0] = np.minimum(exponent[0].real, 0.0) + 1j * exponent[0].imag
-        exponent[0] += np.where(leaves, 0.0, DARK)
-        return np.asarray(exponent)
+        return self.wedges.exponent(omega, count, view, self.passes)
 
-    @cached_property
+    @property
     def band(self) -> Band:
         """Up to where light is totally reflected at the second face of the first prism, rad/s."""
-        end = min(self.medium.band.high, FARTHEST * self.centre)
-        if not end > self.centre:
-            return Band(0.0, np.inf)
-        places = np.linspace(self.centre, end, PLACES)
-        lost = ~self._leaves(places)
-        if not lost.any():
-            return Band(0.0, np.inf)
-        first = int(np.argmax(lost))
-        inside, outside = float(places[first - 1]), float(places[first])
-        for _ in range(HALVINGS):
-            middle = 0.5 * (inside + outside)
-            inside, outside = (middle, outside) if self._leaves(np.array(middle)) else (inside, middle)
-        return Band(0.0, inside)
-
-    def _leaves(self, omega: Real) -> NDArray[np.bool_]:
-        return np.asarray(np.isfinite(self.wedges.wedge.angles(omega)[2]))
+        return self.wedges.band
 
     def remedy_beyond(self, low: float, high: float) -> str:
         """What to change where the blue end is totally reflected."""

@@ -21,9 +21,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
+from pulseprop.elements.device import DARK, without_delay
 from pulseprop.elements.oblique import normal_index
 from pulseprop.material.medium import Medium
-from pulseprop.material.response import View
+from pulseprop.material.response import Band, View
 from pulseprop.numerics.series import Numbers, Series, product, root, variable
 
 __all__ = ["GRAZING", "Wedge", "Wedges"]
@@ -35,6 +36,11 @@ Mask = NDArray[np.bool_]
 GRAZING = np.radians(87.0)
 """Light that leaves a face or grating nearer to its surface is lost: its way to the second one would grow
 without bound, and little of it leaves (common practice, no source)."""
+
+PLACES = 513
+HALVINGS = 60
+FARTHEST = 4.0
+"""How far from the centre frequency, as a factor, the ends of a band are looked for."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -60,6 +66,10 @@ class Wedge:
         leaves = np.asarray(np.real(squared[0]) > (np.cos(GRAZING) * np.real(wave[0])) ** 2)
         squared[0] = np.where(leaves, squared[0], 1.0)
         return along, root(squared, np.sqrt(squared[0])), leaves
+
+    def lets_out(self, omega: float) -> bool:
+        """Whether a wave of omega (rad/s) leaves, farther than `GRAZING` allows from the face."""
+        return bool(self.wave_vectors(np.array(omega), 1, View.PRINTED)[2])
 
     def angles(self, omega: Numbers | float) -> tuple[Real, Real, Real]:
         """Real angles in rad at omega (rad/s): inside at the entry, inside at the exit, outside at the exit
@@ -98,10 +108,47 @@ class Wedges:
         """X: distance of the tips along the faces, m."""
         return self.first + self.second + self.gap * float(np.tan(self.carrier[2]))
 
-    def phase(self, omega: Numbers, count: int, view: View) -> tuple[Series, Mask]:
+    def exponent(self, omega: Numbers, count: int, view: View, passes: int) -> Series:
+        """ln(transfer) of so many passes: i (k_t X + k_n Z), less what is constant and linear at the centre;
+        dark where no light leaves the first wedge."""
+        omega = np.asarray(omega)
+        found, leaves = self._phase(omega, count, view)
+        at_centre, _ = self._phase(np.array(self.centre), 2, view)
+        phase = passes * without_delay(found, omega, at_centre, self.centre)
+        exponent = np.where(leaves, 1j * phase, 0.0)
+        # A ray that passes beside the second tip crosses no glass there: it is not amplified.
+        exponent[0] = np.minimum(exponent[0].real, 0.0) + 1j * exponent[0].imag
+        exponent[0] += np.where(leaves, 0.0, DARK)
+        return np.asarray(exponent)
+
+    def _phase(self, omega: Numbers, count: int, view: View) -> tuple[Series, Mask]:
         """k_t X + k_n Z, complex where the glass absorbs, and where there is any."""
         along, across, leaves = self.wedge.wave_vectors(omega, count, view)
         return np.asarray(along * self.offset + across * self.gap), leaves
+
+    @cached_property
+    def band(self) -> Band:
+        """Around the centre, where light leaves the first wedge, rad/s; looked for within the record of the
+        medium and a factor `FARTHEST` of the centre."""
+        known = self.wedge.medium.band
+        low = self._end(max(known.low, self.centre / FARTHEST), 0.0)
+        return Band(low, self._end(min(known.high, self.centre * FARTHEST), np.inf))
+
+    def _end(self, farthest: float, beyond: float) -> float:
+        """Where light ceases to leave on the way to `farthest`; `beyond` where it does not cease."""
+        places = np.linspace(self.centre, farthest, PLACES)
+        lost = ~self._leaves(places)
+        if not lost.any():
+            return beyond
+        first = max(int(np.argmax(lost)), 1)
+        inside, outside = float(places[first - 1]), float(places[first])
+        for _ in range(HALVINGS):
+            middle = 0.5 * (inside + outside)
+            inside, outside = (middle, outside) if self._leaves(np.array(middle)) else (inside, middle)
+        return inside
+
+    def _leaves(self, omega: Real) -> Mask:
+        return np.asarray(np.isfinite(self.wedge.angles(omega)[2]))
 
     def second_crossing(self, omega: Numbers | float) -> tuple[Real, Real]:
         """Where light of omega (rad/s) meets the face of the second wedge: distance in m from its tip along

@@ -5,6 +5,7 @@ from __future__ import annotations
 from pulseprop.elements.gratings import GratingPair
 from pulseprop.elements.grisms import GrismPair
 from pulseprop.elements.prisms import PrismPair
+from pulseprop.scenario.build_devices import shared
 from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.schema_compressors import GrismPairTable, GroovesTable, PrismPairTable
 
@@ -14,10 +15,7 @@ __all__ = ["grating_pair", "grism_pair", "prism_pair"]
 def grating_pair(table: GroovesTable, site: Site) -> GratingPair:
     """A grating pair or a stretcher, as its kind says."""
     return GratingPair(
-        name=site.name_of(table, table.kind),
-        centre=site.centre,
-        beam_radius=table.beam_radius or site.beam_radius,
-        temperature_K=table.temperature,
+        **shared(table, site),
         grooves=table.grooves,
         incidence=table.incidence,
         separation=table.separation,
@@ -32,10 +30,7 @@ def grating_pair(table: GroovesTable, site: Site) -> GratingPair:
 def prism_pair(table: PrismPairTable, site: Site) -> PrismPair:
     """A prism pair."""
     return PrismPair(
-        name=site.name_of(table, table.kind),
-        centre=site.centre,
-        beam_radius=table.beam_radius or site.beam_radius,
-        temperature_K=table.temperature,
+        **shared(table, site),
         medium=site.medium(table.medium),
         apex_separation=table.apex_separation,
         insertion=table.insertion,
@@ -50,10 +45,7 @@ def prism_pair(table: PrismPairTable, site: Site) -> PrismPair:
 def grism_pair(table: GrismPairTable, site: Site) -> GrismPair:
     """A grism pair."""
     return GrismPair(
-        name=site.name_of(table, table.kind),
-        centre=site.centre,
-        beam_radius=table.beam_radius or site.beam_radius,
-        temperature_K=table.temperature,
+        **shared(table, site),
         medium=site.medium(table.medium),
         grooves=table.grooves,
         apex_angle=table.apex_angle,

@@ -12,6 +12,7 @@ from pulseprop.elements.gires_tournois import GiresTournois
 from pulseprop.elements.mirror_curves import Bounce, OrdersOfBounce, Ripple, TableOfBounce
 from pulseprop.errors import InputError
 from pulseprop.material.wavelength_in_air import omegas_of_air_wavelengths
+from pulseprop.scenario.build_devices import shared
 from pulseprop.scenario.build_site import Site
 from pulseprop.scenario.columns import spectral_columns
 from pulseprop.scenario.schema_mirrors import (
@@ -33,10 +34,7 @@ def chirped_mirror(table: ChirpedMirrorTable, site: Site) -> ChirpedMirror:
     """A chirped mirror, or a pair of them in turn."""
     described: Sequence[BounceTable | ChirpedMirrorTable] = [table] if table.pair is None else table.pair
     return ChirpedMirror(
-        name=site.name_of(table, table.kind),
-        centre=site.centre,
-        beam_radius=table.beam_radius or site.beam_radius,
-        temperature_K=table.temperature,
+        **shared(table, site),
         mirrors=tuple(_bounce(one, site) for one in described),
         bounces=table.bounces,
         reflectance=table.reflectance,
@@ -71,10 +69,7 @@ def _tabulated(spec: MirrorFile, site: Site) -> TableOfBounce:
 def coating(table: CoatingTable, site: Site) -> Coating:
     """Films on a substrate."""
     return Coating(
-        name=site.name_of(table, table.kind),
-        centre=site.centre,
-        beam_radius=table.beam_radius or site.beam_radius,
-        temperature_K=table.temperature,
+        **shared(table, site),
         films=tuple(_films(table.films, site)),
         substrate=None if table.substrate is None else site.medium(table.substrate, "substrate"),
         incidence=table.incidence,
@@ -96,10 +91,7 @@ def _films(tables: Sequence[FilmTable], site: Site) -> Iterator[Film]:
 def gires_tournois(table: GiresTournoisTable, site: Site) -> GiresTournois:
     """A Gires-Tournois mirror."""
     return GiresTournois(
-        name=site.name_of(table, table.kind),
-        centre=site.centre,
-        beam_radius=table.beam_radius or site.beam_radius,
-        temperature_K=table.temperature,
+        **shared(table, site),
         medium=site.medium(table.medium),
         thickness=table.thickness,
         front=table.front,

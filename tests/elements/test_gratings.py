@@ -185,7 +185,7 @@ def test_the_zero_orders_are_named():
         ({"efficiency": 0.0}, "efficiency"),
         ({"separation": -1e-3}, "separation"),
         ({"incidence": 1.6}, "below 90 deg"),
-        ({"order": 0}, "order 0"),
+        ({"order": 0}, "order 0 is not"),
         ({"width": 1e-2}, "beam_radius"),
     ],
 )

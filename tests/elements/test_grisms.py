@@ -179,7 +179,7 @@ def test_losses():
 @pytest.mark.parametrize(
     ("changed", "words", "error"),
     [
-        ({"order": 0}, "order 0", InputError),
+        ({"order": 0}, "order 0 is not", InputError),
         ({"passes": 0}, "passes", InputError),
         ({"insertion": -1e-3}, "below 0", InputError),
         ({"incidence": 1.6}, "below 90 deg", InputError),
