@@ -2,93 +2,178 @@
 
     minimise  sum (w - near)^2 / D + sum R (A' w - far)^2
 
-An interior point solves one such problem a step. D and R grow apart without limit on the way: as long as
-their ratio fits into double precision the normal equations serve (one Cholesky), then an orthogonal
-factorisation, which does not square it (A. Bjorck, Numerical Methods for Least Squares Problems, SIAM 1996).
+An interior point solves one such problem a step. Rows of A with a few neighbouring entries only are
+eliminated first (`band_elimination`). D and R grow apart without limit on the way: as long as refinement
+converges the normal equations serve (one Cholesky), then an orthogonal factorisation, which does not square
+their ratio (A. Bjorck, Numerical Methods for Least Squares Problems, SIAM 1996).
 """
 
 from __future__ import annotations
 
-from typing import Any, Protocol
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
+
+from pulseprop.numerics.band_elimination import BandElimination, BandLayout
 
 __all__ = ["Factored", "WeightedSquares"]
 
 Real = NDArray[np.float64]
 
-RANGE = 1e11
-"""Largest ratio of the weights for which the normal equations are used; entries of A are about 1."""
-REFINEMENTS = 1
-
-
-class Factored(Protocol):
-    """Weights and A in a form that solves quickly."""
-
-    def solve(self, near: Real, far: Real) -> tuple[Real, Real, Real]:
-        """w (rows,), (near - w)/D (rows,) and R (A' w - far) (columns,), for near (rows,), far (columns,)."""
-        ...
+NARROW = 6
+"""Most columns that a row may span to count as narrow."""
+WORTHWHILE = 16
+"""Narrow rows below which they are treated like the others."""
+REFINEMENTS = 4
+CONVERGED = 1e-10
+"""Change of the solution, over it, at which refinement stops."""
+SHRINKS = 0.1
+"""Ratio of one change to the one before, above which the normal equations are given up."""
 
 
 class WeightedSquares:
-    """matrix: A, (rows, columns)."""
+    """matrix: A, (rows, columns), entries about 1 at most."""
 
     def __init__(self, matrix: Real) -> None:
         self.matrix = matrix
+        narrow = _narrow_rows(matrix)
+        self.narrow, self.wide = np.flatnonzero(narrow), np.flatnonzero(~narrow)
+        shared = np.any(matrix[narrow] != 0, axis=0)
+        self.shared, self.private = np.flatnonzero(shared), np.flatnonzero(~shared)
+        self.dense = np.ascontiguousarray(matrix[self.wide])
+        self.layout = None
+        if len(self.narrow):
+            self.layout = BandLayout(matrix[np.ix_(self.narrow, self.shared)])
+        self.stiff = False
 
     def factored(self, stiffness: Real, ratio: Real) -> Factored:
         """D: (rows,), R: (columns,), both above 0."""
-        from scipy.linalg import LinAlgError
+        return Factored(self, stiffness, ratio)
 
-        if float(np.max(ratio)) * float(np.max(stiffness)) < RANGE:
-            try:
-                return _Normal(self.matrix, stiffness, ratio)
-            except LinAlgError:
-                pass
-        return _Orthogonal(self.matrix, stiffness, ratio)
+
+def _narrow_rows(matrix: Real) -> NDArray[np.bool_]:
+    """Rows that span few columns, where those of all of them can be put in one order."""
+    touched = matrix != 0
+    first = np.argmax(touched, axis=1)
+    span = matrix.shape[1] - np.argmax(touched[:, ::-1], axis=1) - first
+    narrow = (span <= NARROW) & np.any(touched, axis=1)
+    ordered = bool(np.all(np.diff(first[narrow]) >= 0))
+    return narrow if ordered and np.sum(narrow) >= WORTHWHILE else np.zeros(len(narrow), dtype=bool)
+
+
+class Factored:
+    """One pair of weights: what is left after the elimination, and its Cholesky or orthogonal factor."""
+
+    def __init__(self, squares: WeightedSquares, stiffness: Real, ratio: Real) -> None:
+        self.squares = squares
+        self.near, self.far = 1 / np.sqrt(stiffness), np.sqrt(ratio)
+        self.of_wide = self.near[squares.wide]
+        rows = [(squares.dense[:, squares.private] * self.far[squares.private]).T]
+        self.band = None
+        if squares.layout is not None:
+            self.band = BandElimination(
+                squares.layout,
+                self.near[squares.narrow],
+                self.far[squares.shared],
+                squares.dense[:, squares.shared],
+            )
+            rows.append(self.band.left)
+        self.rows = np.concatenate(rows)
+        self.factor: _Normal | _Orthogonal | None = None
+        if not squares.stiff:
+            self.factor = _normal(self.of_wide, self.rows)
+
+    def solve(self, near: Real, far: Real) -> tuple[Real, Real, Real]:
+        """w (rows,), (near - w)/D (rows,) and R (A' w - far) (columns,), for near (rows,), far (columns,)."""
+        squares = self.squares
+        near, far = self.near * near, self.far * far
+        right, of_band = far[squares.private], np.zeros(0)
+        if self.band is not None:
+            of_band, left = self.band.reduced(near[squares.narrow], far[squares.shared])
+            right = np.concatenate((right, left))
+        z, rest_near, rest = self._solved(near[squares.wide], right)
+        w, of_near, of_far = np.empty(len(near)), np.empty(len(near)), np.empty(len(far))
+        w[squares.wide], of_near[squares.wide] = z, rest_near
+        count = len(squares.private)
+        of_far[squares.private] = rest[:count]
+        if self.band is not None:
+            w[squares.narrow] = self.band.unknowns(of_band, z)
+            of_near[squares.narrow], of_far[squares.shared] = self.band.restored(rest[count:])
+        return w, self.near * of_near, -self.far * of_far
+
+    def _solved(self, near: Real, right: Real) -> tuple[Real, Real, Real]:
+        """z, and what of_wide z = near and rows z = right leave."""
+        if isinstance(self.factor, _Normal):
+            found = self.factor.solve(near, right)
+            if found is not None:
+                return found
+        if not isinstance(self.factor, _Orthogonal):
+            self.squares.stiff = True
+            self.factor = _Orthogonal(self.of_wide, self.rows)
+        return self.factor.solve(near, right)
+
+
+def _normal(near: Real, rows: Real) -> _Normal | None:
+    try:
+        return _Normal(near, rows)
+    except np.linalg.LinAlgError:
+        return None
 
 
 class _Normal:
-    """1/D + A R A' = L L'."""
+    """near^2 + rows' rows = L L'."""
 
-    def __init__(self, matrix: Real, stiffness: Real, ratio: Real) -> None:
+    def __init__(self, near: Real, rows: Real) -> None:
         from scipy.linalg import cho_factor
         from scipy.linalg.blas import dsyrk
 
-        self.matrix, self.stiffness, self.ratio = matrix, stiffness, ratio
-        rooted = matrix * np.sqrt(ratio)
-        full = dsyrk(1.0, rooted.T, trans=1, lower=1)
-        full[np.diag_indices(len(stiffness))] += 1 / stiffness
+        self.near, self.rows = near, rows
+        full = dsyrk(1.0, rows.T, lower=1)
+        full[np.diag_indices(len(near))] += near**2
         self.factor: Any = cho_factor(full, lower=True, overwrite_a=True, check_finite=False)
 
-    def solve(self, near: Real, far: Real) -> tuple[Real, Real, Real]:
+    def solve(self, near: Real, right: Real) -> tuple[Real, Real, Real] | None:
+        """None where refinement does not converge."""
         from scipy.linalg import cho_solve
 
-        w = np.zeros_like(near)
+        z, rest_near, rest, last = np.zeros_like(near), near, right, np.inf
         for _ in range(1 + REFINEMENTS):
-            close = (near - w) / self.stiffness
-            distant = self.ratio * (w @ self.matrix - far)
-            w = w + cho_solve(self.factor, close - self.matrix @ distant, check_finite=False)
-        return w, (near - w) / self.stiffness, self.ratio * (w @ self.matrix - far)
+            change = cho_solve(self.factor, self.near * rest_near + rest @ self.rows, check_finite=False)
+            size = float(np.linalg.norm(change))
+            if not size <= SHRINKS * last:
+                return None
+            z, last = z + change, size
+            rest_near, rest = near - self.near * z, right - self.rows @ z
+            if size <= CONVERGED * float(np.linalg.norm(z)):
+                return z, rest_near, rest
+        return None
 
 
 class _Orthogonal:
-    """Rows sorted by size, as the largest must be eliminated first."""
+    """Rows sorted by size, as the largest must be eliminated first; Q stays in the form of its reflections."""
 
-    def __init__(self, matrix: Real, stiffness: Real, ratio: Real) -> None:
-        self.near, self.far = 1 / np.sqrt(stiffness), np.sqrt(ratio)
-        rows = np.concatenate((np.diag(self.near), self.far[:, None] * matrix.T))
-        self.order = np.argsort(-np.max(np.abs(rows), axis=1))
-        self.q, self.r = np.linalg.qr(rows[self.order])
+    def __init__(self, near: Real, rows: Real) -> None:
+        from scipy.linalg.lapack import dgeqrf
 
-    def solve(self, near: Real, far: Real) -> tuple[Real, Real, Real]:
+        size = np.concatenate((near, np.max(np.abs(rows), axis=1)))
+        self.order = np.argsort(-size)
+        self.count = len(near)
+        full = np.zeros((len(size), self.count), order="F")
+        place = np.empty_like(self.order)
+        place[self.order] = np.arange(len(size))
+        full[place[: self.count], np.arange(self.count)] = near
+        full[place[self.count :]] = rows
+        self.reflections, self.tau, _, _ = dgeqrf(full, overwrite_a=1)
+
+    def solve(self, near: Real, right: Real) -> tuple[Real, Real, Real]:
         from scipy.linalg import solve_triangular
+        from scipy.linalg.lapack import dormqr
 
-        right = np.concatenate((self.near * near, self.far * far))
-        inside = right[self.order] @ self.q
-        w = solve_triangular(self.r, inside, check_finite=False)
-        rest = np.empty_like(right)
-        rest[self.order] = right[self.order] - self.q @ inside
-        of_near, of_far = np.split(rest, [len(near)])
-        return w, self.near * of_near, -self.far * of_far
+        both = np.concatenate((near, right))[self.order][:, None]
+        turned = dormqr("L", "T", self.reflections, self.tau, both, 64 * self.count)[0]
+        z = solve_triangular(self.reflections[: self.count], turned[: self.count, 0], check_finite=False)
+        turned[: self.count] = 0.0
+        rest = np.empty(len(both))
+        rest[self.order] = dormqr("L", "N", self.reflections, self.tau, turned, 64 * self.count)[0][:, 0]
+        return z, rest[: self.count], rest[self.count :]
