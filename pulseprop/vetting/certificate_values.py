@@ -14,7 +14,7 @@ from typing import Literal
 from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.units import from_si, position, quantity, unit_from
-from pulseprop.vetting.requirement_quantities import LINE_C, LINE_D, LINE_F
+from pulseprop.vetting.requirement_quantities import LINE_C, LINE_D, LINE_F, plain_number
 
 __all__ = ["PRINTABLE", "Certificate", "PrintedValue", "printed_value"]
 
@@ -124,12 +124,7 @@ def half_unit(number: str) -> float:
 def _si(number: str, unit: str, kind: str) -> float:
     if kind != "number":
         return quantity(f"{number} {unit}", kind)
-    if unit:
-        raise InputError("this quantity has no unit", value=f"{number} {unit}", allowed="a plain number")
-    value = float(number)
-    if not abs(value) < float("inf"):
-        raise InputError("the number is not finite", value=number)
-    return value
+    return plain_number(number, unit)
 
 
 def _per_unit(unit: str) -> float:

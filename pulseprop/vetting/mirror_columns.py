@@ -108,7 +108,7 @@ def _mismatch(upper: MirrorCurve, lower: MirrorCurve, found: Agreement) -> Misma
     stated = upper.stated and lower.stated
     text = (
         f"The {WORDS[lower.quantity]} is not the derivative of the {WORDS[upper.quantity]}: between rows "
-        f"{lines[0]} and {lines[1]} they depart by {found.factor:.3g} times what digits and row spacing allow."
+        f"{lines[0]} and {lines[1]} they depart by {found.factor:.3g} times what digits and spacing allow."
     )
     reading, severity = _reading(upper, lower), "error"
     if reading is not None:
@@ -130,7 +130,7 @@ def _mismatch(upper: MirrorCurve, lower: MirrorCurve, found: Agreement) -> Misma
 def _unread(
     upper: MirrorCurve, lower: MirrorCurve, found: Agreement, stated: bool
 ) -> tuple[str, str, int | None]:
-    """Of columns that no slip explains: the severity, what would make them agree, and the one row at fault."""
+    """Of columns that no slip explains: severity, what would make them agree, and the one row at fault."""
     needed = _needed(upper, lower)
     size, unit = FEMTO[lower.quantity]
     agree = f"They agree if the {WORDS[lower.quantity]} is uncertain by +-{needed / size:.2g} {unit}"

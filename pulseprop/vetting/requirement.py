@@ -15,7 +15,7 @@ from dataclasses import dataclass
 
 from pulseprop.errors import InputError
 from pulseprop.units import from_si, position, quantity
-from pulseprop.vetting.requirement_quantities import REQUIRABLE, Requirable, named_requirable
+from pulseprop.vetting.requirement_quantities import REQUIRABLE, Requirable, named_requirable, plain_number
 
 __all__ = ["Requirement", "read_requirement"]
 
@@ -169,9 +169,7 @@ def _about(asked: Requirable, about: re.Match[str]) -> tuple[float, float, str]:
 
 def _value(asked: Requirable, number: str, unit: str) -> float:
     if asked.kind == "number" or (asked.kind == "fraction" and not unit):
-        if unit:
-            raise InputError(f"{asked.words} has no unit", value=f"{number} {unit}", allowed=asked.allowed)
-        return float(number)
+        return plain_number(number, unit)
     return quantity(f"{number} {unit}", asked.kind)
 
 

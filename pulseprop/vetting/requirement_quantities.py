@@ -7,13 +7,14 @@ as glass makers do.
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.units import unit_from
 
-__all__ = ["LINE_C", "LINE_D", "LINE_F", "REQUIRABLE", "Requirable", "named_requirable"]
+__all__ = ["LINE_C", "LINE_D", "LINE_F", "REQUIRABLE", "Requirable", "named_requirable", "plain_number"]
 
 LINE_D, LINE_F, LINE_C = (TWO_PI_C / (nm * 1e-9) for nm in (587.5618, 486.1327, 656.2725))
 """rad/s."""
@@ -88,6 +89,23 @@ def named_requirable(name: str, limit: str) -> Requirable:
         if known.casefold() == key:
             return entry
     raise InputError("nothing of this name can be required", value=name, allowed=", ".join(REQUIRABLE))
+
+
+def plain_number(number: str, tail: str) -> float:
+    """A finite number without a unit, from its text and what follows it. Raises InputError."""
+    comma = re.fullmatch(r",([0-9]+)", tail)
+    if comma:
+        raise InputError(
+            "a comma is no decimal point here",
+            value=f"{number}{tail}",
+            remedy=f'Write "{number}.{comma[1]}" with a point',
+        )
+    if tail:
+        raise InputError("this quantity has no unit", value=f"{number} {tail}", allowed="a plain number")
+    value = float(number)
+    if not abs(value) < float("inf"):
+        raise InputError("the number is not finite", value=number)
+    return value
 
 
 def _unit_of(limit: str) -> str:
