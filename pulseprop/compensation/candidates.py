@@ -60,13 +60,13 @@ class Candidate:
                 tuple(model.discrete[one.parameter] for one in model.part.adjustments if one.choices),
             )
             for model in self.assembly.models
-            if model.part.adjustments
+            if model.part.movable
         )
 
 
 def background_of(parts: Sequence[Part], samples: Samples) -> Complex:
     """The exponent (n,) of the parts on which nothing can be set."""
-    elements = [element for part in parts if not part.adjustments for element in part.build({})]
+    elements = [element for part in parts if not part.movable for element in part.build({})]
     return exponent_of(elements, samples.omega)
 
 
@@ -77,7 +77,7 @@ def candidates(
 
     Raises InputError where none can, or where there are more than 20,000.
     """
-    movable = [part for part in parts if part.adjustments]
+    movable = [part for part in parts if part.movable]
     _refuse_too_many(movable)
     sets: list[list[_Option | None]] = []
     refusals: list[str] = []

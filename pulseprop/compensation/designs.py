@@ -39,7 +39,7 @@ def path_of(problem: Problem, found: Refined) -> Path:
     used = found.assembly.elements(found.u)
     row: list[Element] = []
     for part in problem.parts:
-        row += used.get(part.name, () if part.adjustments else part.build({}))
+        row += used.get(part.name, () if part.movable else part.build({}))
     return Path(tuple(row))
 
 
@@ -51,8 +51,9 @@ def design_of(problem: Problem, found: Refined, checked: Sent, judge: Judge) -> 
     tolerance = tuple(drift_of(one, exponent, judge) for one in loose)
     after = checked.pulse_out
     used = {model.part.name for model in assembly.models}
+    settings = _settings(assembly, u)
     return Design(
-        settings=_settings(assembly, u),
+        settings=settings,
         fwhm_fs=after.fwhm_fs,
         peak_ratio=after.peak_ratio or 0.0,
         two_photon_ratio=after.two_photon_ratio or 0.0,
@@ -62,7 +63,8 @@ def design_of(problem: Problem, found: Refined, checked: Sent, judge: Judge) -> 
         residual_fod_fs4=checked.fod,
         quality=_quality(problem.goal, found, checked),
         score=found.score,
-        size_m=float(sum(getattr(element, "footprint", 0.0) for element in checked.path)),
+        size_m=assembly.size(u),
+        cautions=_cautions(problem.parts, settings),
         left_out=tuple(part.name for part in problem.parts if in_place(part) and _gone(part, used)),
         pulse_out=after,
         tolerance=tolerance,
@@ -75,8 +77,32 @@ def design_of(problem: Problem, found: Refined, checked: Sent, judge: Judge) -> 
     )
 
 
+def _cautions(parts: Sequence[Part], settings: Sequence[Setting]) -> tuple[str, ...]:
+    """A sentence for each window made thinner and each pressure raised."""
+    today = {
+        (part.name, one.parameter): None
+        if isinstance(one.now, str) or one.now is None
+        else one.now / one.unit_size
+        for part in parts
+        for one in part.adjustments
+    }
+    said = []
+    for setting in settings:
+        now = today[setting.element, setting.parameter]
+        if isinstance(setting.value, str) or now is None:
+            continue
+        thinner = "thickness" in setting.parameter and setting.value < now
+        higher = "pressure" in setting.parameter and setting.value > now
+        if thinner or higher:
+            change = f"goes from {now:.4g} to {setting.value:.4g} {setting.unit}"
+            said.append(
+                f"{setting.element}: {setting.parameter} {change}; mechanical strength is not considered"
+            )
+    return tuple(said)
+
+
 def _gone(part: Part, used: set[str]) -> bool:
-    return bool(part.adjustments) and part.name not in used
+    return part.movable and part.name not in used
 
 
 def _quality(goal: Goal, found: Refined, checked: Sent) -> float:
@@ -132,7 +158,7 @@ def _angles(problem: Problem, assembly: Assembly, u: Real) -> tuple[AngleError, 
     }
     found: list[AngleError] = []
     for part in problem.parts:
-        if part.adjustments and part.name not in used:
+        if part.movable and part.name not in used:
             continue
         settings = used.get(part.name, {})
         for one in (*part.adjustments, *part.drifts):

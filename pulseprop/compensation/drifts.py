@@ -69,7 +69,7 @@ def loose_quantities(parts: Sequence[Part], assembly: Assembly, u: Real) -> list
             model, values = used[part.name]
             settings: dict[str, Value] = model.settings(values)
             found += [_of(part, one, settings, assembly, by_hand=True) for one in part.continuous]
-        elif part.adjustments:
+        elif part.movable:
             continue
         else:
             settings = {}
@@ -119,6 +119,8 @@ def _thickness(part: Part, element: Slab, assembly: Assembly) -> Loose:
     per_length = exponent_of((bare,), assembly.samples.omega) / element.thickness
 
     def moved(distance: float) -> Complex:
+        if distance < -element.thickness:
+            raise InputError("a slab needs a thickness", value=element.thickness + distance)
         return per_length * distance
 
     # A beam's way through air is paced out, not ground: no workshop holds it to a tenth of a millimetre.

@@ -115,6 +115,11 @@ class Part:
     to_order: bool = False
 
     @property
+    def movable(self) -> bool:
+        """Whether anything is to be decided about it."""
+        return self.optional or bool(self.adjustments)
+
+    @property
     def discrete(self) -> tuple[Adjustment, ...]:
         """The adjustments with steps or lists."""
         return tuple(one for one in self.adjustments if not one.continuous)

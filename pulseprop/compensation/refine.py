@@ -80,7 +80,7 @@ def refined(assembly: Assembly, judge: Judge, first: Real) -> Refined | None:
     first: a guess (k,), of which the curved settings matter. Goals that jump (the width) are climbed by peak
     power first.
     """
-    if judge.goal.name == "duration":
+    if judge.goal.name == "duration" and assembly.count:
         by_peak = Judge(samples=judge.samples, goal=replace(judge.goal, name="peak power", target=None))
         guess = refined(assembly, by_peak, first)
         judge.evaluations += by_peak.evaluations

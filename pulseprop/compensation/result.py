@@ -210,8 +210,8 @@ class Target:
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Design:
-    """One set-up. quality: in the goal's terms. size_m: sum of the footprints that the parts on which something is
-    decided state.
+    """One set-up. quality: in the goal's terms. size_m: sum of the footprints stated by the parts on which
+    something is decided.
 
     left_out: compensators that stand in the path today and are not used. cautions: what the design does not
     consider. worst_case: the least favourable of

@@ -11,15 +11,17 @@ __all__ = ["in_place", "path_today", "settings_today"]
 
 
 def in_place(part: Part) -> bool:
-    """Whether the part stands in the path today: it must, or all adjustments have a present setting."""
-    return not part.optional or all(one.now is not None for one in part.adjustments)
+    """Whether the part stands in the path today: nothing about it is open, or its setting is known."""
+    open_ones = [one for one in part.adjustments if len(one.values) > 1]
+    known = all(one.now is not None for one in open_ones)
+    return known and (bool(open_ones) or not part.optional)
 
 
 def settings_today(part: Part) -> Settings:
-    """Present settings; the first value of a list or range where none is stated."""
+    """Present settings of a part that is in place."""
     found: dict[str, Value] = {}
     for one in part.adjustments:
-        found[one.parameter] = one.now if one.now is not None else one.values[0]
+        found[one.parameter] = one.values[0] if one.now is None else one.now
     return found
 
 

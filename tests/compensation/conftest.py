@@ -131,7 +131,7 @@ def samples_of(source: Pulse):
 def assembly_of(source: Pulse, parts, discrete=()) -> Assembly:
     """All parts used; discrete: settings of the stepped adjustments, a dictionary for each movable part."""
     samples = samples_of(source)
-    movable = [part for part in parts if part.adjustments]
+    movable = [part for part in parts if part.movable]
     settings = discrete or [{one.parameter: one.values[0] for one in part.discrete} for part in movable]
     return Assembly(
         samples=samples,

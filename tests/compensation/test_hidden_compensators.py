@@ -15,7 +15,7 @@ from pulseprop.elements.element import orders_of_element
 from pulseprop.elements.slab import Slab
 from pulseprop.material.catalogue_media import catalogue_medium
 
-GLASSES = ("fused silica", "N-BK7", "SF10", "sapphire", "CaF2", "BK7")
+GLASSES = ("fused silica", "N-BK7", "SF10", "sapphire", "CaF2", "MgF2")
 
 
 def compensators(bench, rng):
