@@ -14,8 +14,10 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.causality.bounds_band import allowed_band
+from pulseprop.causality.bounds_programme import WELL_WITHIN
 from pulseprop.causality.bounds_sources import Absorbing, Source, Transparent
 from pulseprop.causality.coarse_features import coarse_features
+from pulseprop.causality.feasibility import Feasibility
 from pulseprop.causality.passive_data import PassiveData
 from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import NumericalLimit
@@ -26,7 +28,7 @@ Real = NDArray[np.float64]
 Interval = tuple[float, float]
 
 EMPTY = "no passive causal material has these numbers within their uncertainties"
-UNPROVEN = "rounding leaves no proof here"
+UNPROVEN = "rounding leaves no proof of what is missing here"
 WITH_GVD, WITHOUT_GVD = 3, 2
 """How many of the quantities rows of k can tell."""
 
@@ -43,19 +45,20 @@ class PassiveBounds:
     reason: str = ""
 
 
-def bounds(data: PassiveData, omegas: Real, *, factor: float | None = None) -> tuple[PassiveBounds, ...]:
+def bounds(
+    data: PassiveData, omegas: Real, feasibility: Feasibility | None = None
+) -> tuple[PassiveBounds, ...]:
     """At each of omegas, rad/s, in any order, (W,).
 
-    factor: the uncertainty factor of the data where known; above 1 no material has them.
+    feasibility: of the data, where known; it spares some work.
     """
     asked = [_unasked(data, float(omega)) for omega in omegas]
-    if factor is not None and factor > 1:
+    if feasibility is not None and feasibility.certified > 1:
         return tuple(replace(one, reason=EMPTY) for one in asked)
-    open_ones = [one for one in asked if not one.reason]
-    if not open_ones:
+    if all(one.reason for one in asked):
         return tuple(asked)
     try:
-        source, note = _source(data)
+        source, note = _source(data, feasibility)
     except NumericalLimit as limit:
         return tuple(one if one.reason else replace(one, reason=_words(limit)) for one in asked)
     return tuple(one if one.reason else _filled(one, source, note) for one in asked)
@@ -75,18 +78,23 @@ def _unasked(data: PassiveData, omega: float) -> PassiveBounds:
     )
 
 
-def _source(data: PassiveData) -> tuple[Source, str]:
+def _source(data: PassiveData, feasibility: Feasibility | None) -> tuple[Source, str]:
     """With what is to be said of quantities it does not tell."""
+    known = None
+    if feasibility is not None and feasibility.factor < 1 - WELL_WITHIN:
+        known = feasibility.material.attained.masses
     if data.k is None or data.k_omega is None or data.k_error is None:
         return Transparent(data), ""
     coarse = coarse_features(data.k_omega, data.k, data.k_error)
     if coarse:
         places = ", ".join(f"{TWO_PI_C / feature.omega * 1e9:.5g}" for feature in coarse[:3])
-        return Absorbing(data, WITHOUT_GVD), (
+        return Absorbing(data, WITHOUT_GVD, known), (
             f"GVD and TOD need five rows over the width of each feature of k, which those at {places} nm"
             f"{' and others' * (len(coarse) > 3)} do not have"
         )
-    return Absorbing(data, WITH_GVD), "rows of k do not limit the third derivative of the index between them"
+    return Absorbing(
+        data, WITH_GVD, known
+    ), "rows of k do not limit the third derivative of the index between them"
 
 
 def _words(limit: NumericalLimit) -> str:
@@ -99,8 +107,10 @@ def _filled(asked: PassiveBounds, source: Source, note: str) -> PassiveBounds:
     offset = np.array([1.0, 1.0, 0.0, 0.0])
     divisor = np.array([1.0, 1.0, SPEED_OF_LIGHT * unit, SPEED_OF_LIGHT * unit**2])
     found = offset[:, None] + source.intervals(asked.omega / unit) / divisor[:, None]
-    index, group_index, gvd, tod = (_interval(row) for row in found)
-    return replace(asked, index=index, group_index=group_index, gvd=gvd, tod=tod, reason=note)
+    told = [_interval(row) for row in found]
+    index, group_index, gvd, tod = told
+    reason = note or (UNPROVEN if None in told else "")
+    return replace(asked, index=index, group_index=group_index, gvd=gvd, tod=tod, reason=reason)
 
 
 def _interval(ends: Real) -> Interval | None:

@@ -15,7 +15,7 @@ from numpy.typing import NDArray
 
 from pulseprop.causality.bounds_functionals import ORDERS, mass_derivatives, spline_derivatives
 from pulseprop.causality.outside_masses import Side
-from pulseprop.causality.passive_class import PassiveClass
+from pulseprop.causality.passive_class import Masses, PassiveClass
 
 __all__ = ["Functional", "Materials"]
 
@@ -40,9 +40,9 @@ class Functional:
 class Materials:
     """Of one class.
 
-    lower, upper: limits of the rows of n, of k and of the strength, where that is limited, (rows,). size: what
-    one in each row means, above 0. fixed: (rows, columns). grid: places, ascending, with the ends of
-    the stretch around each: least, most. coarse: some of them, to begin with.
+    lower, upper: limits of the rows of n, of k and of the strength, where that is limited, (rows,). size:
+    what one in each row means, above 0. fixed: (rows, columns). grid: places, ascending, with the ends of the
+    stretch around each: least, most. coarse: some of them, to begin with.
     """
 
     def __init__(self, passive: PassiveClass) -> None:
@@ -94,6 +94,13 @@ class Materials:
         result[:, q > 0] = self._mass_rows(above, distance[q > 0])
         return result
 
+    def places(self, masses: Masses) -> Real:
+        """q of these masses, those that are fixed columns left out."""
+        below, above = (
+            np.log(s[(s > 0) & np.isfinite(s)]) + self._shift for s in (masses.below, masses.above)
+        )
+        return np.concatenate((-below[::-1], above))
+
     def functional(self, omega: float, weights: Real) -> Functional:
         """weights: of n - 1 and its derivatives at omega, (ORDERS,), both in units of the class."""
         splines = self.passive.splines
@@ -129,5 +136,5 @@ COARSE = 4
 
 def _fixed_places(side: Side, limited: bool) -> Real:
     """The ends of the continuum that have no logarithm: the end row, and infinity where nothing limits it."""
-    ends = np.unique(np.array(side.allowed).ravel())
-    return ends[(ends == 0) | (np.isinf(ends) & (not limited))]
+    ends = np.unique(np.array(side.allowed, dtype=np.float64).ravel())
+    return np.asarray(ends[(ends == 0) | (np.isinf(ends) & (not limited))])

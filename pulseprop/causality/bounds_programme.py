@@ -1,15 +1,16 @@
 """Lowest and highest value of a linear functional over all materials of a class, proven from outside.
 
-Weights w of the rows prove  f . x >= w . (rows)  for every material whose columns obey w A <= f. Where columns
-violate that by up to r times their size, and all sizes add up to at most M in any material of the class (one
-more linear programme, solved once), the proof still holds less r M. The columns outside the band are a
-continuum: they are looked at on a fine grid, the worst places are refined, and join the programme until each
-end is proven to a small share of the distance between both.
+Weights w of the rows prove  f . x >= w . (rows)  for every material whose columns obey w A <= f. Where
+columns violate that by up to r times their size, and all sizes add up to at most M in any material of the
+class (one more linear programme, solved once), the proof still holds less r M. The columns outside the band
+are a continuum: they are looked at on a fine grid, the worst places are refined, and join the programme until
+each end is proven to a small share of the distance between both.
 """
 
 from __future__ import annotations
 
 from collections.abc import Sequence
+from contextlib import suppress
 
 import numpy as np
 from numpy.typing import NDArray
@@ -18,13 +19,13 @@ from pulseprop.causality.bounds_materials import Functional, Materials
 from pulseprop.errors import NumericalLimit
 from pulseprop.numerics.box_programme import solve_box
 
-__all__ = ["Proofs"]
+__all__ = ["WELL_WITHIN", "Proofs"]
 
 Real = NDArray[np.float64]
 Interval = tuple[float, float]
 
 ROUNDS = 15
-WELL_WITHIN = 0.1
+WELL_WITHIN = 0.05
 """Share of the uncertainties that a material leaves free from which on the programmes have room to start."""
 ROUGH = 0.5
 """How far the proof of M may miss."""
@@ -32,6 +33,9 @@ ROUGHLY = 1e-2
 """Accuracy of programmes whose value only has to be of the right size."""
 FIRST, LAST = 3e-4, 1e-9
 """Accuracy of the first programme of an end, and the best that is asked for."""
+TOLERABLE = 1e-2
+"""Accuracy at which a programme that rounding has stopped still serves: the proof decides."""
+TINY = 1e-30
 COUNTS = 0.01
 """Places that violate by less than this share of the worst can wait."""
 TOWARDS = (1 / 3, 2 / 3)
@@ -42,15 +46,19 @@ ZOOMS, SHARES = 5, np.linspace(0.0, 1.0, 9)
 class Proofs:
     """All proofs about one class of materials: they share its matrix, its size, and the places found useful.
 
+    known: places of a material that keeps within the limits with WELL_WITHIN to spare, where one is known.
+
     Raises NumericalLimit where no material of the class keeps within the limits, or nothing limits it.
     """
 
-    def __init__(self, materials: Materials, places: Real | None = None) -> None:
+    def __init__(self, materials: Materials, known: Real | None = None) -> None:
         self.materials = materials
-        self.places = materials.coarse if places is None else np.union1d(materials.coarse, places)
+        self.places = materials.coarse if known is None else np.union1d(materials.coarse, known)
         self.grid_columns = materials.continuum(materials.grid)
         self.grid_sizes = self._sizes(self.grid_columns)
         self.fixed_sizes = self._sizes(materials.fixed)
+        if known is None:
+            self._find_room()
         self.total = self._total()
         self._base = self.places
 
@@ -65,8 +73,11 @@ class Proofs:
             late = [end for end in (low, high) if end.reached - end.proven > given_away * width]
             if not late:
                 break
-            for end in late:
-                end.improve(given_away * width)
+            with suppress(NumericalLimit):  # what is proven already stays so
+                for end in late:
+                    end.improve(given_away * width)
+                continue
+            break
         # the next functional is like this one; those before it no longer matter
         self.places = np.unique(np.concatenate((self._base, low.found, high.found)))
         return low.proven, -high.proven
@@ -83,7 +94,13 @@ class Proofs:
         cost = np.append(functional.fixed, functional.continuum(places))
         scale = float(np.max(np.abs(cost)))
         found = solve_box(
-            matrix, materials.lower, materials.upper, cost=cost / scale, accuracy=accuracy, floor=1e-30
+            matrix,
+            materials.lower,
+            materials.upper,
+            cost=cost / scale,
+            accuracy=accuracy,
+            floor=TINY,
+            tolerable=max(accuracy, TOLERABLE),
         )
         self._material = places, found.x
         return found.dual * scale, found.value * scale
@@ -131,10 +148,6 @@ class Proofs:
 
     def _total(self) -> float:
         """M: no material of the class has columns whose sizes add up to more."""
-        try:
-            return self._proven_total()
-        except NumericalLimit:
-            self._find_room()
         try:
             return self._proven_total()
         except NumericalLimit:

@@ -12,7 +12,7 @@ from pulseprop.causality.bounds_functionals import ORDERS, quantity_weights
 from pulseprop.causality.bounds_materials import Materials
 from pulseprop.causality.bounds_programme import Proofs
 from pulseprop.causality.bounds_squared import Squared, index_of_chi, squared_rows
-from pulseprop.causality.passive_class import PassiveClass
+from pulseprop.causality.passive_class import Masses, PassiveClass
 from pulseprop.causality.passive_data import PassiveData
 from pulseprop.errors import NumericalLimit
 
@@ -40,13 +40,16 @@ class Source(Protocol):
 class Absorbing:
     """Rows of k as well as of n: linear programmes in k, for the first `count` quantities.
 
+    known: masses of a material well within the uncertainties, where one is known.
+
     Raises NumericalLimit where no material has the numbers, or they do not limit what absorbs outside them.
     """
 
-    def __init__(self, data: PassiveData, count: int) -> None:
+    def __init__(self, data: PassiveData, count: int, known: Masses | None) -> None:
         passive = PassiveClass(data)
         self.unit, self.count = passive.unit, count
-        self.proofs = Proofs(Materials(passive))
+        materials = Materials(passive)
+        self.proofs = Proofs(materials, None if known is None else materials.places(known))
 
     def intervals(self, omega: float) -> Real:
         """See `Source`."""

@@ -1,14 +1,14 @@
 """Bounds in real chi = n^2 - 1, where a material is transparent.
 
-Im chi = 2 n k >= 0 with Re n > 0 is more than k >= 0: chi itself is then a sum over absorption outside the band,
-and the rows of n are rows of chi, between (n - u)^2 - 1 and (n + u)^2 - 1. (Inside absorption chi is not real,
-and this is false.) With X the derivatives of chi, N + delta those of n about the middle N of what is known, and
+Im chi = 2 n k >= 0 with Re n > 0 is more than k >= 0: chi itself is then a sum over absorption outside the
+band, and the rows of n are rows of chi, between (n - u)^2 - 1 and (n + u)^2 - 1. (Inside absorption chi is
+not real, and this is false.) With X the derivatives of chi, N + delta those of n near some N, and
 
     X_m = sum_j binomial(m, j) n_j n_(m-j)    (less 1 for m = 0),
 
-X is exactly X(N) + L delta + Q(delta), L triangular and Q the same sum over delta. So any combination of n and
-its derivatives, w . delta = (w / L) . (X - X(N)) - (w / L) . Q(delta), is a functional linear in chi and a
-remainder of second order.
+X is exactly X(N) + L delta + Q(delta), L triangular and Q the same sum over delta. So any combination of n
+and its derivatives, w . delta = (w / L) . (X - X(N)) - (w / L) . Q(delta), is a functional linear in chi and
+a remainder of second order.
 """
 
 from __future__ import annotations
@@ -62,7 +62,7 @@ class Squared:
         return np.asarray(found - (self.of_chi @ self._chi)[:, None])
 
     def settled(self, linear: Real) -> Real | None:
-        """How far the quantities can be from the middle, which is that of one of the materials: (quantities,).
+        """How far the quantities can be from the middle, where one of the materials has them: (quantities,).
 
         The materials are a connected set. If within some room the linear part and the remainder stay strictly
         inside it, no material can have left it. None where no such room is found.

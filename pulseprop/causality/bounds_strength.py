@@ -32,7 +32,7 @@ WEIGHTS = (
     "Po 209 At 210 Rn 222 Fr 223 Ra 226 Ac 227 Th 232.04 Pa 231.04 U 238.03"
 )
 """Symbols in order of their electrons (1 for H), each with its weight in g/mol: IUPAC, abridged standard
-atomic weights 2021, from memory; elements without a stable isotope by the mass number of the longest-lived."""
+atomic weights 2021, from memory; elements without a stable isotope by mass number of the longest-lived."""
 
 HEAVY_HYDROGEN = {"D": (1, 2.014)}
 """Electrons and weight: heavy water is sold as D2O."""
