@@ -8,7 +8,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from pulseprop.api import catalogue, compensate, dataset, media, medium, read, send
+    from pulseprop.api import catalogue, compensate, dataset, media, medium, read, send, vet
     from pulseprop.errors import InputError, NumericalLimit, PulsepropError, RangeError
 
 __all__ = [
@@ -23,6 +23,7 @@ __all__ = [
     "medium",
     "read",
     "send",
+    "vet",
 ]
 
 __version__ = "0.1.0"

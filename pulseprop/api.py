@@ -19,6 +19,7 @@ if TYPE_CHECKING:
     from pulseprop.propagation.result import Run
     from pulseprop.propagation.send import Progress
     from pulseprop.scenario.read import Scenario
+    from pulseprop.vetting.result import Vetted
 
 from pulseprop import __version__
 from pulseprop.constants import TWO_PI_C
@@ -34,6 +35,8 @@ __all__ = [
     "medium",
     "read",
     "send",
+    "vet",
+    "vet_document",
 ]
 
 UNASKED_OMEGA = 2.4e15
@@ -268,3 +271,33 @@ def _row(found: Medium, omega: float) -> OrdersRow:
 
 def _finite(value: float) -> float | None:
     return float(value) if np.isfinite(value) else None
+
+
+VERDICTS = ("consistent", "doubtful", "contradictory")
+
+
+def vet(tables: str | Path | Sequence[str | Path], **options: Any) -> tuple[Vetted, ...]:
+    """Vet files: text tables, workbooks, JCAMP-DX; certificates and formulas as TOML; an answer a table.
+
+    options: those of `pulseprop.vetting.asked.Asked`, in its words: uncertainty="n=1e-4,k=2%", at=["800 nm"],
+    require=[...], columns, unit, relative_to, thickness, medium and more. Raises InputError, NumericalLimit.
+    """
+    from datetime import date
+
+    from pulseprop.scenario.vet_files import vet_file
+    from pulseprop.vetting.asked import Asked
+
+    files = [tables] if isinstance(tables, str | Path) else tables
+    asked = Asked(
+        **{key: tuple(value) if isinstance(value, list) else value for key, value in options.items()}
+    )
+    today = date.today().isoformat()
+    return tuple(one for file in files for one in vet_file(file, asked, date=today, version=__version__))
+
+
+def vet_document(answers: Sequence[Vetted]) -> dict[str, Any]:
+    """The JSON document: of one table its answer, of several the worst verdict and the list of them."""
+    if len(answers) == 1:
+        return answers[0].as_json()
+    worst = max((answer.verdict for answer in answers), key=VERDICTS.index)
+    return {"verdict": worst, "tables": [answer.as_json() for answer in answers]}

@@ -31,6 +31,7 @@ def test_the_package_offers_these_names():
         "medium",
         "read",
         "send",
+        "vet",
     ]
     assert dir(pulseprop) == sorted([*pulseprop.__all__, "__version__"])
 

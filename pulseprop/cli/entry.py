@@ -16,6 +16,7 @@ from pulseprop.cli.compensate import compensate
 from pulseprop.cli.media import media
 from pulseprop.cli.outputs import DONE
 from pulseprop.cli.send import send
+from pulseprop.cli.vet import vet
 
 __all__ = ["TRACEBACK", "commands", "main"]
 
@@ -116,5 +117,5 @@ def commands() -> None:
     """
 
 
-for command in (send, compensate, media):
+for command in (send, vet, compensate, media):
     commands.add_command(command)

@@ -131,6 +131,7 @@ KINDS: dict[str, Kind] = {
     "phase": plain("a phase", "rad", "rad", "1.57 rad", "90 deg"),
     "temperature": plain("a temperature", "K", "K", "22 degC", "293 K"),
     "pressure": plain("a pressure", "kg m^-1 s^-2", "Pa", "0.4 bar", "1013 hPa", "1 atm"),
+    "mass_density": plain("a density", "kg m^-3", "kg/m^3", "2.2 g/cm^3", "2200 kg/m^3"),
     "number_density": plain("a number density", "m^-3", "m^-3", "2.5e19 cm^-3"),
     "inverse_length": plain("an inverse length", "m^-1", "1/m", "12 cm^-1", "0.3 mm^-1", "0.2 dB/km"),
     "groove_density": plain("a number of grooves per length", "m^-1", "1/m", "600 /mm", "1200 mm^-1"),
