@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
+from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -18,9 +19,10 @@ from pulseprop.vetting.table import SentTable
 
 __all__ = ["Case", "case_of", "thinned"]
 
-ENOUGH = 60
+ENOUGH = 80
 """Rows that show whether a repair helps; the full table is asked only where they say yes."""
 PROMISING = 1.2
+"""Factor of a few rows, or of a quick answer, up to which the whole is looked at closely."""
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
@@ -50,26 +52,26 @@ class Case:
         return float(TWO_PI_C / self.table.omega[row] * 1e9)
 
     def factor_of(self, table: SentTable) -> float | None:
-        """The factor of a repaired table; None where it cannot be said. Few rows first."""
+        """The factor of a repaired table, within a few per cent; None where it cannot be said.
+
+        Of many rows a few are tried first: where these cannot agree, all cannot. Near 1 it is exact.
+        """
         try:
             numbers = numbers_of(table, self.request)
         except InputError:
             return None
         if numbers.data is None:
             return None
-        least = numbers.repeat.factor if numbers.repeat else 0.0
-        return self.factor_of_data(numbers.data, least)
-
-    def factor_of_data(self, data: PassiveData, least: float = 0.0) -> float | None:
-        """The factor, at least `least`; only that of every few rows where it is well above 1 already."""
+        few = thinned(numbers.data)
         try:
-            few = thinned(data)
-            factor = self.causality.standing(few, thorough=False).factor
-            if few is not data and factor <= PROMISING:
-                factor = self.causality.standing(data, thorough=False).factor
+            factor = self.causality.quick_factor(few)
+            if few is not numbers.data and factor <= PROMISING:
+                factor = self.causality.quick_factor(numbers.data)
+            if 1 < factor <= PROMISING:
+                factor = self.causality.standing(numbers.data, thorough=False).factor
         except NumericalLimit:
             return None
-        return max(factor, least)
+        return max(factor, numbers.repeat.factor if numbers.repeat else 0.0)
 
 
 def case_of(table: SentTable, request: Request, causality: Causality) -> Case:
@@ -92,9 +94,12 @@ def case_of(table: SentTable, request: Request, causality: Causality) -> Case:
 
 
 def thinned(data: PassiveData) -> PassiveData:
-    """Every few rows of the index, the first and last kept, where there are many; the absorption as it is."""
-    count = len(data.omega)
-    if count <= ENOUGH:
-        return data
-    keep = np.unique(np.linspace(0, count - 1, ENOUGH).astype(int))
-    return replace(data, omega=data.omega[keep], index=data.index[keep], index_error=data.index_error[keep])
+    """Every few rows, the first and last kept, where there are many."""
+    few: dict[str, Any] = {}
+    for names in (("omega", "index", "index_error"), ("k_omega", "k", "k_error", "least")):
+        columns = {name: column for name in names if (column := getattr(data, name)) is not None}
+        count = max((len(column) for column in columns.values()), default=0)
+        if count > ENOUGH:
+            keep = np.unique(np.linspace(0, count - 1, ENOUGH).astype(int))
+            few |= {name: column[keep] for name, column in columns.items()}
+    return replace(data, **few) if few else data

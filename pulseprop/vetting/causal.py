@@ -9,10 +9,11 @@ from typing import Literal, Protocol
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.causality.conflict import Conflict
 from pulseprop.causality.passive_data import PassiveData
 from pulseprop.vetting.result import Bounds
 
-__all__ = ["Causality", "Part", "Standing", "Unresolved"]
+__all__ = ["Causality", "FewRows", "Part", "Standing", "Unresolved"]
 
 Real = NDArray[np.float64]
 
@@ -37,8 +38,8 @@ class Unresolved:
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Standing:
-    """factor: of the data's uncertainties. gap: certified, relative. conflict: empty where factor is at most
-    1.
+    """factor: of the data's uncertainties. gap: certified, relative. conflict, and proof, the same in the
+    words of causality: empty and None where the factor is at most 1.
 
     coarse: places (rad/s) of features of k with fewer than five rows over their width. index, k: of the
     material of least factor, at the data's omega and k_omega; None where there is none.
@@ -51,18 +52,33 @@ class Standing:
     coarse: tuple[float, ...] = ()
     index: Real | None = None
     k: Real | None = None
+    proof: Conflict | None = None
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
+class FewRows:
+    """One to three rows that carry the proof, the factor without them, and the data without them."""
+
+    parts: tuple[Part, ...]
+    factor: float
+    data: PassiveData
 
 
 class Causality(Protocol):
-    """The passive causal tests: `pulseprop.causality`, or a stand-in."""
+    """The passive causal tests: `pulseprop.vetting.passive`, or a stand-in. All raise NumericalLimit."""
 
     def standing(self, data: PassiveData, *, thorough: bool) -> Standing:
-        """The least factor; thorough: with proof, and with the rule for unresolved lines.
+        """The least factor; thorough: with proof, and with the rule for unresolved lines."""
+        ...
 
-        Raises NumericalLimit.
-        """
+    def quick_factor(self, data: PassiveData) -> float:
+        """A factor that a material attains: the least one, or a little above it."""
+        ...
+
+    def few_rows(self, data: PassiveData, standing: Standing) -> FewRows | None:
+        """The fewest rows without which the factor is at most 1; None where three are not enough."""
         ...
 
     def bounds(self, data: PassiveData, omega: Real) -> Sequence[Bounds]:
-        """Guaranteed values at each omega (rad/s). Raises NumericalLimit."""
+        """Guaranteed values at each omega (rad/s)."""
         ...

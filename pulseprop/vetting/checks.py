@@ -6,6 +6,7 @@ from collections.abc import Callable, Iterator
 from dataclasses import replace
 
 from pulseprop.vetting.case import Case
+from pulseprop.vetting.causal import FewRows
 from pulseprop.vetting.checks_absorption import columns_disagree, face_loss_left_in, fractions_called_percent
 from pulseprop.vetting.checks_amounts import (
     index_not_positive,
@@ -23,7 +24,7 @@ from pulseprop.vetting.checks_catalogue import claimed_medium, nearest_medium, w
 from pulseprop.vetting.checks_digits import too_few_digits
 from pulseprop.vetting.checks_printed import abbe_number, printed_orders
 from pulseprop.vetting.checks_rows import double_rows, empty_cells, rows_out_of_order
-from pulseprop.vetting.few_rows import FewRows, displaced
+from pulseprop.vetting.few_rows import displaced
 from pulseprop.vetting.repairs import mended_by
 from pulseprop.vetting.result import Finding
 

@@ -23,7 +23,7 @@ __all__ = ["abbe_number", "printed_orders"]
 Real = NDArray[np.float64]
 Interval = tuple[float, float]
 
-PLACES = 5
+PLACES = 3
 """Rows at which a printed column is compared: each costs several linear programmes."""
 END_ROWS = 2
 """Rows at each end where the index guarantees nothing about its derivatives."""

@@ -3,64 +3,35 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass, replace
-from typing import Any
 
 import numpy as np
-from numpy.typing import NDArray
 
 from pulseprop.causality.passive_data import PassiveData
 from pulseprop.errors import NumericalLimit
 from pulseprop.vetting.case import Case
-from pulseprop.vetting.causal import Part
+from pulseprop.vetting.causal import FewRows, Part
 from pulseprop.vetting.misprints import misprint
 from pulseprop.vetting.result import Finding
 
-__all__ = ["FewRows", "displaced", "few_rows"]
+__all__ = ["displaced", "few_rows"]
 
-Real = NDArray[np.float64]
 Interval = tuple[float, float]
 
-MOST = 3
-"""Rows that may be called a few; and at most a tenth of all."""
-TRIED = 5
-"""The heaviest rows of a proof of which each is left out in turn."""
-SPARES = 10.0
-"""Fall of the factor from which on the rows left out carry the proof, even where it stays above 1."""
-
-
-@dataclass(frozen=True, kw_only=True, eq=False)
-class FewRows:
-    """parts: the rows (of the data). factor: without them. data: the rest."""
-
-    parts: tuple[Part, ...]
-    factor: float
-    data: PassiveData
+ROWS_A_SLIP = 8
+"""Rows to one that may be called a slip: of fewer, most can be left out of any table."""
 
 
 def few_rows(case: Case) -> FewRows | None:
-    """The fewest rows, at most MOST, without which the numbers agree; None where there are no such rows.
-
-    One row after the other is left out, each time the one of the heaviest that lowers the factor most.
-    """
+    """The one to three rows without which the numbers agree; None where there are no such rows."""
     standing, data = case.standing, case.numbers.data
     if standing is None or data is None or standing.factor <= 1:
         return None
-    most = min(MOST, len(data.omega) // 10)
-    left_out: list[Part] = []
-    rest, parts, factor = data, standing.conflict, standing.factor
-    while parts and len(left_out) < most and factor > 1:
-        found = _best(case, rest, parts)
-        if found is None:
-            return None
-        part, factor, remaining = found
-        left_out.append(_in_data(data, part, _omega(rest, part)))
-        rest = remaining
-        if factor > 1:
-            parts = _parts(case, rest)
-    if factor <= 1 or standing.factor / factor >= SPARES:
-        return FewRows(parts=tuple(left_out), factor=factor, data=rest)
-    return None
+    try:
+        found = case.causality.few_rows(data, standing)
+    except NumericalLimit:
+        return None
+    rows = max(len(data.omega), 0 if data.k is None else len(data.k))
+    return found if found is not None and len(found.parts) <= rows // ROWS_A_SLIP else None
 
 
 def displaced(case: Case, few: FewRows | None) -> Iterator[Finding]:
@@ -72,51 +43,9 @@ def displaced(case: Case, few: FewRows | None) -> Iterator[Finding]:
         yield _finding(case, few, part, fit)
 
 
-def _best(case: Case, data: PassiveData, parts: tuple[Part, ...]) -> tuple[Part, float, PassiveData] | None:
-    """Which of the heaviest rows to leave out, the factor then, and what remains."""
-    best = None
-    for part in sorted(parts, key=lambda part: -abs(part.weight))[:TRIED]:
-        rest = _without(data, part)
-        factor = case.factor_of_data(rest)
-        if factor is not None and (best is None or factor < best[1]):
-            best = (part, factor, rest)
-    return best
-
-
-def _parts(case: Case, data: PassiveData) -> tuple[Part, ...]:
-    try:
-        return case.causality.standing(data, thorough=True).conflict
-    except NumericalLimit:
-        return ()
-
-
 def _omega(data: PassiveData, part: Part) -> float:
-    return float(_axis(data, part)[part.row])
-
-
-def _axis(data: PassiveData, part: Part) -> Real:
-    if part.quantity == "k" and data.k_omega is not None:
-        return data.k_omega
-    return data.omega
-
-
-def _in_data(data: PassiveData, part: Part, omega: float) -> Part:
-    """The part with its row counted in the whole data."""
-    return replace(part, row=int(np.argmin(np.abs(_axis(data, part) - omega))))
-
-
-def _without(data: PassiveData, part: Part) -> PassiveData:
-    if part.quantity == "n":
-        return replace(
-            data,
-            omega=np.delete(data.omega, part.row),
-            index=np.delete(data.index, part.row),
-            index_error=np.delete(data.index_error, part.row),
-        )
-    columns = ("k_omega", "k", "k_error", "least")
-    known = {name: column for name in columns if (column := getattr(data, name)) is not None}
-    rest: dict[str, Any] = {name: np.delete(column, part.row) for name, column in known.items()}
-    return replace(data, **rest)
+    axis = data.k_omega if part.quantity == "k" and data.k_omega is not None else data.omega
+    return float(axis[part.row])
 
 
 def _fitting(case: Case, few: FewRows) -> list[Interval | None]:

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.causality.passive_data import Knowledge, PassiveData
+from pulseprop.causality.passive_data import FEWEST_OF_K, Knowledge, PassiveData
 from pulseprop.vetting.absorption_rows import AbsorptionRows, absorption_column, absorption_rows
 from pulseprop.vetting.request import Request
 from pulseprop.vetting.table import SentTable
@@ -80,6 +80,8 @@ def numbers_of(table: SentTable, request: Request) -> Numbers:
 def _reason(index: _Column, k: AbsorptionRows | str | None, *, has_index: bool) -> str:
     if isinstance(k, str):
         return k
+    if k is not None and np.sum(np.isfinite(k.k)) < FEWEST_OF_K:
+        return f"fewer than {FEWEST_OF_K} rows give an absorption"
     if k is None and len(index.omega) < FEWEST:
         return f"fewer than {FEWEST} rows give an index"
     if len(index.omega) == 0:

@@ -7,8 +7,7 @@ from collections.abc import Sequence
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.absorption_rows import absorption_column
 from pulseprop.vetting.case import Case
-from pulseprop.vetting.causal import Unresolved
-from pulseprop.vetting.few_rows import FewRows
+from pulseprop.vetting.causal import FewRows, Unresolved
 from pulseprop.vetting.result import ConflictRow, Finding, ImpliedUncertainty, Verdict
 
 __all__ = ["BLIND_SPOTS", "assumptions", "headline", "sentence", "what_was_vetted"]
