@@ -21,7 +21,7 @@ from pulseprop.compensation.problem import Goal, Part, Value
 from pulseprop.compensation.samples import Samples
 from pulseprop.errors import InputError
 
-__all__ = ["Candidate", "Kind", "background_of", "candidates"]
+__all__ = ["Candidate", "Kind", "background_of", "candidates", "kind_of"]
 
 Complex = NDArray[np.complex128]
 Real = NDArray[np.float64]
@@ -53,15 +53,19 @@ class Candidate:
 
     @property
     def kind(self) -> Kind:
-        """What a person would call another design: parts and listed choices, not counts or settings."""
-        return tuple(
-            (
-                model.part.name,
-                tuple(model.discrete[one.parameter] for one in model.part.adjustments if one.choices),
-            )
-            for model in self.assembly.models
-            if model.part.movable
+        """Of the assembly."""
+        return kind_of(self.assembly)
+
+
+def kind_of(assembly: Assembly) -> Kind:
+    """What a person would call another design: parts and listed choices, not counts or settings."""
+    return tuple(
+        (
+            model.part.name,
+            tuple(model.discrete[one.parameter] for one in model.part.adjustments if one.choices),
         )
+        for model in assembly.models
+    )
 
 
 def background_of(parts: Sequence[Part], samples: Samples) -> Complex:

@@ -129,9 +129,9 @@ def _setting(element: str, one: Adjustment, value: Value) -> Setting:
     return Setting(
         element=element,
         parameter=one.parameter,
-        value=value / one.unit_size,
+        value=float(value / one.unit_size),
         unit=one.unit,
-        move=(value - one.now) / one.unit_size if isinstance(one.now, int | float) else None,
+        move=float((value - one.now) / one.unit_size) if isinstance(one.now, int | float) else None,
         at_limit=_limit(one, value),
     )
 

@@ -153,9 +153,9 @@ def drift_of(loose: Loose, exponent: Complex, judge: Judge) -> Drift:
         element=loose.element,
         parameter=loose.parameter,
         unit=loose.unit,
-        below=None if below is None else below / size,
-        above=None if above is None else above / size,
-        sigma=None if loose.sigma is None else loose.sigma / size,
+        below=None if below is None else float(below / size),
+        above=None if above is None else float(above / size),
+        sigma=None if loose.sigma is None else float(loose.sigma / size),
         set_by_hand=loose.set_by_hand,
     )
 

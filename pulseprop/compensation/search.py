@@ -9,7 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.compensation.bound import Bounds
-from pulseprop.compensation.candidates import Candidate, Kind, background_of, candidates
+from pulseprop.compensation.candidates import Kind, background_of, candidates, kind_of
 from pulseprop.compensation.goals import Judge
 from pulseprop.compensation.phase_fit import whitened
 from pulseprop.compensation.problem import Problem
@@ -64,7 +64,8 @@ class _State:
         return float(max(own, listed))
 
     def take(self, found: Refined) -> None:
-        kind = _kind(found)
+        found = _bare(found)
+        kind = kind_of(found.assembly)
         if kind not in self.best or found.score > self.best[kind].score:
             self.best[kind] = found
 
@@ -112,17 +113,21 @@ def _listed(state: _State) -> tuple[Refined, ...]:
     return tuple(sorted(state.best.values(), key=order)[: state.wanted])
 
 
-def _kind(found: Refined) -> Kind:
-    """The kind of a design, without parts that change nothing."""
+def _bare(found: Refined) -> Refined:
+    """The same design without optional parts that change nothing where they stand."""
     assembly = found.assembly
     window = np.abs(assembly.samples.amplitude)
     window = window / window.sum()
-    used = []
+    kept, shares, start = [], [np.zeros(0)], 0
     for model, values in zip(assembly.models, assembly.values(found.u), strict=True):
-        exponent = model.exponent(values)
-        turned = np.linalg.norm(whitened(exponent.imag, assembly.samples.detuning, window))
-        lost = abs(float(np.dot(window, exponent.real)))
-        if not model.part.optional or turned > NO_DIFFERENCE or lost > NO_DIFFERENCE:
-            used.append(model)
-    kept = replace(assembly, models=tuple(used))
-    return Candidate(assembly=kept, first=found.u, estimate=found.score).kind
+        stop = start + values.size
+        if not model.part.optional or _acts(model.exponent(values), assembly.samples, window):
+            kept.append(model)
+            shares.append(found.u[start:stop])
+        start = stop
+    return replace(found, assembly=replace(assembly, models=tuple(kept)), u=np.concatenate(shares))
+
+
+def _acts(exponent: Complex, samples: Samples, window: Real) -> bool:
+    turned = float(np.linalg.norm(whitened(exponent.imag, samples.detuning, window)))
+    return max(turned, abs(float(np.dot(window, exponent.real)))) > NO_DIFFERENCE

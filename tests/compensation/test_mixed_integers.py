@@ -220,3 +220,16 @@ def test_ranges_must_be_ranges():
         Adjustment(parameter="bounces", low=0.0, high=4.0, step=0.0)
     assert Adjustment(parameter="bounces", low=0.0, high=12.0, step=2.0).values == (0, 2, 4, 6, 8, 10, 12)
     assert Adjustment(parameter="thickness", low=0.0, high=1.0, step=0.1).values[-1] == pytest.approx(1.0)
+
+
+def test_a_part_that_does_nothing_is_not_in_the_design(bench):
+    """A wedge of more glass where glass is too much already: it is left out, though it may stay at 0."""
+    parts = [bench.glass("SF10", 2e-3), bench.prisms("SF10", most=1.0), bench.wedge(optional=True)]
+    bare = [bench.glass("SF10", 9e-3), bench.mirrors("m", -40e-30, most=10), bench.wedge(optional=True)]
+    source = bench.pulse()
+    for row in (parts, bare):
+        found = search(Problem(pulse=source, parts=tuple(row), best=5), bench.samples_of(source), silent)
+        for one in found.best:
+            for model, values in zip(one.assembly.models, one.assembly.values(one.u), strict=True):
+                assert not (model.part.name == "wedge" and values[0] < 1e-7)
+    assert [model.part.name for model in found.best[0].assembly.models] == ["m"]

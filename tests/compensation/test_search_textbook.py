@@ -62,7 +62,7 @@ CASES = {
     "glass, grating pair": (
         lambda b: [b.glass("fused silica", 20e-3), b.gratings(most=30e-3)],
         ["separation"],
-        2001,
+        201,
     ),
     "glass, prism pair, wedge": (
         lambda b: [b.glass("N-BK7", 3e-3), b.prisms("SF10", most=1.0), b.wedge(most=10e-3)],
@@ -81,6 +81,31 @@ CASES = {
 }
 
 
+def along_the_ridge(brute, line, low, high):
+    """score(place) with the total GDD in place of the first setting: good settings then lie along an axis.
+
+    GDD by a fit of the phase; place[0] is its departure from zero in units of 100 fs^2.
+    """
+    detuning = brute.omega - brute.omega.mean()
+
+    def gdd(at):
+        return 2 * np.polyfit(detuning, line(at).imag, 4, w=brute.amplitude)[2]
+
+    first = np.eye(low.size)[0] * (high[0] - low[0])
+    slope = gdd(low + first) - gdd(low)
+    rest = [gdd(low + step) - gdd(low) for step in np.diag(high - low)]
+    at_low = gdd(low)
+
+    def settings(place):
+        at = place.copy()
+        shares = (place[1:] - low[1:]) / (high[1:] - low[1:])
+        others = at_low + sum(share * one for share, one in zip(shares, rest[1:], strict=True))
+        at[0] = low[0] + np.clip((place[0] * 100e-30 - others) / slope, 0, 1) * (high[0] - low[0])
+        return at
+
+    return lambda place: brute.ratio(line(settings(place)))
+
+
 @pytest.mark.parametrize("name", CASES)
 def test_the_search_reaches_the_brute_force(bench, name):
     make, names, points = CASES[name]
@@ -89,14 +114,15 @@ def test_the_search_reaches_the_brute_force(bench, name):
     ranges = [(one.low, one.high) for part in parts for one in part.continuous]
     low, high = (np.array(side) for side in zip(*ranges, strict=True))
     brute = bench.Brute()
-    line = lines(brute, build, low, high)
-    wanted, _ = bench.lattice_best(
-        lambda at: brute.ratio(line(at)), low, high, points, 6 if points < 1000 else 2
-    )
+    score = along_the_ridge(brute, lines(brute, build, low, high), low, high)
+    begin, end = np.array([-2.0, *low[1:]]), np.array([2.0, *high[1:]])
+    wanted, _ = bench.lattice_best(score, begin, end, points, 5)
     found, best = searched(bench, parts)
     assert 0.05 < wanted < 0.9999
     assert best.judged.peak_ratio >= SHARE * wanted
     assert found.evaluations <= MOST_FIELDS
+    # The brute force is one: it comes as near to the search as it asks the search to come.
+    assert wanted >= SHARE * best.judged.peak_ratio
     # The settings, seen by the brute force, are as good as the search says.
     place = np.concatenate(best.assembly.values(best.u))
     assert brute.ratio(brute.exponent(*build(place))) == pytest.approx(best.judged.peak_ratio, abs=2e-4)
