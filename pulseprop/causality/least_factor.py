@@ -26,8 +26,10 @@ GAP = 1e-3
 FLOOR = 1e-2
 """The gap of a factor below this is taken over this: the numbers fit a hundred times better than stated."""
 ROUNDS = 12
-ACCURACY = 1e-4
-"""Of one programme: well below the gap."""
+ACCURACY = (1e-2, 1e-3, 3e-4)
+"""Of the programmes one after another, the last of all further ones: their masses are not the final ones yet."""
+NEAR = (-np.inf, -np.inf, 0.0)
+"""How much the weights must favour a mass for it to join: at first all places at which they favour one most."""
 TOLERABLE = 0.1
 """Accuracy at which a programme that rounding has stopped is still worth a look: the proof decides."""
 
@@ -48,15 +50,15 @@ def least_factor(cls: PassiveClass) -> tuple[Attained, Proof]:
     """
     masses = cls.first_masses()
     best, proof = None, Proof(np.zeros(len(cls.target)), 0.0, 0.0)
-    for _ in range(ROUNDS):
-        attained, weights, price = _solved(cls, masses)
+    for turn in range(ROUNDS):
+        attained, weights, price = _solved(cls, masses, ACCURACY[min(turn, len(ACCURACY) - 1)])
         best = attained if best is None or attained.factor < best.factor else best
         found = proven(cls, weights, price)
         proof = found if found is not None and found.factor > proof.factor else proof
         if best.factor - proof.factor <= GAP * max(best.factor, FLOOR):
             return best, proof
-        more, _ = favoured_masses(cls, weights, price)
-        masses = masses.joined(more)
+        least = NEAR[min(turn, len(NEAR) - 1)]
+        masses = masses.joined(favoured_masses(cls, weights, price, least))
     raise NumericalLimit(
         "the uncertainty factor could not be proven",
         value=f"between {proof.factor:.6g} and {best.factor if best else np.inf:.6g}",
@@ -65,10 +67,11 @@ def least_factor(cls: PassiveClass) -> tuple[Attained, Proof]:
     )
 
 
-def _solved(cls: PassiveClass, masses: Masses) -> tuple[Attained, Real, float]:
+def _solved(cls: PassiveClass, masses: Masses, accuracy: float) -> tuple[Attained, Real, float]:
     """The material of these masses, weights of the rows and the price of strength."""
     matrix, strengths = cls.matrix(masses), cls.strengths(masses)
-    amounts, weights, price = _programme(cls, matrix, strengths, np.ones(len(cls.target), dtype=bool))
+    every = np.ones(len(cls.target), dtype=bool)
+    amounts, weights, price = _programme(cls, matrix, strengths, every, accuracy)
     return Attained(masses, amounts, float(np.max(_stretch(cls, matrix @ amounts)))), weights, price
 
 
@@ -81,13 +84,13 @@ def factor_with(
     """
     matrix = np.concatenate((cls.matrix(masses), lines), axis=1)
     every = np.concatenate((cls.strengths(masses), strengths))
-    amounts, _, _ = _programme(cls, matrix, every, rows)
+    amounts, _, _ = _programme(cls, matrix, every, rows, ACCURACY[-1])
     factor = float(np.max(_stretch(cls, matrix @ amounts)[rows]))
     return factor, amounts[len(amounts) - len(strengths) :]
 
 
 def _programme(
-    cls: PassiveClass, matrix: Real, strengths: Real, rows: NDArray[np.bool_]
+    cls: PassiveClass, matrix: Real, strengths: Real, rows: NDArray[np.bool_], accuracy: float
 ) -> tuple[Real, Real, float]:
     """Amounts of the columns, weights of the chosen rows and the price of strength."""
     matrix, lower, stretch = matrix[rows], cls.target[rows], cls.error[rows]
@@ -96,7 +99,13 @@ def _programme(
         matrix = np.concatenate((matrix, strengths[None] / cls.limit))
         lower, upper, stretch = np.append(lower, -np.inf), np.append(upper, 1.0), np.append(stretch, 0.0)
     found = solve_box(
-        matrix, lower, upper, stretch=stretch, accuracy=ACCURACY, floor=FLOOR, tolerable=TOLERABLE
+        matrix,
+        lower,
+        upper,
+        stretch=stretch,
+        accuracy=accuracy,
+        floor=FLOOR,
+        tolerable=max(accuracy, TOLERABLE),
     )
     amounts, weights, price = np.maximum(found.x, 0.0), found.dual, 0.0
     if cls.limit is not None:

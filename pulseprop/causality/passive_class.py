@@ -30,8 +30,10 @@ Real = NDArray[np.float64]
 
 TAILS = 3
 """Knots outside the rows that a B-spline reaches from within."""
+CLOSE = 10.0
+"""Factor about the distances of the rows within which every place of the grid is a first choice, and"""
 COARSE = 4
-"""Grid places from one mass to the next of the first choice."""
+"""grid places from one to the next beyond."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -43,6 +45,10 @@ class Masses:
 
     def __len__(self) -> int:
         return len(self.below) + len(self.above)
+
+    def strengths(self) -> Real:
+        """Integral of k over s of a unit of each, those below first; inf for the constant."""
+        return np.pi * np.concatenate((self.below, self.above))
 
     def joined(self, other: Masses) -> Masses:
         """Both, each place once."""
@@ -118,20 +124,24 @@ class PassiveClass:
 
     def matrix(self, masses: Masses) -> Real:
         """Columns of the splines, of the masses below and of those above: (R + K, columns)."""
-        below, above = (
-            np.pad(side.columns(distance), ((0, len(self.k_rows)), (0, 0)))
+        return np.concatenate((self.spline_columns, self.mass_columns(masses)), axis=1)
+
+    def mass_columns(self, masses: Masses) -> Real:
+        """Of the masses alone: (R + K, masses)."""
+        columns = [
+            side.columns(distance)
             for side, distance in zip(self.sides, (masses.below, masses.above), strict=True)
-        )
-        return np.concatenate((self.spline_columns, below, above), axis=1)
+        ]
+        return np.pad(np.concatenate(columns, axis=1), ((0, len(self.k_rows)), (0, 0)))
 
     def strengths(self, masses: Masses) -> Real:
         """Integral of k over s of each column, (columns,); inf for the constant."""
         of_splines = np.zeros(0) if self.splines is None else self.splines.strengths()
-        return np.concatenate((of_splines, np.pi * masses.below, np.pi * masses.above))
+        return np.concatenate((of_splines, masses.strengths()))
 
     def first_masses(self) -> Masses:
         """A coarse choice over all allowed places, their ends among them."""
-        below, above = (_thinned(side, self.limit is not None) for side in self.sides)
+        below, above = (_first(side, self.limit is not None) for side in self.sides)
         return Masses(below, above)
 
 
@@ -140,7 +150,13 @@ def _squares(high: Any, low: Any) -> Any:
     return (high - low) * (high + low)
 
 
-def _thinned(side: Side, limited: bool) -> Real:
-    chosen = [np.union1d(places[::COARSE], places[[0, -1]]) for places in side.grid]
-    every = np.concatenate([np.zeros(0), *chosen])
+def _first(side: Side, limited: bool) -> Real:
+    """All grid places near the scales of the rows, some of those far from them, and the ends."""
+    chosen = [np.zeros(0)]
+    scales = side.away[side.away > 0]
+    low, high = (np.min(scales), np.max(scales)) if len(scales) else (1.0, 1.0)
+    for places in side.grid:
+        near = (places > low / CLOSE) & (places < high * CLOSE)
+        chosen.append(np.unique(np.concatenate((places[near], places[::COARSE], places[[0, -1]]))))
+    every = np.concatenate(chosen)
     return every[np.isfinite(every)] if limited else every

@@ -39,15 +39,12 @@ class Proof:
     factor: float
 
 
-def favoured_masses(cls: PassiveClass, weights: Real, price: float) -> tuple[Masses, Real]:
-    """Masses outside that the weights favour, locally most, and by how much."""
+def favoured_masses(cls: PassiveClass, weights: Real, price: float, least: float = 0.0) -> Masses:
+    """Masses outside that the weights (R + K,) favour locally most, and by more than `least`."""
     index = weights[: len(cls.rows)]
-    places, values = zip(*(side.favoured(index, np.pi * price) for side in cls.sides), strict=True)
-    below, above = (place[value > 0] for place, value in zip(places, values, strict=True))
-    if cls.limit is not None:
-        above = above[np.isfinite(above)]
-    every = np.concatenate(values)
-    return Masses(below, above), every[every > 0]
+    found = [side.favoured(index, np.pi * price) for side in cls.sides]
+    below, above = (places[values > least] for places, values in found)
+    return Masses(below, above if cls.limit is None else above[np.isfinite(above)])
 
 
 def proven(

@@ -58,7 +58,6 @@ class BandElimination:
     def __init__(self, layout: BandLayout, near: Real, far: Real, dense: Real) -> None:
         self.near, self.far = near, far
         unknowns = len(near)
-        self.upper = np.zeros((layout.reach + PANEL, unknowns))
         self.coupling = np.empty((unknowns, len(dense)))
         self.panels: list[_Panel] = []
         self.triangles: list[Real] = []
@@ -120,14 +119,14 @@ class BandElimination:
 
     def unknowns(self, right: Real, z: Real) -> Real:
         """y from the reduced right sides of y (unknowns,) and z."""
-        from scipy.linalg import solve_triangular
+        from scipy.linalg.lapack import dtrtrs
 
         right = right - self.coupling @ z
         y = np.zeros(len(right))
         for panel, triangle in zip(self.panels[::-1], self.triangles[::-1], strict=True):
             done = panel.stop - panel.start
             beyond = triangle[:, done:] @ y[panel.stop : panel.start + triangle.shape[1]]
-            y[panel.start : panel.stop] = solve_triangular(
-                triangle[:, :done], right[panel.start : panel.stop] - beyond, check_finite=False
-            )
+            y[panel.start : panel.stop] = dtrtrs(
+                triangle[:, :done], right[panel.start : panel.stop] - beyond
+            )[0]
         return y
