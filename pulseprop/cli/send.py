@@ -90,16 +90,12 @@ def _media(run: Run, scenario: Scenario) -> tuple[Medium, ...]:
 
 def _answer(run: Run, json_path: str | None) -> None:
     """The report on standard output; warnings and cautions on standard error, unless both are one screen."""
+    from pulseprop.cli.asides import tell_asides
     from pulseprop.reports.document import write_json
-    from pulseprop.reports.text import printable, text_report
+    from pulseprop.reports.text import text_report
 
     if json_path is not None:
         write_json(json_path, run.as_json())
     else:
         click.echo(text_report(run), nl=False)
-        if sys.stdout.isatty() and sys.stderr.isatty():
-            return
-    asides = [f"warning: {warning}" for warning in run.warnings]
-    asides += [f"caution [{caution.code}] {caution.line}" for caution in run.cautions]
-    for aside in asides:
-        click.echo(printable(aside), err=True)
+    tell_asides(run, shown=json_path is None)

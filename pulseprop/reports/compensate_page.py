@@ -16,7 +16,13 @@ from pulseprop.reports.templating import placed, rendered
 
 __all__ = ["compensate_page_html", "write_compensate_page"]
 
-FIGURES_IN = {"designs": ("compensated",), "design-1": ("residual-phase",), "order": ("mirror-order",)}
+FIGURES_IN = {
+    "designs": ("compensated",),
+    "design-1": ("residual-phase",),
+    "order": ("mirror-order",),
+    "build": ("budget", "autocorrelation"),
+}
+"""Which figures stand below which section; each further mirror to be ordered has one of its own."""
 
 
 def compensate_page_html(answer: Compensation, run: Run, drawn: Iterable[Drawing]) -> str:

@@ -12,6 +12,8 @@ from pulseprop.constants import SPEED_OF_LIGHT
 from pulseprop.propagation.numerals import scaled, span
 from pulseprop.propagation.result import Fields, Run
 from pulseprop.reports.curves import UNITS, bounds_of, pulse_curve, thin_pairs
+from pulseprop.reports.draw_autocorrelation import draw_autocorrelation
+from pulseprop.reports.draw_band import draw_budget
 from pulseprop.reports.drawing import Drawing, source_line
 from pulseprop.reports.figure_style import COLOURS, Frame, canvas, label_x, label_y, styled, words
 
@@ -23,8 +25,7 @@ SEEN = 2e-3
 """Power over the peak from which on a pulse is seen on a linear axis."""
 
 WIDEST = 40.0
-"""Widths of the compensated pulse that the axis of time shows at most; what today's pulse has beyond is "
-"cut."""
+"""Widths of the compensated pulse that the axis of time shows at most; today's pulse is cut there."""
 
 BRIGHT = 1e-2
 """Share of the spectrum's peak from which on the phase that is left is drawn."""
@@ -36,8 +37,11 @@ def compensation_drawings(answer: Compensation, run: Run) -> Iterator[Drawing]:
     """All figures that have something to show; run: the best design, sent in full."""
     yield _pulses(answer, run)
     yield _phase(answer.designs[0], run)
-    if answer.designs[0].mirrors:
-        yield _order(answer.designs[0].mirrors[0], run)
+    for number, mirror in enumerate(answer.designs[0].mirrors, 1):
+        yield _order(mirror, "" if number == 1 else f"-{number}", run)
+    if run.elements:
+        yield draw_budget(run)
+    yield draw_autocorrelation(run)
 
 
 @styled
@@ -96,8 +100,7 @@ def _phase(design: Design, run: Run) -> Drawing:
     label_x(panel, "vacuum wavelength, nm")
     caption = (
         "Design 1: the spectrum that leaves (grey) and the spectral phase that is left beyond a constant "
-        "and a "
-        "delay (line)."
+        "and a delay (line)."
     )
     columns = {"wavelength_nm": wavelength, "spectrum_over_peak": power, "phase_rad": phase}
     return Drawing(name="residual-phase", caption=caption, figure=figure, columns=columns)
@@ -121,7 +124,7 @@ def residual_phase(fields: Fields) -> tuple[Real, Real, Real]:
 
 
 @styled
-def _order(order: MirrorOrder, run: Run) -> Drawing:
+def _order(order: MirrorOrder, ending: str, run: Run) -> Drawing:
     """The target of a mirror over wavelength with its band."""
     figure, panels = canvas(source=source_line(run))
     panel = panels[0]
@@ -138,8 +141,7 @@ def _order(order: MirrorOrder, run: Run) -> Drawing:
     label_y(panel, "GDD, fs²")
     caption = (
         f"Target GDD of one bounce of {order.element} with the band within which it must stay, and the GDD "
-        "that "
-        "would leave no phase at all."
+        "that would leave no phase at all."
     )
     columns = {
         "wavelength_nm": order.wavelength_nm,
@@ -148,4 +150,4 @@ def _order(order: MirrorOrder, run: Run) -> Drawing:
         "highest_gdd_fs2": order.high_fs2,
         "ideal_gdd_fs2": order.ideal_gdd_fs2,
     }
-    return Drawing(name="mirror-order", caption=caption, figure=figure, columns=columns)
+    return Drawing(name=f"mirror-order{ending}", caption=caption, figure=figure, columns=columns)
