@@ -18,7 +18,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.elements.device import Device, require_diffraction
-from pulseprop.elements.edges import amplitude_on, missed, require_beam
+from pulseprop.elements.edges import amplitude_on, missed, require_beam, share_beside
 from pulseprop.elements.telling import Light
 from pulseprop.elements.wedges import Wedge, Wedges
 from pulseprop.elements.words import in_unit, nanometres, times
@@ -127,12 +127,34 @@ class GrismPair(Device):
         return self.second - self.wedges.second_crossing(omega)[0]
 
     def factor(self, omega: Numbers, view: View = View.AXIS) -> Complex | None:
-        """Amplitude that meets the second grating, shape of omega; None where its width is not stated."""
-        if self.width is None or self.beam_radius is None:
+        """Amplitude that passes the prisms' edges and meets the second grating, shape of omega; None where
+        the beam is not known."""
+        if self.beam_radius is None:
             return None
+        crossing = self.wedges.second_crossing(omega)[0]
+        reached = np.where(np.isfinite(crossing), crossing, -np.inf)
+        edges = share_beside(self.insertion, self.spot) * share_beside(reached, self.spot)
+        amplitude = np.asarray(np.sqrt(edges), dtype=complex)
+        if self.width is None:
+            return amplitude
+        return amplitude * amplitude_on(self.width, self.second - crossing, self.spot)
+
+    @property
+    def spot(self) -> float:
+        """1/e^2 radius of the beam on the gratings, along the way the edges lie, m; 0 where it is not
+        known."""
         entry, inside, _ = self.wedges.carrier
-        spot = self.beam_radius / np.cos(self.incidence) * float(np.cos(entry) / np.cos(inside))
-        return amplitude_on(self.width, self.landing(omega), spot)
+        return (self.beam_radius or 0.0) * float(np.cos(entry) / (np.cos(self.incidence) * np.cos(inside)))
+
+    @property
+    def remarks(self) -> tuple[str, ...]:
+        """That an edge stands in the beam."""
+        if min(self.insertion, self.second) >= self.spot:
+            return ()
+        return (
+            f"{self.name}: an edge of the prisms cuts into the beam, whose radius on the gratings is "
+            f"{in_unit(self.spot, 'mm', 3)}: that much insertion or more is needed",
+        )
 
     @property
     def footprint(self) -> float:
@@ -156,8 +178,8 @@ class GrismPair(Device):
         return ()
 
     def warnings(self, light: Light) -> tuple[str, ...]:
-        """How much misses the second grating."""
-        return missed(self.name, self.factor(light.omega), light, "the second grating")
+        """How much misses prisms and gratings."""
+        return missed(self.name, self.factor(light.omega), light, "the gratings")
 
     @property
     def stray_beams(self) -> tuple[str, ...]:

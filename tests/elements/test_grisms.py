@@ -169,11 +169,24 @@ def test_losses():
     assert abs(transfer_of(pair(efficiency=0.9, passes=2), np.array(CENTRE))) ** 2 == pytest.approx(
         0.9**4, rel=1e-12
     )
-    element = pair(width=4e-3, beam_radius=0.3e-3, separation=40e-3)
+    element = pair(width=4e-3, beam_radius=0.3e-3, separation=40e-3, insertion=20e-3, second_insertion=20e-3)
     omega = CENTRE * np.linspace(0.8, 1.0, 4001)
     edge = int(np.argmin(np.abs(np.abs(element.landing(omega)) - 2e-3)))
     assert abs(element.factor(omega)[edge]) ** 2 == pytest.approx(0.5, abs=5e-3)
     assert "4 times" not in pair().stray_beams[0]
+
+
+def test_edges_of_the_prisms_cut_the_beam():
+    """On the edge of either, half of the beam; a radius inside (on the grating), all but 2.275 %."""
+    at = np.array(CENTRE)
+    for key in ("insertion", "second_insertion"):
+        on_edge = pair(**{"beam_radius": 0.3e-3, key: 0.0})
+        assert abs(complex(on_edge.factor(at))) ** 2 == pytest.approx(0.5, rel=1e-9)
+        assert "an edge of the prisms cuts into the beam" in on_edge.remarks[0]
+        inside = pair(**{"beam_radius": 0.3e-3, key: on_edge.spot})
+        assert abs(complex(inside.factor(at))) ** 2 == pytest.approx(1 - 0.0227501, abs=1e-6)
+        assert inside.remarks == ()
+    assert pair().factor(at) is None
 
 
 @pytest.mark.parametrize(
