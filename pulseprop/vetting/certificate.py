@@ -7,7 +7,7 @@ from collections.abc import Iterator, Sequence
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.certificate_catalogue import against_catalogue
-from pulseprop.vetting.certificate_follow import ROOM, contradictions, implied_by
+from pulseprop.vetting.certificate_follow import ROOM, contradictions, implied_by, involved_in
 from pulseprop.vetting.certificate_functionals import Order, Term
 from pulseprop.vetting.certificate_medium import Claim, claim_of
 from pulseprop.vetting.certificate_proof import Printed
@@ -54,7 +54,12 @@ def judge_certificate(certificate: Certificate, request: Request, *, date: str, 
     factor = proof.least_factor.factor if proof is not None else None
     stated = all(value.stated for value in values)
     holds = not inferred or _holds_without_guess(certificate, values)
-    proven = factor is not None and factor > 1 and stated and holds
+    proven = (
+        proof is not None
+        and proof.least_factor.factor > 1
+        and holds
+        and all(value.stated for value in involved_in(values, proof))
+    )
     repaired = any(finding.code == "does-not-follow" and finding.repair for finding in findings)
     at = _Guaranteed(proof, stated)
     return told(

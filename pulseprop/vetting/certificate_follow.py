@@ -12,7 +12,7 @@ from pulseprop.vetting.certificate_rows import ABBE_ABOVE, ABBE_BELOW, INDICES, 
 from pulseprop.vetting.certificate_values import PrintedValue
 from pulseprop.vetting.result import Finding
 
-__all__ = ["ROOM", "contradictions", "implied_by"]
+__all__ = ["ROOM", "contradictions", "implied_by", "involved_in"]
 
 Interval = tuple[float, float]
 Band = tuple[float, float]
@@ -37,11 +37,15 @@ def implied_by(proof: Printed, value: PrintedValue) -> Interval | None:
     return None if found is None else (found[0] + more, found[1] + more)
 
 
+def involved_in(values: Sequence[PrintedValue], proof: Printed) -> list[PrintedValue]:
+    """The numbers that carry the proof."""
+    shares = abs(proof.least_factor.weights) * [row.error for row in proof.rows]
+    return [value for value, share in zip(values, shares, strict=True) if share > CARRIES]
+
+
 def contradictions(values: Sequence[PrintedValue], proof: Printed, band: Band) -> Iterator[Finding]:
     """Of a proof with a factor above 1: the numbers that carry it, and those that alone may be the matter."""
-    least = proof.least_factor
-    shares = abs(least.weights) * [row.error for row in proof.rows]
-    involved = [value for value, share in zip(values, shares, strict=True) if share > CARRIES]
+    least, involved = proof.least_factor, involved_in(values, proof)
     yield Finding(
         code="contradict-each-other",
         severity="error",

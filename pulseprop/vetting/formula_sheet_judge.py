@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator
+from dataclasses import replace
 
 import numpy as np
 
@@ -12,7 +13,7 @@ from pulseprop.vetting.causal import Causality
 from pulseprop.vetting.formula_sheet import FormulaSheet
 from pulseprop.vetting.formula_sheet_checks import BROKEN, on_its_face
 from pulseprop.vetting.formula_sheet_repairs import Mended, mending
-from pulseprop.vetting.formula_sheet_samples import Settled, settled_factor
+from pulseprop.vetting.formula_sheet_samples import Settled, index_at, places, settled_factor
 from pulseprop.vetting.request import Request
 from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_abbe import abbe_bounds
@@ -42,6 +43,7 @@ def judge_formula(
     sheet: FormulaSheet, request: Request, *, date: str, version: str, causality: Causality
 ) -> Vetted:
     """Raises InputError for a requirement that cannot be read. A factor that does not settle is told."""
+    sheet = _as_asked(sheet, request)
     face = tuple(on_its_face(sheet))
     broken = any(finding.code in BROKEN for finding in face)
     settled, trouble = _settled(sheet, causality, broken)
@@ -72,6 +74,17 @@ def judge_formula(
         blind_spots=BLIND,
         curves=_curves(settled),
     )
+
+
+def _as_asked(sheet: FormulaSheet, request: Request) -> FormulaSheet:
+    """With the claim and the uncertainty of n that an option states in place of the file's."""
+    if request.claimed is not None:
+        sheet = replace(sheet, claimed=request.claimed)
+    stated = request.uncertainty.get("n")
+    if stated is None:
+        return sheet
+    size = float(np.real(index_at(sheet, places(sheet, 2))[1])) if stated.relative else 0.0
+    return replace(sheet, error=stated.absolute + stated.relative * size, stated=True)
 
 
 def _settled(

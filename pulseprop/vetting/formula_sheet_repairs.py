@@ -15,7 +15,7 @@ from pulseprop.vetting.causal import Causality
 from pulseprop.vetting.formula_sheet import FormulaSheet
 from pulseprop.vetting.formula_sheet_claim import checks_agree, like_claim
 from pulseprop.vetting.formula_sheet_edits import edits
-from pulseprop.vetting.formula_sheet_samples import data_of, index_at, places
+from pulseprop.vetting.formula_sheet_samples import data_of, index_at, places, standing_of
 
 __all__ = ["Mended", "mending"]
 
@@ -68,6 +68,6 @@ def _agrees(sheet: FormulaSheet) -> bool:
 
 def _factor(sheet: FormulaSheet, causality: Causality) -> float | None:
     try:
-        return causality.standing(data_of(sheet, ROWS), thorough=False).factor
+        return standing_of(data_of(sheet, ROWS), causality, thorough=False).factor
     except NumericalLimit:
         return None

@@ -7,7 +7,7 @@ of rows changes it by less than one per cent.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -17,15 +17,16 @@ from pulseprop.errors import NumericalLimit
 from pulseprop.vetting.causal import Causality, Standing
 from pulseprop.vetting.formula_sheet import FormulaSheet, medium_of
 
-__all__ = ["Settled", "data_of", "index_at", "places", "settled_factor"]
+__all__ = ["Settled", "data_of", "index_at", "places", "settled_factor", "standing_of"]
 
 Real = NDArray[np.float64]
 
 FIRST, MOST = 32, 256
 """Intervals between rows to begin with, and at most."""
 SETTLED = 0.01
-SMALL = 1e-2
-"""Factors below this need not settle: they say that the formula is a passive causal material's."""
+SMALL = 1.0
+"""Factors below this settle to a share of it: they say that the formula is a passive causal material's."""
+LARGER = 10.0
 LONGEST = 20.0
 """A range that reaches to zero frequency is sampled down to the highest frequency over this."""
 
@@ -62,12 +63,22 @@ def data_of(sheet: FormulaSheet, intervals: int) -> PassiveData:
     return PassiveData(omega=omega, index=index, index_error=np.full(len(omega), sheet.error))
 
 
+def standing_of(data: PassiveData, causality: Causality, *, thorough: bool) -> Standing:
+    """The standing; where the errors are too small for double precision that of ten times as large ones, for
+    the factor is in proportion. Raises NumericalLimit where that does not help either."""
+    try:
+        return causality.standing(data, thorough=thorough)
+    except NumericalLimit:
+        larger = causality.standing(replace(data, index_error=LARGER * data.index_error), thorough=thorough)
+        return replace(larger, factor=LARGER * larger.factor)
+
+
 def settled_factor(sheet: FormulaSheet, causality: Causality, *, thorough: bool) -> Settled:
     """The factor, from rows doubled until it settles. Raises NumericalLimit where it does not."""
     intervals, before, change = FIRST, None, np.inf
     while True:
         data = data_of(sheet, intervals)
-        factor = causality.standing(data, thorough=False).factor
+        factor = standing_of(data, causality, thorough=False).factor
         if before is not None:
             change = abs(factor - before) / max(factor, SMALL)
             if change <= SETTLED:
@@ -79,5 +90,5 @@ def settled_factor(sheet: FormulaSheet, causality: Causality, *, thorough: bool)
                 remedy="State a narrower range, or a larger uncertainty",
             )
         before, intervals = factor, 2 * intervals
-    standing = causality.standing(data, thorough=thorough)
+    standing = standing_of(data, causality, thorough=thorough)
     return Settled(data=data, standing=standing, rows=intervals + 1, change=float(change))

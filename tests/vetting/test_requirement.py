@@ -3,14 +3,18 @@
 from __future__ import annotations
 
 import math
+from dataclasses import replace
 
 import numpy as np
 import pytest
 
+from pulseprop.causality.passive_data import PassiveData
 from pulseprop.errors import InputError
 from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.vetting.requirement import read_requirement
+from pulseprop.vetting.requirement_abbe import abbe_bounds
 from pulseprop.vetting.requirement_answer import abbe_interval, answered, material_answer
+from pulseprop.vetting.requirement_transmittance import transmitted_by
 from pulseprop.vetting.result import Bounds
 
 C = 299792458.0
@@ -149,3 +153,45 @@ def test_mirror_requirement_on_a_material_is_not_decided():
     answer = material_answer(read_requirement("gdd at 800 nm = -40 +- 5 fs^2"), _known({}))
     assert answer.verdict == "not decided"
     assert "mirror" in answer.reason
+
+
+def test_internal_transmittance_from_rows_of_k():
+    """0.998 over 10 mm is k = 1.641e-8 at 1030 nm: T = exp(-4 pi k L / lambda)."""
+    places = np.array([omega(nm) for nm in (1100, 1030, 950, 900, 850)])
+    k = np.full(5, -np.log(0.998) * 1030e-9 / (4 * np.pi * 0.01))
+    data = PassiveData(
+        omega=places,
+        index=np.full(5, 1.45),
+        index_error=np.full(5, 1e-4),
+        k_omega=places,
+        k=k,
+        k_error=0.1 * k,
+    )
+    transmitted = transmitted_by(data)
+    low, high = transmitted(omega(1030), 0.01)[0]
+    assert (low, high) == pytest.approx((0.998**1.1, 0.998**0.9), abs=1e-9)
+    assert transmitted(omega(1200), 0.01)[0] is None
+    answer = material_answer(
+        read_requirement("internal transmittance at 1030 nm for 10 mm >= 0.997"),
+        _known({}),
+        transmitted=transmitted,
+    )
+    assert answer.verdict == "conforming"
+    assert transmitted_by(PassiveData(omega=places, index=k + 1.45, index_error=k)) is None
+    limits = np.array([True, True, False, False, False])
+    assert "lower limits" in transmitted_by(replace(data, least=limits))(omega(1050), 0.01)[1]
+
+
+def test_abbe_number_of_a_table_is_one_functional():
+    """SCHOTT N-BK7: V_d = 64.17. Half as wide as from n_d, n_F and n_C one by one, and better."""
+    medium = catalogue_medium("N-BK7")
+    places = omega(np.linspace(1000, 400, 31))
+    index = np.array([round(medium.orders(float(place)).index, 5) for place in places])
+    data = PassiveData(omega=places, index=index, index_error=np.full(31, 5e-6))
+    low, high = abbe_bounds(data)
+    assert low < 64.167 < high
+    d, f, c = (medium.orders(omega(nm)).index for nm in (587.5618, 486.1327, 656.2725))
+    apart = abbe_interval(*((line - 5e-6, line + 5e-6) for line in (d, f, c)))
+    assert high - low < 0.5 * (apart[1] - apart[0])
+    wrong = PassiveData(omega=places, index=index[::-1], index_error=np.full(31, 5e-6))
+    assert abbe_bounds(wrong) is None
