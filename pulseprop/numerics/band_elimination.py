@@ -32,16 +32,15 @@ class BandLayout:
         first = np.argmax(touched, axis=0)
         last = unknowns - 1 - np.argmax(touched[::-1], axis=0)
         self.reach = int(np.max(last - first, initial=0))
-        starts = np.arange(0, unknowns, PANEL)
         self.panels = [
-            (int(at), int(min(at + PANEL, unknowns)), np.flatnonzero((first >= at) & (first < at + PANEL)))
-            for at in starts
+            (at, min(at + PANEL, unknowns), np.flatnonzero((first >= at) & (first < at + PANEL)))
+            for at in range(0, unknowns, PANEL)
         ]
 
 
 @dataclass(frozen=True, eq=False)
 class _Panel:
-    """q: orthogonal; order: of the rows that it acts on (carried, y, e); sizes: of carried, y, e, carried on."""
+    """q: orthogonal; order: of the rows it acts on, carried ones, y and e; carry_on: rows to the next panel."""
 
     start: int
     stop: int
@@ -100,7 +99,7 @@ class BandElimination:
         return of_unknowns, np.concatenate((*left, carried))
 
     def restored(self, left: Real) -> tuple[Real, Real]:
-        """What equations of z leave, as what those of y and e leave: the way back of `reduced` with 0 for y."""
+        """What equations of z leave, as what those of y and e leave: back from `reduced`, 0 for y."""
         near, far = np.empty(len(self.near)), np.empty(len(self.far))
         end = len(left)
         on = self.panels[-1].carry_on

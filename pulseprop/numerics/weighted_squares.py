@@ -3,14 +3,12 @@
     minimise  sum (w - near)^2 / D + sum R (A' w - far)^2
 
 An interior point solves one such problem a step. Rows of A with a few neighbouring entries only are
-eliminated first (`band_elimination`). D and R grow apart without limit on the way: as long as refinement
-converges the normal equations serve (one Cholesky), then an orthogonal factorisation, which does not square
-their ratio (A. Bjorck, Numerical Methods for Least Squares Problems, SIAM 1996).
+eliminated first (`band_elimination`). D and R grow apart without limit on the way: as long as conjugate
+gradients converge on top of it the normal equations serve (one Cholesky), then an orthogonal factorisation,
+which does not square their ratio (A. Bjorck, Numerical Methods for Least Squares Problems, SIAM 1996).
 """
 
 from __future__ import annotations
-
-from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
@@ -25,11 +23,12 @@ NARROW = 6
 """Most columns that a row may span to count as narrow."""
 WORTHWHILE = 16
 """Narrow rows below which they are treated like the others."""
-REFINEMENTS = 4
-CONVERGED = 1e-10
-"""Change of the solution, over it, at which refinement stops."""
-SHRINKS = 0.1
-"""Ratio of one change to the one before, above which the normal equations are given up."""
+ITERATIONS = 25
+"""Most conjugate gradients on top of a Cholesky factor; an orthogonal one costs as much as some 40."""
+CONVERGED = 1e-9
+"""Fall of the gradient at which they stop."""
+LIFT = 1e-15
+"""Share of the diagonal added to a matrix that rounding has left without a Cholesky factor."""
 
 
 class WeightedSquares:
@@ -82,7 +81,7 @@ class Factored:
         self.rows = np.concatenate(rows)
         self.factor: _Normal | _Orthogonal | None = None
         if not squares.stiff:
-            self.factor = _normal(self.of_wide, self.rows)
+            self.factor = _Normal(self.of_wide, self.rows)
 
     def solve(self, near: Real, far: Real) -> tuple[Real, Real, Real]:
         """w (rows,), (near - w)/D (rows,) and R (A' w - far) (columns,), for near (rows,), far (columns,)."""
@@ -114,44 +113,56 @@ class Factored:
         return self.factor.solve(near, right)
 
 
-def _normal(near: Real, rows: Real) -> _Normal | None:
-    try:
-        return _Normal(near, rows)
-    except np.linalg.LinAlgError:
-        return None
-
-
 class _Normal:
-    """near^2 + rows' rows = L L'."""
+    """near^2 + rows' rows = L L', to rounding: good enough to make conjugate gradients short (those of A.
+    Bjorck, section 7.4, which never form the product)."""
 
     def __init__(self, near: Real, rows: Real) -> None:
-        from scipy.linalg import cho_factor
         from scipy.linalg.blas import dsyrk
 
         self.near, self.rows = near, rows
         full = dsyrk(1.0, rows.T, lower=1)
         full[np.diag_indices(len(near))] += near**2
-        self.factor: Any = cho_factor(full, lower=True, overwrite_a=True, check_finite=False)
+        self.lower = _lower(full)
 
     def solve(self, near: Real, right: Real) -> tuple[Real, Real, Real] | None:
-        """None where refinement does not converge."""
-        from scipy.linalg import cho_solve
-
-        z, rest_near, rest, last = np.zeros_like(near), near, right, np.inf
-        for _ in range(1 + REFINEMENTS):
-            change = cho_solve(self.factor, self.near * rest_near + rest @ self.rows, check_finite=False)
-            size = float(np.linalg.norm(change))
-            if not size <= SHRINKS * last:
-                return None
-            z, last = z + change, size
-            rest_near, rest = near - self.near * z, right - self.rows @ z
-            if size <= CONVERGED * float(np.linalg.norm(z)):
-                return z, rest_near, rest
+        """None where the gradients do not converge."""
+        z, direction = np.zeros_like(near), np.zeros_like(near)
+        size = first = np.inf
+        for _ in range(ITERATIONS):
+            slope = self._half(self.near * near + right @ self.rows, 0)
+            last, size = size, float(slope @ slope)
+            first = min(first, size) if np.isinf(first) else first
+            if size <= CONVERGED**2 * first:
+                return z, near, right
+            direction = self._half(slope, 1) + direction * (size / last)
+            of_near, of_rows = self.near * direction, self.rows @ direction
+            step = size / float(of_near @ of_near + of_rows @ of_rows)
+            z = z + step * direction
+            near, right = near - step * of_near, right - step * of_rows
         return None
+
+    def _half(self, right: Real, transposed: int) -> Real:
+        from scipy.linalg.lapack import dtrtrs
+
+        return np.asarray(dtrtrs(self.lower, right, lower=1, trans=transposed)[0])
+
+
+def _lower(full: Real) -> Real:
+    """The Cholesky factor, with as little added to the diagonal as makes one."""
+    from scipy.linalg.lapack import dpotrf
+
+    diagonal, lift = np.diag(full).copy(), 0.0
+    while True:
+        lower, failed = dpotrf(full, lower=1)
+        if not failed:
+            return np.asarray(lower)
+        lift = max(10 * lift, LIFT)
+        full[np.diag_indices(len(full))] = diagonal * (1 + lift)
 
 
 class _Orthogonal:
-    """Rows sorted by size, as the largest must be eliminated first; Q stays in the form of its reflections."""
+    """Rows sorted by size, as the largest must be eliminated first; Q stays as its reflections."""
 
     def __init__(self, near: Real, rows: Real) -> None:
         from scipy.linalg.lapack import dgeqrf
