@@ -14,7 +14,6 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.causality.bounds_band import allowed_band
-from pulseprop.causality.bounds_programme import WELL_WITHIN
 from pulseprop.causality.bounds_sources import Absorbing, Source, Transparent
 from pulseprop.causality.coarse_features import coarse_features
 from pulseprop.causality.feasibility import Feasibility
@@ -80,9 +79,7 @@ def _unasked(data: PassiveData, omega: float) -> PassiveBounds:
 
 def _source(data: PassiveData, feasibility: Feasibility | None) -> tuple[Source, str]:
     """With what is to be said of quantities it does not tell."""
-    known = None
-    if feasibility is not None and feasibility.factor < 1 - WELL_WITHIN:
-        known = feasibility.material.attained.masses
+    known = None if feasibility is None else feasibility.material.attained.masses
     if data.k is None or data.k_omega is None or data.k_error is None:
         return Transparent(data), ""
     coarse = coarse_features(data.k_omega, data.k, data.k_error)

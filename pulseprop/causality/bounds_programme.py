@@ -19,7 +19,7 @@ from pulseprop.causality.bounds_materials import Functional, Materials
 from pulseprop.errors import NumericalLimit
 from pulseprop.numerics.box_programme import solve_box
 
-__all__ = ["WELL_WITHIN", "Proofs"]
+__all__ = ["Proofs"]
 
 Real = NDArray[np.float64]
 Interval = tuple[float, float]
@@ -40,13 +40,15 @@ COUNTS = 0.01
 """Places that violate by less than this share of the worst can wait."""
 TOWARDS = (1 / 3, 2 / 3)
 """Shares of the way from a new place to the known ones beside it."""
+SHARPER = 0.2
+"""Accuracy of the next programme of an end, over that of the last and over what the goal asks for."""
 ZOOMS, SHARES = 5, np.linspace(0.0, 1.0, 9)
 
 
 class Proofs:
     """All proofs about one class of materials: they share its matrix, its size, and the places found useful.
 
-    known: places of a material that keeps within the limits with WELL_WITHIN to spare, where one is known.
+    known: places of a material within the limits, where one is known.
 
     Raises NumericalLimit where no material of the class keeps within the limits, or nothing limits it.
     """
@@ -57,8 +59,7 @@ class Proofs:
         self.grid_columns = materials.continuum(materials.grid)
         self.grid_sizes = self._sizes(self.grid_columns)
         self.fixed_sizes = self._sizes(materials.fixed)
-        if known is None:
-            self._find_room()
+        self._inner = self._room()
         self.total = self._total()
         self._base = self.places
 
@@ -83,12 +84,15 @@ class Proofs:
         return low.proven, -high.proven
 
     def of_material(self, functionals: Sequence[Functional]) -> Real:
-        """Values of one of the materials."""
-        places, amounts = self._material
-        return np.array([np.append(f.fixed, f.continuum(places)) @ amounts for f in functionals])
+        """Values of a material well within the limits."""
+        return np.array([self._of_inner(functional) for functional in functionals])
+
+    def _of_inner(self, functional: Functional) -> float:
+        places, amounts, _ = self._inner
+        return float(np.append(functional.fixed, functional.continuum(places)) @ amounts)
 
     def solved(self, functional: Functional, places: Real, accuracy: float) -> tuple[Real, float]:
-        """Weights of the rows, and the value of the functional that these places reach."""
+        """Weights of the rows, and the value of the functional that one of the materials has."""
         materials = self.materials
         matrix = np.hstack([materials.fixed, materials.continuum(places)])
         cost = np.append(functional.fixed, functional.continuum(places))
@@ -102,8 +106,19 @@ class Proofs:
             floor=TINY,
             tolerable=max(accuracy, TOLERABLE),
         )
-        self._material = places, found.x
-        return found.dual * scale, found.value * scale
+        amounts = np.maximum(found.x, 0.0)
+        share = self._inward(matrix @ amounts)
+        return found.dual * scale, share * self._of_inner(functional) + (1 - share) * float(cost @ amounts)
+
+    def _inward(self, rows: Real) -> float:
+        """Share of the inner material that brings rows back within the limits."""
+        inner = self._inner[2]
+        over = np.maximum(rows - self.materials.upper, self.materials.lower - rows)
+        out = over > 0
+        room = np.where(
+            rows > self.materials.upper, self.materials.upper - inner, inner - self.materials.lower
+        )
+        return float(np.max(over[out] / (over[out] + np.maximum(room[out], 0.0)), initial=0.0))
 
     def worth(self, weights: Real) -> float:
         """What the weights prove where no column violates them."""
@@ -168,8 +183,8 @@ class Proofs:
             self.places = np.union1d(self.places, more)
         raise NumericalLimit("no proof of the total was found")
 
-    def _find_room(self) -> None:
-        """Places enough for a material that keeps well within all limits, or else the best there is."""
+    def _room(self) -> tuple[Real, Real, Real]:
+        """Places, amounts of all columns, and rows of a material well within all limits, if any."""
         none = Functional(fixed=np.zeros(len(self.fixed_sizes)), continuum=np.zeros_like)
         materials = self.materials
         for _ in range(ROUNDS):
@@ -177,14 +192,17 @@ class Proofs:
             found = solve_box(
                 matrix, materials.lower, materials.upper, stretch=materials.size, accuracy=ROUGHLY, floor=1.0
             )
+            amounts = np.maximum(found.x, 0.0)
+            inner = self.places, amounts, matrix @ amounts
             if found.t < -WELL_WITHIN:
-                return
+                return inner
             _, more = self.worst(none, found.dual)
             if not len(more):
                 break
             self.places = np.union1d(self.places, _with_neighbours(more, self.places))
         if found.t > 0:
             raise NumericalLimit("no passive causal material has these numbers within their uncertainties")
+        return inner
 
 
 class _End:
@@ -193,17 +211,20 @@ class _End:
     def __init__(self, proofs: Proofs, functional: Functional) -> None:
         self.proofs, self.functional = proofs, functional
         self.places, self.found = proofs.places, np.zeros(0)
-        self.proven, self.reached = -np.inf, np.inf
-        self._round(FIRST)
+        self.proven, self.reached, self._accuracy = -np.inf, np.inf, FIRST
+        self._round()
 
     def improve(self, goal: float) -> None:
         """One more round, towards a distance `goal` of proven and reached."""
-        self._round(max(min(FIRST, 0.2 * goal / abs(self.reached)), LAST))
+        wanted = SHARPER * goal / (abs(self.reached) + TINY)
+        self._accuracy = max(min(SHARPER * self._accuracy, wanted), LAST)
+        self._round()
 
-    def _round(self, accuracy: float) -> None:
+    def _round(self) -> None:
         """Solve, prove, and let the places join that would have helped."""
         proofs, functional = self.proofs, self.functional
-        weights, self.reached = proofs.solved(functional, self.places, accuracy)
+        weights, reached = proofs.solved(functional, self.places, self._accuracy)
+        self.reached = min(self.reached, reached)
         worst, more = proofs.worst(functional, weights)
         self.proven = max(self.proven, proofs.worth(weights) - max(worst, 0.0) * proofs.total)
         more = _with_neighbours(more, self.places)

@@ -40,7 +40,7 @@ class Source(Protocol):
 class Absorbing:
     """Rows of k as well as of n: linear programmes in k, for the first `count` quantities.
 
-    known: masses of a material well within the uncertainties, where one is known.
+    known: masses of a material within the uncertainties, where one is known.
 
     Raises NumericalLimit where no material has the numbers, or they do not limit what absorbs outside them.
     """

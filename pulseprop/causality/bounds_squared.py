@@ -26,8 +26,8 @@ __all__ = ["Squared", "index_of_chi", "squared_rows"]
 
 Real = NDArray[np.float64]
 
-SETTLING, SPARE = 20, 1.02
-"""Tries to find a room, each with so much to spare."""
+FARTHEST, SPARE = 4.0, 1.02
+"""A room is looked for up to so many times the linear part, each time with a little to spare."""
 
 
 def squared_rows(data: PassiveData) -> PassiveData | None:
@@ -67,8 +67,9 @@ class Squared:
         The materials are a connected set. If within some room the linear part and the remainder stay strictly
         inside it, no material can have left it. None where no such room is found.
         """
-        room = np.max(np.abs(linear), axis=1)
-        for _ in range(SETTLING):
+        first = np.max(np.abs(linear), axis=1)
+        room = first
+        while np.all(room < FARTHEST * first):
             needed = np.max(np.abs(self._with_remainder(linear, room)), axis=1)
             if np.all(needed < room):
                 return np.asarray(room)

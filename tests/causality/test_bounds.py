@@ -1,4 +1,4 @@
-"""Guaranteed bounds: against the published index of fused silica, brute force, and materials known exactly."""
+"""Guaranteed bounds: against fused silica as published, brute force, and materials known exactly."""
 
 from __future__ import annotations
 
@@ -65,8 +65,8 @@ def holds(found, expected, quantities=QUANTITIES):
     ],
 )
 def test_gvd_of_fused_silica_at_800_nm(error, low, high):
-    """True 36.16 fs^2/mm. low, high: optimum in k by brute force (HiGHS, 2,000 places), same 61 rows; the
-    optimum in chi is narrower by 0.4 to 5 %, and 1 % is the room for what is given away and for remainders."""
+    """True 36.16 fs^2/mm. low, high: optimum in k by brute force (HiGHS, 2,000 places), same 61 rows; that
+    in chi is narrower by 0.4 to 5 %, and 1 % is the room for what is given away and for remainders."""
     (found,) = bounds(silica(error), place([800]))
     expected = truth(malitson, place(800))
     holds(found, expected)
@@ -77,27 +77,26 @@ def test_gvd_of_fused_silica_at_800_nm(error, low, high):
     assert high - 0.05 * width < gvd[1] < high + 0.01 * width
 
 
-@pytest.mark.parametrize("error", [1e-2, 1e-3, 1e-4, 1e-5])
+@pytest.mark.parametrize("error", [1e-2, 1e-3, 1e-5])
 def test_brute_force_comes_near_from_inside(error):
-    """Materials in chi on a fine grid of places, each end improved in turn: never outside, 5 % short at most."""
+    """Materials in chi at many fixed places, improved in turn: never outside, 5 % narrower at most."""
     data = silica(error, rows=31)
-    for nm in (700, 1100):
-        (found,) = bounds(data, place([nm]))
-        for quantity, name in enumerate(QUANTITIES[:3]):
-            inner = brute_force(data, float(place(nm)), quantity)
-            outer = getattr(found, name)
-            slack = 1e-6 * (inner[1] - inner[0])
-            assert outer[0] <= inner[0] + slack, (nm, name)
-            assert outer[1] >= inner[1] - slack, (nm, name)
-            assert outer[1] - outer[0] <= 1.05 * (inner[1] - inner[0]), (nm, name)
+    (found,) = bounds(data, place([700]))
+    for quantity, name in enumerate(QUANTITIES[:3]):
+        inner = brute_force(data, float(place(700)), quantity)
+        outer = getattr(found, name)
+        slack = 1e-6 * (inner[1] - inner[0])
+        assert outer[0] <= inner[0] + slack, name
+        assert outer[1] >= inner[1] - slack, name
+        assert outer[1] - outer[0] <= 1.05 * (inner[1] - inner[0]), name
 
 
 def brute_force(data, omega, quantity):
-    """Lowest and highest value that materials with masses in chi at 1,600 places reach."""
+    """Lowest and highest value that materials with masses in chi at 1,000 places reach."""
     unit = data.omega[-1]
     rows, w = data.omega / unit, omega / unit
-    below = rows[0] ** 2 * (1 - np.geomspace(1e-7, 1, 600))
-    above = rows[-1] ** 2 * (1 + np.geomspace(1e-7, 1e5, 1000))
+    below = rows[0] ** 2 * (1 - np.geomspace(1e-7, 1, 400))
+    above = rows[-1] ** 2 * (1 + np.geomspace(1e-7, 1e5, 600))
     s = np.concatenate((below, above))
     size = np.minimum(np.abs(s - rows[0] ** 2), np.abs(s - rows[-1] ** 2))
     matrix = np.hstack([np.ones((len(rows), 1)), size / (s - rows[:, None] ** 2)])
@@ -108,7 +107,7 @@ def brute_force(data, omega, quantity):
     ends = []
     for sign in (1, -1):
         chi, best = orders @ optimum(matrix, low, high, orders[quantity] * sign), np.inf
-        for _ in range(4):
+        for _ in range(3):
             x = optimum(matrix, low, high, sign * gradient(chi, w, quantity) @ orders)
             chi = orders @ x
             best = min(best, sign * of_chi(chi, w, quantity))
@@ -241,8 +240,8 @@ def with_k(omega, exact, error=1e-4):
 
 
 def test_gvd_inside_absorption_is_wide():
-    """k +-(1e-5 + 1 %) on rows 0.025 rad/fs apart: of the order of +-1000 fs^2/mm (measured once by brute
-    force for such a line), because the rows leave k free to bend between them."""
+    """k +-(1e-5 + 1 %) on rows 0.025 rad/fs apart: of the order of +-1000 fs^2/mm (a prototype's figure),
+    because the rows leave k free to bend between them."""
     omega, exact = lorentz(81)
     (found,) = bounds(with_k(omega, exact), np.array([3.0e15]))
     low, high = np.array(found.gvd) / FS2_PER_MM
@@ -323,7 +322,7 @@ def test_a_transparent_band_extends_the_bounds():
 def test_absorbance_with_anchors_bounds_the_index():
     """k at all rows, the index at two places only; at one place it is limited only with the strength."""
     omega, exact = lorentz(81)
-    rows = dict(k_omega=omega, k=exact.imag, k_error=1e-5 + 0.01 * exact.imag)
+    rows = {"k_omega": omega, "k": exact.imag, "k_error": 1e-5 + 0.01 * exact.imag}
 
     def anchored(*chosen, knowledge=None):
         chosen = list(chosen)
