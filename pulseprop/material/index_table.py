@@ -51,21 +51,23 @@ class _Model(Protocol):
 class IndexTable:
     """n + i k - 1 of a tabulated medium.
 
-    omega, index, k: the rows, rad/s ascending, read-only (k None where not given). uncertainty_factor: least
-    factor by which the uncertainties must be stretched. causal: False where the table is used as printed.
-    notes: what was assumed.
+    omega, index, k: the rows, rad/s ascending, read-only (k None where not given), with their uncertainties
+    index_error and k_error. uncertainty_factor: least factor by which the uncertainties must be stretched.
+    causal: False where the table is used as printed. notes: what was assumed.
     """
 
     omega: Real
     index: Real
+    index_error: Real
     k: Real | None
+    k_error: Real | None
     uncertainty_factor: float
     causal: bool
     model: _Model
     notes: tuple[str, ...] = ()
 
     def __post_init__(self) -> None:
-        for column in (self.omega, self.index, self.k):
+        for column in (self.omega, self.index, self.index_error, self.k, self.k_error):
             if column is not None:
                 column.setflags(write=False)
 
@@ -124,7 +126,9 @@ def index_table(
     return IndexTable(
         omega=omega,
         index=rest[0],
+        index_error=rest[1],
         k=rest[2] if k is not None else None,
+        k_error=rest[3] if k is not None else None,
         uncertainty_factor=factor,
         causal=causal,
         model=model,

@@ -33,10 +33,12 @@ from pulseprop.units import to_si
 
 if TYPE_CHECKING:
     from pulseprop.material.absorption_table import AbsorptionTable
+    from pulseprop.material.index_table import IndexTable
 
 __all__ = [
     "SpectrumColumns",
     "absorption_of",
+    "fitted_table",
     "index_table_of",
     "lines_of",
     "spectrum_columns",
@@ -125,6 +127,22 @@ def _ceiling(spec: AbsorptionFile) -> float | None:
 def index_table_of(scenario: Scenario, name: str, table: MediumTable) -> Medium:
     """The medium of a table of n, or n and k."""
     from pulseprop.material.held_at_ends import HeldAtEnds
+
+    found, spec = fitted_table(scenario, table), table.index
+    assert spec is not None
+    return Medium(
+        name=name,
+        response=WithAbsorption(Constant(0.0), found if found.causal else HeldAtEnds(found)),
+        source=table.source or f"table {Path(spec.file).name}",
+        relative_to=spec.relative_to or "not stated",
+        causal=found.causal,
+        notes=found.notes,
+        printed_digits=DIGITS_OF_TABLES,
+    )
+
+
+def fitted_table(scenario: Scenario, table: MediumTable) -> IndexTable:
+    """The rows of a medium's `index` with their uncertainties, and the model that explains them."""
     from pulseprop.material.index_table import index_table
 
     spec = table.index
@@ -132,7 +150,7 @@ def index_table_of(scenario: Scenario, name: str, table: MediumTable) -> Medium:
     columns = spectral_columns(scenario.path_of(spec.file), spec, index=True)
     _check_index_column(columns)
     k, stated = columns.beside(), spec.uncertainty
-    found = _blaming(
+    return _blaming(
         columns.table,
         lambda: index_table(
             _omega(columns, spec),
@@ -146,15 +164,6 @@ def index_table_of(scenario: Scenario, name: str, table: MediumTable) -> Medium:
             as_printed=table.as_printed,
             numbers=_line_numbers(columns.table),
         ),
-    )
-    return Medium(
-        name=name,
-        response=WithAbsorption(Constant(0.0), found if found.causal else HeldAtEnds(found)),
-        source=table.source or f"table {Path(spec.file).name}",
-        relative_to=spec.relative_to or "not stated",
-        causal=found.causal,
-        notes=found.notes,
-        printed_digits=DIGITS_OF_TABLES,
     )
 
 
