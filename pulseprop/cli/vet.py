@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import sys
 from collections.abc import Sequence
 from typing import TYPE_CHECKING, Any
 
@@ -13,6 +14,9 @@ if TYPE_CHECKING:
     from pulseprop.vetting.result import Vetted
 
 __all__ = ["vet"]
+
+DRAWING = 0.95
+"""Share of the work behind when figures are drawn."""
 
 
 @click.command()
@@ -57,8 +61,16 @@ __all__ = ["vet"]
 @click.option("--strict", is_flag=True, help='Exit code 1 also for "doubtful".')
 @click.option("--json", "json_path", metavar="PATH|-", help=JSON_HELP)
 @click.option("--page", "page_path", metavar="FILE", help="Write one self-contained page for the supplier.")
+@click.option(
+    "--figures", "figures_path", metavar="DIR", help="Write figures (PNG, SVG) with their numbers (CSV)."
+)
 def vet(
-    tables: tuple[str, ...], json_path: str | None, page_path: str | None, strict: bool, **options: Any
+    tables: tuple[str, ...],
+    json_path: str | None,
+    page_path: str | None,
+    figures_path: str | None,
+    strict: bool,
+    **options: Any,
 ) -> int:
     """Vet vendor data: can the numbers be true, what do they guarantee, do they meet requirements?
 
@@ -69,11 +81,14 @@ def vet(
     """
     from pulseprop import api
     from pulseprop.reports.document import write_json
+    from pulseprop.reports.progress import Progress
 
-    check_outputs(tables, json_path, (page_path,))
-    answers = api.vet(tables, strict=strict, **options)
-    if page_path:
-        _write_page(answers, page_path)
+    check_outputs(tables, json_path, (page_path,), figures_path)
+    with Progress(sys.stderr) as progress:
+        answers = api.vet(tables, progress=progress, strict=strict, **options)
+        if page_path or figures_path:
+            progress("drawing figures", DRAWING)
+            _draw(answers, page_path, figures_path)
     if json_path is not None:
         write_json(json_path, api.vet_document(answers))
     else:
@@ -83,9 +98,15 @@ def vet(
     return max(answer.exit_code(strict) for answer in answers)
 
 
-def _write_page(answers: Sequence[Vetted], path: str) -> None:
-    from pulseprop.reports.draw_vet import draw_vet
-    from pulseprop.reports.vet_page import write_vet_page
+def _draw(answers: Sequence[Vetted], page: str | None, figures: str | None) -> None:
+    from pulseprop.reports.draw_vet import vet_drawings
 
-    drawn = {number: draw_vet(answer, number) for number, answer in enumerate(answers)}
-    write_vet_page(answers, {number: figure for number, figure in drawn.items() if figure is not None}, path)
+    drawn = vet_drawings(answers)
+    if page:
+        from pulseprop.reports.vet_page import write_vet_page
+
+        write_vet_page(answers, drawn, page)
+    if figures:
+        from pulseprop.reports.figures import write_figures
+
+        write_figures(drawn.values(), figures)

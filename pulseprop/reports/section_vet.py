@@ -2,67 +2,46 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
+
+import numpy as np
+
 from pulseprop.propagation.numerals import significant
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
-from pulseprop.vetting.result import Bounds, Finding, Vetted
+from pulseprop.reports.vet_numbers import factor_text, file_name, interval_text, nm_text, plain_text
+from pulseprop.vetting.result import Bounds, ConflictRow, Finding, RequirementAnswer, Vetted
 
 __all__ = ["vet_sections"]
-
-Interval = tuple[float, float] | None
 
 MOST_ROWS = 12
 """Rows of the proof that a report lists; JSON has all."""
 
-SAID = {"error": "error", "warning": "warning", "note": "note"}
+WEIGHT_PLACES = 7
+"""Decimals of a weight: what they leave out changes no factor above 1 by much."""
+
+GRAVEST_FIRST = {"error": 0, "warning": 1, "note": 2}
+
+QUANTITY, VALUE = 2, 3
+"""Columns of the table of rows in conflict."""
+
+ANCHOR = 0
+"""Row of an anchor, which stands in no file."""
 
 
 def vet_sections(vetted: Vetted) -> tuple[Section, ...]:
     """All sections that have something to say."""
-    makers = (_inferred, _factor, _requirements, _conflict, _findings, _bounds, _assumed, _origin)
+    makers = (_inferred, _requirements, _factor, _conflict, _findings, _bounds, _assumed, _origin)
     return tuple(section for make in makers if (section := make(vetted)) is not None)
 
 
 def _inferred(vetted: Vetted) -> Section | None:
     if not vetted.inferred:
         return None
-    columns = tuple(Column(name, words=True) for name in ("about", "taken as", "because", "to overrule"))
-    rows = tuple(
-        (entry["about"], entry["taken"], entry["why"], entry["overrule"]) for entry in vetted.inferred
+    entries = tuple(
+        Paragraph(f"{entry['taken']} ({entry['why']}). To overrule: {entry['overrule']}.", entry["about"])
+        for entry in vetted.inferred
     )
-    return Section("inferred", "Found out, not stated", (Table(columns, rows),))
-
-
-def _factor(vetted: Vetted) -> Section | None:
-    """The verdict's number, or the implied uncertainty where none was stated."""
-    if vetted.uncertainty_factor is None:
-        return None
-    factor = significant(vetted.uncertainty_factor, 3)
-    source = "stated" if vetted.uncertainty_stated else "of the printed digits"
-    text = f"{factor}: the least factor by which all uncertainties ({source}) must be enlarged before some "
-    text += "passive causal material has these numbers; at most 1 is consistent."
-    blocks = [Paragraph(text, label="Uncertainty factor")]
-    if vetted.certified_gap is not None:
-        blocks.append(
-            Paragraph(
-                f"a material that reaches it and a proof that none does better lie "
-                f"{significant(100 * vetted.certified_gap, 1)} % apart.",
-                label="Certified",
-            )
-        )
-    if implied := _implied(vetted):
-        blocks.append(Paragraph(implied, label="Implied uncertainty"))
-    return Section("factor", "Can the numbers be true?", tuple(blocks))
-
-
-def _implied(vetted: Vetted) -> str:
-    implied = vetted.implied_uncertainty
-    parts = [
-        f"{name} +-{significant(value, 2)}" for name, value in (("n", implied.n), ("k", implied.k)) if value
-    ]
-    if not parts:
-        return ""
-    grade = f" {implied.grade}" if implied.grade else ""
-    return f"the smallest at which the numbers can be true: {', '.join(parts)}.{grade}"
+    return Section("inferred", "Found out, not stated", entries)
 
 
 def _requirements(vetted: Vetted) -> Section | None:
@@ -73,62 +52,143 @@ def _requirements(vetted: Vetted) -> Section | None:
         Column("verdict", words=True),
         Column("guaranteed", words=True),
     )
-    rows = tuple(
-        (answer.text, answer.verdict, _interval(answer.bounds, 5) or answer.reason)
-        for answer in vetted.requirements
+    rows = tuple((answer.text, answer.verdict, _guaranteed(answer)) for answer in vetted.requirements)
+    return Section("requirements", "Requirements", (Table(columns, rows),))
+
+
+def _guaranteed(answer: RequirementAnswer) -> str:
+    return " ".join(part for part in (interval_text(answer.bounds), answer.reason) if part)
+
+
+def _factor(vetted: Vetted) -> Section | None:
+    """The verdict's number, and the implied uncertainty."""
+    factor = vetted.uncertainty_factor
+    if factor is None:
+        return None
+    source = "stated" if vetted.uncertainty_stated else "of the printed digits"
+    text = (
+        f"{factor_text(factor)}. With all uncertainties ({source}) times this, and no less, some passive "
+        "causal material has these numbers; at most 1 is consistent."
     )
-    return Section("requirements", "Requirements", (Table(columns, rows), Paragraph(vetted.decision_rule)))
+    if vetted.certified_gap is not None:
+        text += f" Proven to {significant(100 * vetted.certified_gap, 1)} % of itself."
+    blocks = [Paragraph(text, label="Uncertainty factor")]
+    if implied := _implied(vetted):
+        blocks.append(Paragraph(implied, label="Implied uncertainty"))
+    return Section("factor", "Can the numbers be true?", tuple(blocks))
+
+
+def _implied(vetted: Vetted) -> str:
+    """The smallest errors at which the numbers can be true, where they say anything."""
+    implied = vetted.implied_uncertainty
+    told = [
+        f"{name} +-{significant(value, 2)}" for name, value in (("n", implied.n), ("k", implied.k)) if value
+    ]
+    if not told or factor_text(vetted.uncertainty_factor or 0.0).startswith("below"):
+        return ""
+    grade = f" {implied.grade}" if implied.grade else ""
+    return f"{', '.join(told)} is the smallest at which the numbers can be true.{grade}"
 
 
 def _conflict(vetted: Vetted) -> Section | None:
     if not vetted.conflict:
         return None
-    columns = (Column("row"), Column("wavelength", "nm"), Column("quantity", words=True), Column("weight"))
-    heaviest = sorted(vetted.conflict, key=lambda entry: -abs(entry.weight))[:MOST_ROWS]
-    rows = tuple(
-        (
-            str(entry.row),
-            significant(entry.wavelength_nm, 6),
-            entry.quantity,
-            f"{entry.weight:+.4f}",
-        )
-        for entry in sorted(heaviest, key=lambda entry: entry.row)
+    columns = (
+        Column("row", words=True),
+        Column("wavelength", "nm"),
+        Column("quantity", words=True),
+        Column("value"),
+        Column("uncertainty"),
+        Column("weight"),
     )
+    shown = _heaviest(vetted.conflict)
     text = (
-        "For every passive causal material the sum of weight times value over these rows is at most 0; the "
-        "printed values give more than their uncertainties allow. n stands for n - 1 here."
+        "For every passive causal material the sum of weight times value (n - 1 for n) over these rows is at "
+        "most 0. Here it is above: divided by the sum of weight (without its sign) times uncertainty it is "
+        "the uncertainty factor."
     )
-    if len(vetted.conflict) > MOST_ROWS:
-        text += (
-            f" The {MOST_ROWS} heaviest of {len(vetted.conflict)} rows are shown; the JSON answer has all."
-        )
+    if len(shown) < len(vetted.conflict):
+        text += f" {len(shown)} rows of {len(vetted.conflict)} are shown, the heaviest; JSON has all."
+    rows = _as_printed([_conflict_row(entry, vetted) for entry in shown])
     blocks: list[Paragraph | Table] = [Paragraph(text), Table(columns, rows)]
     if vetted.factor_without_conflict_rows is not None:
-        blocks.append(
-            Paragraph(
-                f"Without the rows that carry the proof the factor is "
-                f"{significant(vetted.factor_without_conflict_rows, 3)}."
-            )
-        )
+        without = factor_text(vetted.factor_without_conflict_rows)
+        blocks.append(Paragraph(f"Without the rows that carry the proof the factor is {without}."))
     return Section("conflict", "Rows in conflict", tuple(blocks))
+
+
+def _as_printed(rows: list[tuple[str, ...]]) -> tuple[tuple[str, ...], ...]:
+    """Values with the decimals of the longest of their quantity: zeros at the end are printed digits too."""
+    longest: dict[str, int] = {}
+    for row in rows:
+        decimals = len(row[VALUE].partition(".")[2]) if "e" not in row[VALUE] else 0
+        longest[row[QUANTITY]] = max(longest.get(row[QUANTITY], 0), decimals)
+    return tuple(
+        (*row[:VALUE], _with_decimals(row[VALUE], longest[row[QUANTITY]]), *row[VALUE + 1 :]) for row in rows
+    )
+
+
+def _with_decimals(text: str, decimals: int) -> str:
+    if not text or "e" in text:
+        return text
+    whole, _, part = text.partition(".")
+    return f"{whole}.{part.ljust(decimals, '0')}" if decimals else whole
+
+
+def _heaviest(conflict: Iterable[ConflictRow]) -> list[ConflictRow]:
+    """The heaviest rows whose weight can be printed, in the order of the file."""
+    visible = [entry for entry in conflict if round(abs(entry.weight), WEIGHT_PLACES) > 0]
+    heaviest = sorted(visible, key=lambda entry: -abs(entry.weight))[:MOST_ROWS]
+    return sorted(heaviest, key=lambda entry: (entry.row, entry.quantity))
+
+
+def _conflict_row(entry: ConflictRow, vetted: Vetted) -> tuple[str, ...]:
+    value, error = _printed(entry, vetted)
+    anchor = entry.row == ANCHOR
+    return (
+        "anchor" if anchor else str(entry.row),
+        nm_text(entry.wavelength_nm) if entry.wavelength_nm > 0 else "",
+        entry.quantity,
+        value,
+        error,
+        f"{entry.weight:+.{WEIGHT_PLACES}f}",
+    )
+
+
+def _printed(entry: ConflictRow, vetted: Vetted) -> tuple[str, str]:
+    """Value and uncertainty of a row; empty where the answer does not hold them."""
+    curves, name = vetted.curves, entry.quantity
+    if f"{name}_error" not in curves or entry.wavelength_nm <= 0:
+        return "", ""
+    row = int(np.argmin(np.abs(curves[f"{name}_nm"] - entry.wavelength_nm)))
+    return plain_text(float(curves[name][row])), plain_text(float(curves[f"{name}_error"][row]), 4)
 
 
 def _findings(vetted: Vetted) -> Section | None:
     if not vetted.findings:
         return None
-    return Section("findings", "Findings", tuple(_finding(finding) for finding in vetted.findings))
+    ordered = sorted(vetted.findings, key=lambda finding: GRAVEST_FIRST[finding.severity])
+    return Section("findings", "Findings", tuple(_finding(finding, vetted.headline) for finding in ordered))
 
 
-def _finding(finding: Finding) -> Paragraph:
-    text = finding.text
+def _finding(finding: Finding, headline: str) -> Paragraph:
+    """A finding; what the headline has said already is not said again."""
+    repeated = finding.text.rstrip(".").casefold() in headline.casefold()
+    text = "As said above." if repeated else finding.text
     if finding.repair:
-        text += f" Repair that would mend it: {finding.repair}"
-        if finding.factor_after_repair is not None:
-            text += f" (factor then {significant(finding.factor_after_repair, 3)})"
-        text += "."
+        text = f"{text} {_repair(finding)}".strip()
     if finding.rows:
         text += f" Rows: {_listed(finding.rows)}."
-    return Paragraph(text, label=f"[{finding.code}, {SAID[finding.severity]}]")
+    return Paragraph(text, label=f"[{finding.code}, {finding.severity}]")
+
+
+def _repair(finding: Finding) -> str:
+    """What would mend it, unless the text says so, and the factor then."""
+    repair = (finding.repair or "").rstrip(".")
+    said = "" if repair in finding.text else f"To mend it: {repair}."
+    if finding.factor_after_repair is None:
+        return said
+    return f"{said} The factor is then {factor_text(finding.factor_after_repair)}.".strip()
 
 
 def _listed(rows: tuple[int, ...]) -> str:
@@ -139,50 +199,57 @@ def _listed(rows: tuple[int, ...]) -> str:
 def _bounds(vetted: Vetted) -> Section | None:
     if not vetted.bounds:
         return None
+    known = [entry for entry in vetted.bounds if any(_intervals(entry))]
+    blocks: list[Paragraph | Table] = [_bounds_table(known)] if known else []
+    blocks += [Paragraph(text) for text in _reasons(vetted.bounds)]
+    return Section("bounds", "What the numbers guarantee", tuple(blocks))
+
+
+def _bounds_table(entries: Iterable[Bounds]) -> Table:
     columns = (
         Column("wavelength", "nm"),
         Column("index", words=True),
         Column("group index", words=True),
-        Column("GVD, fs^2/mm", words=True),
-        Column("TOD, fs^3/mm", words=True),
+        Column("GVD", "fs^2/mm", words=True),
+        Column("TOD", "fs^3/mm", words=True),
     )
-    rows = tuple(_bounds_row(entry) for entry in vetted.bounds)
-    reasons = dict.fromkeys(
-        f"At {significant(entry.wavelength_nm, 6)} nm: {entry.reason}."
-        for entry in vetted.bounds
-        if entry.reason
+    rows = tuple(
+        (
+            nm_text(entry.wavelength_nm),
+            *(interval_text(interval) or "not known" for interval in _intervals(entry)),
+        )
+        for entry in entries
     )
-    return Section(
-        "bounds",
-        "What the numbers guarantee",
-        (Table(columns, rows), *(Paragraph(reason) for reason in reasons)),
-    )
+    return Table(columns, rows)
 
 
-def _bounds_row(entry: Bounds) -> tuple[str, ...]:
-    return (
-        significant(entry.wavelength_nm, 6),
-        _interval(entry.index, 7) or "-",
-        _interval(entry.group_index, 6) or "-",
-        _interval(entry.gvd_fs2_per_mm, 5) or "-",
-        _interval(entry.tod_fs3_per_mm, 4) or "-",
-    )
+def _intervals(entry: Bounds) -> tuple[tuple[float, float] | None, ...]:
+    return entry.index, entry.group_index, entry.gvd_fs2_per_mm, entry.tod_fs3_per_mm
 
 
-def _interval(interval: Interval, digits: int) -> str:
-    if interval is None:
-        return ""
-    return f"{significant(interval[0], digits)} to {significant(interval[1], digits)}"
+def _reasons(bounds: Iterable[Bounds]) -> list[str]:
+    """Why something is not known, each reason once with its wavelengths."""
+    places: dict[str, list[str]] = {}
+    for entry in bounds:
+        if entry.reason:
+            places.setdefault(entry.reason.rstrip("."), []).append(nm_text(entry.wavelength_nm))
+    return [f"At {', '.join(nm)} nm: {reason}." for reason, nm in places.items()]
 
 
 def _assumed(vetted: Vetted) -> Section | None:
     blocks = [Paragraph(text) for text in vetted.assumptions]
     if vetted.blind_spots:
-        blocks.append(Paragraph("; ".join(vetted.blind_spots) + ".", label="What causality cannot see"))
+        blocks.append(Paragraph("; ".join(vetted.blind_spots) + ".", label="What no such test can see"))
     return Section("assumed", "What the answer rests on", tuple(blocks)) if blocks else None
 
 
 def _origin(vetted: Vetted) -> Section:
-    text = f"{vetted.file}, SHA-256 {vetted.sha256}; {vetted.date}; pulseprop {vetted.version}."
-    rule = [] if vetted.requirements else [Paragraph(vetted.decision_rule)]
-    return Section("origin", "This report", (*rule, Paragraph(text)))
+    return Section(
+        "origin",
+        "This report",
+        (
+            Paragraph(vetted.decision_rule, label="Decision rule"),
+            Paragraph(f"{file_name(vetted)}, SHA-256 {vetted.sha256}", label="File"),
+            Paragraph(f"{vetted.date}, pulseprop {vetted.version}", label="Made"),
+        ),
+    )

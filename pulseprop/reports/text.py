@@ -5,10 +5,12 @@ from __future__ import annotations
 import re
 import textwrap
 from collections.abc import Iterable
+from typing import TYPE_CHECKING
 
-from pulseprop.propagation.result import Run
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table, padded_rows
-from pulseprop.reports.content import sections
+
+if TYPE_CHECKING:
+    from pulseprop.propagation.result import Run
 
 __all__ = ["WIDTH", "blocks_text", "printable", "section_text", "table_text", "text_report"]
 
@@ -20,6 +22,8 @@ NARROWEST = 16
 
 def text_report(run: Run) -> str:
     """The report of a run for a person. Its first line answers the question."""
+    from pulseprop.reports.content import sections
+
     opening = [*_wrapped(run.headline), ""]
     opening += [line for text in _about(run) for line in _wrapped(text)]
     parts = ["\n".join(opening), *(section_text(section) for section in sections(run))]

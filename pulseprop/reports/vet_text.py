@@ -2,26 +2,27 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Sequence
 
 from pulseprop.reports.blocks import Paragraph
 from pulseprop.reports.section_vet import vet_sections
-from pulseprop.reports.text import blocks_text, printable, section_text
+from pulseprop.reports.text import WIDTH, blocks_text, printable, section_text
+from pulseprop.reports.vet_opening import delivery, delivery_headline, opening
 from pulseprop.vetting.result import Vetted
 
 __all__ = ["vet_text"]
 
-RULE = "=" * 108
+RULE = "=" * WIDTH
 
 
-def vet_text(vetted: Iterable[Vetted]) -> str:
-    """A report a file, in their order."""
-    return printable(f"\n\n{RULE}\n\n".join(_report(one) for one in vetted)) + "\n"
+def vet_text(answers: Sequence[Vetted]) -> str:
+    """A report a table, in their order; of several, first the answer on all of them."""
+    parts = [_report(one) for one in answers]
+    if len(answers) > 1:
+        first = blocks_text([Paragraph(delivery_headline(answers))])
+        parts.insert(0, f"{first}\n\n{section_text(delivery(answers))}")
+    return printable(f"\n\n{RULE}\n\n".join(parts)) + "\n"
 
 
 def _report(vetted: Vetted) -> str:
-    opening = [Paragraph(f"{vetted.verdict.upper()}: {vetted.headline}"), Paragraph(vetted.what)]
-    if vetted.sentence:
-        opening.append(Paragraph(vetted.sentence, label="To the supplier"))
-    parts = [blocks_text(opening), *(section_text(section) for section in vet_sections(vetted))]
-    return "\n\n".join(parts)
+    return "\n\n".join([blocks_text(opening(vetted)), *map(section_text, vet_sections(vetted))])

@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 import re
-from dataclasses import dataclass
-from typing import Literal
+from collections.abc import Mapping
+from dataclasses import dataclass, fields
+from typing import Any, Literal
 
 from pulseprop.causality.bounds_strength import strength_of
 from pulseprop.errors import InputError, PulsepropError
@@ -13,10 +14,12 @@ from pulseprop.vetting.read_options import ReadOptions
 from pulseprop.vetting.request import Anchor, Request
 from pulseprop.vetting.uncertainty_text import uncertainties_in
 
-__all__ = ["Asked"]
+__all__ = ["Asked", "asked_with"]
 
 ANCHOR = re.compile(r"\s*(\S+)\s*(?:\+-|±)\s*(\S+)\s+at\s+(.+?)\s*")
 RANGE = re.compile(r"\s*(.+?)\s+to\s+(.+?)\s*")
+SEVERAL = ("at", "require", "anchor")
+"""Options that may be given more than once."""
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -63,8 +66,9 @@ class Asked:
     @property
     def request(self) -> Request:
         """What bears on judging it, SI. Raises InputError with the option that cannot be read."""
+        stated = uncertainties_in(self.uncertainty) if self.uncertainty else {}
         return Request(
-            uncertainty=uncertainties_in(self.uncertainty) if self.uncertainty else {},
+            uncertainty={str(name): size for name, size in stated.items()},
             at=tuple(_read("at", place, "spectral") for place in self.at),
             require=self.require,
             strict=self.strict,
@@ -90,6 +94,23 @@ class Asked:
         if self.composition is None or self.density is None:
             return None
         return strength_of(_read("density", self.density, "mass_density"), self.composition)
+
+
+def asked_with(options: Mapping[str, Any]) -> Asked:
+    """Options by name, as a caller gives them: a list, or one text where several may stand. Raises InputError
+    for a name that is none."""
+    known = {field.name: field for field in fields(Asked)}
+    unknown = next((name for name in options if name not in known), None)
+    if unknown is not None:
+        raise InputError("there is no such option of vet", value=unknown, allowed=", ".join(known))
+    given: dict[str, Any] = {
+        name: _several(value) if name in SEVERAL else value for name, value in options.items()
+    }
+    return Asked(**given)
+
+
+def _several(value: Any) -> tuple[str, ...]:
+    return (value,) if isinstance(value, str) else tuple(value)
 
 
 def _read(option: str, text: str, kind: str) -> float:
