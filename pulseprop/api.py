@@ -276,23 +276,28 @@ def _finite(value: float) -> float | None:
 VERDICTS = ("consistent", "doubtful", "contradictory")
 
 
-def vet(tables: str | Path | Sequence[str | Path], **options: Any) -> tuple[Vetted, ...]:
+def vet(
+    tables: str | Path | Sequence[str | Path], progress: Progress | None = None, **options: Any
+) -> tuple[Vetted, ...]:
     """Vet files: text tables, workbooks, JCAMP-DX; certificates and formulas as TOML; an answer a table.
 
     options: those of `pulseprop.vetting.asked.Asked`, in its words: uncertainty="n=1e-4,k=2%", at=["800 nm"],
-    require=[...], columns, unit, relative_to, thickness, medium and more. Raises InputError, NumericalLimit.
+    require=[...], columns, unit, relative_to, thickness, medium and more; progress(stage, fraction) is called
+    before each file. Raises InputError, and NumericalLimit.
     """
     from datetime import date
 
     from pulseprop.scenario.vet_files import vet_file
-    from pulseprop.vetting.asked import Asked
+    from pulseprop.vetting.asked import asked_with
 
     files = [tables] if isinstance(tables, str | Path) else tables
-    asked = Asked(
-        **{key: tuple(value) if isinstance(value, list) else value for key, value in options.items()}
-    )
-    today = date.today().isoformat()
-    return tuple(one for file in files for one in vet_file(file, asked, date=today, version=__version__))
+    asked, today = asked_with(options), date.today().isoformat()
+    answers: list[Vetted] = []
+    for number, file in enumerate(files):
+        if progress is not None:
+            progress(f"vetting {Path(file).name}", number / (len(files) + 1))
+        answers += vet_file(file, asked, date=today, version=__version__)
+    return tuple(answers)
 
 
 def vet_document(answers: Sequence[Vetted]) -> dict[str, Any]:
