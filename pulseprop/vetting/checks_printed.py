@@ -11,9 +11,8 @@ from numpy.typing import NDArray
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.case import Case
-from pulseprop.vetting.guaranteed import guaranteed
-from pulseprop.vetting.requirement_answer import FS2_PER_MM, FS3_PER_MM, abbe_interval
-from pulseprop.vetting.requirement_quantities import LINE_C, LINE_D, LINE_F
+from pulseprop.vetting.guaranteed import guaranteed, guaranteed_abbe
+from pulseprop.vetting.requirement_answer import FS2_PER_MM, FS3_PER_MM
 from pulseprop.vetting.result import Bounds, Finding
 from pulseprop.vetting.table import Column
 from pulseprop.vetting.uncertainty import column_uncertainty
@@ -76,15 +75,12 @@ def printed_orders(case: Case) -> Iterator[Finding]:
 def abbe_number(case: Case) -> Iterator[Finding]:
     """An Abbe number in the title or comments against the printed index."""
     found = V_D.search(" ".join((case.table.title, *case.table.comments)))
-    if found is None or case.table.column("n") is None:
+    if found is None or case.standing is None:
         return
     printed = float(found[1].replace(",", "."))
     places = len(re.split("[.,]", found[1])[1]) if re.search("[.,]", found[1]) else 0
-    d, f, c = (bounds.index for bounds in guaranteed(case, np.array([LINE_D, LINE_F, LINE_C])))
-    between = abbe_interval(d, f, c) if d and f and c else None
-    if between is None or (
-        between[0] <= printed + 0.5 * 10.0**-places and printed - 0.5 * 10.0**-places <= between[1]
-    ):
+    between, half = guaranteed_abbe(case), 0.5 * 10.0**-places
+    if between is None or between[0] - half <= printed <= between[1] + half:
         return
     yield Finding(
         code="abbe-number",

@@ -13,7 +13,7 @@ from pulseprop.vetting.causal import Causality
 from pulseprop.vetting.checks import found_in
 from pulseprop.vetting.few_rows import few_rows
 from pulseprop.vetting.grade import implied_uncertainty
-from pulseprop.vetting.guaranteed import guaranteed
+from pulseprop.vetting.guaranteed import guaranteed, guaranteed_abbe, guaranteed_transmittance
 from pulseprop.vetting.request import Request
 from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_answer import DECISION_RULE as THREE_WAY
@@ -41,7 +41,12 @@ def judge(table: SentTable, request: Request, *, date: str, version: str, causal
     verdict = verdict_on(case, findings)
     conflict, implied = _conflict(case), implied_uncertainty(case)
     answers = tuple(
-        material_answer(requirement, lambda omega: guaranteed(case, np.array([omega]))[0])
+        material_answer(
+            requirement,
+            lambda omega: guaranteed(case, np.array([omega]))[0],
+            transmitted=lambda omega, length: guaranteed_transmittance(case, omega, length),
+            abbe=lambda: guaranteed_abbe(case),
+        )
         for requirement in asked
     )
     return Vetted(
