@@ -6,6 +6,8 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 
 from pulseprop.constants import TWO_PI_C
+from pulseprop.errors import NumericalLimit
+from pulseprop.material.catalogue import record
 from pulseprop.vetting.certificate_catalogue import against_catalogue
 from pulseprop.vetting.certificate_follow import ROOM, contradictions, implied_by, involved_in
 from pulseprop.vetting.certificate_functionals import Order, Term
@@ -37,23 +39,25 @@ BLIND = (
 
 
 def judge_certificate(certificate: Certificate, request: Request, *, date: str, version: str) -> Vetted:
-    """Raises InputError for a requirement that cannot be read, NumericalLimit where a programme is not
-    solved."""
+    """Raises InputError for a requirement or a claimed medium that cannot be read, NumericalLimit where a
+    programme is not solved."""
+    if request.claimed is not None:
+        record(request.claimed)  # a name stated by option must be one
     claim = claim_of(
         request.claimed or certificate.name,
         certificate.orientation,
         [value.omega for value in certificate.values],
         certificate.relative_to,
     )
-    band, inferred = _band(certificate, request, claim)
+    band, guessed = _band(certificate, request, claim)
     values = [
         value for value in certificate.values if value.value != 0 or value.quantity in ("gvd", "tod", "fod")
     ]
-    proof = proof_of(values, band) if len(values) >= FEWEST else None
-    findings = tuple(_findings(certificate, claim, values, proof, band))
+    proof, trouble = _proof(values, band)
+    findings = (*_findings(certificate, claim, values, proof, band), *trouble)
     factor = proof.least_factor.factor if proof is not None else None
     stated = all(value.stated for value in values)
-    holds = not inferred or _holds_without_guess(certificate, values)
+    holds = proof is not None and (not guessed or _holds_without_guess(certificate, values))
     proven = (
         proof is not None
         and proof.least_factor.factor > 1
@@ -75,13 +79,25 @@ def judge_certificate(certificate: Certificate, request: Request, *, date: str, 
         implied=_implied(values, factor),
         bounds=tuple(at(omega) for omega in request.at),
         requirements=tuple(_required(text, at) for text in request.require),
-        inferred=tuple(inferred),
+        inferred=(*guessed, *_from_digits(values)),
         assumptions=(
             f"Between {_nm(band[1])} and {_nm(band[0])} nm the material absorbs nothing.",
             "Zeros that end a whole number are taken as holding the place only.",
         ),
         blind_spots=BLIND,
     )
+
+
+def _proof(values: Sequence[PrintedValue], band: Band) -> tuple[Printed | None, tuple[Finding, ...]]:
+    """The numbers against all materials; None for a single one, or where the solver fails, which is told."""
+    if len(values) < FEWEST:
+        return None, ()
+    try:
+        proof = proof_of(values, band)
+        proof.least_factor  # noqa: B018  (solved here, where a failure can be told)
+    except NumericalLimit as failure:
+        return None, (Finding(code="not-compared", severity="error", text=str(failure)),)
+    return proof, ()
 
 
 class _Guaranteed:
@@ -94,7 +110,7 @@ class _Guaranteed:
     def reason(self) -> str:
         """Why there are none; empty where there are."""
         if self._proof is None:
-            return "a single number guarantees nothing of another"
+            return "a single number, or numbers that cannot be compared, guarantee nothing of another"
         if self._stated and self._proof.least_factor.factor > 1:
             return "the numbers contradict each other within their uncertainties, so they guarantee nothing"
         return ""
@@ -139,6 +155,17 @@ def _in(interval: tuple[float, float] | None, unit: float) -> tuple[float, float
 
 def _required(text: str, at: _Guaranteed) -> RequirementAnswer:
     return material_answer(read_requirement(text), at, abbe=at.abbe)
+
+
+def _from_digits(values: Sequence[PrintedValue]) -> Iterator[dict[str, str]]:
+    open_ones = [value.words for value in values if not value.stated]
+    if open_ones:
+        yield {
+            "about": "uncertainties",
+            "taken": "half a unit of the last printed place",
+            "why": f"not stated: {', '.join(open_ones)}",
+            "overrule": 'uncertainty = "…" beside the value in the file',
+        }
 
 
 def _band(certificate: Certificate, request: Request, claim: Claim) -> tuple[Band, list[dict[str, str]]]:
@@ -214,7 +241,8 @@ def _implied(values: Sequence[PrintedValue], factor: float | None) -> ImpliedUnc
 def _what(certificate: Certificate, claim: Claim) -> str:
     named = f" of {certificate.name}" if certificate.name else ""
     compared = " or ".join(f"{medium.name} ({medium.source})" for medium in claim.media)
-    text = f"{len(certificate.values)} printed numbers{named}"
+    count = len(certificate.values)
+    text = f"{count} printed number{'s' * (count > 1)}{named}"
     return text + (f", compared with the catalogue's {compared}." if compared else ".")
 
 

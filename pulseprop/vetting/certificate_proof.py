@@ -88,7 +88,10 @@ class Printed:
         """The least factor of the errors. Raises NumericalLimit where the solver gives no answer."""
         found = self._optimum(None, None)
         if found is None:
-            raise NumericalLimit("no least factor of the printed numbers was found")
+            raise NumericalLimit(
+                "no least factor of the printed numbers was found",
+                remedy="Look at the findings of each number alone: one is far from any material's",
+            )
         x = found.x[:-1] / found.size
         return LeastFactor(
             factor=max(found.least, 0.0),
@@ -120,7 +123,10 @@ class Printed:
     def _least_ratio(
         self, above: Sequence[Term], below: Sequence[Term], size: Interval, factor: float
     ) -> float | None:
-        ratio = self.least_factor.value(above) / self.least_factor.value(below)
+        start = self.least_factor.value(below)
+        if start <= 0:
+            return None
+        ratio = self.least_factor.value(above) / start
         for _ in range(RATIO_ROUNDS):
             least = self._least((*above, *_times(below, -ratio)), factor)
             if least is None:

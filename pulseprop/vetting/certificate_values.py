@@ -35,6 +35,8 @@ PRINTABLE: dict[str, str] = {
     "zero dispersion wavelength": "length",
 }
 """What a certificate may print, and the kind of its unit."""
+SHORTEST, LONGEST = 1e-9, 1e-2
+"""m."""
 LINES = {"n_d": LINE_D, "n_F": LINE_F, "n_C": LINE_C, "V_d": LINE_D}
 
 
@@ -144,6 +146,18 @@ def _uncertainty(text: str, kind: str, unit: str, value: float, digits: float) -
 
 
 def _place(name: str, at: str | None, value: float) -> float:
+    """Where the number belongs, rad/s."""
+    omega = _unchecked_place(name, at, value)
+    if not SHORTEST <= TWO_PI_C / omega <= LONGEST:
+        raise InputError(
+            "no optical material is printed at such a wavelength",
+            value=at or f"{value:g} m",
+            allowed="1 nm to 10 mm",
+        )
+    return omega
+
+
+def _unchecked_place(name: str, at: str | None, value: float) -> float:
     if name in LINES or name == "zero dispersion wavelength":
         if at is not None:
             raise InputError(f"{name} takes no wavelength", value=at, remedy="Leave the key out")

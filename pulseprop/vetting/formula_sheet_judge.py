@@ -67,7 +67,7 @@ def judge_formula(
         stated=sheet.stated,
         implied=ImpliedUncertainty(n=None if factor is None else factor * sheet.error, k=None),
         conflict=_conflict(settled),
-        bounds=tuple(at(omega) for omega in request.at),
+        bounds=tuple(at(omega) for omega in request.at or _middle(settled)),
         requirements=tuple(_required(text, at, settled) for text in request.require),
         inferred=tuple(_inferred(sheet)),
         assumptions=_assumptions(sheet),
@@ -120,6 +120,11 @@ def _repairs(repairs: list[Mended]) -> Iterator[Finding]:
             repair=mended.words,
             factor_after_repair=mended.factor,
         )
+
+
+def _middle(settled: Settled | None) -> tuple[float, ...]:
+    """Where bounds are given if none are asked."""
+    return () if settled is None else (float(settled.data.omega[len(settled.data.omega) // 2]),)
 
 
 def _guaranteed(settled: Settled | None, causality: Causality) -> Callable[[float], Bounds]:

@@ -35,6 +35,10 @@ FEMTO: dict[Quantity, tuple[float, str]] = {
 """In which unit a quantity is told."""
 
 
+EXACT = 1e-12
+"""Relative error of numbers that are stated to have none: that of their arithmetic."""
+
+
 @dataclass(frozen=True, kw_only=True, eq=False)
 class MirrorCurve:
     """Rows in ascending order of frequency, one a frequency: omega (rad/s), values and error (SI), lines of
@@ -71,7 +75,7 @@ def curve_of(table: SentTable, request: Request, quantity: Quantity) -> MirrorCu
     if column is None:
         return None
     error = _error(table, column, request)
-    good = np.flatnonzero(np.isfinite(column.values) & np.isfinite(table.omega) & (error > 0))
+    good = np.flatnonzero(np.isfinite(column.values) & np.isfinite(table.omega) & (error >= 0))
     omega, first = np.unique(table.omega[good], return_index=True)
     rows = good[first]
     if len(rows) < 2:
@@ -80,7 +84,7 @@ def curve_of(table: SentTable, request: Request, quantity: Quantity) -> MirrorCu
         quantity=quantity,
         omega=omega,
         values=column.values[rows],
-        error=error[rows],
+        error=np.maximum(error[rows], EXACT * max(float(np.max(np.abs(column.values[rows]))), EXACT)),
         lines=table.lines[rows],
         stated=is_stated(column, request),
     )

@@ -28,6 +28,11 @@ class Stamp:
     version: str
 
 
+VERDICT_RULE = (
+    "Contradictory: the numbers contradict each other at stated uncertainties, break a physical bound, or "
+    "differ by ten times their print or more and agree once one mistake is undone. Doubtful: any other "
+    "finding that is an error. Else consistent."
+)
 STRUCTURED = 10.0
 """Factor from which on numbers that one undone mistake makes agree are no matter of noise."""
 
@@ -72,7 +77,7 @@ def told(
         verdict=verdict,
         headline=headline,
         sentence=_sentence(findings, requirements),
-        decision_rule=DECISION_RULE,
+        decision_rule=" ".join((VERDICT_RULE, *([DECISION_RULE] if requirements else []))),
         uncertainty_factor=factor,
         certified_gap=gap,
         uncertainty_stated=stated,
@@ -93,7 +98,11 @@ def _sentence(findings: tuple[Finding, ...], requirements: tuple[RequirementAnsw
     """Something a supplier can answer; empty where there is nothing to ask."""
     grave = next((finding for finding in findings if finding.severity == "error"), None)
     if grave is not None:
-        return f"{grave.text} Please check these numbers and tell us which are right."
+        repair = next(
+            (entry.repair for entry in findings if entry.severity == "error" and entry.repair), None
+        )
+        why = f" Possible explanation: {repair}." if repair and repair not in grave.text else ""
+        return f"{grave.text}{why} Please check these numbers and tell us which are right."
     unmet = [answer.text for answer in requirements if answer.verdict == "not conforming"]
     if unmet:
         return f"By your numbers these requirements are not met: {'; '.join(unmet)}. Please comment."
