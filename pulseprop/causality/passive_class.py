@@ -34,6 +34,8 @@ CLOSE = 10.0
 """Factor about the distances of the rows within which every place of the grid is a first choice, and"""
 COARSE = 4
 """grid places from one to the next beyond."""
+END_OF_SUPPORT = 1e-15
+"""A spline of no more than this at a row ends there: it is 0, but for rounding."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -120,6 +122,7 @@ class PassiveClass:
             return np.zeros((len(self.target), 0))
         of_index = basis_transforms(self.splines.knots, self.splines.pieces, self.rows)
         of_k = basis_values(self.splines.knots, self.splines.pieces, self.k_rows)
+        of_k[of_k < END_OF_SUPPORT] = 0.0
         return np.concatenate((of_index, of_k))
 
     def matrix(self, masses: Masses) -> Real:

@@ -52,11 +52,22 @@ def proven(
 ) -> Proof | None:
     """The proof next to weights (R + K,), price >= 0; None where there is none nearby.
 
-    rows: (R + K,), those of k that may take part; all unless given.
+    rows: (R + K,), those of k that may take part; all unless given. Where splines that only lower limits
+    hold stand in the way of the rows of n, the rows of k alone.
     """
     weights = np.where(cls.least, np.maximum(weights, 0.0), weights)
+    weights = np.where(_of_no_use(cls), 0.0, weights)
+    of_k = np.where(np.arange(len(weights)) < len(cls.rows), 0.0, weights)
     if len(cls.rows) == 1:
-        weights = np.where(np.arange(len(weights)) == 0, 0.0, weights)  # one row of n alone can be anything
+        return _brought_in(cls, of_k, price, rows)  # one row of n alone can be anything
+    found = _brought_in(cls, weights, price, rows)
+    return _brought_in(cls, of_k, price, rows) if found is None and np.any(cls.least) else found
+
+
+def _brought_in(
+    cls: PassiveClass, weights: Real, price: float, rows: NDArray[np.bool_] | None
+) -> Proof | None:
+    """The weights moved inward until they are a proof; None where they do not become one."""
     ways = _ways_inward(cls, rows)
     for _ in range(ROUNDS):
         shares = _needed(cls, weights, price, ways)
@@ -72,6 +83,13 @@ def _normalised(cls: PassiveClass, weights: Real, price: float) -> Proof:
     size = float(np.abs(weights) @ cls.error) or 1.0
     missed = float(weights @ cls.target) - price * (cls.limit or 0.0)
     return Proof(weights / size, price / size, max(missed / size, 0.0))
+
+
+def _of_no_use(cls: PassiveClass) -> NDArray[np.bool_]:
+    """Lower limits, (R + K,), under a spline that no other row of k holds: they cannot take part."""
+    k_rows = np.arange(len(cls.target)) >= len(cls.rows)
+    loose = ~np.any(cls.spline_columns[k_rows & ~cls.least] > 0, axis=0)
+    return cls.least & np.any(cls.spline_columns[:, loose] > 0, axis=1)
 
 
 def _ways_inward(cls: PassiveClass, rows: NDArray[np.bool_] | None) -> Real:
@@ -99,11 +117,13 @@ def _needed(cls: PassiveClass, weights: Real, price: float, ways: Real) -> Real 
     """Shares (3,) of the ways inward that take every column below 0; None where they cannot."""
     allowed = -ROUNDING * float(np.sum(np.abs(weights)))
     of_splines, of_masses = _favours(cls, weights, price, ways)
-    outside = _cheapest(cls, *of_masses, allowed, ways)
+    alone = not np.any(weights[: len(cls.rows)])  # without rows of n masses are favoured by exactly 0
+    outside = np.zeros(2) if alone else _cheapest(cls, *of_masses, allowed, ways)
     if outside is None:
         return None
     favour, room = of_splines
-    over = favour - outside @ room[:2] - allowed
+    touched = (weights != 0) @ (cls.spline_columns != 0)
+    over = np.where(touched, favour - outside @ room[:2] - allowed, 0.0)
     if np.any((over > 0) & (room[2] <= 0)):
         return None
     within = float(np.max(over[over > 0] / room[2][over > 0], initial=0.0))
