@@ -89,7 +89,8 @@ def _of_no_use(cls: PassiveClass) -> NDArray[np.bool_]:
     """Lower limits, (R + K,), under a spline that no other row of k holds: they cannot take part."""
     k_rows = np.arange(len(cls.target)) >= len(cls.rows)
     loose = ~np.any(cls.spline_columns[k_rows & ~cls.least] > 0, axis=0)
-    return cls.least & np.any(cls.spline_columns[:, loose] > 0, axis=1)
+    under = np.any(cls.spline_columns[:, loose] > 0, axis=1)
+    return np.asarray(cls.least & under)
 
 
 def _ways_inward(cls: PassiveClass, rows: NDArray[np.bool_] | None) -> Real:
