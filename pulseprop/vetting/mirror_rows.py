@@ -84,7 +84,7 @@ def curve_of(table: SentTable, request: Request, quantity: Quantity) -> MirrorCu
         quantity=quantity,
         omega=omega,
         values=column.values[rows],
-        error=np.maximum(error[rows], EXACT * max(float(np.max(np.abs(column.values[rows]))), EXACT)),
+        error=np.maximum(error[rows], EXACT * np.max(np.abs(column.values[rows])) + np.finfo(float).tiny),
         lines=table.lines[rows],
         stated=is_stated(column, request),
     )

@@ -147,6 +147,16 @@ def test_noise_of_a_measurement_is_told_and_not_accused():
     )
 
 
+def test_columns_that_are_stated_to_be_exact():
+    """Errors of 0 are those of arithmetic; empty cells are left out; a lone row is compared with nothing."""
+    sent = table(some("group_delay", "gdd"), places={"group_delay": 12, "gdd": 12})
+    for column in sent.columns:
+        column.half_unit[:] = 0
+        column.values[::7] = np.nan
+    assert judged(sent).verdict == "consistent"
+    assert judged(table({"gdd": np.array([-40.0])}, np.array([800.0]))).verdict == "consistent"
+
+
 # Mistakes
 
 
