@@ -2,12 +2,14 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from dataclasses import asdict
 from typing import Any
 
 import numpy as np
 
 from pulseprop.constants import TWO_PI_C
+from pulseprop.vetting.absorption_rows import absorption_column
 from pulseprop.vetting.case import Case, case_of
 from pulseprop.vetting.causal import Causality
 from pulseprop.vetting.checks import found_in
@@ -18,9 +20,9 @@ from pulseprop.vetting.request import Request
 from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_answer import DECISION_RULE as THREE_WAY
 from pulseprop.vetting.requirement_answer import material_answer
-from pulseprop.vetting.result import Bounds, ConflictRow, Vetted
+from pulseprop.vetting.result import NOT_SETTLED, Bounds, ConflictRow, Finding, Vetted
 from pulseprop.vetting.table import SentTable
-from pulseprop.vetting.verdict import DECISION_RULE, verdict_on
+from pulseprop.vetting.verdict import decision_rule, verdict_on
 from pulseprop.vetting.words import BLIND_SPOTS, assumptions, headline, sentence, what_was_vetted
 
 __all__ = ["judge"]
@@ -37,7 +39,7 @@ def judge(table: SentTable, request: Request, *, date: str, version: str, causal
     asked = [read_requirement(text) for text in request.require]
     case = case_of(table, request, causality)
     few = few_rows(case)
-    findings = found_in(case, few)
+    findings = (*found_in(case, few), *_not_settled(case))
     verdict = verdict_on(case, findings)
     conflict, implied = _conflict(case), implied_uncertainty(case)
     answers = tuple(
@@ -58,7 +60,7 @@ def judge(table: SentTable, request: Request, *, date: str, version: str, causal
         verdict=verdict,
         headline=headline(case, verdict, implied, conflict, few, findings),
         sentence=sentence(case, verdict, conflict, few, findings),
-        decision_rule=" ".join((DECISION_RULE, *([THREE_WAY] if asked else []))),
+        decision_rule=" ".join((decision_rule(case), *([THREE_WAY] if asked else []))),
         uncertainty_factor=case.factor,
         certified_gap=case.standing.gap if case.standing else None,
         uncertainty_stated=case.numbers.stated,
@@ -75,6 +77,11 @@ def judge(table: SentTable, request: Request, *, date: str, version: str, causal
     )
 
 
+def _not_settled(case: Case) -> Iterator[Finding]:
+    if case.trouble:
+        yield Finding(code=NOT_SETTLED, severity="warning", text=case.trouble)
+
+
 def _conflict(case: Case) -> tuple[ConflictRow, ...]:
     """The rows of the proof with their lines in the file, in the order of the file."""
     numbers, standing = case.numbers, case.standing
@@ -88,14 +95,21 @@ def _conflict(case: Case) -> tuple[ConflictRow, ...]:
     entries = []
     for part in standing.conflict:
         row = int((numbers.index_rows if part.quantity == "n" else numbers.k_rows)[part.row])
-        entries.append(_row(case, row, part.quantity, part.weight))
+        entries.append(
+            _anchor(case, part.row, part.weight) if row < 0 else _row(case, row, part.quantity, part.weight)
+        )
     return tuple(sorted(entries, key=lambda entry: entry.row))
 
 
+def _anchor(case: Case, row: int, weight: float) -> ConflictRow:
+    """Row 0, where no line of the file is."""
+    data = case.numbers.data
+    assert data is not None
+    place = float(TWO_PI_C / data.omega[row] * 1e9)
+    return ConflictRow(row=0, wavelength_nm=place, quantity="n", weight=weight)
+
+
 def _row(case: Case, row: int, quantity: Any, weight: float) -> ConflictRow:
-    """Row 0 stands for an anchor."""
-    if row < 0:
-        return ConflictRow(row=0, wavelength_nm=0.0, quantity=quantity, weight=weight)
     return ConflictRow(
         row=case.lines([row])[0], wavelength_nm=case.wavelength_nm(row), quantity=quantity, weight=weight
     )
@@ -111,10 +125,13 @@ def _bounds(case: Case) -> tuple[Bounds, ...]:
 
 
 def _curves(case: Case) -> dict[str, Any]:
-    """Arrays for the figure: printed values over wavelength, the best material, distance in uncertainties."""
+    """Arrays for the figure: printed values over wavelength, the best material, distance in uncertainties.
+
+    Where no material was looked for, the column of n or of absorption alone.
+    """
     data, standing = case.numbers.data, case.standing
     if data is None or standing is None:
-        return {}
+        return _column_alone(case.table)
     curves: dict[str, Any] = {}
     parts = [("n", data.omega, data.index, data.index_error, standing.index)]
     if data.k_omega is not None and data.k is not None and data.k_error is not None:
@@ -127,3 +144,14 @@ def _curves(case: Case) -> dict[str, Any]:
             curves[f"{name}_model_nm"], curves[f"{name}_model"] = TWO_PI_C / omega * 1e9, model
             curves[f"{name}_distance"] = (values - model) / error
     return curves
+
+
+def _column_alone(table: SentTable) -> dict[str, Any]:
+    column = absorption_column(table) or table.column("n")
+    if column is None:
+        return {}
+    return {
+        f"{column.quantity}_nm": TWO_PI_C / table.omega * 1e9,
+        column.quantity: column.values * (100 if column.quantity == "transmittance" else 1),
+        f"{column.quantity}_row": table.lines,
+    }

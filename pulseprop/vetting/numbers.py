@@ -131,7 +131,8 @@ def _assembled(
 
 
 def _merged(quantity: str, column: _Column) -> _Column:
-    """Finite rows in order, those at one frequency as their mean with the mean uncertainty."""
+    """Finite rows in order, those at one frequency as their mean, with an uncertainty that covers them "
+    "all."""
     keep = np.flatnonzero(np.isfinite(column.values) & np.isfinite(column.error) & (column.error > 0))
     order = keep[np.argsort(column.omega[keep], kind="stable")]
     omega, first, number = np.unique(column.omega[order], return_index=True, return_inverse=True)
@@ -140,6 +141,8 @@ def _merged(quantity: str, column: _Column) -> _Column:
         np.bincount(number, weights=part[order], minlength=len(omega)) / np.maximum(count, 1)
         for part in (column.values, column.error)
     )
+    if len(omega) < len(order):
+        error += np.array([np.ptp(column.values[order][number == place]) / 2 for place in range(len(omega))])
     least = None
     if column.least is not None:
         least = np.bincount(number, weights=column.least[order], minlength=len(omega)) > 0

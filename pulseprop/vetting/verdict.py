@@ -15,16 +15,20 @@ from pulseprop.vetting.case import Case
 from pulseprop.vetting.grade import graded
 from pulseprop.vetting.result import Finding, Verdict
 
-__all__ = ["DECISION_RULE", "PHYSICAL", "verdict_on"]
+__all__ = ["PHYSICAL", "decision_rule", "verdict_on"]
 
-DECISION_RULE = (
-    "Stated uncertainties: consistent up to an uncertainty factor of 1, contradictory above. Not stated: "
-    "the printed digits stand for them, and the numbers are contradictory only where a physical bound is "
-    "broken, where the error they would need is larger than any usual measurement's, or where undoing one "
-    "mistake makes them agree to the last digit; else doubtful above 1. Doubtful also: an error found by "
-    "the checks at a factor of at most 1, a narrow line that the rows cannot resolve, fewer than five rows "
-    "over the width of a feature. The factor is a largest ratio, not a chi-square and not a coverage factor."
+STATED_RULE = (
+    "Consistent up to an uncertainty factor of 1, contradictory above, and doubtful where the rows are too "
+    "coarse to tell (a narrow line that they cannot resolve, fewer than five of them over the width of a "
+    "feature), where the checks find an error, or where the test came to no end."
 )
+UNSTATED_RULE = (
+    "No uncertainty is stated, so the printed digits stand for it, and rounding alone contradicts nothing: "
+    "consistent up to an uncertainty factor of 1, doubtful above. Contradictory only where a physical bound "
+    "is broken, where the error needed is larger than any usual measurement's, or where undoing one mistake "
+    "makes all agree to the last digit."
+)
+NO_STATISTICS = "The factor is a largest ratio, not a chi-square and not a coverage factor."
 
 PHYSICAL = ("negative-absorption", "transmittance-above-1", "index-not-positive")
 """Codes of bounds that hold for any passive sample whatever its index."""
@@ -42,13 +46,18 @@ WHOLE_COLUMN = (
 )
 
 
+def decision_rule(case: Case) -> str:
+    """The rule that was followed, for a report."""
+    return f"{STATED_RULE if case.numbers.stated else UNSTATED_RULE} {NO_STATISTICS}"
+
+
 def verdict_on(case: Case, findings: Sequence[Finding]) -> Verdict:
     """The verdict; findings: all of them, with their severities."""
     errors = [finding for finding in findings if finding.severity == "error"]
     if any(finding.code in PHYSICAL for finding in errors):
         return "contradictory"
     if not _above_one(case):
-        return "doubtful" if errors else "consistent"
+        return "doubtful" if errors or case.trouble else "consistent"
     if _unsettled(case) or not (case.numbers.stated or _beyond_measurement(case, errors)):
         return "doubtful"
     return "contradictory"

@@ -44,10 +44,12 @@ def headline(
     """The answer first."""
     parts = [_answer(case, verdict, implied, findings)]
     if verdict == "contradictory" and few is not None and conflict:
-        parts.append(f"without {_rows(_few_lines(case, few))} the factor is {few.factor:.2g}")
+        parts.append(f"without {_rows(_few_lines(case, few))} the factor is {_short(few.factor)}")
     named = next((one for one in findings if one.repair and one.factor_after_repair is not None), None)
     if named is not None and named.severity == "error":
-        parts.append(f"they agree (factor {named.factor_after_repair:.2g}) with this repair: {named.repair}")
+        parts.append(
+            f"they agree (factor {_short(named.factor_after_repair or 0.0)}) with this repair: {named.repair}"
+        )
     if case.standing is not None and case.standing.unresolved is not None:
         parts.append(_unresolved(case.standing.unresolved))
     return "; ".join(parts) + "."
@@ -66,15 +68,32 @@ def sentence(
         return ""
     asked = next((error.repair for error in errors if error.repair), None)
     please = f"please confirm or correct: {asked}" if asked else "please check them against the measurement"
+    if not errors:
+        return _without_error(case, verdict, conflict)
     if conflict:
         rows = _few_lines(case, few) if few else _heaviest(conflict)
         return f"The printed values contradict each other: {_rows(rows)}; {please}."
-    if errors:
-        rows = errors[0].rows[:NAMED_ROWS]
-        return f"{errors[0].text}{f' See {_rows(rows)}.' if rows else ''} {please[0].upper()}{please[1:]}."
+    rows = errors[0].rows[:NAMED_ROWS]
+    return f"{errors[0].text}{f' See {_rows(rows)}.' if rows else ''} {please[0].upper()}{please[1:]}."
+
+
+def _without_error(case: Case, verdict: Verdict, conflict: Sequence[ConflictRow]) -> str:
+    """Where nobody knows of a mistake: rows in conflict, rows that are wanted, or the uncertainty."""
+    line = case.standing.unresolved if case.standing is not None else None
+    if verdict == "contradictory" and conflict:
+        rows = _rows(_heaviest(conflict))
+        return f"The printed values contradict each other: {rows}; please check them against the measurement."
+    if line is not None:
+        return (
+            f"{_unresolved(line)[0].upper()}{_unresolved(line)[1:]}; please send such rows if you have them."
+        )
+    if case.trouble:
+        return ""
     return (
         "The numbers agree only within a larger uncertainty than their digits show; please state the "
         "uncertainty of the measurement."
+        if not case.numbers.stated
+        else "The numbers agree only within a larger uncertainty than stated; please confirm the uncertainty."
     )
 
 
@@ -96,7 +115,8 @@ def assumptions(case: Case) -> tuple[str, ...]:
         )
     request = case.request
     if request.anchors:
-        said.append(f"{len(request.anchors)} anchors of the index were stated and used as rows.")
+        count = len(request.anchors)
+        said.append(f"{count} known {'index' if count == 1 else 'indices'} (anchors) stood in as rows of n.")
     if request.transparent is not None:
         low, high = (TWO_PI_C / omega * 1e9 for omega in reversed(request.transparent))
         said.append(f"The material is transparent from {low:.6g} to {high:.6g} nm, as stated.")
@@ -121,12 +141,12 @@ def _answer(case: Case, verdict: Verdict, implied: ImpliedUncertainty, findings:
     if verdict == "contradictory" and factor > 1:
         return (
             "the printed values contradict each other: no passive causal material has them unless the stated "
-            f"uncertainties are {factor:.3g} times as large"
+            f"uncertainties are {_short(factor, 3)} times as large"
         )
     if verdict == "doubtful" and factor > 1:
         return (
-            f"the numbers need {factor:.3g} times their uncertainties, which the rows are too coarse to "
-            "settle"
+            f"the numbers need {_short(factor, 3)} times their uncertainties, and the rows are too coarse to "
+            "settle it"
         )
     return f"the uncertainties would allow the numbers (factor {factor:.2g}), but {_first(findings)}"
 
@@ -141,14 +161,14 @@ def _led_by_implied(case: Case, verdict: Verdict, implied: ImpliedUncertainty) -
         return start if verdict == "consistent" else f"{start}, but the checks found an error"
     if verdict == "contradictory":
         return f"the printed values contradict each other: they could be true only if {known}"
-    return f"true only if {known}, {factor:.2g} times what the printed digits say"
+    return f"true only if {known}, {_short(factor)} times what the printed digits say"
 
 
 def _without_factor(case: Case, verdict: Verdict, findings: Sequence[Finding]) -> str:
-    if verdict != "consistent":
+    if any(finding.severity == "error" for finding in findings):
         return _first(findings)
     if case.trouble:
-        return "the test for a passive causal material did not come to an end; the other checks found nothing"
+        return "nothing was found, but the test for a passive causal material did not come to an end"
     return f"no physical bound is broken; causality was not tested ({case.numbers.reason})"
 
 
@@ -177,6 +197,11 @@ def _few_lines(case: Case, few: FewRows) -> tuple[int, ...]:
 def _heaviest(conflict: Sequence[ConflictRow]) -> tuple[int, ...]:
     ordered = sorted(conflict, key=lambda entry: -abs(entry.weight))[:NAMED_ROWS]
     return tuple(sorted({entry.row for entry in ordered}))
+
+
+def _short(factor: float, digits: int = 2) -> str:
+    """So many digits without an exponent where a reader can do without: 450, not 4.5e+02."""
+    return f"{float(f'{factor:.{digits}g}'):g}"
 
 
 def _rows(lines: Sequence[int]) -> str:
