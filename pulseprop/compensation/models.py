@@ -173,15 +173,31 @@ class Model:
     def _straight(self) -> tuple[int, ...]:
         """The adjustments that are straight each by itself, if they are so together; else none.
 
-        Ranges that hold settings without elements have no straight ones.
+        Looked at with the others in the middle and at both ends of their ranges: a tip or an edge may cut the
+        beam at one end only. Ranges that hold no element in their middle have no straight ones.
         """
         count = len(self.continuous)
         middle = self.low + np.resize(PROBE, count) * (self.high - self.low)
         try:
             alone = tuple(index for index in range(count) if self._is_straight(middle, (index,)))
-            return alone if self._is_straight(middle, alone) else ()
+            if not self._is_straight(middle, alone):
+                return ()
         except InputError:
             return ()
+        curved = [index for index in range(count) if index not in alone]
+        at_ends = all(self._is_straight_at(end, middle, curved, alone) for end in (self.low, self.high))
+        return alone if at_ends else ()
+
+    def _is_straight_at(self, end: Real, middle: Real, curved: list[int], straight: tuple[int, ...]) -> bool:
+        """With the curved adjustments at an end of their ranges, if an element can be there."""
+        if not curved:
+            return True
+        values = middle.copy()
+        values[curved] = end[curved]
+        try:
+            return self._is_straight(values, straight)
+        except InputError:
+            return True
 
     def _is_straight(self, middle: Real, straight: tuple[int, ...]) -> bool:
         if not straight:

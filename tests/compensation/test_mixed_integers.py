@@ -233,3 +233,22 @@ def test_a_part_that_does_nothing_is_not_in_the_design(bench):
             for model, values in zip(one.assembly.models, one.assembly.values(one.u), strict=True):
                 assert not (model.part.name == "wedge" and values[0] < 1e-7)
     assert [model.part.name for model in found.best[0].assembly.models] == ["m"]
+
+
+def test_a_window_of_one_thickness_may_be_used_or_not(bench):
+    """Nothing to set on it: it is taken where it helps, and left out where it does not."""
+    stock = bench.glass("fused silica", 4e-3)
+    spare = Part(name="spare", build=stock.build, optional=True)
+    source = bench.pulse()
+    for mirrors, taken in ((-140e-30, True), (1e-33, False)):
+        part = bench.mirrors("m", mirrors, most=1, step=1, optional=False)
+        fixed_count = Part(
+            name="m",
+            build=part.build,
+            adjustments=(Adjustment(parameter="bounces", low=1.0, high=1.0),),
+        )
+        found = search(
+            Problem(pulse=source, parts=(fixed_count, spare), best=1), bench.samples_of(source), silent
+        )
+        names = [model.part.name for model in found.best[0].assembly.models]
+        assert ("spare" in names) is taken
