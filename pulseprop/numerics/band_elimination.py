@@ -40,7 +40,7 @@ class BandLayout:
 
 @dataclass(frozen=True, eq=False)
 class _Panel:
-    """q: orthogonal; order: of the rows it acts on, carried ones, y and e; carry_on: rows to the next panel."""
+    """q: orthogonal; order: of its rows (carried ones, y, e); carry_on: rows to the next panel."""
 
     start: int
     stop: int

@@ -32,10 +32,12 @@ def outside_knots(rows: Real) -> tuple[Real, Real]:
 def between_rows(omega: Real, k: Real) -> Real:
     """What the row spacing leaves open: |fourth difference| of k / 60, with the largest of the four gaps.
 
-    omega, k: five rows or more, omega ascending.
+    omega, k: five rows or more, omega ascending. A row has that of its neighbours where it is larger: where
+    the difference passes through 0 the spline still misses what it misses beside.
     """
     first = np.clip(np.arange(len(k)) - 2, 0, len(k) - 5)
     x, y = (column[first[:, None] + np.arange(5)] for column in (omega, k))
     gap = np.max(np.diff(x, axis=1), axis=1)
     others = (x[:, :, None] - x[:, None, :]) / gap[:, None, None] + np.eye(5)
-    return np.asarray(np.abs(np.sum(y / np.prod(others, axis=2), axis=1)) * 24 / 60)
+    own = np.pad(np.abs(np.sum(y / np.prod(others, axis=2), axis=1)) * 24 / 60, 1, mode="edge")
+    return np.asarray(np.maximum(np.maximum(own[:-2], own[2:]), own[1:-1]))

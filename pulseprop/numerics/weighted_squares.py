@@ -23,12 +23,10 @@ NARROW = 6
 """Most columns that a row may span to count as narrow."""
 WORTHWHILE = 16
 """Narrow rows below which they are treated like the others."""
-ITERATIONS = 25
-"""Most conjugate gradients on top of a Cholesky factor; an orthogonal one costs as much as some 40."""
+ITERATIONS = 40
+"""Most conjugate gradients on top of a Cholesky factor; an orthogonal one costs as much as some 50."""
 CONVERGED = 1e-9
 """Fall of the gradient at which they stop."""
-LIFT = 1e-15
-"""Share of the diagonal added to a matrix that rounding has left without a Cholesky factor."""
 
 
 class WeightedSquares:
@@ -119,14 +117,17 @@ class _Normal:
 
     def __init__(self, near: Real, rows: Real) -> None:
         from scipy.linalg.blas import dsyrk
+        from scipy.linalg.lapack import dpotrf
 
         self.near, self.rows = near, rows
         full = dsyrk(1.0, rows.T, lower=1)
         full[np.diag_indices(len(near))] += near**2
-        self.lower = _lower(full)
+        self.lower, self.failed = dpotrf(full, lower=1, overwrite_a=1)
 
     def solve(self, near: Real, right: Real) -> tuple[Real, Real, Real] | None:
-        """None where the gradients do not converge."""
+        """None where there is no Cholesky factor, or the gradients do not converge on it."""
+        if self.failed:
+            return None
         z, direction = np.zeros_like(near), np.zeros_like(near)
         size = first = np.inf
         for _ in range(ITERATIONS):
@@ -146,19 +147,6 @@ class _Normal:
         from scipy.linalg.lapack import dtrtrs
 
         return np.asarray(dtrtrs(self.lower, right, lower=1, trans=transposed)[0])
-
-
-def _lower(full: Real) -> Real:
-    """The Cholesky factor, with as little added to the diagonal as makes one."""
-    from scipy.linalg.lapack import dpotrf
-
-    diagonal, lift = np.diag(full).copy(), 0.0
-    while True:
-        lower, failed = dpotrf(full, lower=1)
-        if not failed:
-            return np.asarray(lower)
-        lift = max(10 * lift, LIFT)
-        full[np.diag_indices(len(full))] = diagonal * (1 + lift)
 
 
 class _Orthogonal:
