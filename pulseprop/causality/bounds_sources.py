@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from functools import cached_property
+from contextlib import suppress
 from typing import Protocol
 
 import numpy as np
@@ -67,12 +67,7 @@ class Transparent:
         self._passive = PassiveClass(data)
         self.unit = self._passive.unit
         self._in_chi = _proofs_in_chi(data)
-        if self._in_chi is None:
-            self._in_k  # noqa: B018  raises here where there are no bounds at all
-
-    @cached_property
-    def _in_k(self) -> Proofs:
-        return Proofs(Materials(self._passive))
+        self._in_k = Proofs(Materials(self._passive)) if self._in_chi is None else None
 
     def intervals(self, omega: float) -> Real:
         """See `Source`."""
@@ -82,7 +77,9 @@ class Transparent:
         if self._in_chi is not None:
             known, open_ones = _intervals_in_chi(self._in_chi, omega, weights)
         if np.any(open_ones):
-            known = _common(known, _intervals(self._in_k, omega, weights, open_ones))
+            with suppress(NumericalLimit):  # what chi proves stays so
+                self._in_k = self._in_k or Proofs(Materials(self._passive))
+                known = _common(known, _intervals(self._in_k, omega, weights, open_ones))
         return known
 
 
