@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.reports.draw_mirror_table import draw_mirror_table
+from pulseprop.reports.draw_columns import draw_columns
 from pulseprop.reports.drawing import Drawing
 from pulseprop.reports.figure_style import COLOURS, Frame, canvas, decades, label_x, label_y, styled
 from pulseprop.reports.vet_numbers import file_name
@@ -48,7 +48,7 @@ def draw_vet(vetted: Vetted, number: int) -> Drawing | None:
     quantities = [name for name in ("n", "k") if f"{name}_distance" in curves]
     name, source = f"table-{number + 1}", _source(vetted)
     if not quantities:
-        return draw_mirror_table(vetted, name, source)
+        return draw_columns(vetted, name, source)
     heights = tuple(height for _ in quantities for height in (1.4, 1.0))
     figure, panels = canvas(heights, source=source, frame=Frame(left=0.14, top=0.95, gap=0.16))
     for at, quantity in enumerate(quantities):

@@ -19,6 +19,7 @@ from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_abbe import abbe_bounds
 from pulseprop.vetting.requirement_answer import material_answer
 from pulseprop.vetting.result import (
+    NOT_SETTLED,
     Bounds,
     ConflictRow,
     Finding,
@@ -95,7 +96,7 @@ def _settled(
     try:
         return settled_factor(sheet, causality, thorough=True), ()
     except NumericalLimit as failure:
-        return None, (Finding(code="not-settled", severity="warning", text=f"{failure}"),)
+        return None, (Finding(code=NOT_SETTLED, severity="warning", text=f"{failure}"),)
 
 
 def _contradiction(sheet: FormulaSheet, settled: Settled | None) -> Iterator[Finding]:

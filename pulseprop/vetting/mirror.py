@@ -99,7 +99,8 @@ def judge_mirror(table: SentTable, request: Request, *, date: str, version: str)
         assumptions=_assumptions(table, request),
         blind_spots=BLIND,
         curves={f"{name}_nm": curve.nm for name, curve in curves.items()}
-        | {name: curve.values / FEMTO[name][0] for name, curve in curves.items()},
+        | {name: curve.values / FEMTO[name][0] for name, curve in curves.items()}
+        | {f"{name}_row": curve.lines for name, curve in curves.items()},
     )
 
 

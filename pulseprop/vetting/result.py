@@ -6,6 +6,7 @@ from dataclasses import asdict, dataclass, field
 from typing import Any, Literal
 
 __all__ = [
+    "NOT_SETTLED",
     "Bounds",
     "ConflictRow",
     "Finding",
@@ -15,6 +16,9 @@ __all__ = [
     "Verdict",
     "Vetted",
 ]
+
+NOT_SETTLED = "not-settled"
+"""Code of the finding that a numerical limit was reached, so that a test has no answer."""
 
 Interval = tuple[float, float]
 Severity = Literal["error", "warning", "note"]
@@ -103,10 +107,14 @@ class Vetted:
     curves: dict[str, Any] = field(default_factory=dict, repr=False, compare=False)
 
     def exit_code(self, strict: bool) -> int:
-        """1 for contradictory, for a requirement not met, and for doubtful where strict; else 0."""
+        """1 for contradictory, for a requirement not met, and for doubtful where strict; 3 where a test came
+        to a numerical limit and nothing else says no; else 0."""
         unmet = any(answer.verdict == "not conforming" for answer in self.requirements)
-        bad = self.verdict == "contradictory" or (strict and self.verdict == "doubtful")
-        return int(bad or unmet)
+        if unmet or self.verdict == "contradictory":
+            return 1
+        if any(finding.code == NOT_SETTLED for finding in self.findings):
+            return 3
+        return int(strict and self.verdict == "doubtful")
 
     def as_json(self) -> dict[str, Any]:
         """The document of the JSON report."""

@@ -161,7 +161,7 @@ def _led_by_implied(case: Case, verdict: Verdict, implied: ImpliedUncertainty) -
         return start if verdict == "consistent" else f"{start}, but the checks found an error"
     if verdict == "contradictory":
         return f"the printed values contradict each other: they could be true only if {known}"
-    return f"true only if {known}, {_short(factor)} times what the printed digits say"
+    return f"they can be true only if {known}: {_short(factor)} times the rounding of the printed digits"
 
 
 def _without_factor(case: Case, verdict: Verdict, findings: Sequence[Finding]) -> str:
