@@ -24,6 +24,7 @@ from pulseprop.compensation.search import Found, search
 from pulseprop.compensation.today import in_place, path_today
 from pulseprop.compensation.verify import Sent, sent
 from pulseprop.constants import FEMTO
+from pulseprop.errors import NumericalLimit
 
 __all__ = ["compensate"]
 
@@ -32,6 +33,8 @@ Progress = Callable[[str, float], None]
 
 SAME_RATIO = 1e-4
 """Peak ratios of search and full run that differ by more mean that the search's window was too short."""
+SHRINKS = 0.7
+"""At least by this factor a longer window must bring them together."""
 AS_WRITTEN = 5e-4
 """A target counts as reached within this part of it: "12 fs" is no more precise than that."""
 SMALLER_IS_BETTER = ("duration", "flat phase", "contrast")
@@ -79,15 +82,30 @@ def compensate(problem: Problem, progress: Progress = _silent) -> Compensation:
 def _settled(problem: Problem, progress: Progress) -> tuple[Samples, Found, list[Sent]]:
     """Search, and search again on a longer window until full runs of the designs agree."""
     samples = samples_for(problem.pulse, problem.grid, problem.beyond_range)
+    apart = np.inf
     while True:
         found = search(problem, samples, progress)
         checked = [sent(problem, path_of(problem, one)) for one in found.best]
-        if all(
-            abs((run.pulse_out.peak_ratio or 0.0) - one.judged.peak_ratio) <= SAME_RATIO
-            for one, run in zip(found.best, checked, strict=True)
-        ):
+        before, apart = apart, _apart(found, checked)
+        if apart <= SAME_RATIO:
             return samples, found, checked
+        if apart > SHRINKS * before:
+            raise NumericalLimit(
+                "search and full run do not agree on the best design, and a longer window does not help",
+                value=f"peak ratios {apart:.2g} apart",
+                allowed=f"{SAME_RATIO:g}",
+                remedy="Narrow the ranges to where the beam passes all edges, or leave width and beam_radius "
+                "of the compensator out",
+            )
         samples = longer(samples, problem.grid)
+
+
+def _apart(found: Found, checked: Sequence[Sent]) -> float:
+    """Largest difference of a peak ratio between search and full run."""
+    return max(
+        abs((run.pulse_out.peak_ratio or 0.0) - one.judged.peak_ratio)
+        for one, run in zip(found.best, checked, strict=True)
+    )
 
 
 def _state(problem: Problem, run: Sent) -> State:

@@ -138,7 +138,7 @@ def _setting(element: str, one: Adjustment, value: Value) -> Setting:
 
 def _limit(one: Adjustment, value: float) -> Literal["low", "high"] | None:
     near = AT_LIMIT * (one.high - one.low)
-    if not one.continuous or one.low + near < value < one.high - near:
+    if one.choices or one.high == one.low or one.low + near < value < one.high - near:
         return None
     return "low" if value <= one.low + near else "high"
 

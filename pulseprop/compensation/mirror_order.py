@@ -17,7 +17,7 @@ from pulseprop.compensation.models import Model
 from pulseprop.compensation.result import MirrorOrder, Ripple
 from pulseprop.compensation.samples import Samples
 from pulseprop.constants import FEMTO, TWO_PI_C
-from pulseprop.elements.element import Element
+from pulseprop.elements.element import Element, orders_of_element
 from pulseprop.material.response import View
 from pulseprop.measures.widths import spectral_fwhm
 from pulseprop.pulse.measured import MeasuredPulse
@@ -57,10 +57,10 @@ def _order(
     pulse: Pulse | MeasuredPulse,
 ) -> MirrorOrder:
     centre = pulse.centre
-    settings = model.settings(values)
-    gdd, tod = float(settings.get("gdd", 0.0)), float(settings.get("tod", 0.0))
-    bounces = float(settings.get("bounces", 1.0)) or 1.0
-    own = {element.name for element in model.elements(values)}
+    mirrors = model.elements(values)
+    bounces = float(sum(getattr(mirror, "bounces", 1) for mirror in mirrors))
+    gdd, tod = _orders_of_bounce(mirrors, centre, bounces)
+    own = {element.name for element in mirrors}
     rest = [element for element in elements if element.name not in own]
     spectrum = judge.samples.amplitude * np.exp(exponent)
     low, high = _band(judge.samples, spectrum)
@@ -85,6 +85,12 @@ def _order(
         low_fs2=target * FEMTO**2 - slowest,
         high_fs2=target * FEMTO**2 + slowest,
     )
+
+
+def _orders_of_bounce(mirrors: tuple[Element, ...], centre: float, bounces: float) -> tuple[float, float]:
+    """GDD in s^2 and TOD in s^3 of one bounce at the centre, rad/s."""
+    _, gdd, tod, _ = np.sum([orders_of_element(mirror, centre) for mirror in mirrors], axis=0) / bounces
+    return float(gdd), float(tod)
 
 
 def _band(samples: Samples, spectrum: Complex) -> tuple[float, float]:

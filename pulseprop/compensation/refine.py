@@ -135,5 +135,5 @@ def _climb_from(climb: _Climb, u: Real) -> None:
         jac=True,
         method="L-BFGS-B",
         bounds=[(0.0, scale) for scale in climb.scale],
-        options={"maxfun": EVALUATIONS, "ftol": 1e-13, "gtol": 1e-8},
+        options={"maxfun": EVALUATIONS, "ftol": 1e-11, "gtol": 1e-6},
     )
