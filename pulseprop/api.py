@@ -118,12 +118,14 @@ def compensate(
     from pulseprop.propagation.send import run
     from pulseprop.scenario.build import build
     from pulseprop.scenario.build_compensate import problem_of
+    from pulseprop.scenario.worst_cases import worst_cases_of
 
     scenario = _read(scenario, overrides)
     problem = problem_of(scenario)
-    if best is not None:
-        problem = replace(problem, best=best)
+    alternatives, notes = worst_cases_of(scenario, problem)
+    problem = replace(problem, alternatives=alternatives, best=best or problem.best)
     answer = solve(problem) if progress is None else solve(problem, progress)
+    answer = replace(answer, notes=(*answer.notes, *notes))
     experiment = build(scenario, answer.designs[0].path)
     return Compensated(compensation=answer, run=run(experiment, __version__, catalogue_checksum()))
 
