@@ -87,6 +87,8 @@ def wavelength_unit(case: Case) -> Iterator[Finding]:
     omega, index = rows
     claim = claimed_of(case)
     now = likeness(claim[0], omega, index) if claim else nearest(omega, index)
+    if now is not None and now.distance <= ALIKE:
+        return
     for scale in SCALES:
         then = likeness(claim[0], omega / scale, index) if claim else nearest(omega / scale, index)
         limit = MELT if claim else ALIKE

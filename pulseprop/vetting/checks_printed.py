@@ -24,6 +24,8 @@ Interval = tuple[float, float]
 
 PLACES = 3
 """Rows at which a printed column is compared: each costs several linear programmes."""
+SUSPECTS = 1
+"""Rows that are compared because they stand out of their column: one slip is one wrong row."""
 END_ROWS = 2
 """Rows at each end where the index guarantees nothing about its derivatives."""
 
@@ -97,7 +99,8 @@ def _compared(case: Case, column: Column) -> _Compared | None:
     order = order[np.isfinite(column.values[order])]
     if case.standing is None or not len(order):
         return None
-    rows = np.unique(order[np.linspace(0, len(order) - 1, PLACES).astype(int)])
+    even = np.linspace(0, len(order) - 1, PLACES).astype(int)
+    rows = order[np.union1d(even, _odd_ones(table.omega[order], column.values[order]))]
     read, unit, _ = ORDERS[column.quantity]
     known = [
         (row, interval)
@@ -117,6 +120,15 @@ def _compared(case: Case, column: Column) -> _Compared | None:
         low=low,
         high=high,
     )
+
+
+def _odd_ones(omega: Real, values: Real) -> NDArray[np.intp]:
+    """The rows that lie farthest off the straight line between their neighbours, for their bend elsewhere."""
+    if len(values) < 2 * SUSPECTS + 3:
+        return np.zeros(0, dtype=np.intp)
+    share = (omega[1:-1] - omega[:-2]) / (omega[2:] - omega[:-2])
+    off = np.abs(values[1:-1] - values[:-2] - share * (values[2:] - values[:-2]))
+    return np.argsort(off)[-SUSPECTS:] + 1
 
 
 def _finding(case: Case, column: Column, compared: _Compared) -> Finding:

@@ -116,9 +116,11 @@ def _row(case: Case, row: int, quantity: Any, weight: float) -> ConflictRow:
 
 
 def _bounds(case: Case) -> tuple[Bounds, ...]:
-    """At the asked frequencies; at the middle of the rows where none was asked."""
+    """At the asked frequencies; where none was asked, at the middle of a transparent table (they cost more
+    where it absorbs).
+    """
     asked = case.request.at
-    if not asked and case.numbers.data is not None:
+    if not asked and case.numbers.data is not None and case.numbers.data.k is None:
         omega = case.numbers.data.omega
         asked = (float(omega[len(omega) // 2]),) if len(omega) > 2 * SHOWN else ()
     return tuple(guaranteed(case, np.array(asked))) if asked else ()
