@@ -2,17 +2,12 @@
 
 from __future__ import annotations
 
-import sys
-from pathlib import Path
-
 import numpy as np
 import pytest
 
 from pulseprop.causality.coarse_features import coarse_features
 from pulseprop.causality.feasibility import feasibility
-
-sys.path.insert(0, str(Path(__file__).parent))
-from passive_examples import MICROMETRES, absorber, omega_of, rows, silica
+from tests.causality.passive_examples import MICROMETRES, absorber, omega_of, rows, silica
 
 OMEGA = np.linspace(2e15, 4e15, 60)
 SPACING = OMEGA[1] - OMEGA[0]
