@@ -3,8 +3,8 @@
     python -m tests.benchmarks.feasibility
 
 An invented crystal with one line, rounded to 1e-5. Goals on two free cores: 250 rows of n and k in 0.5 s,
-1,000 in 5 s, under 1 GiB at 2,000; 60 rows of n in 30 ms. The processor's time is told too: machines are busy,
-and threads of the linear algebra that wait for one another count there.
+1,000 in 5 s, under 1 GiB at 2,000; 60 rows of n in 30 ms. The processor's time is told too: machines are
+busy, and threads of the linear algebra that wait for one another count there.
 """
 
 from __future__ import annotations
