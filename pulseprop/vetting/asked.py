@@ -9,7 +9,7 @@ from typing import Any, Literal
 
 from pulseprop.causality.bounds_strength import strength_of
 from pulseprop.errors import InputError, PulsepropError
-from pulseprop.units import quantity, spectral_width
+from pulseprop.units import Width, quantity, spectral_width
 from pulseprop.vetting.read_options import ReadOptions
 from pulseprop.vetting.request import Anchor, Request
 from pulseprop.vetting.uncertainty_text import uncertainties_in
@@ -18,6 +18,8 @@ __all__ = ["Asked", "asked_with"]
 
 ANCHOR = re.compile(r"\s*(\S+)\s*(?:\+-|±)\s*(\S+)\s+at\s+(.+?)\s*")
 RANGE = re.compile(r"\s*(.+?)\s+to\s+(.+?)\s*")
+HIGHEST = 100.0
+"""No matter has an index like this at any wavelength that tables are of (common practice, no source)."""
 SEVERAL = ("at", "require", "anchor")
 """Options that may be given more than once."""
 
@@ -73,7 +75,7 @@ class Asked:
             require=self.require,
             strict=self.strict,
             ceiling=self.ceiling,
-            resolution=spectral_width(self.resolution) if self.resolution else None,
+            resolution=_width(self.resolution) if self.resolution else None,
             anchors=tuple(_anchor(text) for text in self.anchor),
             transparent=_range(self.transparent) if self.transparent else None,
             strength=self._strength(),
@@ -120,6 +122,18 @@ def _read(option: str, text: str, kind: str) -> float:
         raise error.located(place=f"--{option}") from None
 
 
+def _width(text: str) -> Width:
+    try:
+        width = spectral_width(text)
+    except PulsepropError as error:
+        raise error.located(place="--resolution") from None
+    if not 0 < width.value < float("inf"):
+        raise InputError(
+            "a resolution lies above 0", value=text, allowed='such as "2 nm"', place="--resolution"
+        )
+    return width
+
+
 def _anchor(text: str) -> Anchor:
     match = ANCHOR.fullmatch(text)
     try:
@@ -133,9 +147,12 @@ def _anchor(text: str) -> Anchor:
             allowed='such as "1.5230 +- 0.0002 at 589.3 nm"',
             place="--anchor",
         ) from None
-    if not (0 < index < float("inf") and 0 < error < float("inf")):
+    if not (0 < index < HIGHEST and 0 < error < HIGHEST):
         raise InputError(
-            "an index and its uncertainty lie above 0", value=text, allowed="above 0", place="--anchor"
+            "no index and no uncertainty is like this",
+            value=text,
+            allowed=f"above 0 and below {HIGHEST:g}",
+            place="--anchor",
         )
     return Anchor(omega=_read("anchor", match.group(3), "spectral"), index=index, error=error)
 
