@@ -1,8 +1,8 @@
 """Could a line too narrow for the rows explain a conflict? Lines are tried in a few neighbouring gaps.
 
-With narrow lines allowed between all rows every table is possible; so they are allowed a third of the gap from
-any row, and in at most three neighbouring gaps. Where they bring the factor to 1, or down by 4,
-the rows cannot tell a wrong number from a line that they missed.
+With narrow lines allowed between all rows every table is possible; so they are allowed a third of the gap
+from any row, and in at most three neighbouring gaps. Where they bring the factor to 1, or down by 4, the rows
+cannot tell a wrong number from a line that they missed.
 """
 
 from __future__ import annotations
