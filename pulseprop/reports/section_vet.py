@@ -147,7 +147,7 @@ def _conflict_row(entry: ConflictRow, vetted: Vetted) -> tuple[str, ...]:
     anchor = entry.row == ANCHOR
     return (
         "anchor" if anchor else str(entry.row),
-        nm_text(entry.wavelength_nm) if entry.wavelength_nm > 0 else "",
+        nm_text(entry.wavelength_nm),
         entry.quantity,
         value,
         error,
@@ -156,12 +156,17 @@ def _conflict_row(entry: ConflictRow, vetted: Vetted) -> tuple[str, ...]:
 
 
 def _printed(entry: ConflictRow, vetted: Vetted) -> tuple[str, str]:
-    """Value and uncertainty of a row; empty where the answer does not hold them."""
+    """Value and uncertainty of a row; empty where the answer does not hold them, or only the mean of two."""
     curves, name = vetted.curves, entry.quantity
-    if f"{name}_error" not in curves or entry.wavelength_nm <= 0:
+    here = [other for other in vetted.conflict if (other.quantity, other.wavelength_nm) == _place(entry)]
+    if f"{name}_error" not in curves or len(here) > 1:
         return "", ""
     row = int(np.argmin(np.abs(curves[f"{name}_nm"] - entry.wavelength_nm)))
     return plain_text(float(curves[name][row])), plain_text(float(curves[f"{name}_error"][row]), 4)
+
+
+def _place(entry: ConflictRow) -> tuple[str, float]:
+    return entry.quantity, entry.wavelength_nm
 
 
 def _findings(vetted: Vetted) -> Section | None:

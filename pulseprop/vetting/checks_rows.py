@@ -17,12 +17,14 @@ def double_rows(case: Case) -> Iterator[Finding]:
     """Rows at one wavelength: the same numbers, or others."""
     table, repeat = case.table, case.numbers.repeat
     if repeat is not None and repeat.factor > 1:
+        printed = [row for row in sorted(repeat.rows) if row >= 0]
+        which = "Two rows" if len(printed) > 1 else "The anchor and the row"
         yield Finding(
             code="double-row",
             severity="error",
-            text=f"Two rows at {case.wavelength_nm(repeat.rows[0]):.6g} nm give values of {repeat.quantity} "
-            f"that differ by {repeat.factor:.3g} times what their uncertainties allow.",
-            rows=case.lines(sorted(repeat.rows)),
+            text=f"{which} at {case.wavelength_nm(printed[0]):.6g} nm give values of {repeat.quantity} "
+            f"that differ by {float(f'{repeat.factor:.3g}'):g} times what their uncertainties allow.",
+            rows=case.lines(printed),
         )
     _, first = np.unique(table.omega, return_index=True)
     again = np.setdiff1d(np.arange(len(table.omega)), first)

@@ -88,8 +88,14 @@ def _conflict(case: Case) -> tuple[ConflictRow, ...]:
     repeat = numbers.repeat
     if repeat is not None and repeat.factor > 1 and (standing is None or repeat.factor >= standing.factor):
         low, high = repeat.rows
+        place = case.wavelength_nm(max(low, high))
         pair = ((low, -0.5), (high, 0.5))
-        return tuple(_row(case, row, repeat.quantity, weight) for row, weight in pair)
+        return tuple(
+            ConflictRow(row=0, wavelength_nm=place, quantity="n", weight=weight)
+            if row < 0
+            else _row(case, row, repeat.quantity, weight)
+            for row, weight in pair
+        )
     if standing is None or standing.factor <= 1:
         return ()
     entries = []

@@ -20,6 +20,8 @@ Rows = NDArray[np.int64]
 
 FEWEST = 3
 """Rows of the index below which there is nothing to compare; anchors count."""
+SAME_PLACE = 1e-9
+"""Relative distance within which two wavelengths are one."""
 ANCHOR = -1
 """Stands for a row that is not in the table."""
 
@@ -90,17 +92,26 @@ def _reason(index: _Column, k: AbsorptionRows | str | None, *, has_index: bool) 
 
 
 def _index_rows(table: SentTable, request: Request) -> _Column:
-    anchors = request.anchors
-    omega = np.array([anchor.omega for anchor in anchors])
-    values = np.array([anchor.index for anchor in anchors])
-    error = np.array([anchor.error for anchor in anchors])
-    rows = np.full(len(anchors), ANCHOR, dtype=np.int64)
+    """Rows of the index, and anchors. Of an anchor and a row at one wavelength that agree, the one known
+    better stands; two that do not agree are told as a repeat.
+    """
     column = table.column("n")
+    omega, values, error = np.zeros(0), np.zeros(0), np.zeros(0)
     if column is not None:
-        omega = np.append(table.omega, omega)
-        values = np.append(column.values, values)
-        error = np.append(column_uncertainty(table, column, request), error)
-        rows = np.append(np.arange(len(table.omega)), rows)
+        omega, values = table.omega, column.values
+        error = column_uncertainty(table, column, request)
+    rows = np.arange(len(omega))
+    for anchor in request.anchors:
+        place, keep = anchor.omega, np.ones(len(omega), dtype=bool)
+        same = np.abs(omega - place) <= SAME_PLACE * place
+        if np.any(same):
+            place = float(omega[same][0])
+            agree = same & (np.abs(values - anchor.index) <= error + anchor.error)
+            if np.any(agree & (error <= anchor.error)):
+                continue
+            keep = ~agree
+        omega, values = np.append(omega[keep], place), np.append(values[keep], anchor.index)
+        error, rows = np.append(error[keep], anchor.error), np.append(rows[keep], ANCHOR)
     return _merged("n", _Column(omega=omega, values=values, error=error, rows=rows))
 
 

@@ -196,7 +196,7 @@ def _few_lines(case: Case, few: FewRows) -> tuple[int, ...]:
 
 def _heaviest(conflict: Sequence[ConflictRow]) -> tuple[int, ...]:
     ordered = sorted(conflict, key=lambda entry: -abs(entry.weight))[:NAMED_ROWS]
-    return tuple(sorted({entry.row for entry in ordered}))
+    return tuple(sorted({entry.row for entry in ordered if entry.row > 0}))
 
 
 def _short(factor: float, digits: int = 2) -> str:
