@@ -63,7 +63,8 @@ def delivery_headline(answers: Sequence[Vetted]) -> str:
     asked = [one.verdict for answer in answers for one in answer.requirements]
     unmet, open_ = asked.count("not conforming"), asked.count("not decided")
     parts = [f"{unmet} not met"] * bool(unmet) + [f"{open_} not decided"] * bool(open_)
-    required = f"; of {len(asked)} requirements {', '.join(parts) or 'all are met'}" if asked else ""
+    told = f"{', '.join(parts)} of {len(asked)}" if parts else "all met"
+    required = f"; requirements: {told}" if asked else ""
     return f"{len(answers)} tables: {counted}{required}."
 
 
