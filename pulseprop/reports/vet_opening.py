@@ -16,9 +16,15 @@ VERDICTS = ("contradictory", "doubtful", "consistent")
 
 
 def headlines(vetted: Vetted) -> tuple[str, ...]:
-    """The answers in a sentence each, requirements first: the first question of who has ordered something."""
+    """The answers in a sentence each. Requirements come first, as the first question of who has ordered
+    something, unless they are open because the numbers contradict each other.
+    """
     said = f"{vetted.verdict.upper()}: {_as_continued(vetted.headline)}"
-    return (_required(vetted.requirements), said) if vetted.requirements else (said,)
+    if not vetted.requirements:
+        return (said,)
+    required = _required(vetted.requirements)
+    open_ = vetted.verdict == "contradictory" and not required.startswith("NOT CONFORMING")
+    return (said, required) if open_ else (required, said)
 
 
 def _as_continued(text: str) -> str:

@@ -128,7 +128,9 @@ def test_the_printed_proof_can_be_added_up():
 
 
 def test_requirements_are_the_first_answer():
-    assert vet_text([made(requirements=(MET,))]).startswith("CONFORMING: the requirement is met.")
+    fine = made(verdict="consistent", requirements=(MET,))
+    assert vet_text([fine]).startswith("CONFORMING: the requirement is met.")
+    assert vet_text([made(requirements=(MET,))]).startswith("CONTRADICTORY: ")
     unmet = vet_text([made(requirements=(MET, OPEN, UNMET))])
     assert unmet.startswith(
         "NOT CONFORMING: 1 of 3: gvd at 600 nm >= 90 fs^2/mm (the numbers guarantee -4 to 41)"
@@ -136,7 +138,7 @@ def test_requirements_are_the_first_answer():
     assert "By your numbers gvd at 600 nm >= 90 fs^2/mm is not met; please comment." in " ".join(
         unmet.split()
     )
-    undecided = vet_text([made(requirements=(MET, OPEN))])
+    undecided = vet_text([made(verdict="doubtful", requirements=(MET, OPEN))])
     assert undecided.startswith("NOT DECIDED: 1 of 2: V_d >= 60")
 
 
