@@ -44,7 +44,7 @@ def headline(
     """The answer first."""
     parts = [_answer(case, verdict, implied, findings)]
     if verdict == "contradictory" and few is not None and conflict:
-        parts.append(f"without {_rows(_few_lines(case, few))} the factor is {_short(few.factor)}")
+        parts.append(f"without {_left_out(case, few)} the factor is {_short(few.factor)}")
     named = next((one for one in findings if one.repair and one.factor_after_repair is not None), None)
     if named is not None and named.severity == "error":
         parts.append(
@@ -192,6 +192,13 @@ def _few_lines(case: Case, few: FewRows) -> tuple[int, ...]:
         for part in few.parts
     ]
     return tuple(sorted(int(case.table.lines[row]) for row in rows if row >= 0))
+
+
+def _left_out(case: Case, few: FewRows) -> str:
+    """ "row 12 and the anchor"."""
+    lines = _few_lines(case, few)
+    named = [_rows(lines)] if lines else []
+    return " and ".join([*named, "the anchor"] if len(few.parts) > len(lines) else named)
 
 
 def _heaviest(conflict: Sequence[ConflictRow]) -> tuple[int, ...]:
