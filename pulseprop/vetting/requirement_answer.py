@@ -32,7 +32,8 @@ DECISION_RULE = (
     "otherwise not decided within the uncertainty (the three-way rule of ISO 14253-1, from memory)."
 )
 
-FS2_PER_MM, FS3_PER_MM = 1e-27, 1e-42
+FS2_PER_MM = 1e-27
+FS3_PER_MM = 1e-42
 
 READ: dict[str, Callable[[Bounds], Interval | None]] = {
     "index": lambda bounds: bounds.index,

@@ -16,7 +16,9 @@ from pulseprop.units import unit_from
 
 __all__ = ["LINE_C", "LINE_D", "LINE_F", "REQUIRABLE", "Requirable", "named_requirable", "plain_number"]
 
-LINE_D, LINE_F, LINE_C = (TWO_PI_C / (nm * 1e-9) for nm in (587.5618, 486.1327, 656.2725))
+LINE_D = TWO_PI_C / 587.5618e-9
+LINE_F = TWO_PI_C / 486.1327e-9
+LINE_C = TWO_PI_C / 656.2725e-9
 """rad/s."""
 
 
