@@ -29,7 +29,8 @@ class Printed:
 
 @dataclass(frozen=True, kw_only=True)
 class Source:
-    """Where a table comes from, and the words around it. place: file and sheet, for messages."""
+    """Where a table comes from, and the words around it. place: file and sheet, for messages. thickness: m,
+    said not in the words but by `thickness_said_by`."""
 
     file: str
     place: str
@@ -38,3 +39,4 @@ class Source:
     words: tuple[str, ...] = ()
     title: str = ""
     thickness: float | None = None
+    thickness_said_by: str = "the heading of the column"

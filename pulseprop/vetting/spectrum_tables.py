@@ -33,7 +33,11 @@ def table_of_spectrum(source: Source, spectrum: Spectrum) -> SentTable:
     told = [_read(spectrum, axis, head)]
     words = tuple(f"{label} = {value}" for label, value in spectrum.records.items() if label not in DATA)
     source = replace(
-        source, words=words, title=spectrum.title, thickness=_path_length(source, spectrum, told)
+        source,
+        words=words,
+        title=spectrum.title,
+        thickness=_path_length(source, spectrum, told),
+        thickness_said_by="the PATHLENGTH record",
     )
     return table_of(
         source,

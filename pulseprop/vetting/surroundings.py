@@ -8,6 +8,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.material.wavelength_in_air import omegas_of_air_wavelengths
 from pulseprop.units import to_si
@@ -20,14 +21,19 @@ __all__ = ["axis_omega", "index_against", "thickness_of"]
 Real = NDArray[np.float64]
 Surrounding = Literal["air", "vacuum"]
 
+SHORTEST, LONGEST = 10e-9, 1.0
+"""Vacuum wavelengths in m, from the far ultraviolet to radio waves, between which a table is believed."""
+ROUNDING = 1e-9
+"""Relative, of a limit that is printed as a frequency or the like."""
+
 
 def axis_omega(
     source: Source, axis: Printed, lines: NDArray[np.int64], remarks: Sequence[str], told: list[Inference]
 ) -> tuple[Surrounding, Real]:
     """What the wavelengths are measured in, and the angular frequency of each row in rad/s, (R,).
 
-    Raises InputError, with the line, for a place that is not above zero, and outside the range of the formula
-    of air where an option says air.
+    Raises InputError, with the line, for a place that is not above zero, or beyond SHORTEST and LONGEST in
+    the unit that an option states, and outside the range of the formula of air where an option says air.
     """
     bad = np.flatnonzero(~(axis.values > 0))
     if len(bad):
@@ -41,6 +47,8 @@ def axis_omega(
     omega = np.asarray(to_si(axis.values, axis.unit or "", "spectral"))
     if not (np.isfinite(omega).all() and np.all(omega > 0)):
         raise InputError("the spectral axis is beyond all measure", file=f"{source.place}:{lines[0]}")
+    if source.options.unit is not None:
+        _check_stated_unit(source, axis, lines, TWO_PI_C / omega)
     if axis.name != "wavelength":
         return "vacuum", omega
     if source.options.wavelength_in == "air":
@@ -52,6 +60,24 @@ def axis_omega(
     if source.options.wavelength_in is None and remark is not None and remark.value == "air":
         return _in_air(omega, remark, told)
     return "vacuum", omega
+
+
+def _check_stated_unit(source: Source, axis: Printed, lines: NDArray[np.int64], wavelength: Real) -> None:
+    """Refuses rows outside SHORTEST to LONGEST: a slip of the option. What the file itself calls so is read,
+    for a wrong unit in it is a finding.
+    """
+    outside = np.flatnonzero(
+        (wavelength < SHORTEST * (1 - ROUNDING)) | (wavelength > LONGEST * (1 + ROUNDING))
+    )
+    if len(outside):
+        row = int(outside[0])
+        raise InputError(
+            f"in this unit the row stands at a vacuum wavelength of {wavelength[row]:.3g} m",
+            value=f"{axis.cells[row]} {axis.unit}",
+            allowed="vacuum wavelengths from 10 nm to 1 m, or what corresponds to them",
+            remedy="Correct --unit (nm, um, cm^-1, THz, eV), or say which column is the axis: --columns",
+            file=f"{source.place}:{lines[row]}",
+        )
 
 
 def _in_air(omega: Real, remark: Remark, told: list[Inference]) -> tuple[Surrounding, Real]:
@@ -80,11 +106,11 @@ def index_against(source: Source, remarks: Sequence[str], told: list[Inference])
 
 
 def thickness_of(source: Source, told: list[Inference]) -> float | None:
-    """As stated, as the column's heading says, or as the words around the table do."""
+    """As stated, as the column's heading (or the record of a spectrum) says, or as the words around the table do."""
     stated = source.options.length()
     if stated is not None:
         return stated
-    length, why = source.thickness, "the heading of the column says so"
+    length, why = source.thickness, f"{source.thickness_said_by} says so"
     if length is None:
         remark = sample_thickness(source.words)
         if remark is None:

@@ -246,6 +246,19 @@ def test_nothing_is_sorted_repaired_or_dropped(tmp_path: Path) -> None:
     assert swapped.axis_values.tolist() == [1.4701, 1.4533]
 
 
+@pytest.mark.parametrize("unit", ["parsec", "km", "pm", "GeV", "rad/s"])
+def test_a_stated_unit_in_which_no_table_lies_is_refused(tmp_path: Path, unit: str) -> None:
+    with pytest.raises(InputError) as caught:
+        one(tmp_path, "wavelength,n\n400,1.47\n500,1.46\n", unit=unit)
+    for part in ("sent.csv:2", f"400 {unit}", "from 10 nm to 1 m", "--unit"):
+        assert part in str(caught.value)
+
+
+def test_any_unit_in_which_a_table_may_lie_is_taken(tmp_path: Path) -> None:
+    table = one(tmp_path, "wavelength,n\n400,1.47\n500,1.46\n", unit="mm")
+    assert table.omega[0] == pytest.approx(2 * math.pi * LIGHT / 0.4)
+
+
 @pytest.mark.parametrize(
     ("rows", "axis", "unit"),
     [
@@ -348,10 +361,10 @@ def test_the_thickness_is_read_from_the_words(tmp_path: Path, remark: str, metre
 def test_options_go_before_the_file(tmp_path: Path) -> None:
     text = "# against air, thickness 2 mm\nwavelength (nm),n,A\n400,1.5,0.1\n500,1.4,0.2\n"
     table = one(
-        tmp_path, text, columns="photon_energy,-,k", unit="eV", relative_to="vacuum", thickness="1 cm"
+        tmp_path, text, columns="photon_energy,-,k", unit="meV", relative_to="vacuum", thickness="1 cm"
     )
     assert (table.axis, table.axis_unit, table.relative_to, table.thickness) == (
-        "photon_energy", "eV", "vacuum", 0.01,
+        "photon_energy", "meV", "vacuum", 0.01,
     )  # fmt: skip
     assert [column.quantity for column in table.columns] == ["k"]
     assert one(tmp_path, text, unit="um").axis_unit == "um"
@@ -424,6 +437,7 @@ def test_a_jcamp_spectrum_is_a_table(tmp_path: Path, unit: str, quantity: str, s
     assert table.lines.tolist() == [13] * 10
     assert table.thickness == pytest.approx(0.005)
     assert told(table, "unit of PATHLENGTH").startswith("cm")
+    assert told(table, "thickness") == "5 mm: the PATHLENGTH record says so"
 
 
 def test_a_jcamp_spectrum_of_unknown_units_is_asked(tmp_path: Path) -> None:
