@@ -48,6 +48,9 @@ CYCLE_PS = 0.22
 CRYSTAL = ((1.462, 0.0106), (0.930, 96.0))
 """Invented crystal: strength and squared resonance (um^2) of its Sellmeier terms."""
 
+WINDOW = ((1.246, 0.0098), (0.880, 95.0))
+"""Invented window glass: strength and squared resonance (um^2) of its Sellmeier terms."""
+
 MIRROR_GDD, MIRROR_TOD, MIRROR_RIPPLE, MIRROR_SWING = -45.0, -33.0, 60.0, 26.0
 """A bounce off the mirrors at 800 nm, fs^2 and fs^3; size of their ripple, fs^2, and its swing, fs."""
 
@@ -135,6 +138,19 @@ def crystal_table() -> Iterable[str]:
         yield f"{wavelength:.2f},{crystal_index(wavelength * AIR_AT) / AIR_AT:.5f}"
 
 
+def window_index(wavelength: float) -> float:
+    """Index of the window glass against vacuum; wavelength in um."""
+    square = wavelength**2
+    return math.sqrt(1 + sum(strength * square / (square - place) for strength, place in WINDOW))
+
+
+def window_table() -> Iterable[str]:
+    """Index against vacuum, to four decimals."""
+    yield "wavelength_um,n"
+    for wavelength in steps(0.48, 1.60, 0.04):
+        yield f"{wavelength:.2f},{window_index(wavelength):.4f}"
+
+
 def mirror(sign: int) -> Iterable[str]:
     """GDD of one bounce; the ripples of the two mirrors have opposite signs."""
     yield "wavelength_nm,gdd_fs2"
@@ -151,6 +167,7 @@ FILES = {
     "oscillator_autocorrelation.csv": oscillator_autocorrelation,
     "reference_waveform.csv": reference_waveform,
     "crystal.csv": crystal_table,
+    "window.csv": window_table,
     "mirror_a.csv": partial(mirror, 1),
     "mirror_b.csv": partial(mirror, -1),
 }

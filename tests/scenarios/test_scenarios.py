@@ -25,13 +25,21 @@ CALLING = ("name", "code")
 
 
 @cache
+def asked(name: str) -> Any:
+    """What the scenario asks for: its pulse sent, or what undoes its path."""
+    file = SCENARIOS / f"{name}.toml"
+    return pp.send(file) if pp.read(file).content.compensate is None else pp.compensate(file)
+
+
 def run_of(name: str) -> Any:
-    return pp.send(SCENARIOS / f"{name}.toml")
+    """Of a compensation, the best design as it was sent."""
+    answer = asked(name)
+    return getattr(answer, "run", answer)
 
 
 @cache
 def answer_of(name: str) -> dict[str, Any]:
-    answer = run_of(name).as_json()
+    answer = asked(name).as_json()
     assert isinstance(answer, dict)
     return answer
 
@@ -96,7 +104,7 @@ def test_run_carries_question_and_origin(file: Path) -> None:
     assert run.scenario == content.title
     assert run.question == content.question
     assert content.laboratory in run.note
-    assert run.exit_code == 0
+    assert asked(file.stem).exit_code == 0
 
 
 def test_the_table_of_contents_names_each_with_its_question_and_answer() -> None:
@@ -107,6 +115,7 @@ def test_the_table_of_contents_names_each_with_its_question_and_answer() -> None
         if (cells := [cell.strip() for cell in line.strip("|").split("|")]) and cells[0].endswith(".toml`")
     }
     contents = {file.name: pp.read(file).content for file in FILES}
+    rows = {name: row for name, row in rows.items() if "/" not in name}
     assert rows == {name: (content.question, content.answer) for name, content in contents.items()}
 
 
