@@ -65,6 +65,7 @@ def only_rows(table: SentTable, keep: Rows) -> SentTable:
         lines=table.lines[keep],
         axis_cells=tuple(table.axis_cells[row] for row in keep),
         axis_values=table.axis_values[keep],
+        axis_half_unit=None if table.axis_half_unit is None else table.axis_half_unit[keep],
         omega=table.omega[keep],
         columns=tuple(reordered(column, keep) for column in table.columns),
     )

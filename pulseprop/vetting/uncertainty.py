@@ -54,7 +54,12 @@ def _from_axis(table: SentTable, values: Real) -> Real:
     if len(axis) < 3 or np.ptp(np.diff(axis)) <= EVEN * np.ptp(axis):
         return np.zeros(len(values))
     slope = _median_of_neighbours(np.abs(np.gradient(known, axis)))
-    return np.interp(table.axis_values, axis, slope) * half_unit(table.axis_values)
+    return np.interp(table.axis_values, axis, slope) * _axis_half_unit(table)
+
+
+def _axis_half_unit(table: SentTable) -> Real:
+    """As the cells show it ("400.50" has two places); from the numbers where the table has no cells."""
+    return half_unit(table.axis_values) if table.axis_half_unit is None else table.axis_half_unit
 
 
 def _median_of_neighbours(slope: Real) -> Real:

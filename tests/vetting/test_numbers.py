@@ -7,7 +7,9 @@ import pytest
 
 from pulseprop.vetting.absorption_rows import AbsorptionRows, absorption_rows
 from pulseprop.vetting.numbers import ANCHOR, numbers_of
+from pulseprop.vetting.reading import read_table
 from pulseprop.vetting.request import Anchor, Request, Stated
+from pulseprop.vetting.retold import only_rows
 from pulseprop.vetting.uncertainty import column_uncertainty
 
 NM = np.linspace(400.0, 800.0, 9)
@@ -30,6 +32,20 @@ def test_an_uneven_axis_adds_its_own_rounding(sent, printed):
     table = sent(nm, printed("n", 1.5 + slope * nm, 6))
     error = column_uncertainty(table, table.columns[0], Request())
     assert error == pytest.approx(np.full(6, 5e-7 + 5e-5 * 0.05), rel=1e-3)
+
+
+def test_zeros_at_the_end_of_a_printed_wavelength_are_digits(tmp_path):
+    # as plain numbers these are whole nanometres, with a half unit a thousand times this one
+    path = tmp_path / "lines.csv"
+    path.write_text(
+        "wavelength (nm),n\n400.000,1.480000\n450.000,1.477500\n"
+        "600.000,1.470000\n700.000,1.465000\n850.000,1.457500\n"
+    )
+    (table,) = read_table(path)
+    error = column_uncertainty(table, table.columns[0], Request())
+    assert error == pytest.approx(np.full(5, 5e-7 + 5e-5 * 5e-4), rel=1e-3)
+    kept = only_rows(table, np.array([0, 1, 2, 4]))
+    assert column_uncertainty(kept, kept.columns[0], Request()) == pytest.approx(error[:4], rel=1e-3)
 
 
 def test_a_stated_uncertainty_stands_as_stated(sent, printed):
