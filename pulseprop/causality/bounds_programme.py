@@ -166,10 +166,17 @@ class Proofs:
         try:
             return self._proven_total()
         except NumericalLimit:
-            raise NumericalLimit(
-                "the rows do not limit what the material absorbs outside them",
-                remedy="State the index at another wavelength, or a limit on the strength of all absorption",
-            ) from None
+            raise self._unlimited() from None
+
+    def _unlimited(self) -> NumericalLimit:
+        """Why nothing limits the sizes, and what would."""
+        known = "State the index at another wavelength, or a limit on the strength of all absorption"
+        if np.any(self.materials.passive.least):
+            return NumericalLimit(
+                "rows of k that are lower limits only leave open how strongly the material absorbs there",
+                remedy=f"Measure those rows through less of it. Or: {known[0].lower()}{known[1:]}",
+            )
+        return NumericalLimit("the rows do not limit what the material absorbs outside them", remedy=known)
 
     def _proven_total(self) -> float:
         sizes = Functional(

@@ -106,7 +106,7 @@ def index_against(source: Source, remarks: Sequence[str], told: list[Inference])
 
 
 def thickness_of(source: Source, told: list[Inference]) -> float | None:
-    """As stated, as the column's heading (or the record of a spectrum) says, or as the words around the table do."""
+    """As stated, as the heading of the column or a record of the spectrum says, or as the words around do."""
     stated = source.options.length()
     if stated is not None:
         return stated

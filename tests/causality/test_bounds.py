@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import mpmath
 import numpy as np
 import pytest
@@ -359,6 +361,11 @@ def test_lower_limits_of_k_leave_room():
         k_error=data.k_error,
         least=least,
     )
+    alone = replace(clipped, omega=omega[[10]], index=data.index[[10]], index_error=data.index_error[[10]])
+    (nothing,) = bounds(alone, omega[[60]])
+    assert nothing.index is None
+    assert "lower limits only leave open" in nothing.reason
+    assert "through less of it" in nothing.reason
     (whole,), (open_above,) = bounds(data, omega[[60]]), bounds(clipped, omega[[60]])
     assert open_above.index[0] < exact.real[60] < open_above.index[1]
     assert open_above.group_index[1] - open_above.group_index[0] > whole.group_index[1] - whole.group_index[0]
