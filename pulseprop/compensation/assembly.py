@@ -45,6 +45,11 @@ class Assembly:
         """Indices in u of settings that do not enter as straight lines."""
         return tuple(part.start + index for model, part in self._parts() for index in model.curved)
 
+    @property
+    def edged(self) -> bool:
+        """Whether edges cut more or less with the settings."""
+        return any(model.edged for model in self.models)
+
     def values(self, u: Real) -> list[Real]:
         """SI values for each model, never outside their ranges."""
         inside = np.clip(self.low + u * (self.high - self.low), self.low, self.high)

@@ -80,7 +80,7 @@ class Bounds:
         Always False where a setting does not enter as a straight line, where losses vary too much, and for
         goals other than peak power and the two-photon signal.
         """
-        if assembly.curved or goal.name not in ("peak power", "two-photon"):
+        if assembly.curved or assembly.edged or goal.name not in ("peak power", "two-photon"):
             return False
         origin = np.zeros(assembly.count)
         base, slopes = assembly.exponent(origin), assembly.jacobian(origin)

@@ -127,7 +127,7 @@ def _options(part: Part, samples: Samples, refusals: list[str]) -> list[_Option]
 
 def _idle(model: Model, base: Complex, slopes: Complex) -> bool:
     largest = np.abs(base).max() + np.abs(slopes).sum()
-    return not model.curved and bool(largest <= NO_EFFECT)
+    return not model.curved and not model.edged and bool(largest <= NO_EFFECT)
 
 
 def _lattice(model: Model) -> list[Real]:

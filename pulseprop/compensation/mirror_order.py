@@ -58,7 +58,8 @@ def _order(
 ) -> MirrorOrder:
     centre = pulse.centre
     mirrors = model.elements(values)
-    bounces = float(sum(getattr(mirror, "bounces", 1) for mirror in mirrors))
+    stated = sum(getattr(mirror, "bounces", 1) for mirror in mirrors)
+    bounces = float(model.settings(values).get("bounces", stated))
     gdd, tod = _orders_of_bounce(mirrors, centre, bounces)
     own = {element.name for element in mirrors}
     rest = [element for element in elements if element.name not in own]

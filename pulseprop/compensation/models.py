@@ -2,12 +2,14 @@
 
 Most adjustments (separation, insertion, thickness, orders) enter the exponent as straight lines. A model
 finds out which do, holds those as a base and slopes, and evaluates the elements anew only where another
-adjustment (an angle) moves. The field itself is never needed for a derivative.
+adjustment (an angle) moves. What edges and tips cut off bends with all of them, but is quickly worked out: it
+is added apart. The field itself is never needed for a derivative.
 """
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
+from contextlib import suppress
 from dataclasses import dataclass, field
 
 import numpy as np
@@ -43,13 +45,32 @@ def exponent_of(elements: Sequence[Element], omega: Real) -> Complex:
 
     The phase of faces is continued without jumps. Raises InputError where an element cannot be there.
     """
+    total, cut = matter_of(elements, omega), edges_of(elements, omega)
+    return total if cut is None else np.asarray(total + cut)
+
+
+def matter_of(elements: Sequence[Element], omega: Real) -> Complex:
+    """The same without what is cut off at edges or lost at faces."""
     total = np.zeros(omega.size, dtype=complex)
     for element in elements:
         total += element.exponent(omega, 1)[0]
-        factor = element.factor(omega)
-        if factor is not None:
-            with np.errstate(divide="ignore"):
-                total += np.log(np.abs(factor)) + 1j * np.unwrap(np.angle(factor))
+    return _lit(total, elements, omega)
+
+
+def edges_of(elements: Sequence[Element], omega: Real) -> Complex | None:
+    """What edges, tips and faces alone do; None where they do nothing."""
+    factors = [factor for element in elements if (factor := element.factor(omega)) is not None]
+    if not factors:
+        return None
+    total = np.zeros(omega.size, dtype=complex)
+    for factor in factors:
+        with np.errstate(divide="ignore"):
+            total += np.log(np.abs(factor)) + 1j * np.unwrap(np.angle(factor))
+    return _lit(total, elements, omega)
+
+
+def _lit(total: Complex, elements: Sequence[Element], omega: Real) -> Complex:
+    """With `DARK` for minus infinity, all else finite."""
     _refuse_undefined(total, elements, omega)
     return np.asarray(np.maximum(total.real, DARK) + 1j * total.imag)
 
@@ -70,18 +91,21 @@ class Model:
     """One part with its discrete settings made: what its continuous adjustments do to the exponent.
 
     Values are SI, in the order of `part.continuous`. straight: indices of adjustments that enter as straight
-    lines, together; the rest are `curved`.
+    lines, together; the rest are `curved`. edged: whether edges cut more or less with the settings; lines and
+    straightness are then those of the matter alone.
     """
 
     part: Part
     discrete: dict[str, Value]
     samples: Samples
     straight: tuple[int, ...] = field(init=False)
+    edged: bool = field(init=False)
     _known: dict[tuple[float, ...], tuple[Complex, Complex]] = field(init=False, default_factory=dict)
 
     def __post_init__(self) -> None:
         self.low = np.array([one.low for one in self.continuous])
         self.high = np.array([one.high for one in self.continuous])
+        self.edged = self._edged()
         self.straight = self._straight()
 
     @property
@@ -120,23 +144,30 @@ class Model:
         # A handful of columns: sums are quicker here than a threaded product of a thin matrix.
         for column, distance in enumerate(self._along(values)):
             total += distance * slopes[:, column]
-        return total
+        return total + self._edges(values) if self.edged else total
 
     def jacobian(self, values: Real) -> Complex:
         """Derivatives of the exponent by each value, (n, k): exact along straight ones, central differences
-        of the exponent along the others."""
+        of the exponent along the others, and of what edges cut."""
         result = np.empty((self.samples.omega.size, len(self.continuous)), dtype=complex)
         result[:, list(self.straight)] = self.lines(values)[1]
         for index in self.curved:
-            reach = NUDGE * (self.high[index] - self.low[index])
-            below = self._moved(values, index, max(values[index] - reach, self.low[index]))
-            above = self._moved(values, index, min(values[index] + reach, self.high[index]))
-            rise = self._at(above) - self._at(below)
-            result[:, index] = rise / (above[index] - below[index])
+            result[:, index] = self._slope(self._at, values, index)
+        if self.edged:
+            for index in range(len(self.continuous)):
+                result[:, index] += self._slope(self._edges, values, index)
         return result
 
+    def _slope(self, function: Callable[[Real], Complex], values: Real, index: int) -> Complex:
+        """Of the function along one value, by a central difference inside its range."""
+        reach = NUDGE * (self.high[index] - self.low[index])
+        below = self._moved(values, index, max(values[index] - reach, self.low[index]))
+        above = self._moved(values, index, min(values[index] + reach, self.high[index]))
+        return np.asarray((function(above) - function(below)) / (above[index] - below[index]))
+
     def lines(self, values: Real) -> tuple[Complex, Complex]:
-        """(base, slopes): the exponent is base + slopes @ (straight values - their lower limits).
+        """(base, slopes): the exponent, less edges where `edged`, is base + slopes @ (straight values - their
+        lower limits).
 
         base (n,), slopes (n, straight): of the curved values given.
         """
@@ -152,7 +183,35 @@ class Model:
         return np.asarray(values[chosen] - self.low[chosen])
 
     def _at(self, values: Real) -> Complex:
-        return self.evaluated(self.settings(values))
+        if not self.edged:
+            return self.evaluated(self.settings(values))
+        elements = self.elements(values)
+        self.samples.refuse_outside(elements)
+        return matter_of(elements, self.samples.omega)
+
+    def _edges(self, values: Real) -> Complex:
+        found = edges_of(self.elements(values), self.samples.omega)
+        return np.zeros(self.samples.omega.size, dtype=complex) if found is None else found
+
+    def _edged(self) -> bool:
+        """Whether edges cut differently in the middle and at the ends of the ranges."""
+        if not self.continuous:
+            return False
+        seen = []
+        for values in (self._middle, self.low, self.high):
+            with suppress(InputError):
+                seen.append(self._edges(values))
+        return any(self._apart(cut, seen[0]) > STRAIGHT for cut in seen[1:])
+
+    @property
+    def _middle(self) -> Real:
+        share = np.resize(PROBE, len(self.continuous))
+        return np.asarray(self.low + share * (self.high - self.low))
+
+    def _apart(self, one: Complex, other: Complex) -> float:
+        """Largest departure in the field over its largest sample."""
+        height = np.abs(self.samples.amplitude)
+        return float(np.max(np.minimum(np.abs(one - other), 1.0) * (height / height.max())))
 
     @staticmethod
     def _moved(values: Real, index: int, value: float) -> Real:
@@ -177,7 +236,7 @@ class Model:
         beam at one end only. Ranges that hold no element in their middle have no straight ones.
         """
         count = len(self.continuous)
-        middle = self.low + np.resize(PROBE, count) * (self.high - self.low)
+        middle = self._middle
         try:
             alone = tuple(index for index in range(count) if self._is_straight(middle, (index,)))
             if not self._is_straight(middle, alone):
@@ -206,6 +265,4 @@ class Model:
         found = self._at(middle)
         chosen = list(straight)
         guess = base + slopes @ (middle[chosen] - self.low[chosen])
-        height = np.abs(self.samples.amplitude)
-        departure = np.minimum(np.abs(found - guess), 1.0) * (height / height.max())
-        return bool(departure.max() <= STRAIGHT + ROUNDING * float(np.abs(found).max()))
+        return self._apart(found, guess) <= STRAIGHT + ROUNDING * float(np.abs(found).max())

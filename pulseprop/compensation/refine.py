@@ -112,9 +112,11 @@ def _climbed(assembly: Assembly, judge: Judge, tried: list[Real]) -> Refined | N
 def _distinct(assembly: Assembly, tried: list[Real]) -> list[Real]:
     kept: list[Real] = []
     for u in tried:
-        near = (np.linalg.norm(_stiffness(assembly, u) * (u - other)) < APART for other in kept)
-        if not any(near):
-            kept.append(u)
+        if kept:
+            stiffness = _stiffness(assembly, u)
+            if any(np.linalg.norm(stiffness * (u - other)) < APART for other in kept):
+                continue
+        kept.append(u)
     return kept
 
 

@@ -204,6 +204,9 @@ class GratingPair(Device):
         return {
             "diffraction_angle_deg": float(np.degrees(self.diffraction_angle(self.centre))),
             "littrow_angle_deg": None if self.littrow is None else float(np.degrees(self.littrow)),
+            "incidence_beyond_littrow_deg": (
+                None if self.littrow is None else float(np.degrees(self.incidence - self.littrow))
+            ),
             "distance_along_beam_mm": self.footprint * 1e3,
             "beam_passes_second_grating_at_mm": self.clearance * 1e3,
         }
