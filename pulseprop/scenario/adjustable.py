@@ -74,7 +74,7 @@ class Setting:
 
 
 def find_settings(element: Mapping[str, Any], lists: frozenset[str], keys: Keys) -> Iterator[Setting]:
-    """The settings of an element's table, at any depth; lists: its keys that hold lists by their nature.
+    """The settings of an element's table, at any depth; lists: keys that hold lists by their nature.
 
     Raises NoSetting for a range or list that is none.
     """
@@ -84,16 +84,16 @@ def find_settings(element: Mapping[str, Any], lists: frozenset[str], keys: Keys)
         elif isinstance(value, dict) and any(word in value for word in WORDS):
             yield _setting(value, (*keys, key))
         else:
-            yield from _deeper(value, (*keys, key))
+            yield from _deeper(value, lists, (*keys, key))
 
 
-def _deeper(value: Any, keys: Keys) -> Iterator[Setting]:
+def _deeper(value: Any, lists: frozenset[str], keys: Keys) -> Iterator[Setting]:
     if isinstance(value, dict):
-        yield from find_settings(value, frozenset(value), keys)
+        yield from find_settings(value, lists, keys)
     elif isinstance(value, list):
         for number, entry in enumerate(value):
             if isinstance(entry, dict):
-                yield from find_settings(entry, frozenset(entry), (*keys, number))
+                yield from find_settings(entry, lists, (*keys, number))
 
 
 def _setting(table: Mapping[str, Any], keys: Keys) -> Setting:
@@ -148,7 +148,44 @@ def _choice(table: Mapping[str, Any], keys: Keys) -> Setting:
         )
     if "step" in table:
         raise _refused((*keys, "step"), "a list of choices has no steps", table["step"], "choices, now")
-    return Setting(keys=keys, choices=tuple(choices), now=now)
+    return _counted(choices, now, keys) or Setting(keys=keys, choices=tuple(choices), now=now)
+
+
+def _counted(choices: list[Raw], now: Raw | None, keys: Keys) -> Setting | None:
+    """Choices that are all numbers, in the unit of the first; None where they are words."""
+    given = [_split(choice) for choice in choices]
+    if None in given:
+        return None
+    numbers = [one for one in given if one is not None]
+    unit = numbers[0][1]
+    found = _found(unit, keys) if unit else None
+    if found is not None and found.offset:
+        return None
+    sizes = []
+    for at, (_, own) in enumerate(numbers):
+        other = _found(own, (*keys, at)) if own else None
+        if (other.dimension if other else "") != (found.dimension if found else ""):
+            raise _refused(keys, "the units of the choices do not fit together", choices, unit or "no unit")
+        sizes.append((other.factor if other else 1.0) / (found.factor if found else 1.0))
+    values = tuple(
+        number if own == unit else number * size for (number, own), size in zip(numbers, sizes, strict=True)
+    )
+    return Setting(
+        keys=keys,
+        unit=unit,
+        unit_size=found.factor if found else 1.0,
+        choices=values,
+        now=None if now is None else values[choices.index(now)],
+        whole=all(isinstance(choice, int) for choice in choices),
+    )
+
+
+def _split(value: Raw) -> tuple[float, str] | None:
+    """Number and unit, None for words."""
+    if not isinstance(value, str):
+        return float(value), ""
+    match = NUMBER.fullmatch(value)
+    return (float(match.group(1)), match.group(2)) if match else None
 
 
 def _found(unit: str, keys: Keys) -> Unit:

@@ -31,6 +31,9 @@ __all__ = ["problem_of"]
 LOOSE = ("centre_thickness", "incidence", "apex_angle")
 """Settings that may be off by what a workshop or a mount leaves, beside what is adjusted."""
 
+REMEMBERED = 256
+"""Settings of an element whose elements are kept: a step of the search asks for them several times."""
+
 TO_ORDER = {"gdd", "tod"}
 """A mirror whose orders are ranges is one to be made."""
 
@@ -58,6 +61,7 @@ class _Row:
         )
         self.table = self._checked(self.raw)
         self.name = self.site.name_of(self.table, self.table.kind)
+        self._built: dict[tuple[tuple[str, Value], ...], tuple[Element, ...]] = {}
 
     def _checked(self, raw: Mapping[str, Any]) -> ElementTable:
         try:
@@ -69,7 +73,15 @@ class _Row:
         return table
 
     def build(self, settings: Settings) -> tuple[Element, ...]:
-        """The elements for SI values or words, by the key of each."""
+        """The elements for SI values or words, by the key of each; the last few are remembered."""
+        key = tuple(settings.items())
+        if key not in self._built:
+            if len(self._built) >= REMEMBERED:
+                self._built.clear()
+            self._built[key] = self._made(settings)
+        return self._built[key]
+
+    def _made(self, settings: Settings) -> tuple[Element, ...]:
         table = self._checked(self._with(settings)) if settings else self.table
         if getattr(table, "bounces", None) == 0:
             return ()
@@ -182,8 +194,10 @@ def _anchor(place: str, names: list[str], row: _Row) -> str:
 
 def _adjustment(key: str, setting: Setting) -> Adjustment:
     size = setting.unit_size
+    now = setting.now * size if isinstance(setting.now, float) else setting.now
     if setting.choices:
-        return Adjustment(parameter=key, choices=setting.choices, now=setting.now)
+        values = tuple(one if isinstance(one, str) else one * size for one in setting.choices)
+        return Adjustment(parameter=key, unit=setting.unit, unit_size=size, choices=values, now=now)
     return Adjustment(
         parameter=key,
         unit=setting.unit,
@@ -191,7 +205,7 @@ def _adjustment(key: str, setting: Setting) -> Adjustment:
         low=setting.low * size,
         high=setting.high * size,
         step=None if setting.step is None else setting.step * size,
-        now=setting.now * size if isinstance(setting.now, float) else None,
+        now=now,
         sigma=None if setting.held is None else setting.held * size,
     )
 

@@ -6,6 +6,8 @@ from collections.abc import Iterator, Mapping
 from functools import cache
 from typing import Any, get_args, get_origin
 
+from pydantic import BaseModel
+
 from pulseprop.scenario.adjustable import Setting, find_settings
 from pulseprop.scenario.places import Keys
 from pulseprop.scenario.schema_path import Element
@@ -34,15 +36,27 @@ def _elements(document: Mapping[str, Any]) -> Iterator[tuple[Keys, Mapping[str, 
 
 @cache
 def _lists_of(kind: str) -> frozenset[str]:
-    """Keys of an element of that kind whose values are lists by their nature."""
+    """Keys of an element of that kind, and of the tables in it, whose values are lists by their nature."""
     for table in get_args(get_args(Element)[0]):
         if kind in get_args(table.model_fields["kind"].annotation):
-            return frozenset(
-                field.alias or name
-                for name, field in table.model_fields.items()
-                if _is_list(field.annotation)
-            )
+            return frozenset(_list_keys(table, set()))
     return frozenset()
+
+
+def _list_keys(table: type[BaseModel], seen: set[type[BaseModel]]) -> Iterator[str]:
+    seen.add(table)
+    for name, field in table.model_fields.items():
+        if _is_list(field.annotation):
+            yield field.alias or name
+        for inner in set(_tables_in(field.annotation)) - seen:
+            yield from _list_keys(inner, seen)
+
+
+def _tables_in(annotation: Any) -> Iterator[type[BaseModel]]:
+    if isinstance(annotation, type) and issubclass(annotation, BaseModel):
+        yield annotation
+    for inner in get_args(annotation):
+        yield from _tables_in(inner)
 
 
 def _is_list(annotation: Any) -> bool:

@@ -29,10 +29,10 @@ def test_todays_value_stands_for_a_range() -> None:
     assert content.path[0].thickness == pytest.approx(3e-3)
 
 
-def test_whole_numbers_go_in_ones_unless_a_step_is_given() -> None:
-    at_hand = {"kind": "slab", "medium": "sapphire", "thickness": ["1 mm", "2 mm"]}
+def test_a_list_of_numbers_is_counted_in_the_unit_of_the_first() -> None:
+    at_hand = {"kind": "slab", "medium": "sapphire", "thickness": ["1 mm", "2000 um"]}
     found = scenario_from({"pulse": PULSE, "path": [], "compensate": {"with": [at_hand]}}).settings
-    assert found[0].choices == ("1 mm", "2 mm")
+    assert (found[0].choices, found[0].unit) == (pytest.approx((1.0, 2.0)), "mm")
     assert found[0].keys == ("compensate", "with", 0, "thickness")
 
 
@@ -62,6 +62,7 @@ def test_a_pulse_is_not_sent_through_an_open_range() -> None:
         ({"from": "1 mm", "to": "8 mm", "nw": "2 mm"}, 'there is no key "nw" here.*Did you mean "now"'),
         ({"choices": [], "now": "2 mm"}, "choices are a list of values"),
         ({"choices": ["1 mm"], "now": "2 mm"}, "today's value is none of the choices"),
+        ({"choices": ["1 mm", "2 fs"]}, "the units of the choices do not fit together"),
         ({"choices": ["1 mm"], "from": "2 mm"}, "a setting is a range or a list"),
         ({"from": "a mm", "to": "2 mm"}, "this is no number with a unit"),
         ({"from": "1 quux", "to": "2 quux"}, "quux"),
