@@ -9,7 +9,7 @@ from pulseprop.reports.blocks import Column, Paragraph, Section, Table
 from pulseprop.reports.vet_numbers import factor_text, file_name, interval_text
 from pulseprop.vetting.result import RequirementAnswer, Vetted
 
-__all__ = ["delivery", "delivery_headline", "headlines", "opening", "supplier_sentence"]
+__all__ = ["delivery", "delivery_headline", "headlines", "opening"]
 
 GRAVEST_FIRST = ("not conforming", "not decided", "conforming")
 VERDICTS = ("contradictory", "doubtful", "consistent")
@@ -51,15 +51,6 @@ def _with_bounds(answer: RequirementAnswer) -> str:
 
 def _counted(number: int) -> str:
     return "the requirement is" if number == 1 else f"all {number} requirements are"
-
-
-def supplier_sentence(vetted: Vetted) -> str:
-    """What a supplier can answer; empty where there is nothing to ask."""
-    unmet = [answer.text for answer in vetted.requirements if answer.verdict == "not conforming"]
-    parts = [vetted.sentence] if vetted.sentence else []
-    if unmet and unmet[0] not in vetted.sentence:
-        parts.append(f"By your numbers {'; '.join(unmet)} is not met; please comment.")
-    return " ".join(parts)
 
 
 def delivery_headline(answers: Sequence[Vetted]) -> str:
@@ -108,5 +99,6 @@ def opening(vetted: Vetted) -> tuple[Paragraph, ...]:
     """Answers, what was vetted, and the sentence to the supplier."""
     blocks = [Paragraph(line) for line in headlines(vetted)]
     blocks.append(Paragraph(f"{file_name(vetted)}: {_as_continued(vetted.what)}"))
-    sentence = supplier_sentence(vetted)
-    return (*blocks, Paragraph(sentence, label="To the supplier")) if sentence else tuple(blocks)
+    if vetted.sentence:
+        blocks.append(Paragraph(vetted.sentence, label="To the supplier"))
+    return tuple(blocks)

@@ -11,7 +11,7 @@ from pulseprop.reports.drawing import Drawing
 from pulseprop.reports.section_vet import vet_sections
 from pulseprop.reports.templating import placed, rendered
 from pulseprop.reports.vet_numbers import file_name
-from pulseprop.reports.vet_opening import delivery, delivery_headline, headlines, supplier_sentence
+from pulseprop.reports.vet_opening import delivery, delivery_headline, headlines
 from pulseprop.vetting.result import Vetted
 
 __all__ = ["vet_page_html", "write_vet_page"]
@@ -42,7 +42,7 @@ def _part(number: int, vetted: Vetted, figure: Drawing | None) -> dict[str, obje
         "file": file_name(vetted),
         "vetted": vetted,
         "headlines": headlines(vetted),
-        "sentence": supplier_sentence(vetted),
+        "sentence": vetted.sentence,
         "sections": tuple(sections.values()),
         "figures": {} if figure is None else placed([figure], {sections[place].key: (figure.name,)}),
     }

@@ -19,7 +19,7 @@ from pulseprop.vetting.guaranteed import guaranteed, guaranteed_abbe, guaranteed
 from pulseprop.vetting.request import Request
 from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_answer import DECISION_RULE as THREE_WAY
-from pulseprop.vetting.requirement_answer import material_answer
+from pulseprop.vetting.requirement_answer import material_answer, with_unmet
 from pulseprop.vetting.result import NOT_SETTLED, Bounds, ConflictRow, Finding, Vetted
 from pulseprop.vetting.table import SentTable
 from pulseprop.vetting.verdict import decision_rule, verdict_on
@@ -59,7 +59,7 @@ def judge(table: SentTable, request: Request, *, date: str, version: str, causal
         what=what_was_vetted(case),
         verdict=verdict,
         headline=headline(case, verdict, implied, conflict, few, findings),
-        sentence=sentence(case, verdict, conflict, few, findings),
+        sentence=with_unmet(sentence(case, verdict, conflict, few, findings), answers),
         decision_rule=" ".join((decision_rule(case), *([THREE_WAY] if asked else []))),
         uncertainty_factor=case.factor,
         certified_gap=case.standing.gap if case.standing else None,

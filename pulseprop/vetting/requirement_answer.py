@@ -7,7 +7,7 @@ material with these numbers has, so no coverage factor enters.
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from typing import Literal
 
 from pulseprop.vetting.requirement import Requirement
@@ -23,6 +23,7 @@ __all__ = [
     "abbe_interval",
     "answered",
     "material_answer",
+    "with_unmet",
 ]
 
 Interval = tuple[float, float]
@@ -59,6 +60,15 @@ def answered(requirement: Requirement, bounds: Interval | None, reason: str = ""
         verdict = "not conforming"
     shown = requirement.in_unit(low), requirement.in_unit(high)
     return RequirementAnswer(text=requirement.text, verdict=verdict, bounds=shown, reason=reason)
+
+
+def with_unmet(sentence: str, answers: Sequence[RequirementAnswer]) -> str:
+    """What a supplier can answer, with the requirements that are not met."""
+    unmet = [answer.text for answer in answers if answer.verdict == "not conforming"]
+    if not unmet:
+        return sentence
+    said = f"By your numbers {'; '.join(unmet)} {'are' if len(unmet) > 1 else 'is'} not met; please comment."
+    return f"{sentence} {said}".strip()
 
 
 def material_answer(

@@ -6,7 +6,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import Any
 
-from pulseprop.vetting.requirement_answer import DECISION_RULE
+from pulseprop.vetting.requirement_answer import DECISION_RULE, with_unmet
 from pulseprop.vetting.result import (
     Bounds,
     ConflictRow,
@@ -67,7 +67,7 @@ def told(
     blind_spots: tuple[str, ...] = (),
     curves: dict[str, Any] | None = None,
 ) -> Vetted:
-    """The answer; the sentence to the supplier is that of the gravest finding."""
+    """The answer; the sentence to the supplier is that of the gravest finding and of requirements not met."""
     return Vetted(
         file=file,
         sha256=sha256,
@@ -76,7 +76,7 @@ def told(
         what=what,
         verdict=verdict,
         headline=headline,
-        sentence=_sentence(findings, requirements),
+        sentence=with_unmet(_sentence(findings), requirements),
         decision_rule=" ".join((VERDICT_RULE, *([DECISION_RULE] if requirements else []))),
         uncertainty_factor=factor,
         certified_gap=gap,
@@ -94,16 +94,11 @@ def told(
     )
 
 
-def _sentence(findings: tuple[Finding, ...], requirements: tuple[RequirementAnswer, ...]) -> str:
+def _sentence(findings: tuple[Finding, ...]) -> str:
     """Something a supplier can answer; empty where there is nothing to ask."""
     grave = next((finding for finding in findings if finding.severity == "error"), None)
-    if grave is not None:
-        repair = next(
-            (entry.repair for entry in findings if entry.severity == "error" and entry.repair), None
-        )
-        why = f" Possible explanation: {repair}." if repair and repair not in grave.text else ""
-        return f"{grave.text}{why} Please check these numbers and tell us which are right."
-    unmet = [answer.text for answer in requirements if answer.verdict == "not conforming"]
-    if unmet:
-        return f"By your numbers these requirements are not met: {'; '.join(unmet)}. Please comment."
-    return ""
+    if grave is None:
+        return ""
+    repair = next((entry.repair for entry in findings if entry.severity == "error" and entry.repair), None)
+    why = f" Possible explanation: {repair}." if repair and repair not in grave.text else ""
+    return f"{grave.text}{why} Please check these numbers and tell us which are right."

@@ -135,9 +135,6 @@ def test_requirements_are_the_first_answer():
     assert unmet.startswith(
         "NOT CONFORMING: 1 of 3: gvd at 600 nm >= 90 fs^2/mm (the numbers guarantee -4 to 41)"
     )
-    assert "By your numbers gvd at 600 nm >= 90 fs^2/mm is not met; please comment." in " ".join(
-        unmet.split()
-    )
     undecided = vet_text([made(verdict="doubtful", requirements=(MET, OPEN))])
     assert undecided.startswith("NOT DECIDED: 1 of 2: V_d >= 60")
 

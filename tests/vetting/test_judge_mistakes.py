@@ -272,6 +272,12 @@ def test_an_absorbing_table_says_what_the_slab_lets_through(sent, printed):
     assert answer.bounds[0] < np.exp(-4 * np.pi * k[at] / 0.6) < answer.bounds[1]
 
 
+def test_a_requirement_not_met_is_in_the_sentence_to_the_supplier(sent, printed):
+    request = Request(require=("gvd at 800 nm >= 90 fs^2/mm", "n_d >= 1.4"))
+    vetted = judged(sent(NM, printed("n", index("fused silica"), 5)), request)
+    assert vetted.sentence.endswith("By your numbers gvd at 800 nm >= 90 fs^2/mm is not met; please comment.")
+
+
 def test_three_decimals_are_too_few_for_the_gvd(sent, printed):
     request = Request(require=("gvd at 800 nm = 36.2 +- 0.5 fs^2/mm",))
     vetted = judged(sent(NM, printed("n", index("fused silica"), 3)), request)
