@@ -76,7 +76,8 @@ class Wedge:
         (NaN where the wave does not leave)."""
         omega = np.asarray(omega, dtype=float)
         index = np.real(np.sqrt(1 + self.medium.susceptibility(omega)))
-        entry = _arcsin(np.sin(self.incidence) / index)
+        with np.errstate(divide="ignore"):  # where the index is imaginary no wave enters
+            entry = _arcsin(np.sin(self.incidence) / index)
         outside = _arcsin(index * np.sin(self.apex - entry) + self.momentum * SPEED_OF_LIGHT / omega)
         return entry, self.apex - entry, outside
 
