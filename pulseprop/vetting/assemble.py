@@ -61,7 +61,8 @@ def _rows(printed: Printed, keep: NDArray[np.bool_]) -> Printed:
     if keep.all():
         return printed
     cells = tuple(cell for cell, kept in zip(printed.cells, keep, strict=True) if kept)
-    return replace(printed, cells=cells, values=printed.values[keep], half=printed.half[keep])
+    spread = printed.spread and replace(printed.spread, values=printed.spread.values[keep])
+    return replace(printed, cells=cells, values=printed.values[keep], half=printed.half[keep], spread=spread)
 
 
 def _complete(

@@ -70,6 +70,7 @@ def _printed(role: Role) -> Printed:
         cells=role.cells,
         values=role.values,
         half=half_units(role.cells, role.values),
+        spread=role.spread,
     )
 
 

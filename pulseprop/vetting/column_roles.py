@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Mapping, Sequence, Set
 from dataclasses import dataclass, replace
 
 from pulseprop.files.blocks import Block
@@ -14,6 +14,7 @@ from pulseprop.vetting.read_options import ReadOptions
 from pulseprop.vetting.roles_headed import headed_roles, headings_by_column
 from pulseprop.vetting.roles_sized import sized_axis, sized_quantities
 from pulseprop.vetting.roles_stated import stated_roles
+from pulseprop.vetting.roles_uncertain import with_uncertainties
 from pulseprop.vetting.table import Inference
 
 __all__ = ["Roles", "roles_of"]
@@ -54,13 +55,14 @@ def _found(columns: NumberColumns, heads: Mapping[int, Heading], options: ReadOp
         roles[axis.index] = axis
     if all(role.axis for role in roles.values()):
         roles |= {role.index: role for role in sized_quantities(columns, heads, tuple(roles))}
-    _tell_left_out(columns, heads, roles)
+    roles, of_others = with_uncertainties(columns, heads, roles)
+    _tell_left_out(columns, heads, {*roles, *of_others})
     return [roles[index] for index in sorted(roles)]
 
 
-def _tell_left_out(columns: NumberColumns, heads: Mapping[int, Heading], roles: Mapping[int, Role]) -> None:
+def _tell_left_out(columns: NumberColumns, heads: Mapping[int, Heading], used: Set[int]) -> None:
     for index in columns.usable:
-        if index not in roles:
+        if index not in used:
             silent = index not in heads or not heads[index].text
             why = "it has no heading" if silent else f'the heading "{heads[index].text}" is not known'
             columns.tell(f"column {index + 1}", "left out", why, "--columns")

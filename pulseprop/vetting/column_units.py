@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import numpy as np
+from numpy.typing import NDArray
 
 from pulseprop.errors import InputError
 from pulseprop.units import to_si
@@ -12,6 +13,8 @@ from pulseprop.vetting.sizes import is_percent
 from pulseprop.vetting.table import Column, Inference, Quantity
 
 __all__ = ["column_in_si"]
+
+Real = NDArray[np.float64]
 
 
 def column_in_si(source: Source, name: Quantity, printed: Printed, told: list[Inference]) -> Column:
@@ -27,8 +30,30 @@ def column_in_si(source: Source, name: Quantity, printed: Printed, told: list[In
         if not np.isfinite(values).all():
             raise InputError(f"a number of {name} is beyond all measure", file=source.place)
     return Column(
-        quantity=name, header=printed.heading, unit=unit, cells=printed.cells, values=values, half_unit=half
+        quantity=name,
+        header=printed.heading,
+        unit=unit,
+        cells=printed.cells,
+        values=values,
+        half_unit=half,
+        uncertainty=_uncertainty(source, name, unit, values, printed),
     )
+
+
+def _uncertainty(source: Source, name: Quantity, unit: str, values: Real, printed: Printed) -> Real | None:
+    """As another column states it, SI; None where none does. Raises InputError for a unit of something else."""
+    spread = printed.spread
+    if spread is None:
+        return None
+    if spread.unit == "%" and name not in FRACTIONS:
+        return spread.values / 100 * np.abs(values)
+    unit = unit if spread.unit is None else spread.unit
+    if not unit:
+        return spread.values
+    try:
+        return np.asarray(to_si(spread.values, unit, KIND_OF.get(name, "fraction")))
+    except InputError as error:
+        raise error.located(file=source.place, place=f"uncertainty of {name}") from None
 
 
 def _unit(source: Source, name: Quantity, printed: Printed, told: list[Inference]) -> str:

@@ -14,6 +14,7 @@ from pulseprop.files.blocks import Block
 from pulseprop.files.cells import decimal_commas, looks_numeric, numbers
 from pulseprop.vetting.heading_words import AXES, QUANTITIES, Axis, Meaning
 from pulseprop.vetting.headings import Heading
+from pulseprop.vetting.printed import Spread
 from pulseprop.vetting.table import Inference, Quantity
 
 __all__ = ["NumberColumns", "Role"]
@@ -23,7 +24,8 @@ Real = NDArray[np.float64]
 
 @dataclass(frozen=True, kw_only=True, eq=False)
 class Role:
-    """A column in use. index: from 0 in its block. unit: None where it is still to be told."""
+    """A column in use. index: from 0 in its block. unit: None where it is still to be told. spread: its
+    uncertainties, where another column states them."""
 
     index: int
     meaning: Meaning
@@ -32,6 +34,7 @@ class Role:
     thickness: float | None
     cells: tuple[str, ...]
     values: Real
+    spread: Spread | None = None
 
     @property
     def axis(self) -> Axis | None:

@@ -9,15 +9,24 @@ from numpy.typing import NDArray
 
 from pulseprop.vetting.read_options import ReadOptions
 
-__all__ = ["Printed", "Source"]
+__all__ = ["Printed", "Source", "Spread"]
 
 Real = NDArray[np.float64]
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
+class Spread:
+    """The uncertainties of a column, from another. values: (R,), 0 or more. unit: as printed, "%" for per
+    cent of the value (percentage points of a fraction), None for the unit of the column."""
+
+    values: Real
+    unit: str | None
+
+
+@dataclass(frozen=True, kw_only=True, eq=False)
 class Printed:
     """A column as printed. values, half: (R,), in its unit; values are NaN for missing cells. unit: "" for a
-    plain number, None where none was said."""
+    plain number, None where none was said. spread: its uncertainties, where another column states them."""
 
     name: str
     unit: str | None
@@ -25,6 +34,7 @@ class Printed:
     cells: tuple[str, ...]
     values: Real
     half: Real
+    spread: Spread | None = None
 
 
 @dataclass(frozen=True, kw_only=True)

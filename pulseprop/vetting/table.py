@@ -47,7 +47,8 @@ class Column:
     """One column. cells: as printed, (R,). values: (R,) in SI (fractions for percent; k, n plain).
 
     unit: as printed, empty for plain numbers. header: its heading, empty where there is none. half_unit: (R,)
-    half a unit of the last printed place, in SI. uncertainty: (R,) as stated by the user, SI; None where not.
+    half a unit of the last printed place, in SI. uncertainty: (R,) as stated by option or by
+    another column, SI; None where not.
     """
 
     quantity: Quantity

@@ -371,11 +371,66 @@ def test_options_go_before_the_file(tmp_path: Path) -> None:
     assert "goes before the heading" in told(one(tmp_path, text, unit="um"), "unit of the wavelength")
 
 
-@pytest.mark.parametrize("name", ["T_err", "remark", "u(n)"])
+@pytest.mark.parametrize("name", ["T_err", "remark", "u(k)", "Δλ", "error"])
 def test_unknown_columns_are_left_out_and_told(tmp_path: Path, name: str) -> None:
     table = one(tmp_path, f"nm,n,{name}\n400,1.5,1\n500,1.4,2\n")
     assert [column.quantity for column in table.columns] == ["n"]
     assert told(table, "column 3") == f'left out: the heading "{name}" is not known'
+
+
+@pytest.mark.parametrize(
+    ("heading", "cells", "quantity", "expected"),
+    [
+        ("n;u(n)", "1.47;2e-5", "n", 2e-5),
+        ("n;uncertainty of n", "1.47;0.0003", "n", 3e-4),
+        ("n;Unsicherheit", "1,47;0,0003", "n", 3e-4),
+        ("n;delta n", "1.47;0.0003", "n", 3e-4),
+        ("n;dn", "1.47;0.0003", "n", 3e-4),
+        ("n;Δn", "1.47;0.0003", "n", 3e-4),
+        ("n;k;u(k) [%]", "1.47;0.2;5", "k", 0.01),
+        ("n;k;k uncertainty (%)", "1.47;0.2;5", "k", 0.01),
+        ("T [%];u(T)", "90.1;0.3", "transmittance", 0.003),
+        ("alpha (1/cm);uncertainty (1/mm)", "0.5;0.01", "alpha", 10.0),
+        ("gdd (fs^2);u(gdd)", "-40;2", "gdd", 2e-30),
+    ],
+)
+def test_a_column_of_uncertainties_states_those_of_another(
+    tmp_path: Path, heading: str, cells: str, quantity: str, expected: float
+) -> None:
+    table = one(tmp_path, f"nm;{heading}\n500;{cells}\n600;{cells}\n")
+    column = table.column(quantity)  # type: ignore[arg-type]
+    assert column is not None
+    assert column.uncertainty == pytest.approx([expected, expected])
+    assert "as stated" in told(table, f"uncertainty of {quantity.replace('_', ' ')}")
+    assert all(note.taken != "left out" for note in table.inferred)
+
+
+def test_each_of_two_indices_has_its_own_uncertainty(tmp_path: Path) -> None:
+    text = "nm,no,u(no),ne,u(ne)\n500,1.66,1e-5,1.49,2e-5\n600,1.65,1e-5,1.48,2e-5\n"
+    first, second = sent(tmp_path, text)
+    assert first.columns[0].uncertainty == pytest.approx([1e-5, 1e-5])
+    assert second.columns[0].uncertainty == pytest.approx([2e-5, 2e-5])
+
+
+@pytest.mark.parametrize(
+    "text",
+    [
+        "nm,no,ne,Δn\n500,1.66,1.49,0.17\n600,1.65,1.48,0.17\n",  # a birefringence
+        "nm,n,u(n)\n500,1.66,-1\n600,1.65,1\n",
+        "nm,n,u(n)\n500,1.66,\n600,1.65,1e-5\n",
+    ],
+)
+def test_what_may_be_no_uncertainty_is_left_out_and_told(tmp_path: Path, text: str) -> None:
+    for table in sent(tmp_path, text):
+        assert table.columns[0].uncertainty is None
+        assert any(note.taken == "left out" for note in table.inferred)
+
+
+def test_a_column_of_uncertainties_gives_way_to_an_option(tmp_path: Path) -> None:
+    text = "nm,n,u(n)\n500,1.66,1e-5\n600,1.65,1e-5\n"
+    table = one(tmp_path, text, uncertainty="n=1e-3")
+    assert table.columns[0].uncertainty == pytest.approx([1e-3, 1e-3])
+    assert one(tmp_path, text, columns="wavelength,n,-").columns[0].uncertainty is None
 
 
 def test_words_beside_numbers_are_left_out_and_told(tmp_path: Path) -> None:
