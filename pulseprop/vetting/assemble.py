@@ -47,7 +47,9 @@ def table_of(
         axis_values=axis.values,
         axis_half_unit=axis.half,
         omega=omega,
-        columns=tuple(column_in_si(source, name, _rows(printed, keep), told) for name, printed in columns),
+        columns=tuple(
+            column_in_si(source, name, _rows(printed, keep), omega, told) for name, printed in columns
+        ),
         relative_to=index_against(source, remarks, told),
         wavelength_in=wavelength_in,
         thickness=thickness_of(source, told),

@@ -12,6 +12,7 @@ from numpy.typing import NDArray
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.case import Case
 from pulseprop.vetting.guaranteed import guaranteed, guaranteed_abbe
+from pulseprop.vetting.heading_units import is_dispersion_parameter
 from pulseprop.vetting.requirement_answer import FS2_PER_MM, FS3_PER_MM
 from pulseprop.vetting.result import Bounds, Finding
 from pulseprop.vetting.table import Column
@@ -177,7 +178,10 @@ def _slips(column: Column, compared: _Compared) -> Iterator[tuple[str, Real]]:
     yield "the sign is turned round", -values
     for words, factor in LENGTHS:
         yield words, values * factor
-    if column.quantity == "gvd":
+    if is_dispersion_parameter(column.unit):
+        of_printed = -values / PS_PER_NM_KM * compared.omega**2 / TWO_PI_C
+        yield "it is read as GVD in fs^2/mm", of_printed * FS2_PER_MM
+    elif column.quantity == "gvd":
         of_printed = values / FS2_PER_MM * PS_PER_NM_KM
         dispersion = -of_printed * TWO_PI_C / compared.omega**2
         yield "it is read as D in ps/(nm km)", dispersion
@@ -185,6 +189,8 @@ def _slips(column: Column, compared: _Compared) -> Iterator[tuple[str, Real]]:
 
 
 def _name(column: Column) -> str:
+    if is_dispersion_parameter(column.unit):
+        return "GVD (turned from the printed D)"
     return {"group_index": "group index", "gvd": "GVD", "tod": "TOD"}.get(column.quantity, column.quantity)
 
 

@@ -5,8 +5,10 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import InputError
 from pulseprop.units import to_si
+from pulseprop.vetting.heading_units import is_dispersion_parameter
 from pulseprop.vetting.kinds import FRACTIONS, KIND_OF, USUAL_UNIT
 from pulseprop.vetting.printed import Printed, Source
 from pulseprop.vetting.sizes import is_percent
@@ -17,18 +19,21 @@ __all__ = ["column_in_si"]
 Real = NDArray[np.float64]
 
 
-def column_in_si(source: Source, name: Quantity, printed: Printed, told: list[Inference]) -> Column:
-    """The column; what is inferred goes to `told`. Raises InputError for a unit that is missing or not one of
-    the quantity."""
+def column_in_si(
+    source: Source, name: Quantity, printed: Printed, omega: Real, told: list[Inference]
+) -> Column:
+    """The column; what is inferred goes to `told`. omega: of the rows, rad/s, (R,). Raises InputError for a
+    unit that is missing or not one of the quantity."""
     unit = _unit(source, name, printed, told)
     values, half = printed.values, printed.half
-    kind = KIND_OF.get(name)
-    if kind and unit:
+    if unit and name in KIND_OF:
         with np.errstate(over="ignore"):
-            values = np.asarray(to_si(values, unit, kind))
-            half = np.asarray(to_si(half, unit, kind))
+            values = _in_si(values, unit, name, omega)
+            half = np.abs(_in_si(half, unit, name, omega))
         if not np.isfinite(values).all():
             raise InputError(f"a number of {name} is beyond all measure", file=source.place)
+    if is_dispersion_parameter(unit):
+        told.append(_as_gvd(printed))
     return Column(
         quantity=name,
         header=printed.heading,
@@ -36,12 +41,30 @@ def column_in_si(source: Source, name: Quantity, printed: Printed, told: list[In
         cells=printed.cells,
         values=values,
         half_unit=half,
-        uncertainty=_uncertainty(source, name, unit, values, printed),
+        uncertainty=_uncertainty(source, name, unit, values, omega, printed),
     )
 
 
-def _uncertainty(source: Source, name: Quantity, unit: str, values: Real, printed: Printed) -> Real | None:
-    """As another column states it, SI; None where none does. Raises InputError for a unit of something else."""
+def _in_si(values: Real, unit: str, name: Quantity, omega: Real) -> Real:
+    """GVD = -D lambda^2 / (2 pi c) where the unit is one of D; all else by its unit alone."""
+    if is_dispersion_parameter(unit):
+        return -np.asarray(to_si(values, unit, "dispersion")) * TWO_PI_C / omega**2
+    return np.asarray(to_si(values, unit, KIND_OF.get(name, "fraction")))
+
+
+def _as_gvd(printed: Printed) -> Inference:
+    return Inference(
+        about="dispersion parameter",
+        taken="turned to GVD = -D wavelength^2 / (2 pi c)",
+        why=f'the unit of "{printed.heading or printed.name}" is one of D',
+        overrule="--columns gvd/UNIT",
+    )
+
+
+def _uncertainty(
+    source: Source, name: Quantity, unit: str, values: Real, omega: Real, printed: Printed
+) -> Real | None:
+    """As another column states it, SI; None where none does. Raises InputError for another's unit."""
     spread = printed.spread
     if spread is None:
         return None
@@ -51,7 +74,7 @@ def _uncertainty(source: Source, name: Quantity, unit: str, values: Real, printe
     if not unit:
         return spread.values
     try:
-        return np.asarray(to_si(spread.values, unit, KIND_OF.get(name, "fraction")))
+        return np.abs(_in_si(spread.values, unit, name, omega))
     except InputError as error:
         raise error.located(file=source.place, place=f"uncertainty of {name}") from None
 
@@ -87,7 +110,7 @@ def _checked(source: Source, name: Quantity, printed: Printed) -> str:
     """The printed unit, where it is one of that quantity."""
     unit = printed.unit or ""
     try:
-        to_si(1.0, unit, KIND_OF[name])
+        to_si(1.0, unit, "dispersion" if is_dispersion_parameter(unit) else KIND_OF[name])
     except InputError as error:
         raise error.located(file=source.place, place=printed.heading or name) from None
     return unit

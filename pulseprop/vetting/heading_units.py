@@ -7,7 +7,7 @@ import re
 from pulseprop.units import unit_from
 from pulseprop.vetting.heading_words import Axis
 
-__all__ = ["AXIS_OF_DIMENSION", "dimension", "known_unit", "unit_named"]
+__all__ = ["AXIS_OF_DIMENSION", "dimension", "is_dispersion_parameter", "known_unit", "unit_named"]
 
 JOULE = "kg m^2 s^-2"
 AXIS_OF_DIMENSION: dict[str, Axis] = {
@@ -48,6 +48,12 @@ INVERSE = re.compile(
 DECIBEL = re.compile(r"db\s*(?:/|per)?\s*\(?\s*(?:/\s*)?(?P<a>[cmk]?m)\)?", re.IGNORECASE)
 RATE = re.compile(r"rad\s*/\s*(?P<a>[fpn]?s)", re.IGNORECASE)
 DISPERSION = re.compile(r"(?P<t>[fp]s)\s*\^?\s*(?P<p>[234])\s*(?:/\s*(?P<l>[mck]?m))?", re.IGNORECASE)
+PARAMETER = re.compile(
+    r"ps\s*(?:/\s*\(?\s*(?:nm\s*[/*. ]?\s*km|km\s*[/*. ]?\s*nm)\s*\)?"
+    r"|[*. ]?\s*(?:nm\^?\(?-1\)?\s*[*. ]?\s*km\^?\(?-1\)?|km\^?\(?-1\)?\s*[*. ]?\s*nm\^?\(?-1\)?))",
+    re.IGNORECASE,
+)
+"""The unit of fibres' D, in its spellings."""
 BRACKETS = {"[": "]", "(": ")", "{": "}", "<": ">"}
 SUPERSCRIPTS = str.maketrans("⁻¹²³⁴", "-1234")
 
@@ -70,6 +76,11 @@ def dimension(unit: str) -> str:
     return unit_from(unit).dimension if unit else ""
 
 
+def is_dispersion_parameter(unit: str) -> bool:
+    """Whether it is a unit of D = -2 pi c GVD / lambda^2, the dispersion parameter of fibres."""
+    return bool(unit) and dimension(unit) == "m^-2 s"
+
+
 def _bare(text: str) -> str:
     """Without brackets; micro as u; raised digits on the line."""
     text = text.strip().translate(SUPERSCRIPTS).replace("µ", "u").replace("μ", "u").replace("·", " ")
@@ -85,6 +96,8 @@ def _compound(text: str) -> str | None:
         return f"dB/{found['a'].lower()}"
     if found := RATE.fullmatch(text):
         return f"rad/{found['a'].lower()}"
+    if PARAMETER.fullmatch(text):
+        return "ps/(nm km)"
     if found := DISPERSION.fullmatch(text):
         per = f"/{found['l'].lower()}" if found["l"] else ""
         return f"{found['t'].lower()}^{found['p']}{per}"

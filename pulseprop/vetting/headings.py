@@ -10,7 +10,7 @@ from functools import lru_cache
 from pulseprop.files.blocks import Block, Line
 from pulseprop.files.text_blocks import cells_of
 from pulseprop.units import quantity
-from pulseprop.vetting.heading_units import AXIS_OF_DIMENSION, dimension, unit_named
+from pulseprop.vetting.heading_units import AXIS_OF_DIMENSION, dimension, is_dispersion_parameter, unit_named
 from pulseprop.vetting.heading_words import AXES, Axis, Meaning, is_attenuation, is_extinction, meaning_of
 
 __all__ = ["Heading", "heading_of", "headings_of", "is_heading"]
@@ -61,6 +61,8 @@ def heading_of(text: str) -> Heading:
     meaning = meaning_of(words) if words else None
     if meaning is None and not words and unit:
         meaning = _axis_of(unit)
+    if meaning is None and unit and is_dispersion_parameter(unit):
+        meaning = "gvd"
     if meaning is None and unit and dimension(unit) == "m^-1" and is_attenuation(words):
         meaning = "alpha"
     return Heading(
@@ -94,7 +96,8 @@ def _taken_apart(text: str) -> tuple[str, str | None]:
     words = BRACKETED.sub(" ", text).strip(" .:,;-") or text
     if unit is not None or (meaning_of(words) and "%" not in words):
         return words, unit
-    return _unit_behind(words)
+    behind = _unit_behind(words)
+    return behind if behind[1] is not None else _unit_behind(text)
 
 
 def _unit_behind(words: str) -> tuple[str, str | None]:
@@ -102,7 +105,7 @@ def _unit_behind(words: str) -> tuple[str, str | None]:
     for pattern in (r"\s*/\s*", r"\s*,\s*", r"\s+in\s+", r"_", r"\s+"):
         for found in re.finditer(pattern, words):
             name, unit = words[: found.start()], unit_named(words[found.end() :])
-            if unit and not name.endswith("dB") and _is_known(name):
+            if unit and not name.endswith("dB") and (_is_known(name) or is_dispersion_parameter(unit)):
                 return name, unit
     if "%" in words:
         return words.replace("%", " ").strip(), "%"

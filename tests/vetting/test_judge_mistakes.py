@@ -11,6 +11,7 @@ from pulseprop.constants import TWO_PI_C
 from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.vetting.judge import judge
 from pulseprop.vetting.passive import PassiveCausality
+from pulseprop.vetting.reading import read_table
 from pulseprop.vetting.request import Request, Stated
 
 NM = np.linspace(450.0, 1600.0, 47)
@@ -223,6 +224,27 @@ def test_a_printed_gvd_that_does_not_follow_from_the_index(sent, printed, wrong,
     )
     found = named(judged(table, Request()))
     assert found.code == "printed-gvd"
+    assert words in found.repair
+
+
+@pytest.mark.parametrize(
+    ("factor", "words"), [(1.0, None), (-1.0, "the sign is turned round"), (None, "read as GVD in fs^2/mm")]
+)
+def test_a_printed_dispersion_parameter_is_held_to_the_index(tmp_path, factor, words):
+    orders = gvd("fused silica")  # fs^2/mm
+    parameter = -orders * 1883.651567 / NM**2 * 1e3 if factor else orders  # ps/(nm km)
+    path = tmp_path / "fibre.csv"
+    rows = zip(NM, index("fused silica"), parameter * (factor or 1.0), strict=True)
+    path.write_text(
+        "wavelength (nm);n;D (ps/(nm km))\n" + "".join(f"{a:.0f};{b:.6f};{c:.3f}\n" for a, b, c in rows)
+    )
+    (table,) = read_table(path)
+    vetted = judged(table, Request())
+    if words is None:
+        assert vetted.verdict == "consistent"
+        return
+    found = named(vetted)
+    assert (found.code, "turned from the printed D" in found.text) == ("printed-gvd", True)
     assert words in found.repair
 
 

@@ -379,6 +379,19 @@ def test_unknown_columns_are_left_out_and_told(tmp_path: Path, name: str) -> Non
 
 
 @pytest.mark.parametrize(
+    "heading",
+    ["D (ps/(nm km))", "D [ps/nm/km]", "chromatic dispersion, ps/(nm·km)", "dispersion in ps nm^-1 km^-1"],
+)
+def test_the_dispersion_parameter_is_read_as_gvd(tmp_path: Path, heading: str) -> None:
+    # common fibre: D = 17 ps/(nm km) at 1550 nm is -21.68 ps^2/km; 2 pi c = 1.883651567e9 m/s
+    table = one(tmp_path, f"nm;{heading}\n1550;17.0\n1600;20.0\n")
+    gvd = values(table, "gvd")
+    assert gvd[0] == pytest.approx(-17.0 * 1.55**2 / 1.883651567 * 1e-27, rel=1e-8)
+    assert table.columns[0].half_unit[0] == pytest.approx(0.05 / 17.0 * -gvd[0])
+    assert "turned to GVD" in told(table, "dispersion parameter")
+
+
+@pytest.mark.parametrize(
     ("heading", "cells", "quantity", "expected"),
     [
         ("n;u(n)", "1.47;2e-5", "n", 2e-5),
