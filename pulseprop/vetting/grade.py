@@ -47,13 +47,30 @@ class Grade:
 
 
 def implied_uncertainty(case: Case) -> ImpliedUncertainty:
-    """factor times the uncertainties, the largest of all rows; its grade where it was not stated."""
+    """factor times the uncertainties, the largest of all rows; its grade where it was not stated.
+
+    Of rows at one wavelength that differ it is half the difference: their mean stands with an uncertainty that
+    covers both already, which the others' factor alone enlarges.
+    """
     data, factor = case.numbers.data, case.factor
     if data is None or factor is None:
         return ImpliedUncertainty(n=None, k=None)
-    k = float(factor * np.max(data.k_error)) if data.k_error is not None and len(data.k_error) else None
-    n = float(factor * np.max(data.index_error))
+    k = None
+    if data.k_error is not None and len(data.k_error):
+        k = max(_rows_factor(case) * float(np.max(data.k_error)), _of_repeat(case, "k"))
+    n = max(_rows_factor(case) * float(np.max(data.index_error)), _of_repeat(case, "n"))
     return ImpliedUncertainty(n=n, k=k, grade=graded(case).words if factor > 0 else "")
+
+
+def _rows_factor(case: Case) -> float:
+    """The least factor of the rows, those at one wavelength taken as their mean."""
+    return case.standing.factor if case.standing is not None else 0.0
+
+
+def _of_repeat(case: Case, quantity: str) -> float:
+    """The least error of two rows at one wavelength; 0 where their printed uncertainties explain them."""
+    repeat = case.numbers.repeat
+    return repeat.half if repeat and repeat.factor > 1 and repeat.quantity == quantity else 0.0
 
 
 def graded(case: Case) -> Grade:
@@ -66,7 +83,9 @@ def graded(case: Case) -> Grade:
     size = np.abs(data.index - 1) if dilute else np.abs(data.index)
     if absorbing and data.k is not None:
         size = np.maximum(size, float(np.median(data.k)))
-    share = float(np.max(factor * data.index_error / np.maximum(size, 1e-12)))
+    size = np.maximum(size, 1e-12)
+    share = _rows_factor(case) * float(np.max(data.index_error / size))
+    share = max(share, _of_repeat(case, "n") / float(np.min(size)))
     limit = GROSS_ABSORBING if absorbing else GROSS
     gross = share > limit
     of = "of n - 1" if dilute else "of n"

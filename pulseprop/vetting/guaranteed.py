@@ -76,7 +76,7 @@ def guaranteed_transmittance(case: Case, omega: float, length: float) -> tuple[I
 
 def at_implied_uncertainty(case: Case) -> tuple[PassiveData | None, str]:
     """The data, with unstated uncertainties enlarged to where the numbers can be true; or why there are
-    none.
+    none. Rows at one wavelength stand as their mean with an uncertainty that covers them all already.
     """
     data, factor = case.numbers.data, case.factor
     if data is None or case.standing is None or factor is None:
@@ -85,14 +85,9 @@ def at_implied_uncertainty(case: Case) -> tuple[PassiveData | None, str]:
         return data, ""
     if case.numbers.stated:
         return None, "the numbers contradict each other within their uncertainties, so they guarantee nothing"
-    return (
-        replace(
-            data,
-            index_error=data.index_error * factor * ROOM,
-            k_error=None if data.k_error is None else data.k_error * factor * ROOM,
-        ),
-        "",
-    )
+    larger = max(case.standing.factor * ROOM, 1.0)
+    k_error = None if data.k_error is None else data.k_error * larger
+    return replace(data, index_error=data.index_error * larger, k_error=k_error), ""
 
 
 def _nothing(omega: float, reason: str) -> Bounds:

@@ -28,11 +28,15 @@ ANCHOR = -1
 
 @dataclass(frozen=True, kw_only=True)
 class Repeat:
-    """Two rows of the table (indices) at one wavelength that differ by `factor` times their uncertainties."""
+    """Two rows of the table (indices) at one wavelength that differ by `factor` times their uncertainties.
+
+    half: of their difference, SI: with a smaller error of both they cannot be of one value.
+    """
 
     rows: tuple[int, int]
     quantity: str
     factor: float
+    half: float
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)
@@ -173,10 +177,11 @@ def _repeat(quantity: str, column: _Column, order: Rows, number: Rows) -> Repeat
     for place in np.flatnonzero(np.bincount(number) > 1):
         same = order[number == place]
         low, high = same[np.argmin(column.values[same])], same[np.argmax(column.values[same])]
-        apart = (column.values[high] - column.values[low]) / (column.error[high] + column.error[low])
+        difference = column.values[high] - column.values[low]
+        apart = difference / (column.error[high] + column.error[low])
         if apart > (worst.factor if worst else 0.0):
             pair = (int(column.rows[low]), int(column.rows[high]))
-            worst = Repeat(rows=pair, quantity=quantity, factor=float(apart))
+            worst = Repeat(rows=pair, quantity=quantity, factor=float(apart), half=float(difference / 2))
     return worst
 
 

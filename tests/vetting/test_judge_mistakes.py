@@ -318,6 +318,18 @@ def test_two_rows_at_one_wavelength_that_contradict_each_other(sent, printed):
     assert {entry.row for entry in vetted.conflict} == {22, 23}
 
 
+def test_two_rows_at_one_wavelength_imply_half_of_their_difference(sent, printed):
+    place = TWO_PI_C / (NM[20] * 1e-9)
+    nm = np.insert(NM, 20, NM[20])
+    values = np.insert(index("SF10"), 20, index("SF10")[20] + 2e-3)
+    vetted = judged(sent(nm, printed("n", values, 5)), Request(at=(place,)))
+    assert vetted.implied_uncertainty.n == pytest.approx(1e-3, rel=0.01)
+    assert vetted.verdict == "doubtful"  # 0.06 % of n, as interferometry of plates may miss
+    low, high = vetted.bounds[0].index
+    assert low < index("SF10")[20] < high
+    assert high - low < 2e-3
+
+
 def test_rows_that_stand_twice_are_told(sent, printed):
     nm = np.insert(NM, 20, NM[20])
     vetted = judged(sent(nm, printed("n", index("SF10", nm), 5)))
