@@ -49,8 +49,8 @@ class Grade:
 def implied_uncertainty(case: Case) -> ImpliedUncertainty:
     """factor times the uncertainties, the largest of all rows; its grade where it was not stated.
 
-    Of rows at one wavelength that differ it is half the difference: their mean stands with an uncertainty that
-    covers both already, which the others' factor alone enlarges.
+    Of rows at one wavelength that differ it is half the difference: their mean stands with an uncertainty
+    that covers both already, which only the factor of the others enlarges.
     """
     data, factor = case.numbers.data, case.factor
     if data is None or factor is None:
