@@ -20,6 +20,8 @@ __all__ = ["reached"]
 Real = NDArray[np.float64]
 
 TURNS = 3
+METHODS = ("highs", "highs-ipm", "highs-ds")
+"""One now and then ends with an unknown status where another does not."""
 STEP = 0.1
 """Of differences, in gaps of the rows: the transforms of splines are smooth between rows."""
 
@@ -89,15 +91,16 @@ def _least(matrix: Real, low: Real, high: Real, cost: Real) -> Real:
     column = np.max(np.abs(scaled), axis=0)
     scaled, cost = scaled / column, cost / column
     capped = np.isfinite(high)
-    found = linprog(
-        cost / np.max(np.abs(cost)),
-        A_ub=np.vstack((scaled[capped], -scaled)),
-        b_ub=np.concatenate((high[capped] / half[capped], -low / half)),
-        method="highs",
-    )
-    if found.status != 0:
-        raise ArithmeticError(found.message)
-    return np.asarray(found.x / column)
+    for method in METHODS:
+        found = linprog(
+            cost / np.max(np.abs(cost)),
+            A_ub=np.vstack((scaled[capped], -scaled)),
+            b_ub=np.concatenate((high[capped] / half[capped], -low / half)),
+            method=method,
+        )
+        if found.status == 0:
+            return np.asarray(found.x / column)
+    raise ArithmeticError(found.message)
 
 
 def _of_chi(chi: Real, w: float) -> Real:

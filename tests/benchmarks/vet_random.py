@@ -34,7 +34,8 @@ __all__ = ["Elsewhere", "Outcome", "Width", "outcome", "width"]
 
 PLACES = 3
 END_ROWS = 2
-MOST_WIDE = 1.05
+MOST_WIDE, DIFFERENCES = 1.05, 1e-3
+"""Of the bounds over the optimum, whose orders in absorbing data are differences."""
 DEFAULTS = ("300", "100", "24")
 QUANTITIES = ("index", "group_index", "gvd_fs2_per_mm")
 
@@ -142,7 +143,7 @@ class Width:
     @property
     def bad(self) -> bool:
         """Wider than allowed, or narrower than what a material reaches."""
-        return any(ratio is not None and not 1 - 1e-4 <= ratio <= MOST_WIDE for ratio in self.ratios)
+        return any(ratio is not None and not 1 - DIFFERENCES <= ratio <= MOST_WIDE for ratio in self.ratios)
 
     def line(self) -> str:
         ratios = " ".join("  none" if ratio is None else f"{ratio:.4f}" for ratio in self.ratios)

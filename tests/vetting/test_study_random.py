@@ -11,7 +11,7 @@ from tests.benchmarks.vet_random import outcome, width
 
 @pytest.mark.parametrize("seed", range(1000, 1030))
 def test_a_true_material_is_never_contradictory_and_lies_in_its_bounds(seed):
-    found = outcome(seed, random_sheet(seed, most_rows=22), places=1)
+    found = outcome(seed, random_sheet(seed, most_rows=22), places=seed % 2)
     assert found.answer.verdict != "contradictory", found.line()
     assert found.told >= 2
     assert found.missed == ()
