@@ -173,12 +173,13 @@ def _findings(vetted: Vetted) -> Section | None:
     if not vetted.findings:
         return None
     ordered = sorted(vetted.findings, key=lambda finding: GRAVEST_FIRST[finding.severity])
-    return Section("findings", "Findings", tuple(_finding(finding, vetted.headline) for finding in ordered))
+    said = f"{vetted.headline} {vetted.sentence}".casefold()
+    return Section("findings", "Findings", tuple(_finding(finding, said) for finding in ordered))
 
 
-def _finding(finding: Finding, headline: str) -> Paragraph:
-    """A finding; what the headline has said already is not said again."""
-    repeated = finding.text.rstrip(".").casefold() in headline.casefold()
+def _finding(finding: Finding, said: str) -> Paragraph:
+    """A finding; what headline or sentence (both in small letters) have said already is not said again."""
+    repeated = finding.text.rstrip(".").casefold() in said
     text = "As said above." if repeated else finding.text
     if finding.repair:
         text = f"{text} {_repair(finding)}".strip()

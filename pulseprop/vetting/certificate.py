@@ -20,7 +20,7 @@ from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_answer import FS2_PER_MM, FS3_PER_MM, material_answer
 from pulseprop.vetting.requirement_quantities import LINE_C, LINE_F
 from pulseprop.vetting.result import Bounds, Finding, ImpliedUncertainty, RequirementAnswer, Vetted
-from pulseprop.vetting.told import Stamp, told, verdict_of
+from pulseprop.vetting.told import PLEASE, Stamp, first_sentence, told, verdict_of
 
 __all__ = ["judge_certificate"]
 
@@ -74,6 +74,7 @@ def judge_certificate(certificate: Certificate, request: Request, *, date: str, 
         verdict=verdict_of(findings, proven=proven, mended=factor if repaired and holds else None),
         headline=_headline(certificate, findings, factor),
         findings=findings,
+        sentence=_sentence(findings),
         factor=factor,
         stated=stated,
         implied=_implied(values, factor),
@@ -249,11 +250,17 @@ def _what(certificate: Certificate, claim: Claim) -> str:
 def _headline(certificate: Certificate, findings: Sequence[Finding], factor: float | None) -> str:
     grave = [finding for finding in findings if finding.severity == "error"]
     if grave:
-        return grave[0].text
+        return first_sentence(grave[0].text)
     if factor is None:
         return "a single number cannot contradict itself; see what it was compared with."
     count = len(certificate.values)
     return f"the {count} printed numbers can be true together (uncertainty factor {factor:.2g})."
+
+
+def _sentence(findings: Sequence[Finding]) -> str | None:
+    """Of numbers that contradict each other the one that does not follow; None where nobody can say which."""
+    alone = next((one for one in findings if one.code == "does-not-follow" and one.severity == "error"), None)
+    return None if alone is None else f"Your numbers contradict each other. {alone.text} {PLEASE}"
 
 
 def _nm(omega: float) -> str:

@@ -90,13 +90,14 @@ def _differs(values: Sequence[PrintedValue], value: PrintedValue, medium: Medium
     apart = abs(value.value - number) / abs(number) if number else np.inf
     grave = apart > MELTS.get(value.quantity, OTHER_MELTS)
     copies = tuple(_copies(values, value, medium, number, grave))
+    repair = f"take it as {', or as '.join(copies)}" if copies else None
     text = (
-        f"{value.words} is printed as {value.text}; {medium.name} has {_shown(value, number)} by its "
-        f"catalogue formula ({medium.source}), {_apart(apart)} away and outside the printed digits"
+        f"{value.words} is printed as {value.text}; {medium.name} has {_shown(value, number)}. By its "
+        f"catalogue formula ({medium.source}) that is {_apart(apart)} away and outside the printed digits"
     )
     text += ": it does not follow from it." if grave else "; another melt or record may differ by as much."
-    if copies:
-        text += f" It agrees if it is {'; or if it is '.join(copies)}."
+    if repair:
+        text += f" It agrees if you {repair}."
     elif met := _met_near(value, medium):
         text += f" {medium.name} has the printed value near {met}."
     return Finding(
@@ -104,15 +105,15 @@ def _differs(values: Sequence[PrintedValue], value: PrintedValue, medium: Medium
         severity="error" if grave else "warning",
         text=text,
         rows=_rows(value),
-        repair=f"take it as {copies[0]}" if copies else None,
+        repair=repair,
     )
 
 
 def _copies(
     values: Sequence[PrintedValue], value: PrintedValue, medium: Medium, number: float, grave: bool
 ) -> Iterator[str]:
-    """Where the number may come from, in words that follow "it is". Small differences come about in too many
-    ways for wavelengths and siblings to be evidence."""
+    """Where the number may come from, in words that follow "take it as". Small differences come about in too
+    many ways for wavelengths and siblings to be evidence."""
     if value.error > TELLING * abs(value.value):
         return
     for words, factor in readings(value):

@@ -29,10 +29,10 @@ def agrees(value: float, reference: float, error: float) -> bool:
 
 
 def readings(value: PrintedValue) -> Iterator[tuple[str, float]]:
-    """What may be meant, in words that follow "it agrees if it is", and the factor on the number."""
+    """What may be meant, in words that follow "take it as", and the factor on the number."""
     if value.quantity not in FACTORIAL:
         return
-    yield "read with the other sign", -1.0
+    yield "one with the other sign", -1.0
     yield from _other_lengths(value.unit)
     factorial = FACTORIAL[value.quantity]
     yield f"the coefficient of the phase's Taylor series, {factorial:g} times smaller", factorial

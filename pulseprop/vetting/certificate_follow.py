@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
-from dataclasses import replace
+from dataclasses import dataclass, replace
+from itertools import islice
 
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.certificate_copies import TELLING, readings, usual_places
@@ -68,14 +69,15 @@ def _alone(values: Sequence[PrintedValue], value: PrintedValue, band: Band) -> F
     if proof is None or proof.least_factor.factor > 1:
         return None
     implied = implied_by(proof, value)
-    copies = list(_copies(rest, value, proof, implied)) if implied is not None else []
+    copies = [copy.words for copy in _copies(rest, value, proof, implied)] if implied is not None else []
+    repair = f"take it as {', or as '.join(copies)}" if copies else None
     return Finding(
         code="does-not-follow",
         severity="error",
         text=f"Without {value.words} the other numbers agree{_guarantee(value, implied)}."
-        + (f" It agrees if it is {'; or if it is '.join(copies)}." if copies else ""),
+        + (f" It agrees if you {repair}." if repair else ""),
         rows=(value.line,) if value.line else (),
-        repair=f"take it as {copies[0]}" if copies else None,
+        repair=repair,
     )
 
 
@@ -87,26 +89,61 @@ def _guarantee(value: PrintedValue, implied: Interval | None) -> str:
     return f"; they guarantee {low:.6g} to {high:.6g}{unit}, and {value.text} is printed"
 
 
+@dataclass(frozen=True)
+class _Copy:
+    """Words that follow "take it as". width: of the interval that the number hits, relative: what falls into
+    a narrow one does so less easily by chance. off: its distance from the middle, over half the width."""
+
+    words: str
+    width: float
+    off: float
+
+
 def _copies(
     rest: Sequence[PrintedValue], value: PrintedValue, proof: Printed, implied: Interval
-) -> Iterator[str]:
-    """Readings that lie within what the rest guarantees, in words that follow "it is"."""
-    narrow = implied[1] - implied[0] <= NARROW * max(abs(end) for end in implied)
-    if value.error > TELLING * abs(value.value) or not narrow:
-        return
-    for words, factor in readings(value):
-        if _inside(value.value * factor, value.error * abs(factor), implied):
-            yield words
-    if value.quantity in ("V_d", "zero dispersion wavelength"):
-        return
+) -> list[_Copy]:
+    """Readings that lie within what the rest guarantees; those that hit it most exactly first."""
+    if value.error > TELLING * abs(value.value) or _width(implied) > NARROW:
+        return []
+    found = [
+        _copy(words, value.value * factor, implied)
+        for words, factor in readings(value)
+        if _inside(value.value * factor, value.error * abs(factor), implied)
+    ]
+    if value.quantity not in ("V_d", "zero dispersion wavelength"):
+        found += islice(_of_other_places(rest, value, proof), 1)
+    return sorted(found, key=lambda copy: (copy.width, copy.off))
+
+
+def _of_other_places(rest: Sequence[PrintedValue], value: PrintedValue, proof: Printed) -> Iterator[_Copy]:
+    """The number as that of another wavelength, the file's own first: these even where the rest says little
+    there.
+    """
+    own = {other.omega for other in rest}
     for omega in usual_places(rest, value):
         if not proof.band[0] < omega < proof.band[1]:
             continue
         there = proof.interval(terms_of(_at(value, omega)), max(1.0, proof.least_factor.factor * ROOM))
         less = 1.0 if ORDERS[value.quantity] in INDICES else 0.0
-        if there is not None and _inside(value.value - less, value.error, there):
-            yield f"that of another wavelength, {TWO_PI_C / omega * 1e9:.6g} nm"
-            return
+        number = value.value - less
+        if there is None or not _inside(number, value.error, there):
+            continue
+        words = f"that of another wavelength, {TWO_PI_C / omega * 1e9:.6g} nm"
+        if _width(there) <= NARROW:
+            yield _copy(words, number, there)
+        elif omega in own:
+            low, high = (value.in_unit(end + less) for end in there)
+            yield _copy(f"{words} (where the others leave {low:.3g} to {high:.3g})", number, there)
+
+
+def _copy(words: str, number: float, interval: Interval) -> _Copy:
+    low, high = interval
+    return _Copy(words, _width(interval), abs(2 * number - low - high) / (high - low or 1.0))
+
+
+def _width(interval: Interval) -> float:
+    """Relative to the larger end."""
+    return (interval[1] - interval[0]) / max(abs(end) for end in interval)
 
 
 def _inside(value: float, error: float, interval: Interval) -> bool:

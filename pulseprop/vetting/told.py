@@ -17,7 +17,7 @@ from pulseprop.vetting.result import (
     Vetted,
 )
 
-__all__ = ["Stamp", "told", "verdict_of"]
+__all__ = ["PLEASE", "Stamp", "first_sentence", "told", "verdict_of"]
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -33,6 +33,7 @@ VERDICT_RULE = (
     "differ by ten times their print or more and agree once one mistake is undone. Doubtful: any other "
     "finding that is an error. Else consistent."
 )
+PLEASE = "Please check these numbers and tell us which are right."
 STRUCTURED = 10.0
 """Factor from which on numbers that one undone mistake makes agree are no matter of noise."""
 
@@ -55,6 +56,7 @@ def told(
     verdict: Verdict,
     headline: str,
     findings: tuple[Finding, ...],
+    sentence: str | None = None,
     factor: float | None = None,
     gap: float | None = None,
     stated: bool = False,
@@ -67,7 +69,8 @@ def told(
     blind_spots: tuple[str, ...] = (),
     curves: dict[str, Any] | None = None,
 ) -> Vetted:
-    """The answer; the sentence to the supplier is that of the gravest finding and of requirements not met."""
+    """The answer; the sentence to the supplier is that of the gravest finding unless another is given, with
+    the requirements not met."""
     return Vetted(
         file=file,
         sha256=sha256,
@@ -76,7 +79,7 @@ def told(
         what=what,
         verdict=verdict,
         headline=headline,
-        sentence=with_unmet(_sentence(findings), requirements),
+        sentence=with_unmet(_sentence(findings) if sentence is None else sentence, requirements),
         decision_rule=" ".join((VERDICT_RULE, *([DECISION_RULE] if requirements else []))),
         uncertainty_factor=factor,
         certified_gap=gap,
@@ -94,6 +97,11 @@ def told(
     )
 
 
+def first_sentence(text: str) -> str:
+    """What a headline needs of a finding; the rest stands with the finding."""
+    return text.partition(". ")[0].rstrip(".") + "."
+
+
 def _sentence(findings: tuple[Finding, ...]) -> str:
     """Something a supplier can answer; empty where there is nothing to ask."""
     grave = next((finding for finding in findings if finding.severity == "error"), None)
@@ -101,4 +109,4 @@ def _sentence(findings: tuple[Finding, ...]) -> str:
         return ""
     repair = next((entry.repair for entry in findings if entry.severity == "error" and entry.repair), None)
     why = f" Possible explanation: {repair}." if repair and repair not in grave.text else ""
-    return f"{grave.text}{why} Please check these numbers and tell us which are right."
+    return f"{grave.text}{why} {PLEASE}"

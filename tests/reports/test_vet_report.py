@@ -118,6 +118,11 @@ def test_a_finding_that_is_the_headline_is_not_told_again():
     assert "[displaced, error]  As said above." in text
 
 
+def test_a_finding_that_is_the_sentence_to_the_supplier_is_not_told_again():
+    text = vet_text([made(sentence="Something is wrong. Row 3 is off. Please comment.")])
+    assert "[displaced, error]  As said above. To mend it: print 1.516." in " ".join(text.split("\n"))
+
+
 def test_the_printed_proof_can_be_added_up():
     text = vet_text([made()])
     rows = [line.split() for line in text.splitlines() if re.match(r"[234] +[567]00 ", line)]

@@ -306,6 +306,26 @@ def test_a_wrong_number_is_found_and_its_origin_named(printed, repair):
     assert repair in named[0].repair
 
 
+def test_explanations_are_ordered_by_how_exactly_they_hit_and_nothing_is_said_three_times():
+    # twice the number lies in what the others leave at 800 nm, 44.47 to 45.87 fs^2/mm; at 1064 nm, near the
+    # last of them, they leave 1.4 to 24.7, into which much falls by chance
+    printed = (
+        ("n_d", "1.51676", None, None),
+        ("n_F", "1.52238", None, None),
+        ("n_C", "1.51426", None, None),
+        ("V_d", "63.70", None, None),
+        ("index", "1.50654", "1064 nm", None),
+        ("gvd", "22.7 fs^2/mm", "800 nm", None),
+    )
+    vetted = judged("melt 78", *printed, transparent=(omega(1800), omega(380)))
+    found = next(entry for entry in vetted.findings if entry.code == "does-not-follow")
+    order = [found.repair.index(words) for words in ("2 times smaller", "1064 nm (where the others leave")]
+    assert order == sorted(order)
+    assert found.text in vetted.sentence
+    assert "25 times" in vetted.findings[0].text
+    assert "25 times" not in vetted.headline + vetted.sentence
+
+
 def test_an_abbe_number_that_does_not_follow_from_the_lines():
     lines = (("n_d", "1.51680", None, None), ("n_F", "1.52238", None, None), ("n_C", "1.51432", None, None))
     assert judged("melt 77", *lines, ("V_d", "64.1", None, None)).uncertainty_factor <= 1
