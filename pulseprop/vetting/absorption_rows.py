@@ -8,8 +8,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.constants import SPEED_OF_LIGHT
-from pulseprop.material.absorption_quantities import face_reflectance, internal_transmittance
+from pulseprop.material.absorption_quantities import internal_transmittance
 from pulseprop.vetting.ceiling import at_ceiling
+from pulseprop.vetting.faces import surface_reflectance
 from pulseprop.vetting.request import Request
 from pulseprop.vetting.table import Column, Quantity, SentTable
 from pulseprop.vetting.uncertainty import column_uncertainty
@@ -20,7 +21,6 @@ __all__ = [
     "absorption_column",
     "absorption_rows",
     "has_constant_index",
-    "surface_reflectance",
 ]
 
 Real = NDArray[np.float64]
@@ -90,21 +90,6 @@ def absorption_rows(table: SentTable, column: Column, request: Request) -> Absor
         said = stated.absolute + stated.relative * np.abs(k)
         error = np.where(said < error, said + error, said)
     return AbsorptionRows(k=np.asarray(k), error=np.asarray(error), least=rows.least)
-
-
-def surface_reflectance(table: SentTable, request: Request) -> Real | None:
-    """Of one face at normal incidence, (R,), from the table's index or that of the stated medium."""
-    from pulseprop.material.catalogue_media import catalogue_medium
-
-    column = table.column("n")
-    if column is not None:
-        return face_reflectance(column.values.astype(complex))
-    if request.claimed is None:
-        return None
-    medium = catalogue_medium(request.claimed)
-    if not np.all(medium.band.contains(table.omega)):
-        return None
-    return face_reflectance(medium.index(table.omega))
 
 
 def _alpha_per_value(quantity: Quantity, thickness: float | None) -> float:

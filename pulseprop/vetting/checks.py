@@ -20,7 +20,12 @@ from pulseprop.vetting.checks_band import (
     falling_index,
     narrow_lines,
 )
-from pulseprop.vetting.checks_catalogue import claimed_medium, nearest_medium, wavelength_unit
+from pulseprop.vetting.checks_catalogue import (
+    claimed_medium,
+    nearest_medium,
+    open_orientation,
+    wavelength_unit,
+)
 from pulseprop.vetting.checks_digits import too_few_digits
 from pulseprop.vetting.checks_printed import abbe_number, printed_orders
 from pulseprop.vetting.checks_rows import double_rows, empty_cells, rows_out_of_order
@@ -43,6 +48,7 @@ CHECKS: tuple[Callable[[Case], Iterator[Finding]], ...] = (
     fractions_called_percent,
     wavelength_unit,
     claimed_medium,
+    open_orientation,
     printed_orders,
     abbe_number,
     falling_index,

@@ -15,9 +15,9 @@ from pulseprop.vetting.absorption_rows import (
     TRANSMITTANCES,
     AbsorptionRows,
     absorption_rows,
-    surface_reflectance,
 )
 from pulseprop.vetting.case import Case
+from pulseprop.vetting.faces import surface_reflectance
 from pulseprop.vetting.result import Finding
 from pulseprop.vetting.retold import as_quantity, with_column
 from pulseprop.vetting.table import Column

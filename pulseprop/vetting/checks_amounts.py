@@ -7,8 +7,9 @@ from collections.abc import Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from pulseprop.vetting.absorption_rows import ABSORPTIONS, TRANSMITTANCES, surface_reflectance
+from pulseprop.vetting.absorption_rows import ABSORPTIONS, TRANSMITTANCES
 from pulseprop.vetting.case import Case
+from pulseprop.vetting.faces import surface_reflectance
 from pulseprop.vetting.result import Finding
 from pulseprop.vetting.table import Column
 from pulseprop.vetting.uncertainty import column_uncertainty, is_stated

@@ -3,7 +3,10 @@ another source can show."""
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
+from dataclasses import replace
+from pathlib import Path
 
 import numpy as np
 from numpy.typing import NDArray
@@ -11,11 +14,12 @@ from numpy.typing import NDArray
 from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.medium import Medium
 from pulseprop.vetting.case import Case
+from pulseprop.vetting.certificate_medium import claim_of
 from pulseprop.vetting.nearest import Likeness, likeness, nearest, said_to_be
 from pulseprop.vetting.result import Finding
 from pulseprop.vetting.table import SentTable
 
-__all__ = ["claimed_medium", "claimed_of", "nearest_medium", "wavelength_unit"]
+__all__ = ["claimed_medium", "claimed_of", "nearest_medium", "open_orientation", "wavelength_unit"]
 
 Real = NDArray[np.float64]
 
@@ -31,6 +35,13 @@ BETTER = 5.0
 """Times nearer that another reading must bring a table to count."""
 AIR_SHOWS, AIR_FITS = 1e-4, 5e-5
 """Uncertainty of the index up to which that of air, 2.7e-4, is seen, and how well the table must then fit."""
+AXIS_SAID = re.compile(
+    r"\bn_?\{?[oexyz]\}?\b|\b(extra)?ordinary\b|\b[oexyz][- ]?(ray|axis|polari[sz])"
+    r"|\b[acxyz][- ](cut|plane|axis)\b|\b0001\b|ordentlich|fused quartz|quartz glass|quarzglas",
+    re.IGNORECASE,
+)
+"""Words by which an axis, or matter without one, is told."""
+RANDOM = re.compile(r"\brandom(ly)?\b", re.IGNORECASE)
 SCALES = (1e3, 1e-3, 10.0, 0.1, 1e4, 1e-4, 1e6, 1e-6)
 """Of wavelength units that are mixed up: nm, um, 0.1 nm, m."""
 
@@ -58,6 +69,21 @@ def claimed_medium(case: Case) -> Iterator[Finding]:
         yield slip
     elif like.distance > MELT + 3 * error:
         yield _not_that(case, like, stated)
+
+
+def open_orientation(case: Case) -> Iterator[Finding]:
+    """A crystal whose axis nobody states: the table may be of any, and so may be what is delivered."""
+    table, claim = case.table, claimed_of(case)
+    words = " ".join(
+        (table.title, Path(table.file).stem, *table.comments, *(one.header for one in table.columns))
+    )
+    if claim is None or AXIS_SAID.search(words):
+        return
+    cut = "random" if RANDOM.search(words) else ""
+    places = case.request.at or (float(np.median(table.omega)),)
+    for finding in claim_of(claim[0].name, cut, places).findings:
+        if finding.code == "orientation-open":
+            yield replace(finding, repair="state the axis along which the light is polarised")
 
 
 def nearest_medium(case: Case) -> Iterator[Finding]:

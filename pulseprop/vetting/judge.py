@@ -13,6 +13,7 @@ from pulseprop.vetting.absorption_rows import absorption_column
 from pulseprop.vetting.case import Case, case_of
 from pulseprop.vetting.causal import Causality
 from pulseprop.vetting.checks import found_in
+from pulseprop.vetting.faces import inferred_medium
 from pulseprop.vetting.few_rows import few_rows
 from pulseprop.vetting.grade import implied_uncertainty
 from pulseprop.vetting.guaranteed import guaranteed, guaranteed_abbe, guaranteed_transmittance
@@ -21,7 +22,7 @@ from pulseprop.vetting.requirement import read_requirement
 from pulseprop.vetting.requirement_answer import DECISION_RULE as THREE_WAY
 from pulseprop.vetting.requirement_answer import material_answer, with_unmet
 from pulseprop.vetting.result import NOT_SETTLED, Bounds, ConflictRow, Finding, Vetted
-from pulseprop.vetting.table import SentTable
+from pulseprop.vetting.table import Inference, SentTable
 from pulseprop.vetting.verdict import decision_rule, verdict_on
 from pulseprop.vetting.words import BLIND_SPOTS, assumptions, headline, sentence, what_was_vetted
 
@@ -70,11 +71,19 @@ def judge(table: SentTable, request: Request, *, date: str, version: str, causal
         bounds=_bounds(case),
         requirements=answers,
         findings=findings,
-        inferred=tuple(asdict(inference) for inference in table.inferred),
+        inferred=tuple(asdict(inference) for inference in _inferred(table, request)),
         assumptions=assumptions(case),
         blind_spots=BLIND_SPOTS,
         curves=_curves(case),
     )
+
+
+def _inferred(table: SentTable, request: Request) -> Iterator[Inference]:
+    """What reading the file and what judging it had to find out."""
+    yield from table.inferred
+    faces = inferred_medium(table, request)
+    if faces is not None:
+        yield faces
 
 
 def _not_settled(case: Case) -> Iterator[Finding]:

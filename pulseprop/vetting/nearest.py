@@ -17,7 +17,7 @@ from pulseprop.material.catalogue_media import catalogue_medium
 from pulseprop.material.medium import Medium
 from pulseprop.vetting.table import SentTable
 
-__all__ = ["Likeness", "likeness", "nearest", "said_to_be"]
+__all__ = ["Likeness", "likeness", "media_named", "nearest", "said_to_be"]
 
 Real = NDArray[np.float64]
 
@@ -69,13 +69,17 @@ def nearest(omega: Real, index: Real) -> Likeness | None:
 
 
 def said_to_be(table: SentTable) -> str | None:
-    """The catalogue name that stands in the table's title or file name, or, where it is no common word, in
-    its comments; the longest of them. Gases are the surroundings more often than the sample and are left out.
+    """The longest of the catalogue names in its words."""
+    return max(media_named(table), key=len, default=None)
+
+
+def media_named(table: SentTable) -> list[str]:
+    """The catalogue names that stand in the table's title or file name, or, where they are no common words,
+    in its comments. Gases are the surroundings more often than the sample and are left out.
     """
     heading = " ".join((table.title, re.sub(r"[_+]", " ", Path(table.file).stem)))
     everything = " ".join((heading, *table.comments))
-    found = [name for name in _searched() if _stands_in(name, heading if name.islower() else everything)]
-    return max(found, key=len, default=None)
+    return [name for name in _searched() if _stands_in(name, heading if name.islower() else everything)]
 
 
 def _stands_in(name: str, text: str) -> bool:

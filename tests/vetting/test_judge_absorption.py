@@ -100,6 +100,23 @@ def test_a_lossless_silica_plate_called_internal(sent, printed):
     assert vetted.verdict == "doubtful"
 
 
+def test_the_medium_of_the_faces_is_read_from_the_name_where_it_is_certain(sent, printed):
+    plate = np.interp(NM, [400, 500, 600, 800], [0.93015, 0.93206, 0.93305, 0.93403])
+    column = printed("internal_transmittance", plate, 3)
+    vetted = judged(sent(NM, column, thickness=3e-3, title="fused silica, lot 4"))
+    assert codes(vetted, "error") == ["fresnel-loss"]
+    (note,) = vetted.inferred
+    assert (note["about"], note["taken"], note["overrule"]) == (
+        "medium of the faces",
+        "fused silica",
+        "--medium",
+    )
+    for title in ("fused silica and sapphire", "water"):  # which of them; and the cell has the faces
+        other = judged(sent(NM, column, thickness=3e-3, title=title))
+        assert "fresnel-loss" not in codes(other, "error")
+        assert other.inferred == ()
+
+
 def test_two_columns_with_different_logarithms(sent, printed):
     absorbance = printed("absorbance", BAND, 4)
     alpha = printed("alpha", BAND / 0.1, 3, "1/cm", 100.0)  # should be 2.302585 times as large for 1 mm

@@ -228,6 +228,28 @@ def test_a_printed_gvd_that_does_not_follow_from_the_index(sent, printed, wrong,
 
 
 @pytest.mark.parametrize(
+    ("title", "open_axis"),
+    [
+        ("sapphire window, random cut", True),
+        ("sapphire", True),
+        ("sapphire, c-cut", False),
+        ("sapphire, ordinary ray", False),
+        ("fused silica", False),
+    ],
+)
+def test_a_crystal_whose_axis_is_not_stated_is_told_with_both(sent, printed, title, open_axis):
+    # both records of the catalogue at 800 nm, from their formulas: 58.04 and 56.63 fs^2/mm
+    request = Request(at=(TWO_PI_C / 800e-9,))
+    vetted = judged(sent(NM, printed("n", index("sapphire"), 5), title=title), request)
+    found = [one for one in vetted.findings if one.code == "orientation-open"]
+    assert bool(found) is open_axis
+    if found:
+        assert all(number in found[0].text for number in ("58.04", "56.63"))
+        assert ("is random" in found[0].text) is ("random" in title)
+        assert found[0].severity == "warning"
+
+
+@pytest.mark.parametrize(
     ("factor", "words"), [(1.0, None), (-1.0, "the sign is turned round"), (None, "read as GVD in fs^2/mm")]
 )
 def test_a_printed_dispersion_parameter_is_held_to_the_index(tmp_path, factor, words):
