@@ -26,9 +26,9 @@ GAP = 1e-3
 FLOOR = 1e-2
 """The gap of a factor below this is taken over this: the numbers fit a hundred times better than stated."""
 ROUNDS = 12
-ACCURACY = (1e-2, 1e-3, 3e-4)
+ACCURACY = (6e-4, 3e-4)
 """Of the programmes one after another, and of all further ones: early ones have not the final masses yet."""
-NEAR = (-np.inf, -np.inf, 0.0)
+NEAR = (-np.inf, 0.0)
 """How much the weights must favour a mass for it to join; at first all that they favour locally most do."""
 TOLERABLE = 0.1
 """Accuracy at which a programme that rounding has stopped is still worth a look: the proof decides."""

@@ -22,7 +22,7 @@ from numpy.typing import NDArray
 from pulseprop.causality.outside_masses import Side, without
 from pulseprop.causality.passive_data import PassiveData
 from pulseprop.numerics.knots import between_rows, outside_knots
-from pulseprop.numerics.spline_basis import basis_pieces, basis_transforms, basis_values
+from pulseprop.numerics.spline_basis import basis_pieces, basis_spans, basis_transforms, basis_values
 
 __all__ = ["Masses", "PassiveClass", "Splines"]
 
@@ -67,10 +67,11 @@ class Splines:
 
     def strengths(self) -> Real:
         """Integral over s = w^2 of each: 2 w dw over its pieces."""
-        length = np.diff(self.knots)
-        power = np.arange(1, 5)
-        flat = np.einsum("i,imj,m->j", self.knots[:-1] * length, self.pieces, 1 / power)
-        return np.asarray(2 * (flat + np.einsum("i,imj,m->j", length**2, self.pieces, 1 / (power + 1))))
+        spans, power = basis_spans(self.pieces), np.arange(1, 5)
+        piece = np.arange(len(spans))[:, None] + np.arange(spans.shape[1])
+        left, length = self.knots[piece], np.diff(self.knots)[piece]
+        inner = left * (spans @ (1 / power)) + length * (spans @ (1 / (power + 1)))
+        return np.asarray(2 * np.sum(length * inner, axis=1))
 
 
 class PassiveClass:

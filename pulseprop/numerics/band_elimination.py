@@ -26,72 +26,78 @@ class BandLayout:
     columns in order of their first rows."""
 
     def __init__(self, band: Real) -> None:
-        self.band = band
-        unknowns = len(band)
+        self.unknowns, self.equations = band.shape
         touched = band != 0
         first = np.argmax(touched, axis=0)
-        last = unknowns - 1 - np.argmax(touched[::-1], axis=0)
+        last = self.unknowns - 1 - np.argmax(touched[::-1], axis=0)
         self.reach = int(np.max(last - first, initial=0))
+        self.unknown, self.equation = np.nonzero(touched)
+        self.entry = band[self.unknown, self.equation]
+        starts = range(0, self.unknowns, PANEL)
+        inside = [np.flatnonzero((first >= at) & (first < at + PANEL)) for at in starts]
         self.panels = [
-            (at, min(at + PANEL, unknowns), np.flatnonzero((first >= at) & (first < at + PANEL)))
-            for at in range(0, unknowns, PANEL)
+            (at, min(at + PANEL, self.unknowns), of, band[at : at + PANEL + self.reach, of].T)
+            for at, of in zip(starts, inside, strict=True)
         ]
+
+    def of_equations(self, of: Real) -> Real:
+        """band @ of, (unknowns,), for one number per equation."""
+        return np.asarray(
+            np.bincount(self.unknown, self.entry * of[self.equation], self.unknowns), dtype=np.float64
+        )
+
+    def of_unknowns(self, of: Real) -> Real:
+        """of @ band, (equations,), for one number per unknown."""
+        return np.asarray(
+            np.bincount(self.equation, self.entry * of[self.unknown], self.equations), dtype=np.float64
+        )
 
 
 @dataclass(frozen=True, eq=False)
 class _Panel:
-    """q: orthogonal; order: of its rows (carried ones, y, e); carry_on: rows to the next panel."""
+    """q: orthogonal, its rows (carried ones, y, e); triangle: of y; carry_on: rows to the next panel."""
 
     start: int
     stop: int
     equations: Indices
-    order: Indices
     q: Real
+    triangle: Real
     carried: int
     carry_on: int
 
 
 class BandElimination:
-    """near: (unknowns,) weights of y; far: (equations,) weights of e; dense: (z, equations)."""
+    """near: (unknowns,) weights of y; far: (equations,) weights of e; dense: (equations, z), weighted."""
 
     def __init__(self, layout: BandLayout, near: Real, far: Real, dense: Real) -> None:
-        self.near, self.far = near, far
-        unknowns = len(near)
-        self.coupling = np.empty((unknowns, len(dense)))
+        self.near, self.equations = near, layout.equations
+        columns = dense.shape[1]
+        self.coupling = np.empty((layout.unknowns, columns))
         self.panels: list[_Panel] = []
-        self.triangles: list[Real] = []
         left: list[Real] = []
-        carry, carried = np.zeros((0, layout.reach)), np.zeros((0, len(dense)))
-        for start, stop, equations in layout.panels:
-            width = min(stop + layout.reach, unknowns) - start
-            rows = np.zeros((len(carry) + stop - start + len(equations), width))
+        carry, carried = np.zeros((0, layout.reach)), np.zeros((0, columns))
+        for start, stop, equations, band in layout.panels:
+            done, width = stop - start, band.shape[1]
+            rows = np.zeros((len(carry) + done + len(equations), width))
             rows[: len(carry), : carry.shape[1]] = carry[:, :width]
-            own = np.arange(stop - start)
-            rows[len(carry) + own, own] = near[start:stop]
-            rows[len(carry) + stop - start :] = (
-                layout.band[start : start + width, equations] * far[equations]
-            ).T
-            right = np.zeros((len(rows), len(dense)))
-            right[: len(carry)] = carried
-            right[len(carry) + stop - start :] = (dense[:, equations] * far[equations]).T
-            order = np.argsort(-np.max(np.abs(rows), axis=1))
-            q, triangle = np.linalg.qr(rows[order], mode="complete")
-            turned = q.T @ right[order]
-            done, on = stop - start, min(width, len(rows)) - (stop - start)
-            self.panels.append(_Panel(start, stop, equations, order, q, len(carry), on))
-            self.triangles.append(triangle[:done])
+            rows[len(carry) + np.arange(done), np.arange(done)] = near[start:stop]
+            rows[len(carry) + done :] = band * far[equations, None]
+            q, triangle = _orthogonal(rows)
+            turned = q[len(carry) + done :].T @ dense[equations]
+            turned += q[: len(carry)].T @ carried
+            on = min(width, len(rows)) - done
+            self.panels.append(_Panel(start, stop, equations, q, triangle[:done], len(carry), on))
             self.coupling[start:stop] = turned[:done]
             carry, carried = triangle[done : done + on, done:], turned[done : done + on]
             left.append(turned[done + on :])
-        left.append(carried)
-        self.left = np.concatenate(left)
+        self.left = np.concatenate((*left, carried))
 
     def reduced(self, near: Real, far: Real) -> tuple[Real, Real]:
         """Right sides (weighted) of y (unknowns,) and e (equations,) as those of y and of what is left."""
         of_unknowns, left, carried = np.empty(len(near)), [], np.zeros(0)
         for panel in self.panels:
             rows = np.concatenate((carried, near[panel.start : panel.stop], far[panel.equations]))
-            turned = rows[panel.order] @ panel.q
+            turned = rows @ panel.q
             done = panel.stop - panel.start
             of_unknowns[panel.start : panel.stop] = turned[:done]
             carried = turned[done : done + panel.carry_on]
@@ -100,7 +106,7 @@ class BandElimination:
 
     def restored(self, left: Real) -> tuple[Real, Real]:
         """What equations of z leave, as what those of y and e leave: back from `reduced`, 0 for y."""
-        near, far = np.empty(len(self.near)), np.empty(len(self.far))
+        near, far = np.empty(len(self.near)), np.empty(self.equations)
         end = len(left)
         on = self.panels[-1].carry_on
         carried, end = left[end - on : end], end - on
@@ -109,8 +115,7 @@ class BandElimination:
             count = len(panel.q) - done - panel.carry_on
             turned = np.concatenate((np.zeros(done), carried, left[end - count : end]))
             end -= count
-            rows = np.empty(len(turned))
-            rows[panel.order] = panel.q @ turned
+            rows = panel.q @ turned
             near[panel.start : panel.stop] = rows[panel.carried : panel.carried + done]
             far[panel.equations] = rows[panel.carried + done :]
             carried = rows[: panel.carried]
@@ -122,10 +127,19 @@ class BandElimination:
 
         right = right - self.coupling @ z
         y = np.zeros(len(right))
-        for panel, triangle in zip(self.panels[::-1], self.triangles[::-1], strict=True):
-            done = panel.stop - panel.start
+        for panel in self.panels[::-1]:
+            done, triangle = panel.stop - panel.start, panel.triangle
             beyond = triangle[:, done:] @ y[panel.stop : panel.start + triangle.shape[1]]
             y[panel.start : panel.stop] = dtrtrs(
                 triangle[:, :done], right[panel.start : panel.stop] - beyond
             )[0]
         return y
+
+
+def _orthogonal(rows: Real) -> tuple[Real, Real]:
+    """Q, complete, and R; rows sorted by size, as the largest must be eliminated first."""
+    order = np.argsort(-np.max(np.abs(rows), axis=1))
+    sorted_q, triangle = np.linalg.qr(rows[order], mode="complete")
+    q = np.empty_like(sorted_q)
+    q[order] = sorted_q
+    return q, triangle

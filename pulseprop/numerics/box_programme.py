@@ -20,7 +20,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from pulseprop.errors import NumericalLimit
-from pulseprop.numerics.interior_point import Point, Problem, improved, start, value_and_bound
+from pulseprop.numerics.interior_point import Gaps, Point, Problem, improved, start, value_and_bound
 
 __all__ = ["BoxSolution", "solve_box"]
 
@@ -94,10 +94,11 @@ def _solved(problem: Problem, accuracy: float, floor: float, tolerable: float) -
     with np.errstate(all="ignore"), suppress(np.linalg.LinAlgError):
         point = start(problem)
         for _ in range(STEPS):
-            best = min(best, (_left(problem, point, floor), point), key=lambda one: one[0])
+            gaps = problem.gaps(point)
+            best = min(best, (_left(problem, point, gaps, floor), point), key=lambda one: one[0])
             if best[0] <= accuracy:
                 break
-            point = improved(problem, point)
+            point = improved(problem, point, gaps)
     left, found = best
     if found is not None and left <= tolerable:
         return found
@@ -109,8 +110,7 @@ def _solved(problem: Problem, accuracy: float, floor: float, tolerable: float) -
     )
 
 
-def _left(problem: Problem, point: Point, floor: float) -> float:
+def _left(problem: Problem, point: Point, gaps: Gaps, floor: float) -> float:
     """Difference of value and bound, with what the conditions still miss, over the value."""
     value, bound = value_and_bound(problem, point)
-    missing = problem.missing(point)
-    return (abs(value - bound) + missing) / max(abs(value), floor)
+    return (abs(value - bound) + gaps.missing(point)) / max(abs(value), floor)

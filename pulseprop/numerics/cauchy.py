@@ -169,7 +169,8 @@ def monomial_cauchy(edges: Real, z: Real) -> Real:
     nodes = left[:, None] + (right - left)[:, None] * (1 + x) / 2
     result = np.empty((len(z), len(left), 4))
     for place, row in zip(z, result, strict=True):
-        row[:] = (right - left)[:, None] * ((1 / (nodes - place)) @ powers)
-        near = np.abs(place - (left + right) / 2) < SEPARATION * (right - left) / 2
-        row[near] = cubic_cauchy(place, left[near, None], right[near, None], np.eye(4))
+        np.matmul(1 / (nodes - place), powers, out=row)
+    result *= (right - left)[:, None]
+    place, piece = np.nonzero(np.abs(z[:, None] - (left + right) / 2) < SEPARATION * (right - left) / 2)
+    result[place, piece] = cubic_cauchy(z[place, None], left[piece, None], right[piece, None], np.eye(4))
     return result

@@ -19,7 +19,7 @@ from numpy.typing import NDArray
 
 from pulseprop.numerics.weighted_squares import WeightedSquares
 
-__all__ = ["Point", "Problem", "improved", "start", "value_and_bound"]
+__all__ = ["Gaps", "Point", "Problem", "improved", "start", "value_and_bound"]
 
 Real = NDArray[np.float64]
 
@@ -47,7 +47,6 @@ class Problem:
     """minimise cost . x + t with lower - t e <= A x <= upper + t e; e None: no t."""
 
     def __init__(self, *, matrix: Real, lower: Real, upper: Real, cost: Real, stretch: Real | None) -> None:
-        self.matrix = matrix
         self.squares = WeightedSquares(matrix)
         self.has_lower, self.has_upper = np.isfinite(lower), np.isfinite(upper)
         self.lower = np.where(self.has_lower, lower, 0.0)
@@ -57,30 +56,34 @@ class Problem:
         self.stretch = np.zeros(len(lower)) if stretch is None else stretch
         self.limits = int(np.sum(self.has_lower)) + int(np.sum(self.has_upper)) + len(cost)
 
-    def below(self, point: Point) -> Real:
-        """What the slack below the upper limits should be less what it is."""
-        slack = self.upper + point.t * self.stretch - self.matrix @ point.x
-        return np.where(self.has_upper, slack - point.below, 0.0)
+    def gaps(self, point: Point) -> Gaps:
+        """What every condition misses at the point."""
+        value = self.squares.of_columns(point.x)
+        below = self.upper + point.t * self.stretch - value - point.below
+        above = value - self.lower + point.t * self.stretch - point.above
+        weight = 1.0 - float(self.stretch @ (point.from_lower + point.from_upper))
+        return Gaps(
+            below=np.where(self.has_upper, below, 0.0),
+            above=np.where(self.has_lower, above, 0.0),
+            spare=self.cost - self.squares.of_rows(point.from_lower - point.from_upper) - point.spare,
+            weight=weight if self.with_stretch else 0.0,
+        )
 
-    def above(self, point: Point) -> Real:
-        """The same above the lower limits."""
-        slack = self.matrix @ point.x - self.lower + point.t * self.stretch
-        return np.where(self.has_lower, slack - point.above, 0.0)
 
-    def spare(self, point: Point) -> Real:
-        """What the duals of x should be less what they are."""
-        return self.cost - (point.from_lower - point.from_upper) @ self.matrix - point.spare
+@dataclass(frozen=True, eq=False, kw_only=True)
+class Gaps:
+    """What slacks below the upper and above the lower limits, and duals of x, should be less what they are;
+    one less the duals over the stretch."""
 
-    def weight(self, point: Point) -> float:
-        """One less the duals over the stretch."""
-        if not self.with_stretch:
-            return 0.0
-        return 1.0 - float(self.stretch @ (point.from_lower + point.from_upper))
+    below: Real
+    above: Real
+    spare: Real
+    weight: float
 
     def missing(self, point: Point) -> float:
-        """What the conditions miss, in units of the value."""
-        primal = np.abs(self.below(point)) @ point.from_upper + np.abs(self.above(point)) @ point.from_lower
-        dual = np.abs(self.spare(point)) @ point.x + abs(self.weight(point)) * abs(point.t)
+        """All of it in units of the value."""
+        primal = np.abs(self.below) @ point.from_upper + np.abs(self.above) @ point.from_lower
+        dual = np.abs(self.spare) @ point.x + abs(self.weight) * abs(point.t)
         return float(primal + dual)
 
 
@@ -94,12 +97,12 @@ def start(problem: Problem) -> Point:
     """Columns from least squares, moved off zero; slacks and duals of one size."""
     middle = np.where(problem.has_lower, problem.lower, problem.upper)
     middle = np.where(problem.has_lower & problem.has_upper, (problem.lower + problem.upper) / 2, middle)
-    rows, columns = problem.matrix.shape
+    rows, columns = problem.squares.shape
     factor = problem.squares.factored(np.ones(rows), np.ones(columns))
     x = factor.solve(middle, np.zeros(columns))[2]
     size = max(float(np.mean(np.abs(x))), 1e-6 * float(np.max(np.abs(middle))), 1e-6)
     x = np.maximum(np.abs(x), size)
-    value = problem.matrix @ x
+    value = problem.squares.of_columns(x)
     off = np.maximum(value - problem.upper, 0) * problem.has_upper
     off = np.maximum(off, np.maximum(problem.lower - value, 0) * problem.has_lower)
     t = 1.5 * float(np.max(off)) + 1.0 if problem.with_stretch else 0.0
@@ -129,9 +132,9 @@ class _Step:
     from_lower: Real
 
 
-def improved(problem: Problem, point: Point) -> Point:
+def improved(problem: Problem, point: Point, gaps: Gaps) -> Point:
     """The next point: a predictor step tells how far to aim, a corrector step goes there."""
-    newton = _Newton(problem, point)
+    newton = _Newton(problem, point, gaps)
     pairs = (point.x * point.spare, point.below * point.from_upper, point.above * point.from_lower)
     now = _level(problem, point)
     aim = newton.step(-pairs[0], -pairs[1], -pairs[2])
@@ -153,15 +156,14 @@ def _level(problem: Problem, point: Point) -> float:
 class _Newton:
     """The linear system at a point, factored once for predictor and corrector."""
 
-    def __init__(self, problem: Problem, point: Point) -> None:
-        self.problem, self.point = problem, point
+    def __init__(self, problem: Problem, point: Point, gaps: Gaps) -> None:
+        self.problem, self.point, self.gaps = problem, point, gaps
         self.of_upper = point.from_upper / point.below
         self.of_lower = point.from_lower / point.above
         both = self.of_upper + self.of_lower
         self.both = both
         self.ratio = point.x / point.spare
         self.factor = problem.squares.factored(both, self.ratio)
-        self.gaps = (problem.below(point), problem.above(point), problem.spare(point), problem.weight(point))
         if problem.with_stretch:
             pull = problem.stretch * (self.of_upper - self.of_lower)
             self.lean = pull / both
@@ -172,7 +174,7 @@ class _Newton:
     def step(self, of_x: Real, of_below: Real, of_above: Real) -> _Step:
         """Towards products x spare + of_x, below from_upper + of_below, above from_lower + of_above."""
         problem, point = self.problem, self.point
-        below, above, spare, weight = self.gaps
+        below, above, spare, weight = self.gaps.below, self.gaps.above, self.gaps.spare, self.gaps.weight
         upper = (of_below - point.from_upper * below) / point.below
         lower = (of_above - point.from_lower * above) / point.above
         change, moved, dx = self.factor.solve(lower - upper, spare - of_x / point.x)
@@ -185,7 +187,7 @@ class _Newton:
         d_above = np.where(problem.has_lower, above + moved + dt * problem.stretch, 0.0)
         return _Step(
             x=dx,
-            spare=spare - change @ problem.matrix,
+            spare=spare - problem.squares.of_rows(change),
             t=dt,
             below=d_below,
             from_upper=(of_below - point.from_upper * d_below) / point.below,

@@ -3,9 +3,11 @@
     minimise  sum (w - near)^2 / D + sum R (A' w - far)^2
 
 An interior point solves one such problem a step. Rows of A with a few neighbouring entries only are
-eliminated first (`band_elimination`). D and R grow apart without limit on the way: as long as conjugate
-gradients converge on top of it the normal equations serve (one Cholesky), then an orthogonal factorisation,
-which does not square their ratio (A. Bjorck, Numerical Methods for Least Squares Problems, SIAM 1996).
+eliminated first (`band_elimination`). D and R grow apart without limit on the way, and normal equations
+square their ratio. A Cholesky factor of them serves all the same, as long as conjugate gradients converge on
+top of it: it may even be that of slightly stiffer equations, which costs them a step for each direction that
+rounding has hidden. Where they do not converge, an orthogonal factorisation is taken, at five times the
+price (A. Bjorck, Numerical Methods for Least Squares Problems, SIAM 1996).
 """
 
 from __future__ import annotations
@@ -25,28 +27,47 @@ WORTHWHILE = 16
 """Narrow rows below which they are treated like the others."""
 ITERATIONS = 40
 """Most conjugate gradients on top of a Cholesky factor; an orthogonal one costs as much as some 50."""
-CONVERGED = 1e-9
-"""Fall of the gradient at which they stop."""
+CONVERGED, ENOUGH = 1e-9, 1e-8
+"""Fall of the gradient at which they stop, and with which they serve after that many."""
+STILL, CALM = 1e-8, 1e-6
+"""Last change of w over the largest w, likewise: on a stiffer factor the gradient of hidden directions is
+small from the start."""
+STIFFER = (0.0, 1e-14, 1e-12, 1e-10, 1e-8)
+"""Shares by which the diagonal is enlarged in turn, until there is a Cholesky factor."""
 
 
 class WeightedSquares:
-    """matrix: A, (rows, columns), entries about 1 at most."""
+    """matrix: A, (rows, columns), entries about 1 at most; it is not kept."""
 
     def __init__(self, matrix: Real) -> None:
-        self.matrix = matrix
         narrow = _narrow_rows(matrix)
         self.narrow, self.wide = np.flatnonzero(narrow), np.flatnonzero(~narrow)
+        self.shape = matrix.shape
         shared = np.any(matrix[narrow] != 0, axis=0)
         self.shared, self.private = np.flatnonzero(shared), np.flatnonzero(~shared)
-        self.dense = np.ascontiguousarray(matrix[self.wide])
+        self.dense = np.ascontiguousarray(matrix[self.wide].T)
         self.layout = None
         if len(self.narrow):
             self.layout = BandLayout(matrix[np.ix_(self.narrow, self.shared)])
-        self.stiff = False
 
     def factored(self, stiffness: Real, ratio: Real) -> Factored:
         """D: (rows,), R: (columns,), both above 0."""
         return Factored(self, stiffness, ratio)
+
+    def of_columns(self, x: Real) -> Real:
+        """A x, (rows,)."""
+        result = np.empty(self.shape[0])
+        result[self.wide] = x @ self.dense
+        if self.layout is not None:
+            result[self.narrow] = self.layout.of_equations(x[self.shared])
+        return result
+
+    def of_rows(self, w: Real) -> Real:
+        """A' w, (columns,)."""
+        result = self.dense @ w[self.wide]
+        if self.layout is not None:
+            result[self.shared] += self.layout.of_unknowns(w[self.narrow])
+        return np.asarray(result)
 
 
 def _narrow_rows(matrix: Real) -> NDArray[np.bool_]:
@@ -66,20 +87,14 @@ class Factored:
         self.squares = squares
         self.near, self.far = 1 / np.sqrt(stiffness), np.sqrt(ratio)
         self.of_wide = self.near[squares.wide]
-        rows = [(squares.dense[:, squares.private] * self.far[squares.private]).T]
+        self.rows = squares.dense * self.far[:, None]
         self.band = None
         if squares.layout is not None:
             self.band = BandElimination(
-                squares.layout,
-                self.near[squares.narrow],
-                self.far[squares.shared],
-                squares.dense[:, squares.shared],
+                squares.layout, self.near[squares.narrow], self.far[squares.shared], self.rows[squares.shared]
             )
-            rows.append(self.band.left)
-        self.rows = np.concatenate(rows)
-        self.factor: _Normal | _Orthogonal | None = None
-        if not squares.stiff:
-            self.factor = _Normal(self.of_wide, self.rows)
+            self.rows = np.concatenate((self.rows[squares.private], self.band.left))
+        self.factor: _Normal | _Orthogonal = _Normal(self.of_wide, self.rows)
 
     def solve(self, near: Real, far: Real) -> tuple[Real, Real, Real]:
         """w (rows,), (near - w)/D (rows,) and R (A' w - far) (columns,), for near (rows,), far (columns,)."""
@@ -101,18 +116,15 @@ class Factored:
 
     def _solved(self, near: Real, right: Real) -> tuple[Real, Real, Real]:
         """z, and what of_wide z = near and rows z = right leave."""
-        if isinstance(self.factor, _Normal):
-            found = self.factor.solve(near, right)
-            if found is not None:
-                return found
-        if not isinstance(self.factor, _Orthogonal):
-            self.squares.stiff = True
+        found = self.factor.solve(near, right)
+        if found is None:
             self.factor = _Orthogonal(self.of_wide, self.rows)
-        return self.factor.solve(near, right)
+            found = self.factor.solve(near, right)
+        return found
 
 
 class _Normal:
-    """near^2 + rows' rows = L L', to rounding: good enough to make conjugate gradients short (those of A.
+    """near^2 + rows' rows = L L', nearly: good enough to make conjugate gradients short (those of A.
     Bjorck, section 7.4, which never form the product)."""
 
     def __init__(self, near: Real, rows: Real) -> None:
@@ -121,27 +133,35 @@ class _Normal:
 
         self.near, self.rows = near, rows
         full = dsyrk(1.0, rows.T, lower=1)
-        full[np.diag_indices(len(near))] += near**2
-        self.lower, self.failed = dpotrf(full, lower=1, overwrite_a=1)
+        diagonal = np.diag_indices(len(near))
+        size = full[diagonal] + near**2
+        self.lower, self.failed, self.stiffer = full, True, False
+        for more in STIFFER:
+            full[diagonal] = size * (1 + more)
+            self.lower, failed = dpotrf(full, lower=1)
+            self.failed, self.stiffer = failed != 0, more > 0
+            if not self.failed:
+                break
 
     def solve(self, near: Real, right: Real) -> tuple[Real, Real, Real] | None:
         """None where there is no Cholesky factor, or the gradients do not converge on it."""
         if self.failed:
             return None
         z, direction = np.zeros_like(near), np.zeros_like(near)
-        size = first = np.inf
+        size, first, change = np.inf, np.inf, 0.0
         for _ in range(ITERATIONS):
             slope = self._half(self.near * near + right @ self.rows, 0)
             last, size = size, float(slope @ slope)
             first = min(first, size) if np.isinf(first) else first
-            if size <= CONVERGED**2 * first:
+            if size <= CONVERGED**2 * first and change <= STILL:
                 return z, near, right
             direction = self._half(slope, 1) + direction * (size / last)
             of_near, of_rows = self.near * direction, self.rows @ direction
             step = size / float(of_near @ of_near + of_rows @ of_rows)
             z = z + step * direction
             near, right = near - step * of_near, right - step * of_rows
-        return None
+            change = step * float(np.max(np.abs(direction)) / np.max(np.abs(z))) if self.stiffer else 0.0
+        return (z, near, right) if size <= ENOUGH**2 * first and change <= CALM else None
 
     def _half(self, right: Real, transposed: int) -> Real:
         from scipy.linalg.lapack import dtrtrs

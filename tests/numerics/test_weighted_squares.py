@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 import pytest
 
+from pulseprop.numerics import weighted_squares
 from pulseprop.numerics.weighted_squares import WeightedSquares
 
 
@@ -18,16 +19,19 @@ def problem(wide, narrow, columns, seed):
     return matrix, *weights, source.normal(size=wide + narrow), source.normal(size=columns)
 
 
-@pytest.mark.parametrize("stiff", [False, True])
+@pytest.mark.parametrize("orthogonal", [False, True])
 @pytest.mark.parametrize(
     ("wide", "narrow", "columns"), [(20, 0, 30), (20, 40, 57), (1, 33, 40), (5, 100, 102)]
 )
-def test_solution_and_both_residuals(wide, narrow, columns, stiff):
+def test_solution_and_both_residuals(monkeypatch, wide, narrow, columns, orthogonal):
+    if orthogonal:
+        monkeypatch.setattr(weighted_squares, "STIFFER", ())  # no Cholesky factor is tried
     matrix, stiffness, ratio, near, far = problem(wide, narrow, columns, seed=wide + narrow)
     squares = WeightedSquares(matrix)
     assert len(squares.narrow) >= narrow
-    squares.stiff = stiff
-    found = squares.factored(stiffness, ratio).solve(near, far)
+    factored = squares.factored(stiffness, ratio)
+    found = factored.solve(near, far)
+    assert isinstance(factored.factor, weighted_squares._Orthogonal) is orthogonal
     whole = np.diag(1 / stiffness) + (matrix * ratio) @ matrix.T
     w = np.linalg.solve(whole, near / stiffness + matrix @ (ratio * far))
     assert found[0] == pytest.approx(w, rel=1e-7, abs=1e-9)
