@@ -102,7 +102,7 @@ def _values(
         if share >= NAMED:
             at = int(np.argmin(np.abs(place - entry.wavelength_nm)))
             panel.annotate(
-                f"row {entry.row}" if entry.row else "anchor",
+                entry.place or f"row {entry.row}",
                 (float(place[at]), float(values[at])),
                 xytext=(10, 8 if entry.weight > 0 else -24),
                 textcoords="offset points",

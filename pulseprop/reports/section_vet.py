@@ -4,8 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
-import numpy as np
-
 from pulseprop.propagation.numerals import significant
 from pulseprop.reports.blocks import Column, Paragraph, Section, Table
 from pulseprop.reports.vet_numbers import factor_text, file_name, interval_text, nm_text, plain_text
@@ -17,15 +15,15 @@ MOST_ROWS = 12
 """Rows of the proof that a report lists; JSON has all."""
 
 WEIGHT_PLACES = 7
-"""Decimals of a weight: what they leave out changes no factor above 1 by much."""
+"""Decimals of a weight: what they leave out changes no factor above 1 by much. Weights of values in another
+unit may be so small that they need as many digits with an exponent."""
+
+SMALL_WEIGHT = 1e-3
 
 GRAVEST_FIRST = {"error": 0, "warning": 1, "note": 2}
 
 QUANTITY, VALUE = 2, 3
 """Columns of the table of rows in conflict."""
-
-ANCHOR = 0
-"""Row of an anchor, which stands in no file."""
 
 
 def vet_sections(vetted: Vetted) -> tuple[Section, ...]:
@@ -94,7 +92,7 @@ def _conflict(vetted: Vetted) -> Section | None:
     if not vetted.conflict:
         return None
     columns = (
-        Column("row", words=True),
+        Column("row" if all(entry.place in ("", "anchor") for entry in vetted.conflict) else "", words=True),
         Column("wavelength", "nm"),
         Column("quantity", words=True),
         Column("value"),
@@ -103,13 +101,13 @@ def _conflict(vetted: Vetted) -> Section | None:
     )
     shown = _heaviest(vetted.conflict)
     text = (
-        "For every passive causal material the sum of weight times value (n - 1 for n) over these rows is at "
-        "most 0. Here it is above: divided by the sum of weight (without its sign) times uncertainty it is "
-        "the uncertainty factor."
+        "For every passive causal material the sum of weight times value (less 1 for n and a group index) "
+        "over these rows is at most 0. Here it is above: divided by the sum of weight (without its sign) "
+        "times uncertainty it is the uncertainty factor."
     )
     if len(shown) < len(vetted.conflict):
         text += f" {len(shown)} rows of {len(vetted.conflict)} are shown, the heaviest; JSON has all."
-    rows = _as_printed([_conflict_row(entry, vetted) for entry in shown])
+    rows = _as_printed([_conflict_row(entry) for entry in shown])
     blocks: list[Paragraph | Table] = [Paragraph(text), Table(columns, rows)]
     if vetted.factor_without_conflict_rows is not None:
         without = factor_text(vetted.factor_without_conflict_rows)
@@ -136,37 +134,31 @@ def _with_decimals(text: str, decimals: int) -> str:
 
 
 def _heaviest(conflict: Iterable[ConflictRow]) -> list[ConflictRow]:
-    """The heaviest rows whose weight can be printed, in the order of the file."""
-    visible = [entry for entry in conflict if round(abs(entry.weight), WEIGHT_PLACES) > 0]
-    heaviest = sorted(visible, key=lambda entry: -abs(entry.weight))[:MOST_ROWS]
+    """The rows that carry most of the proof and whose weight can be printed, in the order of the file."""
+    visible = [entry for entry in conflict if float(_weight_text(entry)) != 0]
+    heaviest = sorted(visible, key=lambda entry: -_share(entry))[:MOST_ROWS]
     return sorted(heaviest, key=lambda entry: (entry.row, entry.quantity))
 
 
-def _conflict_row(entry: ConflictRow, vetted: Vetted) -> tuple[str, ...]:
-    value, error = _printed(entry, vetted)
-    anchor = entry.row == ANCHOR
+def _share(entry: ConflictRow) -> float:
+    """Of the proof, not normalised: weights of values in different units are no measure of it."""
+    return abs(entry.weight) * (1.0 if entry.uncertainty is None else entry.uncertainty)
+
+
+def _conflict_row(entry: ConflictRow) -> tuple[str, ...]:
     return (
-        "anchor" if anchor else str(entry.row),
+        entry.place or str(entry.row),
         nm_text(entry.wavelength_nm),
         entry.quantity,
-        value,
-        error,
-        f"{entry.weight:+.{WEIGHT_PLACES}f}",
+        "" if entry.value is None else plain_text(entry.value),
+        "" if entry.uncertainty is None else plain_text(entry.uncertainty, 4),
+        _weight_text(entry),
     )
 
 
-def _printed(entry: ConflictRow, vetted: Vetted) -> tuple[str, str]:
-    """Value and uncertainty of a row; empty where the answer does not hold them, or only the mean of two."""
-    curves, name = vetted.curves, entry.quantity
-    here = [other for other in vetted.conflict if (other.quantity, other.wavelength_nm) == _place(entry)]
-    if f"{name}_error" not in curves or len(here) > 1:
-        return "", ""
-    row = int(np.argmin(np.abs(curves[f"{name}_nm"] - entry.wavelength_nm)))
-    return plain_text(float(curves[name][row])), plain_text(float(curves[f"{name}_error"][row]), 4)
-
-
-def _place(entry: ConflictRow) -> tuple[str, float]:
-    return entry.quantity, entry.wavelength_nm
+def _weight_text(entry: ConflictRow) -> str:
+    small = entry.quantity not in ("n", "k") and abs(entry.weight) < SMALL_WEIGHT
+    return f"{entry.weight:+.{WEIGHT_PLACES}{'e' if small else 'f'}}"
 
 
 def _findings(vetted: Vetted) -> Section | None:

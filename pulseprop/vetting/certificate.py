@@ -9,6 +9,7 @@ from pulseprop.constants import TWO_PI_C
 from pulseprop.errors import NumericalLimit
 from pulseprop.material.catalogue import record
 from pulseprop.vetting.certificate_catalogue import against_catalogue
+from pulseprop.vetting.certificate_conflict import conflict_of
 from pulseprop.vetting.certificate_follow import ROOM, contradictions, implied_by, involved_in
 from pulseprop.vetting.certificate_functionals import Order, Term
 from pulseprop.vetting.certificate_medium import Claim, claim_of
@@ -32,6 +33,10 @@ is known."""
 FEWEST = 2
 """Numbers below which there is nothing to compare."""
 
+UNCERTIFIED = (
+    "The factor is the optimum of a linear programme over close places where the material may absorb; how "
+    "much all places between would change it is not certified.",
+)
 BLIND = (
     "a common factor on chi, a constant of 0 or more added to n, and an index against air taken for one "
     "against vacuum leave every test of causality as it is",
@@ -78,12 +83,14 @@ def judge_certificate(certificate: Certificate, request: Request, *, date: str, 
         factor=factor,
         stated=stated,
         implied=_implied(values, factor),
+        conflict=conflict_of(values, proof) if proof is not None else (),
         bounds=tuple(at(omega) for omega in request.at),
         requirements=tuple(_required(text, at) for text in request.require),
         inferred=(*guessed, *_from_digits(values)),
         assumptions=(
             f"Between {_nm(band[1])} and {_nm(band[0])} nm the material absorbs nothing.",
             "Zeros that end a whole number are taken as holding the place only.",
+            *(UNCERTIFIED if proof is not None else ()),
         ),
         blind_spots=BLIND,
     )

@@ -154,15 +154,20 @@ def _required(text: str, at: Callable[[float], Bounds], settled: Settled | None)
 
 
 def _conflict(settled: Settled | None) -> tuple[ConflictRow, ...]:
-    """The places of the proof, counted along the samples."""
+    """The places of the proof: row counts the samples of the formula along the frequency, from 1."""
     if settled is None or settled.standing.factor <= 1:
         return ()
+    data = settled.data
+    wavelengths = 1e9 * TWO_PI_C / data.omega
     return tuple(
         ConflictRow(
             row=part.row + 1,
-            wavelength_nm=float(1e9 * TWO_PI_C / settled.data.omega[part.row]),
+            wavelength_nm=float(wavelengths[part.row]),
             quantity=part.quantity,
             weight=part.weight,
+            place=f"sample at {wavelengths[part.row]:.5g} nm",
+            value=float(data.index[part.row]),
+            uncertainty=float(data.index_error[part.row]),
         )
         for part in settled.standing.conflict
     )

@@ -3,15 +3,16 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import asdict
+from dataclasses import asdict, replace
 from typing import Any
 
 import numpy as np
 
+from pulseprop.causality.passive_data import PassiveData
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.absorption_rows import absorption_column
 from pulseprop.vetting.case import Case, case_of
-from pulseprop.vetting.causal import Causality
+from pulseprop.vetting.causal import Causality, Part
 from pulseprop.vetting.checks import found_in
 from pulseprop.vetting.faces import inferred_medium
 from pulseprop.vetting.few_rows import few_rows
@@ -100,7 +101,7 @@ def _conflict(case: Case) -> tuple[ConflictRow, ...]:
         place = case.wavelength_nm(max(low, high))
         pair = ((low, -0.5), (high, 0.5))
         return tuple(
-            ConflictRow(row=0, wavelength_nm=place, quantity="n", weight=weight)
+            ConflictRow(row=0, wavelength_nm=place, quantity="n", weight=weight, place="anchor")
             if row < 0
             else _row(case, row, repeat.quantity, weight)
             for row, weight in pair
@@ -110,18 +111,27 @@ def _conflict(case: Case) -> tuple[ConflictRow, ...]:
     entries = []
     for part in standing.conflict:
         row = int((numbers.index_rows if part.quantity == "n" else numbers.k_rows)[part.row])
-        entries.append(
-            _anchor(case, part.row, part.weight) if row < 0 else _row(case, row, part.quantity, part.weight)
-        )
+        entry = _anchor(case, part) if row < 0 else _row(case, row, part.quantity, part.weight)
+        value, uncertainty = _in_proof(numbers.data, part)
+        entries.append(replace(entry, value=value, uncertainty=uncertainty))
     return tuple(sorted(entries, key=lambda entry: entry.row))
 
 
-def _anchor(case: Case, row: int, weight: float) -> ConflictRow:
+def _in_proof(data: PassiveData | None, part: Part) -> tuple[float | None, float | None]:
+    """Value and uncertainty of a row."""
+    if data is None:
+        return None, None
+    columns = (data.index, data.index_error) if part.quantity == "n" else (data.k, data.k_error)
+    value, error = (None if column is None else float(column[part.row]) for column in columns)
+    return value, error
+
+
+def _anchor(case: Case, part: Part) -> ConflictRow:
     """Row 0, where no line of the file is."""
     data = case.numbers.data
     assert data is not None
-    place = float(TWO_PI_C / data.omega[row] * 1e9)
-    return ConflictRow(row=0, wavelength_nm=place, quantity="n", weight=weight)
+    nm = float(TWO_PI_C / data.omega[part.row] * 1e9)
+    return ConflictRow(row=0, wavelength_nm=nm, quantity="n", weight=part.weight, place="anchor")
 
 
 def _row(case: Case, row: int, quantity: Any, weight: float) -> ConflictRow:

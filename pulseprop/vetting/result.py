@@ -40,12 +40,20 @@ class Finding:
 
 @dataclass(frozen=True, kw_only=True)
 class ConflictRow:
-    """One row of the proof: weights add up to 1 in size; the inequality is sum weight (value) <= 0."""
+    """One row of the proof: weights add up to 1 in size; the inequality is sum weight (value) <= 0.
+
+    quantity: "n", "k", or what a certificate prints. place: in words, where the row is no line of a table.
+    value, uncertainty: as they stand in the proof, in the printed unit (of indices 1 is taken off in the
+    sum); None for one of two rows at one wavelength.
+    """
 
     row: int
     wavelength_nm: float
-    quantity: Literal["n", "k"]
+    quantity: str
     weight: float
+    place: str = ""
+    value: float | None = None
+    uncertainty: float | None = None
 
 
 @dataclass(frozen=True, kw_only=True)

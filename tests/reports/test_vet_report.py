@@ -45,9 +45,13 @@ def made(**changes) -> Vetted:
         implied_uncertainty=ImpliedUncertainty(n=1.2345678e-3, k=None, grade="That is much."),
         factor_without_conflict_rows=0.4567,
         conflict=(
-            ConflictRow(row=2, wavelength_nm=500.0, quantity="n", weight=-0.25),
-            ConflictRow(row=3, wavelength_nm=600.0, quantity="n", weight=0.5),
-            ConflictRow(row=4, wavelength_nm=700.0, quantity="n", weight=-0.25),
+            ConflictRow(
+                row=2, wavelength_nm=500.0, quantity="n", weight=-0.25, value=1.52, uncertainty=1e-4
+            ),
+            ConflictRow(row=3, wavelength_nm=600.0, quantity="n", weight=0.5, value=1.519, uncertainty=1e-4),
+            ConflictRow(
+                row=4, wavelength_nm=700.0, quantity="n", weight=-0.25, value=1.513, uncertainty=1e-4
+            ),
         ),
         bounds=(
             Bounds(
@@ -130,6 +134,21 @@ def test_the_printed_proof_can_be_added_up():
     total = sum(float(row[5]) * (float(row[3]) - 1) for row in rows)
     size = sum(abs(float(row[5])) * float(row[4]) for row in rows)
     assert total / size == pytest.approx(12.5)
+
+
+def test_places_that_are_no_rows_of_a_table_are_named():
+    conflict = (
+        ConflictRow(
+            row=9, wavelength_nm=587.6, quantity="n", weight=1.0, place="n_d", value=1.5, uncertainty=1e-5
+        ),
+        ConflictRow(
+            row=13, wavelength_nm=800.0, quantity="gvd, fs^2/mm", weight=-6.5432109e-6, place="gvd at 800 nm",
+            value=22.7, uncertainty=0.05,
+        ),
+    )  # fmt: skip
+    text = vet_text([made(conflict=conflict)])
+    assert re.search(r"n_d +587\.6 +n +1\.5 +1e-5 ", text)
+    assert re.search(r"gvd at 800 nm +800 +gvd, fs\^2/mm +22\.7 +0\.05 +-6\.5432109e-06", text)
 
 
 def test_requirements_are_the_first_answer():

@@ -326,6 +326,32 @@ def test_explanations_are_ordered_by_how_exactly_they_hit_and_nothing_is_said_th
     assert "25 times" not in vetted.headline + vetted.sentence
 
 
+def test_the_conflict_of_a_certificate_can_be_added_up_in_printed_units():
+    gvd = ("gvd", "25.1 fs^2/mm", "800 nm", "0.1 fs^2/mm")
+    vetted = judged("melt 77", *CROWN, gvd, transparent=BAND)
+    conflict = vetted.conflict
+    assert sum(abs(entry.weight) for entry in conflict) == pytest.approx(1)
+    less = [1.0 if entry.quantity in ("n", "group index") else 0.0 for entry in conflict]
+    total = sum(e.weight * (e.value - one) for e, one in zip(conflict, less, strict=True))
+    size = sum(abs(e.weight) * e.uncertainty for e in conflict)
+    assert total / size == pytest.approx(vetted.uncertainty_factor, rel=1e-6)
+    by_place = {entry.place: entry for entry in conflict}
+    assert by_place["gvd at 800 nm"].value == pytest.approx(25.1)
+    assert by_place["gvd at 800 nm"].quantity == "gvd, fs^2/mm"
+    # the sum is below 0 for matter that exists: a published crown, V_d entering as its difference
+    medium = catalogue_medium("N-BK7")
+    d, f, c = (medium.orders(omega(nm)).index for nm in (587.5618, 486.1327, 656.2725))
+    known = {
+        "n_d": d - 1,
+        "V_d": d - 1 - 64.17 * (f - c),
+        "gvd at 800 nm": medium.orders(omega(800)).gvd / 1e-27,
+    }
+    for nm in (800, 1030):
+        known[f"index at {nm} nm"] = medium.orders(omega(nm)).index - 1
+    assert sum(entry.weight * known[entry.place] for entry in conflict) < 0.01 * total
+    assert judged("melt 77", *CROWN, transparent=BAND).conflict == ()
+
+
 def test_an_abbe_number_that_does_not_follow_from_the_lines():
     lines = (("n_d", "1.51680", None, None), ("n_F", "1.52238", None, None), ("n_C", "1.51432", None, None))
     assert judged("melt 77", *lines, ("V_d", "64.1", None, None)).uncertainty_factor <= 1

@@ -23,6 +23,7 @@ from pulseprop.vetting.certificate_values import printed_value
 from pulseprop.vetting.formula_sheet import FormulaSheet, PrintedTerm
 from pulseprop.vetting.formula_sheet_judge import judge_formula
 from pulseprop.vetting.formula_sheet_samples import places, settled_factor
+from pulseprop.vetting.passive import PassiveCausality
 from pulseprop.vetting.request import Request
 from pulseprop.vetting.result import Bounds
 
@@ -274,3 +275,15 @@ def test_requirements_on_a_formula():
     vetted = judged(sheet(SILICA, (0.21, 3.71), squared=False), request)
     assert [answer.verdict for answer in vetted.requirements] == ["conforming", "conforming", "not decided"]
     assert vetted.bounds[0].gvd_fs2_per_mm[0] < 36.1619983 < vetted.bounds[0].gvd_fs2_per_mm[1]
+
+
+def test_the_rows_of_the_proof_of_a_formula_are_its_samples():
+    vetted = judge_formula(
+        _cauchy(5e-5, stated=True), Request(), date="2026-01-01", version="0", causality=PassiveCausality()
+    )
+    assert vetted.conflict
+    for entry in vetted.conflict:
+        assert entry.place == f"sample at {entry.wavelength_nm:.5g} nm"
+    sizes = [abs(entry.weight) * entry.uncertainty for entry in vetted.conflict]
+    total = sum(entry.weight * (entry.value - 1) for entry in vetted.conflict)
+    assert total / sum(sizes) == pytest.approx(vetted.uncertainty_factor, rel=2e-3)
