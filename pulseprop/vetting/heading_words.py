@@ -22,6 +22,7 @@ __all__ = [
     "is_attenuation",
     "is_extinction",
     "is_generic",
+    "is_molar",
     "meaning_of",
     "plain_words",
 ]
@@ -34,6 +35,11 @@ QUANTITIES: tuple[Quantity, ...] = get_args(Quantity)
 EXTINCTION = re.compile(
     r"\b(extin[ck]t|ext(inct)? coef|extincao|extincion|estinzione|ekstin[ck]|экстинкц|消光)"
 )
+MOLAR = re.compile(
+    r"\b(molar(e[rsn]?)?|molaire|molair) .*(abs|att|koeff)|\bl mol( 1)? cm\b|\b[cm]?m ?2 mol\b"
+    r"|\bm 1 cm 1\b|\b1 m cm\b|\babsorption cross sections?\b|\babsorptionsquerschnitt"
+)
+"""Absorption per amount of substance, by its name or its unit, in plain words."""
 GENERIC = re.compile(r"|[xyz][0-9]?|(col(umn)?|spalte|data|value|values|wert|y axis|x axis|series) ?[0-9]*")
 ATTENUATION = re.compile(r".*\b(absorption|attenuation|absorbtion|dampfung|assorbimento|absorcion)\b.*")
 
@@ -143,6 +149,11 @@ def meaning_of(words: str) -> Meaning | None:
 def is_extinction(words: str) -> bool:
     """Whether the ambiguous word extinction, in any language, stands here."""
     return EXTINCTION.search(plain_words(words)) is not None
+
+
+def is_molar(words: str) -> bool:
+    """Whether absorption per amount of substance is named: it needs the concentration."""
+    return MOLAR.search(plain_words(words)) is not None
 
 
 def is_attenuation(words: str) -> bool:

@@ -11,7 +11,15 @@ from pulseprop.files.blocks import Block, Line
 from pulseprop.files.text_blocks import cells_of
 from pulseprop.units import quantity
 from pulseprop.vetting.heading_units import AXIS_OF_DIMENSION, dimension, is_dispersion_parameter, unit_named
-from pulseprop.vetting.heading_words import AXES, Axis, Meaning, is_attenuation, is_extinction, meaning_of
+from pulseprop.vetting.heading_words import (
+    AXES,
+    Axis,
+    Meaning,
+    is_attenuation,
+    is_extinction,
+    is_molar,
+    meaning_of,
+)
 
 __all__ = ["Heading", "heading_of", "headings_of", "is_heading"]
 
@@ -34,7 +42,8 @@ class Heading:
     """One heading as understood.
 
     text: as printed. meaning: None where the words are not known. unit: in our spelling, None where none is
-    said. thickness: m, of the sample, None where none is said. scaled: a power of ten stands in it.
+    said. thickness: m, of the sample, None where none is said. scaled: a power of ten stands in it. molar:
+    it names absorption per amount of substance.
     """
 
     text: str
@@ -43,6 +52,7 @@ class Heading:
     thickness: float | None = None
     extinction: bool = False
     scaled: bool = False
+    molar: bool = False
 
     @property
     def axis(self) -> Axis | None:
@@ -72,6 +82,7 @@ def heading_of(text: str) -> Heading:
         thickness=_thickness(text),
         extinction=is_extinction(text),
         scaled=_is_scaled(text),
+        molar=is_molar(text),
     )
 
 

@@ -10,10 +10,14 @@ from pulseprop.units import quantity
 from pulseprop.vetting.heading_units import known_unit
 from pulseprop.vetting.heading_words import AXES, QUANTITIES, Meaning, is_extinction, meaning_of
 
-__all__ = ["Named", "ReadOptions", "named_columns"]
+__all__ = ["MOLAR_REMEDY", "Named", "ReadOptions", "named_columns"]
 
 Surrounding = Literal["air", "vacuum"]
 SKIPPED = ("-", "skip", "")
+MOLAR_REMEDY = (
+    "Multiply a molar (decadic) column by the concentration and by 2.302585, a cross section by the number "
+    "density, and call it alpha with its unit; or send the absorbance with --thickness"
+)
 
 
 @dataclass(frozen=True, kw_only=True)
@@ -85,6 +89,14 @@ def _meaning(name: str, part: str) -> Meaning:
     if is_extinction(name):
         raise _refused(
             "the word extinction has several meanings", part, "k, absorbance, or alpha, whichever is meant"
+        )
+    if name.lower().startswith("molar"):
+        raise InputError(
+            "absorption per amount of substance gives an absorption only with the concentration",
+            value=part,
+            allowed="alpha (Napierian, per length), absorbance, k",
+            remedy=MOLAR_REMEDY,
+            place="columns",
         )
     meaning = meaning_of(name)
     if meaning is None:

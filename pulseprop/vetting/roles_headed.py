@@ -7,6 +7,7 @@ from collections.abc import Mapping
 from pulseprop.vetting.heading_units import dimension
 from pulseprop.vetting.headings import Heading, headings_of
 from pulseprop.vetting.number_columns import NumberColumns, Role
+from pulseprop.vetting.read_options import MOLAR_REMEDY
 
 __all__ = ["headed_roles", "headings_by_column"]
 
@@ -46,6 +47,13 @@ def _check_heading(columns: NumberColumns, index: int, head: Heading) -> None:
             value=head.text,
             allowed="k, absorbance, alpha",
             remedy=f"Say which: --columns {columns.example([index], 'k')}",
+        )
+    if head.molar and (head.meaning in (None, "alpha")):
+        raise columns.refused(
+            "absorption per amount of substance gives an absorption only with the concentration",
+            value=head.text,
+            allowed="alpha (Napierian, per length), absorbance, k",
+            remedy=MOLAR_REMEDY,
         )
     if head.scaled:
         raise columns.refused(

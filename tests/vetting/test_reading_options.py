@@ -44,6 +44,11 @@ def test_names_that_cannot_be_are_refused(text: str, parts: list[str]) -> None:
         assert part in str(caught.value)
 
 
+def test_molar_columns_ask_for_the_concentration() -> None:
+    with pytest.raises(InputError, match=r"with the concentration .*2\.302585"):
+        named_columns("wavelength,molar")
+
+
 @pytest.mark.parametrize(
     ("text", "quantity", "absolute", "relative"),
     [

@@ -293,6 +293,11 @@ def test_without_headings_k_stands_beside_n(tmp_path: Path) -> None:
         ("wavelength (cm^-1),n\n400,1.47\n500,1.46\n", ["not one of a wavelength", "--columns, --unit"]),
         ("sample,n\n400,1.47\n500,1.46\n", ["no column is known as the spectral axis", "sample, n"]),
         ("nm,Extinktion\n400,0.4\n500,0.3\n", ["extinction has several meanings", "--columns wavelength,k"]),
+        ("nm,molar absorptivity\n400,1200\n500,1300\n", ["with the concentration", "2.302585"]),
+        ("nm;molar absorption coefficient (M^-1 cm^-1)\n400;1200\n500;1300\n", ["with the concentration"]),
+        ("nm;epsilon (L mol^-1 cm^-1)\n400;1200\n500;1300\n", ["with the concentration", "--thickness"]),
+        ("nm;ε [1/(M cm)]\n400;1200\n500;1300\n", ["with the concentration"]),
+        ("nm;absorption cross section (cm^2)\n400;1\n500;2\n", ["number density"]),
         ("nm,k x 1e6\n400,0.4\n500,0.3\n", ["power of ten", "k x 1e6"]),
         ("nm,k (1/cm)\n400,0.4\n500,0.3\n", ["a coefficient per length is alpha", "wavelength,alpha"]),
         ("nm,alpha\n400,0.4\n500,0.3\n", ["the unit of alpha is missing", "wavelength,alpha/cm^-1"]),
@@ -371,7 +376,7 @@ def test_options_go_before_the_file(tmp_path: Path) -> None:
     assert "goes before the heading" in told(one(tmp_path, text, unit="um"), "unit of the wavelength")
 
 
-@pytest.mark.parametrize("name", ["T_err", "remark", "u(k)", "Δλ", "error"])
+@pytest.mark.parametrize("name", ["T_err", "remark", "u(k)", "Δλ", "error", "MgO (mol%)"])
 def test_unknown_columns_are_left_out_and_told(tmp_path: Path, name: str) -> None:
     table = one(tmp_path, f"nm,n,{name}\n400,1.5,1\n500,1.4,2\n")
     assert [column.quantity for column in table.columns] == ["n"]
