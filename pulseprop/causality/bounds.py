@@ -20,6 +20,7 @@ from pulseprop.causality.feasibility import Feasibility
 from pulseprop.causality.passive_data import PassiveData
 from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import NumericalLimit
+from pulseprop.numerics.threads import one_thread
 
 __all__ = ["PassiveBounds", "bounds"]
 
@@ -44,6 +45,7 @@ class PassiveBounds:
     reason: str = ""
 
 
+@one_thread()
 def bounds(
     data: PassiveData, omegas: Real, feasibility: Feasibility | None = None
 ) -> tuple[PassiveBounds, ...]:

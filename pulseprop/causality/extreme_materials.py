@@ -25,6 +25,7 @@ from pulseprop.constants import SPEED_OF_LIGHT, TWO_PI_C
 from pulseprop.errors import NumericalLimit
 from pulseprop.numerics.box_programme import solve_box
 from pulseprop.numerics.spline_basis import basis_values
+from pulseprop.numerics.threads import one_thread
 
 __all__ = ["ExtremeMaterial", "extreme_materials"]
 
@@ -53,6 +54,7 @@ class ExtremeMaterial:
     k: Real
 
 
+@one_thread()
 def extreme_materials(data: PassiveData, omega: float, at: Real) -> tuple[ExtremeMaterial, ...]:
     """Those of lowest and highest GVD at omega, and of TOD where the data limit it; rad/s.
 

@@ -14,6 +14,7 @@ from pulseprop.causality.proof import Proof
 from pulseprop.causality.proof_check import check_conflict
 from pulseprop.causality.unresolved import UnresolvedLine, unresolved_line
 from pulseprop.errors import NumericalLimit
+from pulseprop.numerics.threads import one_thread
 
 __all__ = ["Feasibility", "feasibility"]
 
@@ -38,6 +39,7 @@ class Feasibility:
     material: PassiveMaterial
 
 
+@one_thread()
 def feasibility(data: PassiveData, *, thorough: bool = True) -> Feasibility:
     """The least factor by which all uncertainties of the data must be stretched for a material to exist.
 
