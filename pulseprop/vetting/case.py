@@ -17,11 +17,11 @@ from pulseprop.vetting.numbers import Numbers, numbers_of
 from pulseprop.vetting.request import Request
 from pulseprop.vetting.table import SentTable
 
-__all__ = ["Case", "case_of", "thinned"]
+__all__ = ["Case", "case_of", "part_of"]
 
 ENOUGH = 80
 """Rows that show whether a repair helps; the full table is asked only where they say yes."""
-PROMISING = 1.2
+PROMISING = 2.0
 """Factor of a few rows, or of a quick answer, up to which the whole is looked at closely."""
 
 
@@ -54,7 +54,7 @@ class Case:
     def factor_of(self, table: SentTable) -> float | None:
         """The factor of a repaired table, within a few per cent; None where it cannot be said.
 
-        Of many rows a few are tried first: where these cannot agree, all cannot. Near 1 it is exact.
+        Of many rows a part is tried first: where these cannot agree, all cannot. Near 1 it is exact.
         """
         try:
             numbers = numbers_of(table, self.request)
@@ -62,7 +62,7 @@ class Case:
             return None
         if numbers.data is None:
             return None
-        few = thinned(numbers.data)
+        few = part_of(numbers.data)
         try:
             factor = self.causality.quick_factor(few)
             if few is not numbers.data and factor <= PROMISING:
@@ -93,13 +93,42 @@ def case_of(table: SentTable, request: Request, causality: Causality) -> Case:
     )
 
 
-def thinned(data: PassiveData) -> PassiveData:
-    """Every few rows, the first and last kept, where there are many."""
-    few: dict[str, Any] = {}
-    for names in (("omega", "index", "index_error"), ("k_omega", "k", "k_error", "least")):
-        columns = {name: column for name in names if (column := getattr(data, name)) is not None}
-        count = max((len(column) for column in columns.values()), default=0)
-        if count > ENOUGH:
-            keep = np.unique(np.linspace(0, count - 1, ENOUGH).astype(int))
-            few |= {name: column[keep] for name, column in columns.items()}
-    return replace(data, **few) if few else data
+def part_of(data: PassiveData) -> PassiveData:
+    """A part of many rows that no material has unless the whole may be true.
+
+    Of n alone every few rows. With k neighbouring rows, where n changes most: rows left out between others
+    would make narrow lines coarser than they are, and then true numbers look false.
+    """
+    if data.k_omega is None:
+        return _every_few(data)
+    count = len(data.k_omega)
+    if count <= ENOUGH or len(data.omega) < ENOUGH:
+        return data
+    index = np.interp(data.k_omega, data.omega, data.index)
+    first = int(np.argmax(np.ptp(np.lib.stride_tricks.sliding_window_view(index, ENOUGH), axis=1)))
+    low, high = data.k_omega[first], data.k_omega[first + ENOUGH - 1]
+    return _kept(
+        data, (data.omega >= low) & (data.omega <= high), (data.k_omega >= low) & (data.k_omega <= high)
+    )
+
+
+def _every_few(data: PassiveData) -> PassiveData:
+    count = len(data.omega)
+    if count <= ENOUGH:
+        return data
+    keep = np.zeros(count, dtype=bool)
+    keep[np.linspace(0, count - 1, ENOUGH).astype(int)] = True
+    return _kept(data, keep, np.zeros(0, dtype=bool))
+
+
+def _kept(data: PassiveData, index_rows: NDArray[np.bool_], k_rows: NDArray[np.bool_]) -> PassiveData:
+    few: dict[str, Any] = {
+        name: column[keep]
+        for names, keep in (
+            (("omega", "index", "index_error"), index_rows),
+            (("k_omega", "k", "k_error", "least"), k_rows),
+        )
+        for name in names
+        if (column := getattr(data, name)) is not None
+    }
+    return replace(data, **few)

@@ -20,14 +20,15 @@ __all__ = ["reached"]
 Real = NDArray[np.float64]
 
 TURNS = 3
-METHODS = ("highs", "highs-ipm", "highs-ds")
-"""One now and then ends with an unknown status where another does not."""
 STEP = 0.1
 """Of differences, in gaps of the rows: the transforms of splines are smooth between rows."""
 
 
 def reached(data: PassiveData, omega: float) -> Real:
-    """Lowest and highest index, group index and GVD (SI) at omega (rad/s): (3, 2)."""
+    """Lowest and highest index, group index and GVD (SI) at omega (rad/s): (3, 2).
+
+    Raises ArithmeticError where HiGHS gives up, as on badly scaled columns it now and then does.
+    """
     ends = _in_chi(data, omega) if data.k is None else _in_k(data, omega)
     scale = np.array([1.0, 1.0, SPEED_OF_LIGHT * np.max(data.omega)])
     return np.asarray(ends / scale[:, None])
@@ -91,16 +92,15 @@ def _least(matrix: Real, low: Real, high: Real, cost: Real) -> Real:
     column = np.max(np.abs(scaled), axis=0)
     scaled, cost = scaled / column, cost / column
     capped = np.isfinite(high)
-    for method in METHODS:
-        found = linprog(
-            cost / np.max(np.abs(cost)),
-            A_ub=np.vstack((scaled[capped], -scaled)),
-            b_ub=np.concatenate((high[capped] / half[capped], -low / half)),
-            method=method,
-        )
-        if found.status == 0:
-            return np.asarray(found.x / column)
-    raise ArithmeticError(found.message)
+    found = linprog(
+        cost / np.max(np.abs(cost)),
+        A_ub=np.vstack((scaled[capped], -scaled)),
+        b_ub=np.concatenate((high[capped] / half[capped], -low / half)),
+        method="highs",
+    )
+    if found.status != 0:
+        raise ArithmeticError(found.message)
+    return np.asarray(found.x / column)
 
 
 def _of_chi(chi: Real, w: float) -> Real:

@@ -71,9 +71,10 @@ class Glass:
         return np.array([one.gvd for one in each]) * 1e27, np.array([one.tod for one in each]) * 1e42
 
 
-def glass(random: Random, least: int = 5, most: int = 7) -> Glass:
+def glass(random: Random, least: int = 5, most: int = 7, finest: int = 2) -> Glass:
+    """finest: step of the rows, in 5 nm."""
     name = str(random.choice(GLASSES))
-    low, step = 5 * int(random.integers(80, 101)), 5 * int(random.integers(2, 7))
+    low, step = 5 * int(random.integers(80, 101)), 5 * int(random.integers(finest, 7))
     nm = np.arange(low, low + int(random.integers(600, 1101)), step, dtype=float)
     n = np.real(catalogue_medium(name).index(TWO_PI_C / (nm * 1e-9)))
     return Glass(name, nm, n, int(random.integers(least, most)))
@@ -256,7 +257,10 @@ def row_twice(random: Random) -> Planted:
 
 
 def rows_slipped(random: Random) -> Planted:
-    one, step = glass(random, 6, 7), int(random.choice([-1, 1]))
+    """Rows far apart in a wide band: a slip of little rows is much like a stretched axis, a blind spot."""
+    name, step = str(random.choice(GLASSES)), int(random.choice([-1, 1]))
+    nm = np.arange(400.0, 1801.0, 5 * int(random.integers(5, 11)))
+    one = Glass(name, nm, np.real(catalogue_medium(name).index(TWO_PI_C / (nm * 1e-9))), 6)
     nm, n = (one.nm[1:], one.n[:-1]) if step > 0 else (one.nm[:-1], one.n[1:])
     text = written("wavelength (nm),n", fixed(nm, 0), fixed(n, one.decimals))
     return Planted(text=text, codes=("shifted-rows",))
@@ -337,7 +341,7 @@ def negative_absorption(random: Random) -> Planted:
 
 def gvd_from_another_column(random: Random) -> Planted:
     """D in ps/(nm km) under GVD, TOD under GVD, or GVD under the heading of a neighbouring unit."""
-    one = glass(random, 6, 7)
+    one = glass(random, 6, 7, finest=5)
     gvd, tod = one.orders()
     length = (one.nm * 1e-9) ** 2
     dispersion = -TWO_PI_C / length * gvd * FS2_PER_MM * 1e6
@@ -347,7 +351,7 @@ def gvd_from_another_column(random: Random) -> Planted:
 
 
 def tod_from_another_column(random: Random) -> Planted:
-    one = glass(random, 6, 7)
+    one = glass(random, 6, 7, finest=5)
     gvd, tod = one.orders()
     values = (gvd, 10 * tod, -tod)[int(random.integers(3))]
     text = written("wavelength (nm),n,TOD (fs^3/mm)", fixed(one.nm, 0), fixed(one.n, 7), fixed(values, 2))

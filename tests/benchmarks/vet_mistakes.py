@@ -4,8 +4,8 @@
 
 Shown: the factor is at least 2 after planting, or another source or a physical bound tells (as the kind
 says). Found: the verdict is not "consistent", or a finding of severity error or warning stands. Named right:
-a finding has the code, the rows and the words of the mistake. Leads: it is the first. Leaves with 1 where less
-than 90 % of a kind is found or named right.
+a finding has the code, the rows and the words of the mistake. Leads: it is the first. Leaves with 1 where
+less than 90 % of a kind is found or named right.
 """
 
 from __future__ import annotations
