@@ -13,6 +13,8 @@ Real = NDArray[np.float64]
 
 FEWEST = 5.0
 """Rows over the width at half height below which a feature counts as unresolved."""
+QUARTER = 1 / 4
+"""Share of the height that the row beside a peak on an end row may have."""
 NOISE = 4.0
 """Height of a feature over the uncertainty of k, above which it is one."""
 
@@ -30,7 +32,8 @@ def coarse_features(omega: Real, k: Real, error: Real) -> tuple[CoarseFeature, .
     """Peaks of k (K,) at omega (K,), rad/s ascending, with fewer than five rows over their width.
 
     error: uncertainty of k, (K,). Height is counted from the higher of the two valleys beside the peak, as
-    far as k stays below it (its prominence); ends of the rows are valleys.
+    far as k stays below it (its prominence); ends of the rows are valleys. An end row is a peak, the half of
+    one, where the next row has less than a quarter of its height.
     """
     peaks = (_feature(omega, k, row) for row in _peaks(k) if _height(k, row) > NOISE * error[row])
     return tuple(peak for peak in peaks if peak.rows < FEWEST)
@@ -38,11 +41,19 @@ def coarse_features(omega: Real, k: Real, error: Real) -> tuple[CoarseFeature, .
 
 def _peaks(k: Real) -> list[int]:
     padded = np.concatenate(([np.inf], k, [np.inf]))
-    return [int(row) for row in np.flatnonzero((k > padded[:-2]) & (k >= padded[2:]))]
+    inner = [int(row) for row in np.flatnonzero((k > padded[:-2]) & (k >= padded[2:]))]
+    last = len(k) - 1
+    return inner + [end for end, beside in ((0, 1), (last, last - 1)) if _stands_out(k, end, beside)]
+
+
+def _stands_out(k: Real, end: int, beside: int) -> bool:
+    """A broader line, or an edge, cut off by the end falls less from its last row to the one before."""
+    return k[end] > k[beside] and float(k[end] - k[beside]) > (1 - QUARTER) * _height(k, end)
 
 
 def _height(k: Real, row: int) -> float:
-    return float(k[row] - max(np.min(side) for side in _below(k, row)))
+    valleys = [np.min(side) for side in _below(k, row) if len(side) > 1]
+    return float(k[row] - max(valleys))
 
 
 def _below(k: Real, row: int) -> tuple[Real, Real]:
@@ -53,11 +64,12 @@ def _below(k: Real, row: int) -> tuple[Real, Real]:
 
 def _feature(omega: Real, k: Real, row: int) -> CoarseFeature:
     half = float(k[row]) - _height(k, row) / 2
-    low = _crossing(omega[row::-1], k[row::-1], half)
-    high = _crossing(omega[row:], k[row:], half)
+    at = float(omega[row])
+    sides = [(omega[row::-1], k[row::-1]), (omega[row:], k[row:])]
+    half_widths = [abs(_crossing(*side, half) - at) for side in sides if len(side[0]) > 1]
     spacing = np.diff(omega)[max(row - 1, 0) : row + 1]
-    width = high - low
-    return CoarseFeature(omega=float(omega[row]), width=width, rows=width / float(np.mean(spacing)))
+    width = 2 * float(np.mean(half_widths))
+    return CoarseFeature(omega=at, width=width, rows=width / float(np.mean(spacing)))
 
 
 def _crossing(omega: Real, k: Real, level: float) -> float:

@@ -29,11 +29,12 @@ class Part:
 
 @dataclass(frozen=True, kw_only=True)
 class Unresolved:
-    """A line too narrow for the rows, at omega (rad/s), that would explain the numbers; spacing of the rows
-    that would settle it, rad/s."""
+    """Lines too narrow for the rows that would explain the numbers, in so many windows of a few gaps between
+    rows. omega of the strongest and spacing of the rows that would settle it, rad/s."""
 
     omega: float
     spacing: float
+    windows: int = 1
 
 
 @dataclass(frozen=True, kw_only=True, eq=False)

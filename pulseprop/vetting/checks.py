@@ -27,6 +27,7 @@ from pulseprop.vetting.checks_catalogue import (
     wavelength_unit,
 )
 from pulseprop.vetting.checks_digits import too_few_digits
+from pulseprop.vetting.checks_lines import unresolved_line
 from pulseprop.vetting.checks_printed import abbe_number, printed_orders
 from pulseprop.vetting.checks_rows import double_rows, empty_cells, rows_out_of_order
 from pulseprop.vetting.few_rows import displaced
@@ -52,6 +53,7 @@ CHECKS: tuple[Callable[[Case], Iterator[Finding]], ...] = (
     printed_orders,
     abbe_number,
     falling_index,
+    unresolved_line,
     coarse_features,
     narrow_lines,
     ceiling_rows,

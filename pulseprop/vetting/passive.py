@@ -39,7 +39,9 @@ class PassiveCausality:
                 Part(quantity=row.quantity, row=row.row, weight=row.weight)
                 for row in (conflict.rows if conflict else ())
             ),
-            unresolved=Unresolved(omega=line.omega, spacing=line.spacing) if line else None,
+            unresolved=Unresolved(omega=line.omega, spacing=line.spacing, windows=line.windows)
+            if line
+            else None,
             coarse=tuple(feature.omega for feature in found.coarse),
             index=_finite(found.material.index(data.omega)),
             k=None if data.k_omega is None else found.material.k(data.k_omega),

@@ -3,8 +3,9 @@
 With stated uncertainties a certified factor above 1 is contradictory. Without, rounding alone never is: only
 an implied uncertainty larger than any usual measurement has, a physical bound that is broken, or numbers that
 agree to their last digit once one mistake of a whole column is undone, for then no measurement error is at
-work. A line that the rows cannot resolve, or a feature of k with fewer than five rows over its width, leaves
-it at doubtful.
+work. Lines that the rows cannot resolve, or a feature of k with fewer than five rows over its width, leave it
+at doubtful; lines do not where the numbers agree once a mistake is undone that is simpler than they are: one
+of a whole column, or fewer wrong rows than the lines need places.
 """
 
 from __future__ import annotations
@@ -19,8 +20,9 @@ __all__ = ["PHYSICAL", "decision_rule", "verdict_on"]
 
 STATED_RULE = (
     "Consistent up to an uncertainty factor of 1, contradictory above, and doubtful where the rows are too "
-    "coarse to tell (a narrow line that they cannot resolve, fewer than five of them over the width of a "
-    "feature), where the checks find an error, or where the test came to no end."
+    "coarse to tell (narrow lines that they cannot resolve, and no simpler mistake that explains as much; "
+    "fewer than five of them over the width of a feature), where the checks find an error, or where the test "
+    "came to no end."
 )
 UNSTATED_RULE = (
     "No uncertainty is stated, so the printed digits stand for it, and rounding alone contradicts nothing: "
@@ -33,7 +35,8 @@ NO_STATISTICS = "The factor is a largest ratio, not a chi-square and not a cover
 PHYSICAL = ("negative-absorption", "transmittance-above-1", "index-not-positive")
 """Codes of bounds that hold for any passive sample whatever its index."""
 STRUCTURED = 10.0
-"""Factor from which on numbers that a whole-column repair makes agree are no matter of noise."""
+"""Factor from which on numbers that a repair makes agree are no matter of noise, and a line seen by one row
+alone would have to lie within a tenth of a gap from it."""
 WHOLE_COLUMN = (
     "reversed-order",
     "swapped-columns",
@@ -58,7 +61,7 @@ def verdict_on(case: Case, findings: Sequence[Finding]) -> Verdict:
         return "contradictory"
     if not _above_one(case):
         return "doubtful" if errors or case.trouble else "consistent"
-    if _unsettled(case) or not (case.numbers.stated or _beyond_measurement(case, errors)):
+    if _unsettled(case, errors) or not (case.numbers.stated or _beyond_measurement(case, errors)):
         return "doubtful"
     return "contradictory"
 
@@ -67,20 +70,40 @@ def _above_one(case: Case) -> bool:
     return case.factor is not None and case.factor > 1
 
 
-def _unsettled(case: Case) -> bool:
+def _unsettled(case: Case, errors: Sequence[Finding]) -> bool:
     """Whether the factor above 1 may be the rows' coarseness, or lie within the gap of its proof."""
     standing = case.standing
     if standing is None or (case.numbers.repeat and case.numbers.repeat.factor > 1):
         return False
     proven = standing.factor * (1 - (standing.gap or 0.0)) > 1
-    return standing.unresolved is not None or bool(standing.coarse) or not proven
+    return _lines_explain(case, errors) or bool(standing.coarse) or not proven
+
+
+def _lines_explain(case: Case, errors: Sequence[Finding]) -> bool:
+    """Whether lines between the rows do, and no mistake that is simpler than they are."""
+    lines = case.standing.unresolved if case.standing is not None else None
+    if lines is None or _column_mended(case, errors):
+        return False
+    wrong_rows = len(_mending(errors, ("displaced-row",)))
+    return not (0 < wrong_rows < lines.windows and _structured(case))
 
 
 def _beyond_measurement(case: Case, errors: Sequence[Finding]) -> bool:
-    mended = any(
-        error.code in WHOLE_COLUMN
-        and error.factor_after_repair is not None
-        and error.factor_after_repair <= 1
+    return graded(case).gross or _column_mended(case, errors)
+
+
+def _column_mended(case: Case, errors: Sequence[Finding]) -> bool:
+    return _structured(case) and bool(_mending(errors, WHOLE_COLUMN))
+
+
+def _structured(case: Case) -> bool:
+    return (case.factor or 0.0) >= STRUCTURED
+
+
+def _mending(errors: Sequence[Finding], codes: Sequence[str]) -> list[Finding]:
+    """Errors of these codes whose repair makes the numbers agree."""
+    return [
+        error
         for error in errors
-    )
-    return graded(case).gross or (mended and (case.factor or 0.0) >= STRUCTURED)
+        if error.code in codes and error.factor_after_repair is not None and error.factor_after_repair <= 1
+    ]

@@ -7,7 +7,8 @@ from collections.abc import Sequence
 from pulseprop.constants import TWO_PI_C
 from pulseprop.vetting.absorption_rows import absorption_column
 from pulseprop.vetting.case import Case
-from pulseprop.vetting.causal import FewRows, Unresolved
+from pulseprop.vetting.causal import FewRows
+from pulseprop.vetting.checks_lines import lines_would_explain
 from pulseprop.vetting.result import ConflictRow, Finding, ImpliedUncertainty, Verdict
 
 __all__ = ["BLIND_SPOTS", "assumptions", "headline", "sentence", "what_was_vetted"]
@@ -50,8 +51,8 @@ def headline(
         parts.append(
             f"they agree (factor {_short(named.factor_after_repair or 0.0)}) with this repair: {named.repair}"
         )
-    if case.standing is not None and case.standing.unresolved is not None:
-        parts.append(_unresolved(case.standing.unresolved))
+    if verdict == "doubtful" and case.standing is not None and case.standing.unresolved is not None:
+        parts.append(lines_would_explain(case.standing.unresolved))
     return "; ".join(parts) + "."
 
 
@@ -84,9 +85,8 @@ def _without_error(case: Case, verdict: Verdict, conflict: Sequence[ConflictRow]
         rows = _rows(_heaviest(conflict))
         return f"The printed values contradict each other: {rows}; please check them against the measurement."
     if line is not None:
-        return (
-            f"{_unresolved(line)[0].upper()}{_unresolved(line)[1:]}; please send such rows if you have them."
-        )
+        said = lines_would_explain(line)
+        return f"{said[0].upper()}{said[1:]}; please send such rows if you have them."
     if case.trouble:
         return ""
     return (
@@ -175,15 +175,6 @@ def _without_factor(case: Case, verdict: Verdict, findings: Sequence[Finding]) -
 def _first(findings: Sequence[Finding]) -> str:
     error = next((finding for finding in findings if finding.severity == "error"), None)
     return error.text[0].lower() + error.text[1:].rstrip(".") if error else "the checks found an error"
-
-
-def _unresolved(line: Unresolved) -> str:
-    place = TWO_PI_C / line.omega * 1e9
-    spacing = TWO_PI_C * line.spacing / line.omega**2 * 1e9
-    return (
-        f"a narrow line near {place:.5g} nm that falls between the rows would explain them: rows "
-        f"{spacing:.2g} nm apart there would settle it"
-    )
 
 
 def _few_lines(case: Case, few: FewRows) -> tuple[int, ...]:

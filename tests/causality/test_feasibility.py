@@ -146,7 +146,7 @@ def test_a_displaced_row_is_named():
     weights = {row.row: row.weight for row in found.conflict.rows}
     assert weights[30] == pytest.approx(0.5, abs=0.01)
     assert weights[29] == pytest.approx(-0.25, abs=0.01)
-    assert found.unresolved is None
+    assert found.unresolved is None or found.unresolved.windows > 1
     blamed = suspects(data, found.conflict)
     assert blamed.rows == (("n", 30),)
     assert blamed.factor < 0.1
