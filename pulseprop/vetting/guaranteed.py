@@ -85,6 +85,8 @@ def at_implied_uncertainty(case: Case) -> tuple[PassiveData | None, str]:
         return data, ""
     if case.numbers.stated:
         return None, "the numbers contradict each other within their uncertainties, so they guarantee nothing"
+    if case.standing.unresolved is not None or case.standing.coarse:
+        return None, "structure finer than the rows may stand between them, so they guarantee nothing"
     larger = max(case.standing.factor * ROOM, 1.0)
     k_error = None if data.k_error is None else data.k_error * larger
     return replace(data, index_error=data.index_error * larger, k_error=k_error), ""
