@@ -55,14 +55,17 @@ def transmittance_too_high(case: Case) -> Iterator[Finding]:
 
 
 def index_not_positive(case: Case) -> Iterator[Finding]:
-    """An index of 0 or below."""
+    """An index below 0 by more than its uncertainty; one that is printed as 0 may be that of a metal."""
     column = case.table.column("n")
-    if column is not None and np.any(column.values <= 0):
+    if column is None:
+        return
+    below = column.values + _uncertainty(case, column) <= 0
+    if np.any(below):
         yield Finding(
             code="index-not-positive",
             severity="error",
-            text="The index is not positive, which no medium's is in this convention.",
-            rows=case.lines(np.flatnonzero(column.values <= 0)),
+            text="The index is below 0, which no medium's is in this convention.",
+            rows=case.lines(np.flatnonzero(below)),
         )
 
 

@@ -37,6 +37,7 @@ PHYSICAL = ("negative-absorption", "transmittance-above-1", "index-not-positive"
 STRUCTURED = 10.0
 """Factor from which on numbers that a repair makes agree are no matter of noise, and a line seen by one row
 alone would have to lie within a tenth of a gap from it."""
+SHIFTED = "shifted-rows"
 WHOLE_COLUMN = (
     "reversed-order",
     "swapped-columns",
@@ -45,8 +46,11 @@ WHOLE_COLUMN = (
     "percent-fraction",
     "fresnel-loss",
     "axis-unit",
-    "shifted-rows",
+    SHIFTED,
 )
+ROWS_OF_A_SHIFT = 2
+"""Wrong rows that a shifted column counts for: it leaves out an end row, beside which a line may lie, and of
+the rest a shift shows nothing where the digits are few."""
 
 
 def decision_rule(case: Case) -> str:
@@ -82,10 +86,12 @@ def _unsettled(case: Case, errors: Sequence[Finding]) -> bool:
 def _lines_explain(case: Case, errors: Sequence[Finding]) -> bool:
     """Whether lines between the rows do, and no mistake that is simpler than they are."""
     lines = case.standing.unresolved if case.standing is not None else None
-    if lines is None or _column_mended(case, errors):
+    if lines is None or not _structured(case):
+        return lines is not None
+    if any(error.code != SHIFTED for error in _mending(errors, WHOLE_COLUMN)):
         return False
-    wrong_rows = len(_mending(errors, ("displaced-row",)))
-    return not (0 < wrong_rows < lines.windows and _structured(case))
+    simpler = len(_mending(errors, ("displaced-row",))) or ROWS_OF_A_SHIFT * len(_mending(errors, (SHIFTED,)))
+    return not 0 < simpler < lines.windows
 
 
 def _beyond_measurement(case: Case, errors: Sequence[Finding]) -> bool:
