@@ -4,7 +4,16 @@ from __future__ import annotations
 
 from importlib import import_module
 
-PARTS = ("dispersion", "kramers_kronig", "resonance", "speed")
+PARTS = (
+    "dispersion",
+    "kramers_kronig",
+    "resonance",
+    "feasibility",
+    "bounds",
+    "compensation",
+    "speed",
+)
+"""Beside them, by name and for an hour or so each: unresolved, vet_random, vet_mistakes, vet_open_data."""
 
 
 def main() -> None:
