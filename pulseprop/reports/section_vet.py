@@ -11,7 +11,7 @@ from pulseprop.vetting.result import Bounds, ConflictRow, Finding, RequirementAn
 
 __all__ = ["vet_sections"]
 
-MOST_ROWS = 12
+MOST_ROWS = 24
 """Rows of the proof that a report lists; JSON has all."""
 
 WEIGHT_PLACES = 7

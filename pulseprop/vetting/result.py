@@ -128,4 +128,8 @@ class Vetted:
         """The document of the JSON report."""
         document = asdict(self)
         del document["curves"]
+        # "conflict" is of rows of n and k; printed numbers of other kinds stand under a key of theirs.
+        of_rows = all(entry["quantity"] in ("n", "k") for entry in document["conflict"])
+        document["conflict_printed"] = [] if of_rows else document["conflict"]
+        document["conflict"] = document["conflict"] if of_rows else []
         return document
