@@ -1,8 +1,9 @@
 """The least factor by which the uncertainties must be stretched, between a material and a proof.
 
-A programme with masses at some places, then with masses added where its dual vector favours them most, until
-what the material attains and what is proven for all places agree (exchange: R. Hettich and K. O. Kortanek,
-SIAM Rev. 35, 380 (1993)).
+A programme with masses at some places, then with masses added where its dual vector favours them, until what
+the material attains and what is proven for all places agree (exchange: R. Hettich and K. O. Kortanek, SIAM
+Rev. 35, 380 (1993)). (Masses that join on the way to a solution were tried: the interior point recovers from
+late ones no faster than it starts anew, and early ones are rarely those that are missing in the end.)
 """
 
 from __future__ import annotations
@@ -15,7 +16,7 @@ from numpy.typing import NDArray
 from pulseprop.causality.passive_class import Masses, PassiveClass
 from pulseprop.causality.proof import Proof, favoured_masses, proven
 from pulseprop.errors import NumericalLimit
-from pulseprop.numerics.box_programme import solve_box
+from pulseprop.numerics.box_programme import BoxSolution, Stop, solve_box
 
 __all__ = ["FLOOR", "GAP", "Attained", "factor_with", "least_factor"]
 
@@ -27,9 +28,7 @@ FLOOR = 1e-2
 """The gap of a factor below this is taken over this: the numbers fit a hundred times better than stated."""
 ROUNDS = 12
 ACCURACY = (6e-4, 3e-4)
-"""Of the programmes one after another, and of all further ones: early ones have not the final masses yet."""
-NEAR = (-np.inf, 0.0)
-"""How much the weights must favour a mass for it to join; at first all that they favour locally most do."""
+"""Of the programmes one after another, and of all further ones; most stop before that."""
 TOLERABLE = 0.1
 """Accuracy at which a programme that rounding has stopped is still worth a look: the proof decides."""
 
@@ -48,31 +47,48 @@ def least_factor(cls: PassiveClass) -> tuple[Attained, Proof]:
 
     Raises NumericalLimit where they do not come within GAP of each other.
     """
-    masses = cls.first_masses()
-    best, proof = None, Proof(np.zeros(len(cls.target)), 0.0, 0.0)
+    search = _Search(cls)
+    every = np.ones(len(cls.target), dtype=bool)
     for turn in range(ROUNDS):
-        attained, weights, price = _solved(cls, masses, ACCURACY[min(turn, len(ACCURACY) - 1)])
-        best = attained if best is None or attained.factor < best.factor else best
-        found = proven(cls, weights, price)
-        proof = found if found is not None and found.factor > proof.factor else proof
-        if best.factor - proof.factor <= GAP * max(best.factor, FLOOR):
-            return best, proof
-        least = NEAR[min(turn, len(NEAR) - 1)]
-        masses = masses.joined(favoured_masses(cls, weights, price, least))
+        accuracy = ACCURACY[min(turn, len(ACCURACY) - 1)]
+        matrix, strengths = cls.matrix(search.masses), cls.strengths(search.masses)
+        found = _solved(cls, matrix, strengths, every, accuracy, search.closed_by)
+        if search.closed_by(found):
+            return search.best, search.proof
+        search.join(found)
     raise NumericalLimit(
         "the uncertainty factor could not be proven",
-        value=f"between {proof.factor:.6g} and {best.factor if best else np.inf:.6g}",
+        value=f"between {search.proof.factor:.6g} and {search.best.factor:.6g}",
         allowed=f"a difference of {GAP:g} of it",
         remedy="Give fewer rows, or larger uncertainties: these are near the limit of double precision",
     )
 
 
-def _solved(cls: PassiveClass, masses: Masses, accuracy: float) -> tuple[Attained, Real, float]:
-    """The material of these masses, weights of the rows and the price of strength."""
-    matrix, strengths = cls.matrix(masses), cls.strengths(masses)
-    every = np.ones(len(cls.target), dtype=bool)
-    amounts, weights, price = _programme(cls, matrix, strengths, every, accuracy)
-    return Attained(masses, amounts, float(np.max(_stretch(cls, matrix @ amounts)))), weights, price
+class _Search:
+    """Best material and best proof so far, and the masses of the programme at hand."""
+
+    def __init__(self, cls: PassiveClass) -> None:
+        self.cls, self.masses = cls, cls.first_masses()
+        self.best = Attained(self.masses, np.zeros(0), np.inf)
+        self.proof = Proof(np.zeros(len(cls.target)), 0.0, 0.0)
+
+    def closed_by(self, found: BoxSolution) -> bool:
+        """Whether best material and best proof are close enough, with those of a solution."""
+        attained, proof = self._attained(found), proven(self.cls, *_weights(self.cls, found))
+        self.best = attained if attained.factor < self.best.factor else self.best
+        self.proof = proof if proof is not None and proof.factor > self.proof.factor else self.proof
+        return self.best.factor - self.proof.factor <= GAP * max(self.best.factor, FLOOR)
+
+    def join(self, found: BoxSolution) -> None:
+        """The masses that the weights favour."""
+        self.masses = self.masses.joined(favoured_masses(self.cls, *_weights(self.cls, found)))
+
+    def _attained(self, found: BoxSolution) -> Attained:
+        cls = self.cls
+        amounts = _within(cls, found, cls.strengths(self.masses))
+        of_splines, of_masses = np.split(amounts, [len(amounts) - len(self.masses)])
+        value = cls.spline_columns @ of_splines + cls.mass_columns(self.masses) @ of_masses
+        return Attained(self.masses, amounts, float(np.max(_stretch(cls, value))))
 
 
 def factor_with(
@@ -84,21 +100,26 @@ def factor_with(
     """
     matrix = np.concatenate((cls.matrix(masses), lines), axis=1)
     every = np.concatenate((cls.strengths(masses), strengths))
-    amounts, _, _ = _programme(cls, matrix, every, rows, ACCURACY[-1])
+    amounts = _within(cls, _solved(cls, matrix, every, rows, ACCURACY[-1]), every)
     factor = float(np.max(_stretch(cls, matrix @ amounts)[rows]))
     return factor, amounts[len(amounts) - len(strengths) :]
 
 
-def _programme(
-    cls: PassiveClass, matrix: Real, strengths: Real, rows: NDArray[np.bool_], accuracy: float
-) -> tuple[Real, Real, float]:
-    """Amounts of the columns, weights of the chosen rows and the price of strength."""
+def _solved(
+    cls: PassiveClass,
+    matrix: Real,
+    strengths: Real,
+    rows: NDArray[np.bool_],
+    accuracy: float,
+    stop: Stop | None = None,
+) -> BoxSolution:
+    """The programme of some columns on some rows, with the limit on their strength as the last row."""
     matrix, lower, stretch = matrix[rows], cls.target[rows], cls.error[rows]
     upper = np.where(cls.least[rows], np.inf, lower)
     if cls.limit is not None:
         matrix = np.concatenate((matrix, strengths[None] / cls.limit))
         lower, upper, stretch = np.append(lower, -np.inf), np.append(upper, 1.0), np.append(stretch, 0.0)
-    found = solve_box(
+    return solve_box(
         matrix,
         lower,
         upper,
@@ -106,12 +127,23 @@ def _programme(
         accuracy=accuracy,
         floor=FLOOR,
         tolerable=max(accuracy, TOLERABLE),
+        stop=stop,
     )
-    amounts, weights, price = np.maximum(found.x, 0.0), found.dual, 0.0
-    if cls.limit is not None:
-        weights, price = weights[:-1], max(-float(weights[-1]), 0.0) / cls.limit
-        amounts = amounts / max(float(matrix[-1] @ amounts), 1.0)
-    return amounts, weights, price
+
+
+def _within(cls: PassiveClass, found: BoxSolution, strengths: Real) -> Real:
+    """Amounts of the columns that keep the limit on their strength."""
+    amounts = np.maximum(found.x, 0.0)
+    if cls.limit is None:
+        return amounts
+    return np.asarray(amounts / max(float(amounts @ strengths) / cls.limit, 1.0))
+
+
+def _weights(cls: PassiveClass, found: BoxSolution) -> tuple[Real, float]:
+    """Of the rows, and the price of strength."""
+    if cls.limit is None:
+        return found.dual, 0.0
+    return found.dual[:-1], max(-float(found.dual[-1]), 0.0) / cls.limit
 
 
 def _stretch(cls: PassiveClass, value: Real) -> Real:

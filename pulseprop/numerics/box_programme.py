@@ -13,6 +13,7 @@ Mehrotra, SIAM J. Optim. 2, 575 (1992), in scaled variables; what comes out is a
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from contextlib import suppress
 from dataclasses import dataclass
 
@@ -22,12 +23,14 @@ from numpy.typing import NDArray
 from pulseprop.errors import NumericalLimit
 from pulseprop.numerics.interior_point import Gaps, Point, Problem, improved, start, value_and_bound
 
-__all__ = ["BoxSolution", "solve_box"]
+__all__ = ["BoxSolution", "Stop", "solve_box"]
 
 Real = NDArray[np.float64]
 
 STEPS = 150
 """Most steps; 20 to 40 are usual."""
+WORTH_A_LOOK = 0.02
+"""Difference of value and bound, over the value, from which on a solution may be good enough."""
 
 
 @dataclass(frozen=True, eq=False, kw_only=True)
@@ -41,6 +44,9 @@ class BoxSolution:
     bound: float
 
 
+Stop = Callable[[BoxSolution], bool]
+
+
 def solve_box(
     matrix: Real,
     lower: Real,
@@ -51,32 +57,48 @@ def solve_box(
     accuracy: float = 1e-6,
     floor: float = 1e-9,
     tolerable: float | None = None,
+    stop: Stop | None = None,
 ) -> BoxSolution:
     """The minimum over x >= 0 (and t, where `stretch` is given).
 
     matrix: (rows, columns), any scale of either. lower, upper: (rows,), -inf and inf where a row has one
     limit only. cost: (columns,), 0 unless given. stretch: (rows,), 0 or more. accuracy, floor: largest
     difference of value and bound, over the value and by itself. tolerable: what is accepted in place of
-    accuracy where rounding stops the way there.
+    accuracy where rounding stops the way there. stop: is shown solutions on the way, from a difference of
+    WORTH_A_LOOK on each time it has halved, and tells whether one is good enough.
 
     Raises NumericalLimit where that is not reached: the programme may have no solution, or the numbers are
     beyond double precision.
     """
-    unit = _row_units(matrix, lower, upper, stretch)
-    rows = matrix / unit[:, None]
-    column = np.max(np.abs(rows), axis=0)
-    column = np.where(column > 0, column, 1.0)
-    problem = Problem(
-        matrix=rows / column,
-        lower=lower / unit,
-        upper=upper / unit,
-        cost=np.zeros(len(column)) if cost is None else cost / column,
-        stretch=None if stretch is None else stretch / unit,
-    )
-    point = _solved(problem, accuracy, floor, accuracy if tolerable is None else tolerable)
-    value, bound = value_and_bound(problem, point)
-    dual = (point.from_lower - point.from_upper) / unit
-    return BoxSolution(x=point.x / column, t=point.t, dual=dual, value=value, bound=bound)
+    programme = _Programme(matrix, lower, upper, cost, stretch)
+    point = _solved(programme, accuracy, floor, accuracy if tolerable is None else tolerable, stop)
+    return programme.solution(point)
+
+
+class _Programme:
+    """The problem in units of its rows and columns."""
+
+    def __init__(
+        self, matrix: Real, lower: Real, upper: Real, cost: Real | None, stretch: Real | None
+    ) -> None:
+        self.unit = _row_units(matrix, lower, upper, stretch)
+        scaled = matrix / self.unit[:, None]
+        column = np.max(np.abs(scaled), axis=0)
+        self.column = np.where(column > 0, column, 1.0)
+        scaled /= self.column
+        self.problem = Problem(
+            matrix=scaled,
+            lower=lower / self.unit,
+            upper=upper / self.unit,
+            cost=np.zeros(len(column)) if cost is None else cost / self.column,
+            stretch=None if stretch is None else stretch / self.unit,
+        )
+
+    def solution(self, point: Point) -> BoxSolution:
+        """In the units of the caller."""
+        value, bound = value_and_bound(self.problem, point)
+        dual = (point.from_lower - point.from_upper) / self.unit
+        return BoxSolution(x=point.x / self.column, t=point.t, dual=dual, value=value, bound=bound)
 
 
 def _row_units(matrix: Real, lower: Real, upper: Real, stretch: Real | None) -> Real:
@@ -88,15 +110,23 @@ def _row_units(matrix: Real, lower: Real, upper: Real, stretch: Real | None) -> 
     return np.where(unit > 0, unit, 1.0)
 
 
-def _solved(problem: Problem, accuracy: float, floor: float, tolerable: float) -> Point:
+def _solved(
+    programme: _Programme, accuracy: float, floor: float, tolerable: float, stop: Stop | None
+) -> Point:
+    problem, next_look = programme.problem, WORTH_A_LOOK
     best: tuple[float, Point | None] = (np.inf, None)
     # where there is no solution the duals grow without limit, until a factorisation fails
     with np.errstate(all="ignore"), suppress(np.linalg.LinAlgError):
         point = start(problem)
         for _ in range(STEPS):
             gaps = problem.gaps(point)
-            best = min(best, (_left(problem, point, gaps, floor), point), key=lambda one: one[0])
-            if best[0] <= accuracy:
+            left = _left(problem, point, gaps, floor)
+            best = min(best, (left, point), key=lambda one: one[0])
+            if stop is not None and left <= next_look:
+                next_look = left / 2
+                if stop(programme.solution(point)):
+                    return point
+            if left <= accuracy:
                 break
             point = improved(problem, point, gaps)
     left, found = best
