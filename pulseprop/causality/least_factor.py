@@ -52,10 +52,9 @@ def least_factor(cls: PassiveClass) -> tuple[Attained, Proof]:
     for turn in range(ROUNDS):
         accuracy = ACCURACY[min(turn, len(ACCURACY) - 1)]
         matrix, strengths = cls.matrix(search.masses), cls.strengths(search.masses)
-        found = _solved(cls, matrix, strengths, every, accuracy, search.closed_by)
+        found = _solved(cls, matrix, strengths, every, accuracy, search.stop)
         if search.closed_by(found):
             return search.best, search.proof
-        search.join(found)
     raise NumericalLimit(
         "the uncertainty factor could not be proven",
         value=f"between {search.proof.factor:.6g} and {search.best.factor:.6g}",
@@ -70,18 +69,33 @@ class _Search:
     def __init__(self, cls: PassiveClass) -> None:
         self.cls, self.masses = cls, cls.first_masses()
         self.best = Attained(self.masses, np.zeros(0), np.inf)
-        self.proof = Proof(np.zeros(len(cls.target)), 0.0, 0.0)
+        self.none = self.last = self.proof = Proof(np.zeros(len(cls.target)), 0.0, 0.0)
 
-    def closed_by(self, found: BoxSolution) -> bool:
-        """Whether best material and best proof are close enough, with those of a solution."""
-        attained, proof = self._attained(found), proven(self.cls, *_weights(self.cls, found))
-        self.best = attained if attained.factor < self.best.factor else self.best
-        self.proof = proof if proof is not None and proof.factor > self.proof.factor else self.proof
+    @property
+    def closed(self) -> bool:
+        """Whether best material and best proof are close enough."""
         return self.best.factor - self.proof.factor <= GAP * max(self.best.factor, FLOOR)
 
-    def join(self, found: BoxSolution) -> None:
-        """The masses that the weights favour."""
-        self.masses = self.masses.joined(favoured_masses(self.cls, *_weights(self.cls, found)))
+    def stop(self, found: BoxSolution) -> bool:
+        """Whether a solution on the way will do. One that proves less than that before lacks masses."""
+        before, self.last = self.last, self._learnt(found)
+        return self.closed or (self.last.factor < before.factor and len(self._more(found)) > len(self.masses))
+
+    def closed_by(self, found: BoxSolution) -> bool:
+        """The same of a solution at the end; if it will not do, the masses it favours join."""
+        self.last = self._learnt(found)
+        if not self.closed:
+            self.masses, self.last = self._more(found), self.none
+        return self.closed
+
+    def _learnt(self, found: BoxSolution) -> Proof:
+        attained, proof = self._attained(found), proven(self.cls, *_weights(self.cls, found)) or self.none
+        self.best = attained if attained.factor < self.best.factor else self.best
+        self.proof = proof if proof.factor > self.proof.factor else self.proof
+        return proof
+
+    def _more(self, found: BoxSolution) -> Masses:
+        return self.masses.joined(favoured_masses(self.cls, *_weights(self.cls, found)))
 
     def _attained(self, found: BoxSolution) -> Attained:
         cls = self.cls
