@@ -28,11 +28,11 @@ WORTHWHILE = 16
 ITERATIONS = 120
 """Most conjugate gradients on top of a Cholesky factor. An orthogonal one costs as much as some 75 at
 1,000 unknowns and 1,000 at 2,000."""
-CONVERGED, ENOUGH = 1e-9, 1e-7
-"""Fall of the gradient at which they stop, and with which they serve after that many."""
-STILL, CALM = 1e-8, 1e-5
-"""Last change of w over the largest w, likewise: on a stiffer factor the gradient of hidden directions is
-small from the start."""
+CONVERGED = ((1e-9, np.inf), (1e-7, 1e-10))
+"""Fall of the gradient, and last change of w over the largest w, at which they stop: either pair will do, as
+rounding lets the gradient rise again."""
+HIDDEN = ((1e-9, 1e-8), (1e-7, 1e-10))
+"""The same on a stiffer factor: there the gradient of hidden directions is small from the start."""
 STIFFER = (0.0, 1e-15, 3e-15, 1e-14, 1e-13, 1e-11, 1e-9)
 """Shares by which the diagonal is enlarged in turn, until there is a Cholesky factor."""
 
@@ -136,11 +136,11 @@ class _Normal:
         full = dsyrk(1.0, rows.T, lower=1)
         diagonal = np.diag_indices(len(near))
         size = full[diagonal] + near**2
-        self.lower, self.failed, self.stiffer = full, True, False
+        self.lower, self.failed, self.converged = full, True, CONVERGED
         for more in STIFFER:
             full[diagonal] = size * (1 + more)
             self.lower, failed = dpotrf(full, lower=1)
-            self.failed, self.stiffer = failed != 0, more > 0
+            self.failed, self.converged = failed != 0, HIDDEN if more > 0 else CONVERGED
             if not self.failed:
                 break
 
@@ -154,15 +154,15 @@ class _Normal:
             slope = self._half(self.near * near + right @ self.rows, 0)
             last, size = size, float(slope @ slope)
             first = min(first, size) if np.isinf(first) else first
-            if size <= CONVERGED**2 * first and change <= STILL:
+            if any(size <= fall**2 * first and change <= still for fall, still in self.converged):
                 return z, near, right
             direction = self._half(slope, 1) + direction * (size / last)
             of_near, of_rows = self.near * direction, self.rows @ direction
             step = size / float(of_near @ of_near + of_rows @ of_rows)
             z = z + step * direction
             near, right = near - step * of_near, right - step * of_rows
-            change = step * float(np.max(np.abs(direction)) / np.max(np.abs(z))) if self.stiffer else 0.0
-        return (z, near, right) if size <= ENOUGH**2 * first and change <= CALM else None
+            change = step * float(np.max(np.abs(direction)) / np.max(np.abs(z)))
+        return None
 
     def _half(self, right: Real, transposed: int) -> Real:
         from scipy.linalg.lapack import dtrtrs
